@@ -1,0 +1,13 @@
+export type {
+  Estimator,
+  EstimatorPair,
+  FittedCurve,
+  InitialRate,
+  InitialRateFound,
+  InitialRateOptions,
+  SlopeEstimate,
+  StudyRule,
+  StudyRuleChoice,
+  StudyTrace,
+  Trace,
+} from "./initial-rate";

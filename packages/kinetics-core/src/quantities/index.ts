@@ -1,0 +1,1 @@
+export type { Estimate, Flag, Severity, Uncertain } from "./estimate";
