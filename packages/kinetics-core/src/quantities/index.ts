@@ -1,1 +1,19 @@
 export type { Estimate, Flag, Severity, Uncertain } from "./estimate";
+export { estimateOf, exponentialOf, noEstimate } from "./estimate-of";
+export {
+  type PrintedUncertain,
+  type PrintOptions,
+  printNumber,
+  printUncertain,
+  superscript,
+} from "./printed-number";
+export { concentrationUnitText, rateConstantUnit, rateUnit } from "./rate-constant-unit";
+export {
+  type ConcentrationUnit,
+  concentrationToMolar,
+  type MolarUnit,
+  molarTo,
+  secondsTo,
+  type TimeUnit,
+  timeToSeconds,
+} from "./units";
