@@ -1,0 +1,50 @@
+import type { RateLawResult } from "kinetics-core/rate-law";
+import type { Sheet } from "@/db/sheet/sheet.schema";
+import { rateScale } from "./assemble";
+import { type CarryingRun, lawName } from "./law-input";
+import { lawSpecies, presentRuns } from "./present-runs";
+import { distinctLevels } from "./run-marks";
+
+/** Why there is no law, in one sentence that says what is needed; null where nothing is missing. */
+export function missingForLaw(
+  sheet: Sheet,
+  carrying: readonly CarryingRun[],
+  result: RateLawResult | null,
+): string | null {
+  const species = lawSpecies(sheet);
+  if (species.length === 0) return "The set-up names no species whose order is wanted.";
+  const runs = presentRuns(sheet);
+  if (runs.length === 0)
+    return "The run sheet is empty: runs at two or more levels of each species are needed.";
+  const scale = rateScale(sheet);
+  if (scale.status === "unknown" && runs.every((run) => run.enteredRate === null)) return scale.reason;
+  if (carrying.length === 0) return "No standing run has a rate: traces or entered rates are needed.";
+  const wanted = species
+    .filter((one) => (sheet.orders[one.id] ?? null) === null)
+    .filter(
+      (one) =>
+        distinctLevels(
+          carrying.map(({ run }) => run),
+          one.id,
+        ).length < 2,
+    )
+    .map(lawName);
+  if (wanted.length > 0)
+    return `${capital(list(wanted.map((name) => `two more levels of ${name}`)))} are needed, or ${
+      wanted.length === 1 ? "its order" : "their orders"
+    } held.`;
+  if (result === null || result.status !== "fitted") return result?.message ?? "Runs with a rate are needed.";
+  if (!result.separable)
+    return result.undetermined.map((one) => one.message).join(" ") || "The orders cannot be separated.";
+  return null;
+}
+
+/** "A", "A and B", "A, B and C". */
+export function list(items: readonly string[]): string {
+  const last = items.at(-1) ?? "";
+  return items.length < 2 ? last : `${items.slice(0, -1).join(", ")} and ${last}`;
+}
+
+function capital(sentence: string): string {
+  return sentence.charAt(0).toUpperCase() + sentence.slice(1);
+}
