@@ -1,0 +1,115 @@
+import type { SheetSpecies } from "@/db/sheet/sheet.schema";
+import { nameOf, roleOf } from "./known-species";
+import type { Reaction, ReactionTerm } from "./parse-reaction";
+
+/** A species as the reaction tells it: what the sheet holds but id, unit and position. */
+export interface ReadSpecies {
+  /** Formula text, or the name where no formula was typed; what two occurrences are told apart by. */
+  readonly key: string;
+  readonly symbol: string;
+  readonly name: string;
+  readonly formula: string;
+  /** Net of both sides and signed: negative for reactants. */
+  readonly stoichiometricNumber: number;
+  readonly charge: number;
+  readonly role: SheetSpecies["role"];
+}
+
+const LETTERS = "ABCDEFGHIJKLMNOQRSTUVWXYZ";
+
+/**
+ * The species of a reaction in the order they are written, each once. Reactants and catalysts without a symbol get
+ * one, for the law has to name them: a short formula or name stands for itself, a longer one gets the next letter.
+ */
+export function speciesOfReaction(reaction: Reaction): ReadSpecies[] {
+  const gathered = new Map<string, { term: ReactionTerm; symbol: string; net: number }>();
+  const gather = (terms: readonly ReactionTerm[], sign: 1 | -1) => {
+    for (const term of terms) {
+      const known = gathered.get(term.species.text);
+      gathered.set(term.species.text, {
+        term: known?.term ?? term,
+        symbol: known?.symbol || term.symbol,
+        net: (known?.net ?? 0) + sign * term.coefficient,
+      });
+    }
+  };
+  gather(reaction.left, -1);
+  gather(reaction.right, 1);
+  const taken = new Set([...gathered.values()].map(({ symbol }) => symbol).filter((symbol) => symbol !== ""));
+  return [...gathered].map(([key, { term, symbol, net }]) => {
+    const stoichiometricNumber = Math.abs(net) < 1e-9 ? 0 : net;
+    const role = roleOf(key, stoichiometricNumber);
+    const needsSymbol = role === "reactant" || role === "catalyst";
+    return {
+      key,
+      symbol: symbol || (needsSymbol ? freeSymbol(key, taken) : ""),
+      name: term.species.kind === "name" ? key : nameOf(key),
+      formula: term.species.kind === "formula" ? key : "",
+      stoichiometricNumber,
+      charge: term.species.kind === "formula" ? term.species.formula.charge : 0,
+      role,
+    };
+  });
+}
+
+const LONGEST_SELF_SYMBOL = 9;
+
+function freeSymbol(key: string, taken: Set<string>): string {
+  const candidates = key.length <= LONGEST_SELF_SYMBOL ? [key, ...LETTERS] : [...LETTERS];
+  const symbol = candidates.find((candidate) => !taken.has(candidate)) ?? `X${taken.size}`;
+  taken.add(symbol);
+  return symbol;
+}
+
+/**
+ * Carries an edited reaction into the species table. A species keeps its row, and with it its concentrations and
+ * order, where its formula or name is the same; failing that where its symbol is. What the reaction no longer
+ * names stays with ν = 0, for runs may hold concentrations of it; `newId` gives the id of a row that is new.
+ */
+export function mergeSpecies(
+  existing: readonly SheetSpecies[],
+  read: readonly ReadSpecies[],
+  newId: () => string,
+): SheetSpecies[] {
+  const free = new Set(existing);
+  const take = (matches: (species: SheetSpecies) => boolean): SheetSpecies | undefined => {
+    const found = [...free].find(matches);
+    if (found) free.delete(found);
+    return found;
+  };
+  const bySpelling = read.map((species) => take((row) => species.key === (row.formula || row.name)));
+  const matched = read.map(
+    (species, index) =>
+      bySpelling[index] ?? (species.symbol === "" ? undefined : take((row) => row.symbol === species.symbol)),
+  );
+  const merged = read.map((species, index): SheetSpecies => {
+    const row = matched[index];
+    const { key: _, ...told } = species;
+    if (!row) {
+      const inLaw = species.role === "reactant" || species.role === "catalyst";
+      return { id: newId(), ...told, inLaw, unit: "mmol/L", position: index };
+    }
+    const sameKind = Math.sign(row.stoichiometricNumber) === Math.sign(species.stoichiometricNumber);
+    return {
+      ...row,
+      symbol: species.symbol || row.symbol,
+      name: row.name || species.name,
+      formula: species.formula,
+      stoichiometricNumber: species.stoichiometricNumber,
+      charge: species.charge,
+      role: sameKind ? row.role : species.role,
+      position: index,
+    };
+  });
+  const leftOver = existing
+    .filter((row) => free.has(row))
+    .map(
+      (row, index): SheetSpecies => ({
+        ...row,
+        stoichiometricNumber: 0,
+        role: row.stoichiometricNumber === 0 ? row.role : "spectator",
+        position: merged.length + index,
+      }),
+    );
+  return [...merged, ...leftOver];
+}
