@@ -1,0 +1,8 @@
+export {
+  orthonormalPolynomials,
+  type PolynomialBasis,
+  type PolynomialRecurrence,
+  plainCoefficients,
+  polynomialsAt,
+  projectOn,
+} from "./orthonormal-polynomials";
