@@ -1,3 +1,5 @@
+export { estimateInitialRate } from "./estimate-initial-rate";
+export { evaluateCurve } from "./evaluate-curve";
 export type {
   Estimator,
   EstimatorPair,
@@ -11,3 +13,4 @@ export type {
   StudyTrace,
   Trace,
 } from "./initial-rate";
+export { type TraceNoise, traceNoise } from "./trace-noise";

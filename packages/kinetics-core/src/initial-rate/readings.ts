@@ -49,7 +49,10 @@ function faultOf(time: ArrayLike<number>, signal: ArrayLike<number>): RefusedTra
     const t = time[i] as number;
     const s = signal[i] as number;
     if (!Number.isFinite(t)) {
-      return refused("not-finite", `The time of reading ${i + 1} is not a number; correct it or leave it out.`);
+      return refused(
+        "not-finite",
+        `The time of reading ${i + 1} is not a number; correct it or leave it out.`,
+      );
     }
     if (!Number.isFinite(s)) {
       return refused(

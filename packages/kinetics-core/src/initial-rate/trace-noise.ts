@@ -48,8 +48,7 @@ export function traceNoise(
   if (readings.status !== "usable") return readings;
   const got = readings.time.length;
   if (got < 4) return { status: "too-few-points", needed: 4, got };
-  const { standardDeviation, autocorrelation, effectivePoints, degreesOfFreedom, degree } =
-    noiseOf(readings);
+  const { standardDeviation, autocorrelation, effectivePoints, degreesOfFreedom, degree } = noiseOf(readings);
   return {
     status: "found",
     standardDeviation,

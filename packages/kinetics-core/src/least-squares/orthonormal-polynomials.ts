@@ -104,9 +104,7 @@ export function polynomialsAt(
     const betaJ = j === 0 ? 0 : (beta[j - 1] ?? 0);
     const next = beta[j] ?? 1;
     values.push(((u - (alpha[j] ?? 0)) * p - betaJ * (values[j - 1] ?? 0)) / next);
-    derivatives.push(
-      (p / halfWidth + (u - (alpha[j] ?? 0)) * d - betaJ * (derivatives[j - 1] ?? 0)) / next,
-    );
+    derivatives.push((p / halfWidth + (u - (alpha[j] ?? 0)) * d - betaJ * (derivatives[j - 1] ?? 0)) / next);
   }
   return { values, derivatives };
 }
@@ -128,9 +126,7 @@ export function plainCoefficients(recurrence: PolynomialRecurrence, weights: rea
     const next: number[] = [];
     for (let power = 0; power <= j + 1; power++) {
       const raised = power === 0 ? 0 : (current[power - 1] ?? 0) / halfWidth;
-      next.push(
-        (raised - shift * (current[power] ?? 0) - betaJ * (previous[power] ?? 0)) / (beta[j] ?? 1),
-      );
+      next.push((raised - shift * (current[power] ?? 0) - betaJ * (previous[power] ?? 0)) / (beta[j] ?? 1));
     }
     basis.push(next);
   }
