@@ -1,0 +1,26 @@
+/** How much a study and a group may hold, each with the sentence that says so and the way out. */
+export const RUNS_PER_STUDY = 2_000;
+export const POINTS_PER_STUDY = 5_000_000;
+/** Raw files and traces of all studies of a group together. */
+export const BYTES_PER_GROUP = 5 * 1024 ** 3;
+export const BYTES_PER_FILE = 50 * 1024 ** 2;
+
+export const limitSentences = {
+  runs: (got: number) =>
+    `A study holds at most ${grouped(RUNS_PER_STUDY)} runs and would have ${grouped(got)}. Put the rest into a second study.`,
+  points: (got: number) =>
+    `A study holds at most ${grouped(POINTS_PER_STUDY)} points and would have ${grouped(got)}. Import every second or tenth reading, or put the rest into a second study.`,
+  group: (got: number) =>
+    `Your group keeps at most ${inMegabytes(BYTES_PER_GROUP)} and would have ${inMegabytes(got)}. Ask whoever runs this installation for more room.`,
+  file: (got: number) =>
+    `The file has ${inMegabytes(got)}; at most ${inMegabytes(BYTES_PER_FILE)} can be read. Split it, or leave out readings that are not needed.`,
+} as const;
+
+/** U+202F between groups of three digits. */
+function grouped(count: number): string {
+  return String(count).replace(/\B(?=(\d{3})+$)/g, "\u202f");
+}
+
+function inMegabytes(bytes: number): string {
+  return `${grouped(Math.ceil(bytes / 1024 ** 2))}\u202fMB`;
+}

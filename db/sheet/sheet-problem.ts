@@ -1,0 +1,52 @@
+import { limitSentences, POINTS_PER_STUDY, RUNS_PER_STUDY } from "../limits";
+import type { Sheet } from "./sheet.schema";
+
+/**
+ * What stands against keeping this sheet, as a sentence with the way out; undefined where nothing does. The schema
+ * says what a sheet can be, this says what its rows must be to each other.
+ */
+export function sheetProblem(sheet: Sheet): string | undefined {
+  return speciesProblem(sheet) ?? runProblem(sheet);
+}
+
+function speciesProblem({ species, followedSpeciesId }: Sheet): string | undefined {
+  const symbols = new Set<string>();
+  for (const one of species) {
+    if (one.symbol === "") {
+      if (one.inLaw) return `${one.name || one.formula} stands in the law and needs a symbol, such as A.`;
+      continue;
+    }
+    if (symbols.has(one.symbol)) {
+      return `Two species have the symbol ${one.symbol}. Give one of them another.`;
+    }
+    symbols.add(one.symbol);
+  }
+  if (followedSpeciesId === null) return undefined;
+  const followed = species.find((one) => one.id === followedSpeciesId);
+  if (followed === undefined) {
+    return "The species that is followed is no longer among the species. Choose which one is followed.";
+  }
+  if (followed.stoichiometricNumber === 0) {
+    return `${followed.symbol || followed.name} is followed and has the stoichiometric number 0: its signal would not change. Follow a species that reacts, or correct its number.`;
+  }
+  return undefined;
+}
+
+function runProblem({ runs }: Sheet): string | undefined {
+  const labels = new Set<string>();
+  let points = 0;
+  for (const run of runs) {
+    points += run.trace?.points ?? 0;
+    if (run.window !== null && !(run.window.fromSeconds < run.window.toSeconds)) {
+      return `The window of ${run.label} ends before it begins. Set its end after its start.`;
+    }
+    if (run.removedIn !== null) continue;
+    if (labels.has(run.label)) {
+      return `Two runs have the label ${run.label}. Give one of them another.`;
+    }
+    labels.add(run.label);
+  }
+  if (runs.length > RUNS_PER_STUDY) return limitSentences.runs(runs.length);
+  if (points > POINTS_PER_STUDY) return limitSentences.points(points);
+  return undefined;
+}
