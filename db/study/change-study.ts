@@ -1,0 +1,156 @@
+import type { Kysely, Transaction } from "kysely";
+import type { Database } from "../database";
+import { type Actor, mayActAs } from "../member/actor";
+import { recordRevision } from "../revision/revision.commands";
+import { readRevisionSheet } from "../revision/revision.queries";
+import { readSheet } from "../sheet/read-sheet";
+import { rowsInWords } from "../sheet/row-words";
+import type { Sheet } from "../sheet/sheet.schema";
+import { sheetProblem } from "../sheet/sheet-problem";
+import { rowsOf, type SheetRows, sameRow, sheetOf, touchedRows } from "../sheet/sheet-rows";
+import { writeSheet } from "../sheet/write-sheet";
+
+/**
+ * The one door through which a study changes: role, conflict, limits, snapshot, chain and audit in one transaction.
+ *
+ * The editor saw revision `base`, so `apply` is asked what they want of that sheet; the rows it touches are found
+ * by comparing. If somebody changed other rows meanwhile, those stay as they are now and the touched ones are laid
+ * over them. Only a row that both changed is a conflict.
+ */
+export interface ChangeTarget {
+  readonly studyId: string;
+  readonly base: number;
+}
+
+export interface ChangeNote {
+  /** A short word for what was done, "set aside". */
+  readonly verb: string;
+  /** One sentence for the history, or a function that makes it from the sheets before and after. */
+  readonly summary: string | ((before: Sheet, after: Sheet) => string);
+}
+
+/** What `apply` answers instead of a sheet when the wish cannot be met: a sentence with the way out. */
+export interface Refusal {
+  readonly refused: string;
+}
+
+/**
+ * Pure: gives a new sheet and leaves the old one alone. `revision` is the number that the change will get, for
+ * `removedIn`. `changedIn` of runs is kept up here.
+ */
+export type Apply = (sheet: Sheet, revision: number) => Sheet | Refusal;
+
+export type ChangeResult =
+  | { readonly status: "changed"; readonly revision: number; readonly summary: string }
+  | { readonly status: "unchanged" }
+  | { readonly status: "conflict"; readonly message: string }
+  | { readonly status: "refused"; readonly message: string }
+  | { readonly status: "not-found" }
+  | { readonly status: "forbidden" };
+
+export async function changeStudy(
+  db: Kysely<Database>,
+  actor: Actor,
+  target: ChangeTarget,
+  note: ChangeNote,
+  apply: Apply,
+): Promise<ChangeResult> {
+  return db.transaction().execute((trx) => changeStudyIn(trx, actor, target, note, apply));
+}
+
+/** As `changeStudy`, inside a transaction of the caller's that keeps something else with it. */
+export async function changeStudyIn(
+  trx: Transaction<Database>,
+  actor: Actor,
+  { studyId, base }: ChangeTarget,
+  note: ChangeNote,
+  apply: Apply,
+): Promise<ChangeResult> {
+  const study = await trx
+    .selectFrom("study")
+    .select(["group_id", "revision"])
+    .where("id", "=", studyId)
+    .where("group_id", "=", actor.groupId)
+    .executeTakeFirst();
+  if (study === undefined) return { status: "not-found" };
+  if (!mayActAs(actor.role, "analyst")) return { status: "forbidden" };
+
+  const current = await readSheet(trx, studyId);
+  if (current === undefined) return { status: "not-found" };
+  const seen = base === study.revision ? current : await readRevisionSheet(trx, studyId, base);
+  if (seen === undefined) {
+    return {
+      status: "conflict",
+      message: "This study was never at the revision you saw. Load the page again.",
+    };
+  }
+
+  const revision = study.revision + 1;
+  const wanted = apply(seen, revision);
+  if ("refused" in wanted) return { status: "refused", message: wanted.refused };
+  const touched = touchedRows(rowsOf(seen), rowsOf(wanted));
+  if (touched.size === 0) return { status: "unchanged" };
+
+  const clashing = clashes(touched, rowsOf(seen), rowsOf(wanted), rowsOf(current));
+  if (clashing.length > 0) {
+    const rows = rowsInWords(clashing, current, seen);
+    return {
+      status: "conflict",
+      message: `Somebody else changed ${rows} since you opened this page. Nothing of yours was kept; look at the new state and repeat your change.`,
+    };
+  }
+
+  const merged = sheetOf(current.version, overlay(rowsOf(current), rowsOf(wanted), touched, revision));
+  if (touchedRows(rowsOf(current), rowsOf(merged)).size === 0) return { status: "unchanged" };
+  const problem = sheetProblem(merged);
+  if (problem !== undefined) return { status: "refused", message: problem };
+
+  const summary = typeof note.summary === "string" ? note.summary : note.summary(seen, wanted);
+  const at = new Date().toISOString();
+  await writeSheet(trx, { studyId, revision, at }, merged, current);
+  await recordRevision(
+    trx,
+    {
+      studyId,
+      groupId: study.group_id,
+      number: revision,
+      memberId: actor.memberId,
+      verb: note.verb,
+      summary,
+      at,
+    },
+    merged,
+  );
+  return { status: "changed", revision, summary };
+}
+
+/** Touched rows that also changed between what was seen and now, and not to the same. */
+function clashes(touched: ReadonlySet<string>, seen: SheetRows, wanted: SheetRows, current: SheetRows) {
+  return [...touched].filter((key) => !sameRow(key, seen, current) && !sameRow(key, wanted, current));
+}
+
+/** `current` with the touched rows as wanted; runs note the revision that changed them. */
+function overlay(
+  current: SheetRows,
+  wanted: SheetRows,
+  touched: ReadonlySet<string>,
+  revision: number,
+): SheetRows {
+  const rows = new Map(current);
+  for (const key of touched) {
+    if (sameRow(key, wanted, current)) continue;
+    const row = wanted.get(key);
+    if (wanted.has(key)) {
+      rows.set(key, key.startsWith("runs/") && isRecord(row) ? { ...row, changedIn: revision } : row);
+    } else if (key.startsWith("runs/") || key.startsWith("uploads/")) {
+      throw new Error(`${key} left the sheet: runs go to the bin (removedIn), files stay.`);
+    } else {
+      rows.delete(key);
+    }
+  }
+  return rows;
+}
+
+function isRecord(value: unknown): value is Record<string, unknown> {
+  return value !== null && typeof value === "object";
+}
