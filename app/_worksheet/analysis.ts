@@ -49,8 +49,12 @@ export interface RunMark {
 
 export type LawAnalysis =
   | { readonly status: "law"; readonly fit: Extract<RateLawResult, { status: "fitted" }> }
-  /** `missing` says in one sentence what is needed before there can be a law. */
-  | { readonly status: "no-law"; readonly missing: string };
+  /** `missing` says what is needed before there can be a law; `fit` what is known all the same, if anything. */
+  | {
+      readonly status: "no-law";
+      readonly missing: string;
+      readonly fit: Extract<RateLawResult, { status: "fitted" }> | null;
+    };
 
 export type CheckSeverity = "blocks" | "weakens" | "note" | "holds";
 
