@@ -1,0 +1,41 @@
+import type { Kysely } from "kysely";
+import type { Database } from "../database";
+import type { Actor } from "../member/actor";
+import { rowsInWords } from "../sheet/row-words";
+import type { Sheet } from "../sheet/sheet.schema";
+import { rowsOf, touchedRows } from "../sheet/sheet-rows";
+import { type ChangeResult, type ChangeTarget, changeStudy } from "./change-study";
+import type { SetUp } from "./set-up.schema";
+
+/**
+ * Saves the Set-up station as a whole. Rows that somebody else changed meanwhile and this form left alone stay as
+ * they are. A species that leaves takes its order with it; what runs held of it stays with them.
+ */
+export function saveSetUp(
+  db: Kysely<Database>,
+  actor: Actor,
+  target: ChangeTarget,
+  setUp: SetUp,
+): Promise<ChangeResult> {
+  return changeStudy(
+    db,
+    actor,
+    target,
+    {
+      verb: "set-up changed",
+      summary: (before, after) =>
+        `Changed ${rowsInWords(touchedRows(rowsOf(before), rowsOf(after)), after, before)}.`,
+    },
+    (sheet) => withSetUp(sheet, setUp),
+  );
+}
+
+function withSetUp(sheet: Sheet, { study, ...rest }: SetUp): Sheet {
+  const species = new Set(rest.species.map((one) => one.id));
+  return {
+    ...sheet,
+    ...rest,
+    study: { ...study, invented: sheet.study.invented },
+    orders: Object.fromEntries(Object.entries(sheet.orders).filter(([id]) => species.has(id))),
+  };
+}
