@@ -12,7 +12,7 @@ export function DataTable({
   children: ReactNode;
 }) {
   return (
-    // biome-ignore lint/a11y/noNoninteractiveTabindex: a region that scrolls must be reachable by keyboard
+    // A region that scrolls must be reachable by keyboard.
     <section className="table-scroll" aria-label={caption} tabIndex={0}>
       <table className={`data-table ${className}`.trim()}>{children}</table>
     </section>

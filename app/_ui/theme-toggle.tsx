@@ -12,7 +12,7 @@ export function ThemeToggle({ theme }: { theme: Theme }) {
     setChosen(next);
     if (next === "system") delete document.documentElement.dataset.theme;
     else document.documentElement.dataset.theme = next;
-    // biome-ignore lint/suspicious/noDocumentCookie: the Cookie Store API is not in every browser we serve
+    // The Cookie Store API is not in every browser we serve.
     document.cookie = `${THEME_COOKIE}=${next}; path=/; max-age=${A_YEAR_IN_SECONDS}; samesite=lax`;
   }
   return (
