@@ -1,0 +1,80 @@
+import type { Block } from "./clipboard-block";
+import type { GridColumn, GridPosition } from "./grid-shape";
+
+/** What pasting a block would do, decided before any cell changes: one paste is one step, or nothing at all. */
+export type PastePlan =
+  | {
+      readonly status: "planned";
+      /** Rows from `rowCount` on are new. */
+      readonly cells: readonly { readonly row: number; readonly column: number; readonly text: string }[];
+      readonly newRows: number;
+      readonly skippedHeadLines: number;
+      readonly skippedComputedCells: number;
+    }
+  | { readonly status: "refused"; readonly message: string };
+
+export interface PasteTarget {
+  readonly columns: readonly GridColumn[];
+  readonly rowCount: number;
+  readonly from: GridPosition;
+  /** Rows that may be added below. */
+  readonly roomForNewRows: number;
+}
+
+const MOST_HEAD_LINES = 3;
+
+export function planPaste(block: Block, { columns, rowCount, from, roomForNewRows }: PasteTarget): PastePlan {
+  const width = Math.max(0, ...block.map((row) => row.length));
+  if (width === 0) return { status: "refused", message: "The clipboard holds no text to paste." };
+  const room = columns.length - from.column;
+  if (width > room) {
+    return {
+      status: "refused",
+      message: `The block is ${count(width, "column")} wide and ${count(room, "column")} ${room === 1 ? "is" : "are"} left from ${columns[from.column]?.label ?? "here"} on. Nothing was pasted; start further left, or copy fewer columns.`,
+    };
+  }
+  const skippedHeadLines = headLines(block, columns, from.column);
+  const body = block.slice(skippedHeadLines);
+  const newRows = Math.max(0, from.row + body.length - rowCount);
+  if (newRows > roomForNewRows) {
+    return {
+      status: "refused",
+      message: `The block has ${count(body.length, "row")} and there is room for ${rowCount - from.row + roomForNewRows}. Nothing was pasted.`,
+    };
+  }
+  let skippedComputedCells = 0;
+  const cells = body.flatMap((texts, rowOffset) =>
+    texts.flatMap((text, columnOffset) => {
+      const column = from.column + columnOffset;
+      if (columns[column]?.readOnly) {
+        if (text !== "") skippedComputedCells += 1;
+        return [];
+      }
+      return [{ row: from.row + rowOffset, column, text }];
+    }),
+  );
+  return { status: "planned", cells, newRows, skippedHeadLines, skippedComputedCells };
+}
+
+/** Lines at the top that hold words where the rows below hold numbers: names of columns, then perhaps units. */
+function headLines(block: Block, columns: readonly GridColumn[], firstColumn: number): number {
+  const numeric = columns.flatMap((column, index) =>
+    column.kind === "number" && index >= firstColumn ? [index - firstColumn] : [],
+  );
+  const isWords = (row: readonly string[]) => {
+    const texts = numeric.map((index) => row[index] ?? "").filter((text) => text !== "");
+    return texts.length > 0 ? texts.every((text) => !startsAsNumber(text)) : null;
+  };
+  let lines = 0;
+  while (lines < MOST_HEAD_LINES && lines < block.length - 1 && isWords(block[lines] ?? []) === true)
+    lines += 1;
+  return block.slice(lines).some((row) => isWords(row) === false) ? lines : 0;
+}
+
+function startsAsNumber(text: string): boolean {
+  return /^[+\-−]?[.,]?\d/.test(text);
+}
+
+function count(number: number, noun: string): string {
+  return `${number} ${noun}${number === 1 ? "" : "s"}`;
+}
