@@ -1,0 +1,61 @@
+import { describe, expect, it } from "vitest";
+import { type LawSnapshot, lawEffect } from "./law-effect";
+
+function law(value: string, uncertainty: string | null = "0.3", order = "1", power = 0): LawSnapshot {
+  return {
+    status: "law",
+    expression: {
+      constant: "*k*",
+      factors: [
+        { symbol: "A", order: "1" },
+        { symbol: "B", order },
+      ],
+    },
+    constant: { symbol: "*k*", number: { value, uncertainty, power }, unit: "L mol^-1 s^-1" },
+  };
+}
+
+const none: LawSnapshot = { status: "no-law", missing: "Two more levels of B are needed." };
+
+describe("lawEffect", () => {
+  it("says from where to where the constant moved, and when it did not", () => {
+    expect(lawEffect(law("11.8"), law("11.7"))).toBe(
+      "*k* moves from 11.8 ± 0.3 to 11.7 ± 0.3 L mol^-1 s^-1.",
+    );
+    expect(lawEffect(law("11.8"), law("11.8"))).toBe("*k* stays at 11.8 ± 0.3 L mol^-1 s^-1.");
+  });
+
+  it("repeats the power of ten on both sides", () => {
+    expect(lawEffect(law("2.86", "0.07", "1", -5), law("2.90", null, "1", -5))).toBe(
+      "*k* moves from (2.86 ± 0.07) × 10^-5 L mol^-1 s^-1 to 2.90 × 10^-5 L mol^-1 s^-1.",
+    );
+  });
+
+  it("names an order that moved before the constant", () => {
+    expect(lawEffect(law("11.8"), law("9", "2", "0.93"))).toBe(
+      "The order in B moves from 1 to 0.93. *k* moves from 11.8 ± 0.3 to 9 ± 2 L mol^-1 s^-1.",
+    );
+  });
+
+  it("speaks of two constants where the unit changed", () => {
+    const other = law("0.5");
+    if (other.status !== "law") throw new Error("a law");
+    const centre: LawSnapshot = {
+      ...other,
+      constant: {
+        symbol: "rate at the centre",
+        number: { value: "1.2", uncertainty: "0.1", power: 0 },
+        unit: "µmol L^-1 s^-1",
+      },
+    };
+    expect(lawEffect(law("11.8"), centre)).toBe(
+      "*k* was 11.8 ± 0.3 L mol^-1 s^-1; now rate at the centre = 1.2 ± 0.1 µmol L^-1 s^-1.",
+    );
+  });
+
+  it("tells when a law came or went, and stays silent while there is none", () => {
+    expect(lawEffect(none, law("11.8"))).toBe("A law stands now: *k* = 11.8 ± 0.3 L mol^-1 s^-1.");
+    expect(lawEffect(law("11.8"), none)).toBe("No law stands any more. Two more levels of B are needed.");
+    expect(lawEffect(none, none)).toBe("");
+  });
+});

@@ -1,0 +1,70 @@
+import type { ConstantView, LawView } from "@/app/_ui/law-view";
+import type { Sheet } from "@/db/sheet/sheet.schema";
+import type { StudyAnalysis } from "./analysis";
+import { constantView, lawExpression } from "./standing-law.view";
+
+/** The law at one moment, as much as is needed to say how a change moved it. */
+export type LawSnapshot =
+  | { readonly status: "law"; readonly expression: LawView; readonly constant: ConstantView }
+  /** `missing` is a sentence, "Two more levels of B are needed." */
+  | { readonly status: "no-law"; readonly missing: string };
+
+export function lawSnapshot(sheet: Sheet, { law }: StudyAnalysis): LawSnapshot {
+  return law.status === "no-law"
+    ? { status: "no-law", missing: law.missing }
+    : { status: "law", expression: lawExpression(sheet, law.fit), constant: constantView(sheet, law.fit, 1) };
+}
+
+/** What a change did to the law, in prose for a toast: "*k* moves from 11.8 ± 0.3 to 11.7 ± 0.3 L mol^-1 s^-1." */
+export function lawEffect(before: LawSnapshot, after: LawSnapshot): string {
+  if (after.status === "no-law") {
+    return before.status === "law" ? `No law stands any more. ${after.missing}` : "";
+  }
+  if (before.status === "no-law") return `A law stands now: ${constantInWords(after.constant)}.`;
+  return [ordersMoved(before.expression, after.expression), constantMoved(before.constant, after.constant)]
+    .filter((sentence) => sentence !== "")
+    .join(" ");
+}
+
+function constantMoved(before: ConstantView, after: ConstantView): string {
+  if (before.symbol !== after.symbol || before.unit !== after.unit) {
+    return `${sentenceStart(before.symbol)} was ${numberInWords(before)}; now ${constantInWords(after)}.`;
+  }
+  if (numberInWords(before) === numberInWords(after)) {
+    return `${sentenceStart(after.symbol)} stays at ${numberInWords(after)}.`;
+  }
+  const from =
+    before.number.power === after.number.power && after.number.power === 0
+      ? bare(before)
+      : numberInWords(before);
+  return `${sentenceStart(after.symbol)} moves from ${from} to ${numberInWords(after)}.`;
+}
+
+function ordersMoved(before: LawView, after: LawView): string {
+  const earlier = new Map(before.factors.map((factor) => [factor.symbol, factor.order]));
+  const moved = after.factors.flatMap(({ symbol, order }) => {
+    const was = earlier.get(symbol);
+    return was === undefined || was === order ? [] : [`the order in ${symbol} moves from ${was} to ${order}`];
+  });
+  return moved.length === 0 ? "" : `${sentenceStart(moved.join(", "))}.`;
+}
+
+function constantInWords(constant: ConstantView): string {
+  return `${constant.symbol} = ${numberInWords(constant)}`;
+}
+
+/** "(2.86 ± 0.07) × 10^-5 L mol^-1 s^-1" */
+function numberInWords(constant: ConstantView): string {
+  const { number, unit } = constant;
+  const pair = bare(constant);
+  if (number.power === 0) return `${pair} ${unit}`.trim();
+  return `${number.uncertainty === null ? pair : `(${pair})`} × 10^${number.power} ${unit}`.trim();
+}
+
+function bare({ number }: ConstantView): string {
+  return number.uncertainty === null ? number.value : `${number.value} ± ${number.uncertainty}`;
+}
+
+function sentenceStart(text: string): string {
+  return text.charAt(0).toUpperCase() + text.slice(1);
+}
