@@ -2,10 +2,22 @@
 
 import { useState } from "react";
 import type { ActionResult } from "@/app/_server/action-result";
+import type { Theme } from "@/app/_ui/theme";
+import { ThemeToggle } from "@/app/_ui/theme-toggle";
 import { signOut, signOutEverywhere } from "../actions";
 
 /** Who is signed in, and the way out. A disclosure rather than a menu: it holds two buttons and opens by itself. */
-export function MemberMenu({ name, initials, role }: { name: string; initials: string; role: string }) {
+export function MemberMenu({
+  name,
+  initials,
+  role,
+  theme,
+}: {
+  name: string;
+  initials: string;
+  role: string;
+  theme: Theme;
+}) {
   const [message, setMessage] = useState<string | null>(null);
   async function run(action: (input: unknown) => Promise<ActionResult<unknown>>) {
     const result = await action(null);
@@ -22,7 +34,10 @@ export function MemberMenu({ name, initials, role }: { name: string; initials: s
       </summary>
       <div className="absolute top-9 right-0 z-30 w-60 rounded-control border border-ctl bg-sheet p-4 text-small shadow-raised">
         <p className="font-semibold">{name}</p>
-        <p className="mb-3 text-ink-2">{`Signed in as ${role}`}</p>
+        <p className="text-ink-2">{`Signed in as ${role}`}</p>
+        <p className="my-3">
+          <ThemeToggle theme={theme} />
+        </p>
         <form action={() => run(signOut)}>
           <button type="submit" className="button w-full">
             Sign out

@@ -1,6 +1,7 @@
 import type { Metadata } from "next";
 import { redirect } from "next/navigation";
 import { currentMember } from "@/app/_server/session";
+import { BrandMark } from "@/app/_ui/brand";
 import { SignInFigure } from "./_components/sign-in-figure";
 import { SignInForm } from "./_components/sign-in-form";
 import { safeDestination } from "./refusal";
@@ -28,11 +29,12 @@ export default async function SignInPage({
         <SignInFigure />
         <div className="absolute top-14 right-10 left-[60px] max-w-[620px] font-serif">
           <p className="text-[52px] leading-[1.2] tracking-[-0.01em]">
-            rate = <i>k</i> [A]
+            rate = <i>k</i>
+            {"\u2009"}[A]
             <sup>
               <i>α</i>
-            </sup>{" "}
-            [B]
+            </sup>
+            {"\u2009"}[B]
             <sup>
               <i>β</i>
             </sup>
@@ -44,7 +46,10 @@ export default async function SignInPage({
       </section>
       <section className="grid place-items-center p-10 max-[820px]:[place-items:start_center] max-[820px]:border-ink max-[820px]:border-t-[3px] max-[820px]:bg-sheet max-[820px]:px-[22px] max-[820px]:py-7">
         <div className="w-full max-w-[356px]">
-          <p className="brand text-[22px]">Ratewright</p>
+          <p className="brand">
+            <BrandMark />
+            <span className="text-[22px]">Ratewright</span>
+          </p>
           <h1 className="mt-11 mb-4 font-medium font-serif text-[30px] leading-[1.2]">Sign in</h1>
           <SignInForm to={to} />
           <p className="mt-6 text-ink-2 text-small">A shared study link needs no account.</p>

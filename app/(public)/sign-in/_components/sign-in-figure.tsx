@@ -12,10 +12,10 @@ export function SignInFigure() {
     >
       <defs>
         <pattern id="chart-minor" width="12" height="12" y="4" patternUnits="userSpaceOnUse">
-          <path d="M0 0H12M0 0V12" fill="none" stroke="var(--gmin)" />
+          <path d="M0 0H12M0 0V12" fill="none" stroke="var(--grid-minor)" />
         </pattern>
         <pattern id="chart-major" width="60" height="60" y="40" patternUnits="userSpaceOnUse">
-          <path d="M0 0H60M0 0V60" fill="none" stroke="var(--gmaj)" />
+          <path d="M0 0H60M0 0V60" fill="none" stroke="var(--grid-major)" />
         </pattern>
       </defs>
       <rect width="860" height="1000" fill="url(#chart-minor)" />
@@ -41,11 +41,11 @@ interface DrawnTrace {
 }
 
 const TRACES: readonly DrawnTrace[] = [
-  { colour: "var(--b5)", rise: 600, perPixel: 0.0094, tangentLength: 96, markAt: 428, mark: "up" },
-  { colour: "var(--b4)", rise: 606, perPixel: 0.0062, tangentLength: 128, markAt: 492, mark: "square" },
-  { colour: "var(--c0)", rise: 606, perPixel: 0.0041, tangentLength: 160, markAt: 556, mark: "ring" },
-  { colour: "var(--b2)", rise: 598, perPixel: 0.00207, tangentLength: 224, markAt: 620, mark: "diamond" },
-  { colour: "var(--b1)", rise: 560, perPixel: 0.00115, tangentLength: 304, markAt: 684, mark: "down" },
+  { colour: "var(--cool-5)", rise: 600, perPixel: 0.0094, tangentLength: 96, markAt: 428, mark: "up" },
+  { colour: "var(--cool-4)", rise: 606, perPixel: 0.0062, tangentLength: 128, markAt: 492, mark: "square" },
+  { colour: "var(--base)", rise: 606, perPixel: 0.0041, tangentLength: 160, markAt: 556, mark: "ring" },
+  { colour: "var(--cool-2)", rise: 598, perPixel: 0.00207, tangentLength: 224, markAt: 620, mark: "diamond" },
+  { colour: "var(--cool-1)", rise: 560, perPixel: 0.00115, tangentLength: 304, markAt: 684, mark: "down" },
 ];
 
 function height(trace: DrawnTrace, x: number): number {
