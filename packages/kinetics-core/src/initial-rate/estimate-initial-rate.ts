@@ -1,9 +1,11 @@
 import { studentTFactor } from "kinetics-core/distributions";
 import { estimateFlags } from "./estimate-flags";
-import { evaluateCurve } from "./evaluate-curve";
-import type { InitialRate, InitialRateOptions, Trace } from "./initial-rate";
+import type { PairFit } from "./estimator-pairs";
+import type { InitialRate, InitialRateOptions, SlopeEstimate, Trace } from "./initial-rate";
 import { type PreparedTrace, prepareTrace } from "./prepared-trace";
-import { type Selected, selectByRule, selectFreely, selectOnWindow } from "./select-slope";
+import { type NamedEstimator, selectAutomatically, selectByName } from "./select-slope";
+import { slopeEstimate } from "./slope-estimate";
+import { pairsIn, type Scope, scopeOf } from "./window-scope";
 
 /**
  * Initial rate of one trace: the slope of the signal at the time of mixing, with a standard error that counts
@@ -19,72 +21,67 @@ export function estimateInitialRate(trace: Trace, options: InitialRateOptions = 
   if (prepared.status === "too-few-points") return tooFew(prepared);
   if (prepared.status === "unusable") return prepared;
 
-  const selected = select(prepared, options);
-  if (selected.status === "unusable") return selected;
+  const scope = scopeOf(prepared, options);
+  if ("status" in scope) return scope;
+  const pairs = pairsIn(prepared, scope);
+  const named = namedBy(options);
+  const selected = named
+    ? selectByName(prepared, scope, pairs, named)
+    : selectAutomatically(prepared, scope, pairs, options.rule);
   if (selected.status === "too-few-points") return tooFew(selected);
 
   const { slope, standardError, shown, pair } = selected;
-  const { readings, noise, progress } = prepared;
-  const curve = shown.curve();
-  const first = readings.time[shown.from] as number;
-  const last = readings.time[shown.to - 1] as number;
+  const { readings, noise } = prepared;
   const half = standardError * studentTFactor(level, noise.degreesOfFreedom);
-  const change = Math.abs(evaluateCurve(curve, last) - evaluateCurve(curve, 0));
+  const first = readings.time[shown.from] as number;
   return {
     status: "found",
+    ...slopeEstimate(prepared, shown),
     slope,
     standardError,
     interval: [slope - half, slope + half],
     level,
     degreesOfFreedom: noise.degreesOfFreedom,
-    estimator: shown.estimator,
-    degree: shown.degree,
     pair,
-    window: [first + readings.timeZero, last + readings.timeZero],
-    points: shown.to - shown.from,
-    conversion: progress ? change / progress.span : null,
     noise: noise.standardDeviation,
     autocorrelation: noise.autocorrelation,
     effectivePoints: noise.effectivePoints,
-    curve,
-    alternatives: [],
-    flags: [...selected.flags, ...estimateFlags(prepared, slope, standardError, first)],
+    alternatives: alternativesOf(prepared, options, scope, pairs),
+    flags: [...scope.flags, ...selected.flags, ...estimateFlags(prepared, slope, standardError, first)],
   };
 }
 
-function select(
+function namedBy({ estimator = "auto", degree = 2 }: InitialRateOptions): NamedEstimator | null {
+  if (estimator === "auto") return null;
+  return { estimator, degree: estimator === "tangent" ? degree : null };
+}
+
+/**
+ * The four estimators side by side, each on its best window; a window by hand holds for all of them, the
+ * study's rule for none. Those with too few readings are absent.
+ */
+function alternativesOf(
   prepared: PreparedTrace,
   options: InitialRateOptions,
-): Selected | Extract<InitialRate, { status: "unusable" }> {
-  if (options.estimator !== undefined && options.estimator !== "auto") {
-    throw new RangeError(`The estimator ${options.estimator} cannot be asked for by name`);
-  }
-  if (options.window) {
-    const [start, end] = options.window;
-    const { time, timeZero } = prepared.readings;
-    const from = firstAtOrAfter(time, start - timeZero);
-    const to = firstAfter(time, end - timeZero);
-    if (to <= from) {
-      return {
-        status: "unusable",
-        code: "empty-window",
-        message: `No reading at or after mixing lies between ${start} and ${end}; move the ends of the window.`,
-      };
-    }
-    return selectOnWindow(prepared, from, to);
-  }
-  return options.rule ? selectByRule(prepared, options.rule) : selectFreely(prepared);
+  scope: Scope,
+  pairs: readonly PairFit[],
+): SlopeEstimate[] {
+  const ruled = options.rule !== undefined && options.window === undefined;
+  const free = ruled ? scopeOf(prepared, {}) : scope;
+  if ("status" in free) return [];
+  const freePairs = ruled ? pairsIn(prepared, free) : pairs;
+  return SIDE_BY_SIDE.flatMap((named) => {
+    const selected = selectByName(prepared, free, freePairs, named);
+    return selected.status === "selected" ? [slopeEstimate(prepared, selected.shown)] : [];
+  });
 }
 
-function firstAtOrAfter(time: Float64Array, limit: number): number {
-  const index = time.findIndex((t) => t >= limit);
-  return index < 0 ? time.length : index;
-}
-
-function firstAfter(time: Float64Array, limit: number): number {
-  const index = time.findIndex((t) => t > limit);
-  return index < 0 ? time.length : index;
-}
+const SIDE_BY_SIDE: readonly NamedEstimator[] = [
+  { estimator: "straight", degree: null },
+  { estimator: "tangent", degree: 2 },
+  { estimator: "exponential", degree: null },
+  { estimator: "integrated", degree: null },
+];
 
 function tooFew({ needed, got }: { needed: number; got: number }): InitialRate {
   return {

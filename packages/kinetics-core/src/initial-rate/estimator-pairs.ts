@@ -1,20 +1,10 @@
-import { BIAS_WEIGHT } from "./constants";
-import type { Estimator, EstimatorPair, FittedCurve } from "./initial-rate";
+import { BIAS_WEIGHT, LACK_OF_FIT_LEVEL } from "./constants";
+import type { EstimatorPair } from "./initial-rate";
+import { exponentialFit, generalOrderFit, type LackOfFit } from "./integrated-slopes";
 import { type PolynomialSlopes, polynomialCurve, polynomialSlopes } from "./polynomial-slopes";
 import type { Readings } from "./readings";
 import type { NoiseModel } from "./trace-noise";
-
-/** One estimator on one window of readings [from, to). */
-export interface WindowFit {
-  readonly estimator: Estimator;
-  readonly degree: number | null;
-  readonly from: number;
-  readonly to: number;
-  readonly slope: number;
-  readonly standardError: number;
-  /** Made when asked for: most windows that are tried are never drawn. */
-  readonly curve: () => FittedCurve;
-}
+import type { WindowFit } from "./window-fit";
 
 /** Two nested estimators on one window. */
 export interface PairFit {
@@ -23,6 +13,8 @@ export interface PairFit {
   readonly upper: WindowFit;
   /** M = se²(lower) + 4(b_lower − b_upper)². */
   readonly criterion: number;
+  /** Of the upper member against degree six; null for polynomials and where too few readings are left over. */
+  readonly lackOfFit: LackOfFit | null;
 }
 
 export const POLYNOMIAL_PAIRS = [
@@ -58,7 +50,23 @@ export function polynomialPairs(
   );
 }
 
-export function pairOf(pair: EstimatorPair, lower: WindowFit, upper: WindowFit): PairFit {
+/** Exponential→general order on one window of at least 6 readings. */
+export function integratedPair(readings: Readings, noise: NoiseModel, from: number, to: number): PairFit {
+  const upper = generalOrderFit(readings, noise, from, to);
+  return pairOf("exponential-general", exponentialFit(readings, noise, from, to), upper, upper.lackOfFit);
+}
+
+/** Whether the pair may enter the choice: a general order that misses the trace's own shape may not. */
+export function isAdequate({ lackOfFit }: PairFit): boolean {
+  return lackOfFit === null || lackOfFit.pValue > LACK_OF_FIT_LEVEL;
+}
+
+function pairOf(
+  pair: EstimatorPair,
+  lower: WindowFit,
+  upper: WindowFit,
+  lackOfFit: LackOfFit | null = null,
+): PairFit {
   const criterion = lower.standardError ** 2 + BIAS_WEIGHT * (lower.slope - upper.slope) ** 2;
-  return { pair, lower, upper, criterion };
+  return { pair, lower, upper, criterion, lackOfFit };
 }

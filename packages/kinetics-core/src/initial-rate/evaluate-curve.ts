@@ -1,3 +1,4 @@
+import { partConsumed } from "./general-order";
 import type { FittedCurve } from "./initial-rate";
 
 /**
@@ -12,12 +13,6 @@ export function evaluateCurve(curve: FittedCurve, time: number): number {
     case "exponential":
       return curve.start - curve.span * Math.expm1(-curve.rateConstant * time);
     case "general-order":
-      return curve.start + curve.span * (1 - fractionLeft(curve.rateConstant * time, curve.order));
+      return curve.start + curve.span * partConsumed(curve.rateConstant * time, curve.order);
   }
-}
-
-function fractionLeft(progress: number, order: number): number {
-  const z = (order - 1) * progress;
-  if (z <= -1) return 0;
-  return order === 1 ? Math.exp(-progress) : Math.exp(-Math.log1p(z) / (order - 1));
 }

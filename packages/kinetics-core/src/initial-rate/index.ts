@@ -1,3 +1,4 @@
+export { chooseFromSurveys, chooseStudyRule } from "./choose-study-rule";
 export { estimateInitialRate } from "./estimate-initial-rate";
 export { evaluateCurve } from "./evaluate-curve";
 export type {
@@ -13,4 +14,6 @@ export type {
   StudyTrace,
   Trace,
 } from "./initial-rate";
+export { type SlopeAtEnd, slopeAgainstWindowEnd } from "./slope-against-window-end";
+export { surveyTrace, type TraceSurvey } from "./survey-trace";
 export { type TraceNoise, traceNoise } from "./trace-noise";

@@ -1,12 +1,13 @@
 import type { Flag } from "kinetics-core/quantities";
 import { chooseSlope } from "./choose-pair";
-import { LEAST_WINDOW_POINTS, POLYNOMIAL_CONVERSION_END, SPARE_POINTS } from "./constants";
-import { pointsTo } from "./conversion";
-import { type PairFit, polynomialFit, polynomialPairs, type WindowFit } from "./estimator-pairs";
-import type { EstimatorPair, StudyRule } from "./initial-rate";
+import { LACK_OF_FIT_LEVEL, SPARE_POINTS } from "./constants";
+import { isAdequate, type PairFit, polynomialFit } from "./estimator-pairs";
+import type { Estimator, EstimatorPair, StudyRule } from "./initial-rate";
+import { exponentialFit, generalOrderFit } from "./integrated-slopes";
 import { polynomialSlopes } from "./polynomial-slopes";
 import type { PreparedTrace } from "./prepared-trace";
-import { geometricWindows } from "./windows";
+import type { WindowFit } from "./window-fit";
+import type { Scope, Window } from "./window-scope";
 
 /** What is reported, before it is dressed up with interval, conversion and flags. */
 export interface Selection {
@@ -19,86 +20,130 @@ export interface Selection {
   readonly flags: readonly Flag[];
 }
 
-export type Selected =
-  | Selection
-  | { readonly status: "too-few-points"; readonly needed: number; readonly got: number };
-
-/** A quadratic has three parameters. */
-const QUADRATIC_POINTS = 3 + SPARE_POINTS;
-
-/** The estimate that the trace chooses for itself: pairs on all windows, or a quadratic where there is no choice. */
-export function selectFreely(prepared: PreparedTrace): Selected {
-  const { readings, progress } = prepared;
-  const all = readings.time.length;
-  if (!progress) {
-    return quadraticOn(prepared, 0, all, {
-      code: "conversion-unknown",
-      severity: "weakens",
-      message:
-        "The signal change at complete conversion is not known, so no window could be chosen by conversion " +
-        "and a quadratic over all readings is reported; give the calibration and the starting concentration.",
-    });
-  }
-  if (all < LEAST_WINDOW_POINTS) return quadraticOn(prepared, 0, all, fewPoints(all));
-  const early = pointsTo(readings, progress, POLYNOMIAL_CONVERSION_END);
-  const flags: Flag[] = [];
-  if (early < LEAST_WINDOW_POINTS) flags.push(sparse(early));
-  const pairs = geometricWindows(readings.time, Math.max(early, LEAST_WINDOW_POINTS)).flatMap((to) =>
-    polynomialPairs(readings, prepared.noise, 0, to, prepared.scratch),
-  );
-  return fromPairs(pairs, flags);
+export interface TooFewPoints {
+  readonly status: "too-few-points";
+  readonly needed: number;
+  readonly got: number;
 }
 
-/** The same choice among pairs, on readings [from, to) that a person picked. */
-export function selectOnWindow(prepared: PreparedTrace, from: number, to: number): Selected {
-  if (to - from < LEAST_WINDOW_POINTS) return quadraticOn(prepared, from, to, fewPoints(to - from));
-  return fromPairs(polynomialPairs(prepared.readings, prepared.noise, from, to, prepared.scratch), []);
+/** An estimator by name; `degree` of a tangent, null otherwise. */
+export interface NamedEstimator {
+  readonly estimator: Estimator;
+  readonly degree: 2 | 3 | 4 | null;
 }
 
-/** The study's rule on one of its runs; a run that does not reach the conversion uses its end. */
-export function selectByRule(prepared: PreparedTrace, rule: StudyRule): Selected {
-  const { readings, progress } = prepared;
-  const all = readings.time.length;
-  if (!progress || all < LEAST_WINDOW_POINTS) return selectFreely(prepared);
-  const reached = pointsTo(readings, progress, rule.conversionEnd);
-  const to = Math.max(reached, LEAST_WINDOW_POINTS);
-  const flags = reached < to ? [sparse(reached, rule.conversionEnd)] : [];
-  const pairs = polynomialPairs(readings, prepared.noise, 0, to, prepared.scratch);
-  const pair = pairs.find((candidate) => candidate.pair === rule.pair);
-  if (!pair) return selectFreely(prepared);
-  return fromPairs([pair], flags);
-}
-
-function fromPairs(pairs: readonly PairFit[], flags: readonly Flag[]): Selection {
-  const { slope, standardError, heaviest } = chooseSlope(pairs);
+/**
+ * The estimate that the trace chooses: the averaged upper members of the pairs that agree best, the rule's own
+ * pair where the study has a rule, or a quadratic over everything where no pairs can be compared.
+ */
+export function selectAutomatically(
+  prepared: PreparedTrace,
+  scope: Scope,
+  pairs: readonly PairFit[],
+  rule?: StudyRule,
+): Selection | TooFewPoints {
+  if (pairs.length === 0) return selectWhole(prepared, scope.widest, { estimator: "tangent", degree: 2 });
+  const ruled = pairs.filter(({ pair }) => pair === rule?.pair);
+  const candidates = ruled.length > 0 ? ruled : pairs.filter(isAdequate);
+  const { slope, standardError, heaviest } = chooseSlope(candidates);
+  const flags = isAdequate(heaviest) ? [] : [lackOfFitFlag(heaviest)];
+  if (rule && ruled.length === 0) flags.push(RULE_NOT_APPLIED);
   return { status: "selected", slope, standardError, shown: heaviest.upper, pair: heaviest.pair, flags };
 }
 
-function quadraticOn(prepared: PreparedTrace, from: number, to: number, flag: Flag): Selected {
-  const got = to - from;
-  if (got < QUADRATIC_POINTS) return { status: "too-few-points", needed: QUADRATIC_POINTS, got };
-  const fit = polynomialSlopes(prepared.readings, prepared.noise, from, to, 2, prepared.scratch);
-  const shown = polynomialFit(fit, 2);
+/**
+ * An estimator by name, on the window where its own criterion M is least: that of the pair whose lower member it
+ * is, or for a quartic and a general order, which nothing more flexible checks, of the pair that they top.
+ * Where no pairs can be compared, on the whole scope.
+ */
+export function selectByName(
+  prepared: PreparedTrace,
+  scope: Scope,
+  pairs: readonly PairFit[],
+  named: NamedEstimator,
+): Selection | TooFewPoints {
+  const asLower = pairs.filter(({ lower }) => isNamed(lower, named));
+  const own = asLower.length > 0 ? asLower : pairs.filter(({ upper }) => isNamed(upper, named));
+  if (own.length === 0) return selectWhole(prepared, scope.widest, named);
+  const best = own.reduce((a, b) => (b.criterion < a.criterion ? b : a));
+  const shown = asLower.length > 0 ? best.lower : best.upper;
   const { slope, standardError } = shown;
-  return { status: "selected", slope, standardError, shown, pair: null, flags: [flag] };
+  const flags: Flag[] = [];
+  if (shown === best.lower && Math.abs(slope - best.upper.slope) > 2 * standardError) {
+    flags.push(biasFlag(named.estimator, slope, best.upper.slope));
+  }
+  if (shown === best.upper && !isAdequate(best)) flags.push(lackOfFitFlag(best));
+  return { status: "selected", slope, standardError, shown, pair: null, flags };
 }
 
-function fewPoints(points: number): Flag {
+function isNamed(fit: WindowFit, { estimator, degree }: NamedEstimator): boolean {
+  return fit.estimator === estimator && (estimator !== "tangent" || fit.degree === degree);
+}
+
+/** Parameters of each estimator; a tangent has its degree and one. */
+const PARAMETERS = { straight: 2, exponential: 3, integrated: 4 } as const;
+
+/** One estimator on all of a window, with nothing to compare it to. */
+export function selectWhole(
+  prepared: PreparedTrace,
+  { from, to }: Window,
+  named: NamedEstimator,
+): Selection | TooFewPoints {
+  const { estimator } = named;
+  const degree = named.degree ?? 2;
+  const got = to - from;
+  const needed = SPARE_POINTS + (estimator === "tangent" ? degree + 1 : PARAMETERS[estimator]);
+  if (got < needed) return { status: "too-few-points", needed, got };
+  const shown = fitWhole(prepared, { from, to }, estimator, degree);
+  const { slope, standardError } = shown;
+  return { status: "selected", slope, standardError, shown, pair: null, flags: [] };
+}
+
+function fitWhole(
+  { readings, noise, scratch }: PreparedTrace,
+  { from, to }: Window,
+  estimator: Estimator,
+  tangentDegree: number,
+): WindowFit {
+  if (estimator === "exponential") return exponentialFit(readings, noise, from, to);
+  if (estimator === "integrated") return generalOrderFit(readings, noise, from, to);
+  const degree = estimator === "straight" ? 1 : tangentDegree;
+  return polynomialFit(polynomialSlopes(readings, noise, from, to, degree, scratch), degree);
+}
+
+const RULE_NOT_APPLIED: Flag = {
+  code: "rule-not-applied",
+  severity: "weakens",
+  message:
+    "This run has too few readings for the estimator that the study uses, so it chooses its own; " +
+    "read the run more densely.",
+};
+
+function lackOfFitFlag({ lackOfFit }: PairFit): Flag {
+  const p = lackOfFit?.pValue ?? 0;
   return {
-    code: "few-points",
+    code: "lack-of-fit",
     severity: "weakens",
     message:
-      `With ${points} readings there is no choice of window and a quadratic through all of them is reported; ` +
-      `${LEAST_WINDOW_POINTS} or more let the curvature be judged.`,
+      `One reaction order does not follow this window (p = ${p < 0.001 ? "< 0.001" : p.toFixed(3)}, limit ${LACK_OF_FIT_LEVEL}); ` +
+      "use a polynomial, or a shorter window.",
   };
 }
 
-function sparse(points: number, conversionEnd: number = POLYNOMIAL_CONVERSION_END): Flag {
+const LOWER_NAMES: Record<Estimator, string> = {
+  straight: "The line",
+  tangent: "The polynomial",
+  exponential: "The exponential",
+  integrated: "The general order",
+};
+
+function biasFlag(estimator: Estimator, lower: number, upper: number): Flag {
+  const percent = Math.abs((lower / upper - 1) * 100);
   return {
-    code: "sparse-start",
+    code: "curved-window",
     severity: "weakens",
     message:
-      `Only ${points} readings lie below ${Math.round(conversionEnd * 100)} % conversion, so the window takes the first ` +
-      `${LEAST_WINDOW_POINTS}; read the start of the run more densely.`,
+      `${LOWER_NAMES[estimator]} differs from a more flexible curve on the same window by ` +
+      `${Number.isFinite(percent) ? percent.toFixed(1) : "over 100"} %, more than its error; shorten the window or let the rule choose.`,
   };
 }

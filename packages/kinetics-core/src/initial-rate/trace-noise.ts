@@ -28,8 +28,8 @@ export interface TraceNoise {
 export interface NoiseModel extends TraceNoise {
   /** φ_i of `stepCorrelations`, one per reading. */
   readonly steps: Float64Array;
-  /** tr QᵀRQ / q: by how much correlation inflates the variance of a smooth component. */
-  readonly smoothInflation: number;
+  /** Half the spacing of doubles at the largest signal, the least that a reading can be uncertain by. */
+  readonly roundingError: number;
 }
 
 /**
@@ -106,8 +106,9 @@ export function noiseOf(readings: Readings): NoiseModel {
     taken += quadraticForm(basis.columns.subarray(j * n, (j + 1) * n), steps, 0);
   }
   const effectivePoints = (n * (1 - autocorrelation)) / (1 + autocorrelation);
+  const roundingError = (Number.EPSILON / 2) * (largest || 1);
   return {
-    standardDeviation: Math.max(Math.sqrt(squares / (n - taken)), Number.EPSILON * (largest || 1)),
+    standardDeviation: Math.max(Math.sqrt(squares / (n - taken)), roundingError),
     autocorrelation,
     effectivePoints,
     degreesOfFreedom: short
@@ -115,6 +116,6 @@ export function noiseOf(readings: Readings): NoiseModel {
       : Math.max(effectivePoints - NOISE_DEGREES_SPENT, LEAST_DEGREES_OF_FREEDOM),
     degree,
     steps,
-    smoothInflation: taken / coefficients,
+    roundingError,
   };
 }

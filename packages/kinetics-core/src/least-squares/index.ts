@@ -1,3 +1,4 @@
+export { fitShape, type Shape, type ShapeFit } from "./fit-shape";
 export {
   orthonormalPolynomials,
   type PolynomialBasis,

@@ -1,0 +1,103 @@
+import { fSurvival } from "kinetics-core/distributions";
+import { BIAS_WEIGHT, LACK_OF_FIT_LEVEL } from "./constants";
+import type { EstimatorPair, StudyRule, StudyRuleChoice, StudyTrace } from "./initial-rate";
+import { type RuleOnRun, surveyTrace, type TraceSurvey } from "./survey-trace";
+
+/**
+ * One window and one pair for all runs of a study, chosen by conversion and never by clock: a common clock
+ * stops fast runs at a higher conversion than slow ones, and the curvature it leaves in them pulls every order
+ * towards zero. Null where no run has a known conversion and 8 readings.
+ */
+export function chooseStudyRule(traces: readonly StudyTrace[]): StudyRuleChoice | null {
+  return chooseFromSurveys(traces.map(surveyTrace));
+}
+
+/**
+ * The rule (conversion end, pair) that minimises
+ *
+ *   1/Σu_j⁻² + 4(Σu_j⁻²δ_j / Σu_j⁻²)²,   δ_j = (b_lower − b_upper)/b_upper,   u_j = se(lower)/|b_upper|,
+ *
+ * over the runs j: the variance of the mean logarithm of the rates plus the bias they share. An error that all
+ * runs share leaves the orders alone and one that differs shows in their scatter, which is why runs are summed
+ * before squaring. Rules that some runs cannot follow are not compared, nor is a general order that the traces
+ * together contradict (mean F, with the degrees of freedom of all runs, p ≤ 0.05). Of equal rules the shorter wins.
+ */
+export function chooseFromSurveys(surveys: readonly TraceSurvey[]): StudyRuleChoice | null {
+  const taking = surveys.filter(({ rules }) => rules.length > 0);
+  const byRule = new Map<string, RuleOnRun[]>();
+  for (const { rules } of taking) {
+    for (const rule of rules) {
+      const key = `${rule.conversionEnd} ${rule.pair}`;
+      const runs = byRule.get(key);
+      if (runs) runs.push(rule);
+      else byRule.set(key, [rule]);
+    }
+  }
+  const compared = [...byRule.values()]
+    .filter((runs) => runs.length === taking.length && isAdequateForAll(runs))
+    .flatMap((runs) => {
+      const [{ conversionEnd, pair }] = runs as [RuleOnRun];
+      const criterion = criterionOf(runs);
+      return Number.isFinite(criterion) ? [{ conversionEnd, pair, criterion, runs: runs.length }] : [];
+    })
+    .sort((a, b) => a.criterion - b.criterion || a.conversionEnd - b.conversionEnd);
+  const [best, next] = compared;
+  if (!best) return null;
+  return {
+    rule: { conversionEnd: best.conversionEnd, pair: best.pair },
+    compared,
+    reason: reasonOf(best, next),
+  };
+}
+
+function criterionOf(runs: readonly RuleOnRun[]): number {
+  let weights = 0;
+  let biases = 0;
+  for (const { lowerSlope, lowerStandardError, upperSlope } of runs) {
+    const scaled = upperSlope / lowerStandardError;
+    weights += scaled * scaled;
+    biases += (scaled * (lowerSlope - upperSlope)) / lowerStandardError;
+  }
+  return 1 / weights + BIAS_WEIGHT * (biases / weights) ** 2;
+}
+
+function isAdequateForAll(runs: readonly RuleOnRun[]): boolean {
+  const tests = runs.flatMap(({ lackOfFit }) => lackOfFit ?? []);
+  if (tests.length === 0) return true;
+  const ratio = tests.reduce((sum, test) => sum + test.ratio, 0) / tests.length;
+  const above = tests.reduce((sum, test) => sum + test.above, 0);
+  const below = tests.reduce((sum, test) => sum + test.below, 0);
+  return Number.isFinite(ratio) && fSurvival(ratio, above, below) > LACK_OF_FIT_LEVEL;
+}
+
+type Compared = StudyRuleChoice["compared"][number];
+
+function reasonOf(best: Compared, next: Compared | undefined): string {
+  const runs = best.runs === 1 ? "the one run" : `all ${best.runs} runs together`;
+  const second = next ? `, against ${percentOf(next)} for ${named(next)}` : "";
+  return (
+    `${capitalised(named(best))} has the least expected error over ${runs}, ${percentOf(best)} of the rate${second}; ` +
+    "every run is read to the same conversion, so that fast and slow runs are bent alike."
+  );
+}
+
+function capitalised(text: string): string {
+  return text.charAt(0).toUpperCase() + text.slice(1);
+}
+
+function percentOf({ criterion }: Compared): string {
+  return `${(Math.sqrt(criterion) * 100).toPrecision(2)} %`;
+}
+
+const PAIR_NAMES: Record<EstimatorPair, string> = {
+  "line-quadratic": "a quadratic checked by a line",
+  "quadratic-cubic": "a cubic checked by a quadratic",
+  "cubic-quartic": "a quartic checked by a cubic",
+  "exponential-general": "a general order checked by an exponential",
+};
+
+function named({ conversionEnd, pair }: StudyRule): string {
+  const end =
+    conversionEnd >= 1 ? "over the whole trace" : `to ${Math.round(conversionEnd * 100)} % conversion`;
+  return `${PAIR_NAMES[pair]} ${end}`;
+}

@@ -1,0 +1,111 @@
+import type { Shape } from "kinetics-core/least-squares";
+
+/**
+ * Course of a reaction of order n in one reactant. With x = k·t (k the initial rate over the starting amount) the
+ * part c that is left obeys dc/dx = −cⁿ, c(0) = 1, so
+ *
+ *   c = exp(−u),   u = x·log1p(z)/z,   z = (n − 1)x,
+ *
+ * which is e^(−x) at n = 1 and passes through it smoothly: log1p(z)/z is a power series there, not a second
+ * formula. Below n = 1 everything is used up at x = 1/(1 − n) and c stays 0.
+ */
+
+/** Part consumed, 1 − c, at progress x ≥ 0 for order n. Accurate to rounding for small x too. */
+export function partConsumed(progress: number, order: number): number {
+  const z = (order - 1) * progress;
+  return z <= -1 ? 1 : -Math.expm1(-progress * logRatio(z));
+}
+
+/**
+ * φ(τ) = (1 − c(κτ))/κ, which has slope 1 at mixing whatever its shape: the linear scale of the fit is the
+ * initial slope itself. Shape parameters are the curvature a = nκ and κ, because
+ *   φ = τ − aτ²/2 + a(2a − κ)τ³/6 − …:
+ * the start of a trace fixes a and says little about κ, so that the flat direction of the fit lies along an axis.
+ * With z = (a − κ)τ, u = κτ·log1p(z)/z and g(z) = d(log1p(z)/z)/dz,
+ *   ∂φ/∂a = cτ²g(z),   ∂φ/∂κ = (cτ·log1p(z)/z − φ)/κ − cτ²g(z),
+ * and once a reaction of order below one has used everything up, φ = 1/κ.
+ * `time`: scaled so that the last one is about 1, ≥ 0.
+ */
+export function generalOrderShape(time: Float64Array): Shape {
+  return {
+    bounds: [
+      [-LARGEST_ACCELERATION, LARGEST_PROGRESS],
+      [LEAST_PROGRESS, LARGEST_PROGRESS],
+    ],
+    evaluate([curvature = 0, progress = 1], value, derivatives) {
+      const [byCurvature, byProgress] = derivatives as [Float64Array, Float64Array];
+      for (let i = 0; i < time.length; i++) {
+        const t = time[i] as number;
+        const z = (curvature - progress) * t;
+        if (z <= -1) {
+          value[i] = 1 / progress;
+          byCurvature[i] = 0;
+          byProgress[i] = -1 / (progress * progress);
+          continue;
+        }
+        const logarithm = Math.log1p(z);
+        const reduced = z === 0 ? t : (t * logarithm) / z;
+        const consumed = -Math.expm1(-progress * reduced);
+        const left = 1 - consumed;
+        const bent = left * t * t * logRatioSlope(z, logarithm);
+        value[i] = consumed / progress;
+        byCurvature[i] = bent;
+        byProgress[i] = (left * reduced - consumed / progress) / progress - bent;
+      }
+    },
+  };
+}
+
+/**
+ * φ(τ) = (1 − e^(−κτ))/κ, smooth through κ = 0 where it is a straight line, and an accelerating course below.
+ * Shape parameter [κ]; ∂φ/∂κ = τ²·h′(κτ), h(x) = (1 − e^(−x))/x.
+ */
+export function exponentialShape(time: Float64Array): Shape {
+  return {
+    bounds: [[-LARGEST_ACCELERATION, LARGEST_PROGRESS]],
+    evaluate([progress = 0], value, derivatives) {
+      const [byProgress] = derivatives as [Float64Array];
+      for (let i = 0; i < time.length; i++) {
+        const t = time[i] as number;
+        const x = progress * t;
+        const h = x === 0 ? 1 : -Math.expm1(-x) / x;
+        value[i] = t * h;
+        byProgress[i] = t * t * (Math.abs(x) < SERIES_BELOW ? exponentialSeries(x) : (1 - x * h - h) / x);
+      }
+    },
+  };
+}
+
+/** Below this κ the curve no longer depends on it by more than a thousandth. */
+const LEAST_PROGRESS = 1e-3;
+/** Over by a millionth of the window. */
+const LARGEST_PROGRESS = 1e6;
+const LARGEST_ACCELERATION = 5;
+
+/** Where the closed forms of the derivatives lose digits to cancellation, their series has them all. */
+const SERIES_BELOW = 0.05;
+const SERIES_TERMS = 12;
+
+/** log1p(z)/z = 1 − z/2 + z²/3 − … */
+function logRatio(z: number): number {
+  return z === 0 ? 1 : Math.log1p(z) / z;
+}
+
+/** g(z) = (z/(1 + z) − log1p(z))/z² = −1/2 + 2z/3 − 3z²/4 + … */
+function logRatioSlope(z: number, logarithm: number): number {
+  if (Math.abs(z) >= SERIES_BELOW) return (z / (1 + z) - logarithm) / (z * z);
+  let sum = 0;
+  for (let j = SERIES_TERMS; j >= 1; j--) sum = -j / (j + 1) - z * sum;
+  return sum;
+}
+
+/** h′(x) = ((1 + x)e^(−x) − 1)/x² = −1/2 + x/3 − x²/8 + … = Σ (−1)^j j x^(j−1)/(j + 1)! */
+function exponentialSeries(x: number): number {
+  let sum = 0;
+  let factor = -0.5;
+  for (let j = 1; j <= SERIES_TERMS; j++) {
+    sum += factor;
+    factor *= (-x * (j + 1)) / (j * (j + 2));
+  }
+  return sum;
+}

@@ -1,0 +1,22 @@
+import { evaluateCurve } from "./evaluate-curve";
+import type { SlopeEstimate } from "./initial-rate";
+import type { PreparedTrace } from "./prepared-trace";
+import type { WindowFit } from "./window-fit";
+
+/** A fit on one window as the caller sees it: window on the caller's clock, conversion where the span is known. */
+export function slopeEstimate({ readings, progress }: PreparedTrace, fit: WindowFit): SlopeEstimate {
+  const curve = fit.curve();
+  const first = readings.time[fit.from] as number;
+  const last = readings.time[fit.to - 1] as number;
+  const change = Math.abs(evaluateCurve(curve, last) - evaluateCurve(curve, 0));
+  return {
+    estimator: fit.estimator,
+    degree: fit.degree,
+    slope: fit.slope,
+    standardError: fit.standardError,
+    window: [first + readings.timeZero, last + readings.timeZero],
+    points: fit.to - fit.from,
+    conversion: progress ? change / progress.span : null,
+    curve,
+  };
+}

@@ -1,0 +1,13 @@
+import type { Estimator, FittedCurve } from "./initial-rate";
+
+/** One estimator on one window of readings [from, to). */
+export interface WindowFit {
+  readonly estimator: Estimator;
+  readonly degree: number | null;
+  readonly from: number;
+  readonly to: number;
+  readonly slope: number;
+  readonly standardError: number;
+  /** Made when asked for: most windows that are tried are never drawn. */
+  readonly curve: () => FittedCurve;
+}

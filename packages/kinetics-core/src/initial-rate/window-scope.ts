@@ -1,0 +1,163 @@
+import type { Flag } from "kinetics-core/quantities";
+import {
+  LEAST_LONG_WINDOW_PART,
+  LEAST_LONG_WINDOW_POINTS,
+  LEAST_WINDOW_POINTS,
+  LONG_CONVERSION_ENDS,
+  POLYNOMIAL_CONVERSION_END,
+} from "./constants";
+import { type Progress, pointsTo } from "./conversion";
+import { integratedPair, type PairFit, polynomialPairs } from "./estimator-pairs";
+import type { InitialRate, InitialRateOptions, StudyRule } from "./initial-rate";
+import type { PreparedTrace } from "./prepared-trace";
+import { geometricWindows } from "./windows";
+
+/** Readings [from, to). */
+export interface Window {
+  readonly from: number;
+  readonly to: number;
+}
+
+/** Where estimators may look: one window that is given, or several to choose from. */
+export interface Scope {
+  /** The whole of what may be used. */
+  readonly widest: Window;
+  /** Windows of the polynomial pairs; empty where too little is known to compare estimators. */
+  readonly polynomial: readonly Window[];
+  /** Windows of the pair exponential→general order. */
+  readonly integrated: readonly Window[];
+  /** What the choice of windows itself has to say. */
+  readonly flags: readonly Flag[];
+}
+
+/**
+ * Windows by the caller's wish: by hand, by the study's rule, or free. Without a known conversion, or with under
+ * 8 readings, there is nothing to choose and the scope says so in a flag.
+ */
+export function scopeOf(
+  prepared: PreparedTrace,
+  { window, rule }: Pick<InitialRateOptions, "window" | "rule">,
+): Scope | Extract<InitialRate, { status: "unusable" }> {
+  if (window) return scopeByHand(prepared, window);
+  const { readings, progress } = prepared;
+  const widest = { from: 0, to: readings.time.length };
+  if (!progress) return { widest, polynomial: [], integrated: [], flags: [CONVERSION_UNKNOWN] };
+  if (widest.to < LEAST_WINDOW_POINTS) {
+    return { widest, polynomial: [], integrated: [], flags: [fewReadings(widest.to)] };
+  }
+  return rule ? scopeByRule(prepared, progress, rule) : freeScope(prepared, progress);
+}
+
+/** All pairs that the scope's windows hold, with the integrated ones unjudged (see `isAdequate`). */
+export function pairsIn({ readings, noise, scratch }: PreparedTrace, scope: Scope): PairFit[] {
+  return [
+    ...scope.polynomial.flatMap(({ from, to }) => polynomialPairs(readings, noise, from, to, scratch)),
+    ...scope.integrated.map(({ from, to }) => integratedPair(readings, noise, from, to)),
+  ];
+}
+
+function freeScope({ readings }: PreparedTrace, progress: Progress): Scope {
+  const all = readings.time.length;
+  const early = pointsTo(readings, progress, POLYNOMIAL_CONVERSION_END);
+  const ends = geometricWindows(readings.time, Math.max(early, LEAST_WINDOW_POINTS));
+  const longEnds = new Set(
+    LONG_CONVERSION_ENDS.map((conversion) =>
+      Math.max(pointsTo(readings, progress, conversion), leastLongWindow(all)),
+    ).filter((to) => to <= all),
+  );
+  return {
+    widest: { from: 0, to: all },
+    polynomial: ends.map((to) => ({ from: 0, to })),
+    integrated: [...longEnds].map((to) => ({ from: 0, to })),
+    flags: early < LEAST_WINDOW_POINTS ? [sparseStart(early, POLYNOMIAL_CONVERSION_END)] : [],
+  };
+}
+
+/** A run that does not reach the conversion uses its end; a pair's own least number of readings still holds. */
+function scopeByRule({ readings }: PreparedTrace, progress: Progress, rule: StudyRule): Scope {
+  const reached = pointsTo(readings, progress, rule.conversionEnd);
+  const to = pointsByRule(readings.time.length, reached, rule.pair);
+  const widest = { from: 0, to };
+  const integrated = rule.pair === "exponential-general" && to >= LEAST_LONG_WINDOW_POINTS;
+  return {
+    widest,
+    polynomial: integrated ? [] : [widest],
+    integrated: integrated ? [widest] : [],
+    flags: reached < to ? [sparseStart(reached, rule.conversionEnd, to)] : [],
+  };
+}
+
+/** Readings that a pair takes on a run of `all` readings, `reached` of them up to the rule's conversion. */
+export function pointsByRule(all: number, reached: number, pair: StudyRule["pair"]): number {
+  const least = pair === "exponential-general" ? leastLongWindow(all) : LEAST_WINDOW_POINTS;
+  return Math.min(Math.max(reached, least), all);
+}
+
+function scopeByHand(
+  { readings }: PreparedTrace,
+  [start, end]: readonly [number, number],
+): ReturnType<typeof scopeOf> {
+  const { time, timeZero } = readings;
+  const from = countWhile(time, (t) => t < start - timeZero);
+  const to = countWhile(time, (t) => t <= end - timeZero);
+  if (to <= from) {
+    return {
+      status: "unusable",
+      code: "empty-window",
+      message: `No reading at or after mixing lies between ${start} and ${end}; move the ends of the window.`,
+    };
+  }
+  const widest = { from, to };
+  const points = to - from;
+  const compared = points >= LEAST_WINDOW_POINTS;
+  return {
+    widest,
+    polynomial: compared ? [widest] : [],
+    integrated: points >= LEAST_LONG_WINDOW_POINTS ? [widest] : [],
+    flags: compared ? [] : [fewReadings(points)],
+  };
+}
+
+function leastLongWindow(all: number): number {
+  return Math.max(LEAST_LONG_WINDOW_POINTS, Math.ceil(all * LEAST_LONG_WINDOW_PART));
+}
+
+/** Number of leading times that pass; the times increase, so a bisection finds it. */
+function countWhile(time: Float64Array, passes: (time: number) => boolean): number {
+  let low = 0;
+  let high = time.length;
+  while (low < high) {
+    const middle = (low + high) >> 1;
+    if (passes(time[middle] as number)) low = middle + 1;
+    else high = middle;
+  }
+  return low;
+}
+
+const CONVERSION_UNKNOWN: Flag = {
+  code: "conversion-unknown",
+  severity: "weakens",
+  message:
+    "The signal change at complete conversion is not known, so no window can be chosen by conversion " +
+    "and all readings are used; give the calibration and the starting concentration.",
+};
+
+function fewReadings(points: number): Flag {
+  return {
+    code: "few-points",
+    severity: "weakens",
+    message:
+      `With ${points} reading${points === 1 ? "" : "s"} there is no choice of estimator; ` +
+      `${LEAST_WINDOW_POINTS} or more let the curvature be judged.`,
+  };
+}
+
+function sparseStart(reached: number, conversionEnd: number, taken: number = LEAST_WINDOW_POINTS): Flag {
+  return {
+    code: "sparse-start",
+    severity: "weakens",
+    message:
+      `Only ${reached} reading${reached === 1 ? " lies" : "s lie"} below ${Math.round(conversionEnd * 100)} % conversion, ` +
+      `so the window takes the first ${taken}; read the start of the run more densely.`,
+  };
+}
