@@ -1,0 +1,97 @@
+import { z } from "zod";
+
+/**
+ * What a person said about a file, over what the reader guessed. Corrections never touch the raw bytes: the file is
+ * read again from them each time, and they are kept in words with the upload.
+ */
+
+export const columnRole = z.union([
+  z.enum(["time", "signal", "run", "temperature", "left-out"]),
+  z.templateLiteral(["species:", z.string().min(1).max(64)]),
+]);
+
+const line = z.number().int().positive();
+
+const cellCorrection = z.object({
+  line,
+  /** 0-based, as in the file. */
+  column: z.number().int().nonnegative().max(4999),
+  /** The number that stands there, or null to leave the cell out. */
+  as: z.number().nullable(),
+});
+
+export const corrections = z.object({
+  encoding: z.enum(["utf-8", "utf-16le", "utf-16be", "windows-1252"]).optional(),
+  separator: z.enum([",", ";", "\t", "|"]).optional(),
+  quotes: z.enum(["quoting", "plain"]).optional(),
+  decimalMark: z.enum([".", ",", "either"]).optional(),
+  /** null: the file has no such line. */
+  headerLine: line.nullable().optional(),
+  unitLine: line.nullable().optional(),
+  firstDataLine: line.optional(),
+  lastDataLine: line.optional(),
+  /** By 0-based column number. */
+  columns: z.record(z.string().regex(/^\d{1,4}$/), columnRole).optional(),
+  /** By the trace's source, see TraceReading. */
+  labels: z.record(z.string().max(80), z.string().trim().min(1).max(40)).optional(),
+  timeUnit: z.enum(["ms", "s", "min", "h"]).optional(),
+  signalUnit: z.enum(["mol/L", "mmol/L", "umol/L", "as-set-up", "thousandths"]).optional(),
+  temperatureUnit: z.enum(["degC", "K"]).optional(),
+  cells: z.array(cellCorrection).max(2000).optional(),
+  unreadableCells: z.literal("left-out").optional(),
+  linesLeftOut: z.array(line).max(2000).optional(),
+  repeatedTimes: z.enum(["first", "mean"]).optional(),
+  timeOrder: z.literal("sorted").optional(),
+});
+
+export type ColumnRole = z.infer<typeof columnRole>;
+export type Corrections = z.infer<typeof corrections>;
+export type CellCorrection = z.infer<typeof cellCorrection>;
+
+/** One act of a person on the corrections; issues offer them as repairs. */
+export type Change =
+  | {
+      readonly kind: "set";
+      readonly values: Omit<Corrections, "columns" | "labels" | "cells" | "linesLeftOut">;
+    }
+  | { readonly kind: "column"; readonly column: number; readonly role: ColumnRole }
+  | { readonly kind: "label"; readonly source: string; readonly label: string }
+  | { readonly kind: "cells"; readonly cells: readonly CellCorrection[] }
+  | { readonly kind: "forget-cell"; readonly line: number; readonly column: number }
+  | { readonly kind: "leave-lines-out"; readonly lines: readonly number[] }
+  | { readonly kind: "take-line-in"; readonly line: number };
+
+/** The corrections after one change. Another separator makes other columns, so what was said of columns and cells goes. */
+export function applyChange(current: Corrections, change: Change): Corrections {
+  switch (change.kind) {
+    case "set": {
+      const { columns, labels, cells, ...rest } = current;
+      const kept = "separator" in change.values || "quotes" in change.values ? rest : current;
+      return { ...kept, ...change.values };
+    }
+    case "column":
+      return { ...current, columns: { ...current.columns, [String(change.column)]: change.role } };
+    case "label":
+      return { ...current, labels: { ...current.labels, [change.source]: change.label } };
+    case "cells": {
+      const isReplaced = (cell: CellCorrection) =>
+        change.cells.some((other) => other.line === cell.line && other.column === cell.column);
+      const others = (current.cells ?? []).filter((cell) => !isReplaced(cell));
+      return { ...current, cells: [...others, ...change.cells] };
+    }
+    case "forget-cell":
+      return {
+        ...current,
+        cells: (current.cells ?? []).filter(
+          (cell) => cell.line !== change.line || cell.column !== change.column,
+        ),
+      };
+    case "leave-lines-out":
+      return { ...current, linesLeftOut: [...new Set([...(current.linesLeftOut ?? []), ...change.lines])] };
+    case "take-line-in":
+      return {
+        ...current,
+        linesLeftOut: (current.linesLeftOut ?? []).filter((line) => line !== change.line),
+      };
+  }
+}

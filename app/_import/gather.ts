@@ -1,0 +1,328 @@
+import type { ColumnRole, Corrections } from "./corrections";
+import { lastFilled } from "./frame";
+import { GrowingArray } from "./growing-array";
+import { type CellReading, type NumberFormat, readCell } from "./number";
+import { eachRow, isBlank, type Row, type RowFormat } from "./rows";
+
+/**
+ * One pass over the lines of data: numbers into the traces, everything else into findings with line and column. Cells
+ * are not kept, so that memory grows with the readings and not with the text. Times stay in the file's unit here.
+ */
+
+export interface GatherOptions {
+  readonly rowFormat: RowFormat;
+  readonly numberFormat: NumberFormat;
+  readonly roles: readonly ColumnRole[];
+  readonly firstDataLine: number;
+  readonly lastDataLine: number | undefined;
+  readonly corrections: Corrections;
+  /** Readings that may still be stored; one more and the pass stops. */
+  readonly pointsLeft: number;
+}
+
+/** One trace as it stands in the file: may repeat times or fall back. `line` tells where each reading came from. */
+export interface GatheredTrace {
+  readonly source: string;
+  /** 0-based column of the signal. */
+  readonly column: number;
+  /** The entry of the run column, in a long table. */
+  readonly runName: string | null;
+  readonly time: GrowingArray;
+  readonly signal: GrowingArray;
+  readonly line: GrowingArray;
+  /** From the species columns of a long table; the file's unit. */
+  readonly concentrations: Map<string, { value: number; line: number; varies: number | null }>;
+  readonly temperature: { sum: number; count: number };
+  empty: number;
+}
+
+export interface CellFinding {
+  readonly line: number;
+  readonly column: number;
+  readonly text: string;
+  readonly reading: Exclude<CellReading, { kind: "number" | "empty" }>;
+  readonly before: number | null;
+  after: number | null;
+}
+
+export interface LineFinding {
+  readonly line: number;
+  readonly text: string;
+  readonly cells: number;
+}
+
+export interface Gathered {
+  readonly traces: readonly GatheredTrace[];
+  readonly cells: readonly CellFinding[];
+  /** How many cells of a column are no number, by column and kind; `cells` holds the first of them only. */
+  readonly counts: ReadonlyMap<string, number>;
+  /** Numbers read, by column. */
+  readonly numbers: ReadonlyMap<number, number>;
+  readonly longLines: readonly LineFinding[];
+  readonly longLineCount: number;
+  readonly shortLines: readonly LineFinding[];
+  readonly shortLineCount: number;
+  readonly timeless: readonly LineFinding[];
+  readonly timelessCount: number;
+  /** Blank lines and lines of words within the data. */
+  readonly wordLines: readonly LineFinding[];
+  readonly wordLineCount: number;
+  readonly blankLineCount: number;
+  /** What stands below the last line of data. */
+  readonly tail: readonly LineFinding[];
+  readonly tailCount: number;
+  readonly brokenQuotes: number | null;
+  readonly lastDataLine: number;
+  readonly lines: number;
+  readonly tooManyPoints: boolean;
+}
+
+const KEPT = 60;
+
+export function gather(text: string, options: GatherOptions): Gathered {
+  const pass = new Pass(options);
+  eachRow(text, options.rowFormat, (row) => pass.visit(row));
+  return pass.result();
+}
+
+class Pass {
+  private readonly traces = new Map<string, GatheredTrace>();
+  private readonly cells: CellFinding[] = [];
+  private readonly open = new Map<number, CellFinding[]>();
+  private readonly counts = new Map<string, number>();
+  private readonly numbers = new Map<number, number>();
+  private readonly kept = {
+    long: [] as LineFinding[],
+    short: [] as LineFinding[],
+    timeless: [] as LineFinding[],
+    words: [] as LineFinding[],
+  };
+  private readonly count = { long: 0, short: 0, timeless: 0, words: 0, blank: 0 };
+  private pending: LineFinding[] = [];
+  private pendingCount = { words: 0, blank: 0 };
+  private brokenQuotes: number | null = null;
+  private lastDataLine = 0;
+  private lines = 0;
+  private points = 0;
+  private tooManyPoints = false;
+
+  private readonly width: number;
+  private readonly signals: readonly { column: number; time: number }[];
+  private readonly runColumn: number;
+  private readonly temperatures: readonly number[];
+  private readonly species: readonly { column: number; id: string }[];
+  private readonly usedColumns: readonly number[];
+  private readonly corrected: ReadonlyMap<string, number | null>;
+  private readonly leftOut: ReadonlySet<number>;
+
+  constructor(private readonly options: GatherOptions) {
+    const { roles, corrections } = options;
+    const columnsOf = (role: ColumnRole) =>
+      roles.flatMap((other, column) => (other === role ? [column] : []));
+    const times = columnsOf("time");
+    this.width = roles.length;
+    this.signals = columnsOf("signal").flatMap((column) => {
+      const time = times.findLast((index) => index < column) ?? times[0];
+      return time === undefined ? [] : [{ column, time }];
+    });
+    this.runColumn = roles.indexOf("run");
+    this.temperatures = columnsOf("temperature");
+    this.species = roles.flatMap((role, column) =>
+      role.startsWith("species:") ? [{ column, id: role.slice("species:".length) }] : [],
+    );
+    this.usedColumns = [...times, ...this.signals.map(({ column }) => column)];
+    this.corrected = new Map(
+      (corrections.cells ?? []).map((cell) => [`${cell.line}:${cell.column}`, cell.as]),
+    );
+    this.leftOut = new Set(corrections.linesLeftOut ?? []);
+    // Columns of a wide table keep their place even when they turn out empty.
+    if (this.runColumn < 0) for (const { column } of this.signals) this.trace(`c${column}`, column, null);
+  }
+
+  visit(row: Row): boolean {
+    this.lines = row.line;
+    if (row.brokenQuotes) this.brokenQuotes ??= row.line;
+    const { firstDataLine, lastDataLine } = this.options;
+    if (row.line < firstDataLine || this.leftOut.has(row.line)) return true;
+    if (isBlank(row)) {
+      this.pendingCount.blank += 1;
+      return true;
+    }
+    const finding = lineFinding(row);
+    if (lastDataLine !== undefined && row.line > lastDataLine) {
+      this.pend(finding);
+      return true;
+    }
+    const readings = new Map(this.usedColumns.map((column) => [column, this.read(row, column)]));
+    if (
+      ![...readings.values()].some((reading) => reading.kind === "number" || reading.kind === "ambiguous")
+    ) {
+      // A line whose words are all 'no reading' is still a line of data.
+      const noReading = [...readings.values()].some((reading) => reading.kind === "no-reading");
+      if (!noReading) {
+        this.pend(finding);
+        return true;
+      }
+    }
+    this.flushPending();
+    this.lastDataLine = row.line;
+    this.checkWidth(row, finding);
+    this.take(row, readings, finding);
+    if (this.points > this.options.pointsLeft) {
+      this.tooManyPoints = true;
+      return false;
+    }
+    return true;
+  }
+
+  private read(row: Row, column: number): CellReading {
+    const said = this.corrected.get(`${row.line}:${column}`);
+    if (said === null) return { kind: "empty" };
+    if (said !== undefined) return { kind: "number", value: said };
+    return readCell(row.cells[column] ?? "", this.options.numberFormat);
+  }
+
+  private take(row: Row, readings: ReadonlyMap<number, CellReading>, finding: LineFinding): void {
+    for (const [column, reading] of readings) {
+      if (reading.kind === "number") {
+        this.numbers.set(column, (this.numbers.get(column) ?? 0) + 1);
+        const waiting = this.open.get(column);
+        if (waiting) {
+          for (const cell of waiting) cell.after = reading.value;
+          this.open.delete(column);
+        }
+      } else if (reading.kind !== "empty") this.find(row, column, reading);
+    }
+    const runName = this.runColumn < 0 ? null : (row.cells[this.runColumn] ?? "");
+    let timeless = false;
+    for (const { column, time } of this.signals) {
+      const at = readings.get(time);
+      const value = readings.get(column);
+      const source = runName === null ? `c${column}` : `r:${runName.slice(0, 76)}`;
+      const trace = this.trace(source, column, runName);
+      if (value?.kind === "number" && at?.kind === "number") {
+        trace.time.push(at.value);
+        trace.signal.push(value.value);
+        trace.line.push(row.line);
+        this.points += 1;
+        this.takeCompanions(row, trace);
+      } else if (value?.kind === "number" && at?.kind === "empty") {
+        timeless ||= this.corrected.get(`${row.line}:${time}`) !== null;
+      } else if (value?.kind === "empty") trace.empty += 1;
+    }
+    if (timeless) this.keep("timeless", finding);
+  }
+
+  private takeCompanions(row: Row, trace: GatheredTrace): void {
+    for (const column of this.temperatures) {
+      const reading = this.read(row, column);
+      if (reading.kind !== "number") continue;
+      trace.temperature.sum += reading.value;
+      trace.temperature.count += 1;
+    }
+    for (const { column, id } of this.species) {
+      const reading = this.read(row, column);
+      if (reading.kind !== "number") continue;
+      const known = trace.concentrations.get(id);
+      if (!known) trace.concentrations.set(id, { value: reading.value, line: row.line, varies: null });
+      else if (known.varies === null && known.value !== reading.value) known.varies = row.line;
+    }
+  }
+
+  private trace(source: string, column: number, runName: string | null): GatheredTrace {
+    const known = this.traces.get(source);
+    if (known) return known;
+    const trace: GatheredTrace = {
+      source,
+      column,
+      runName,
+      time: new GrowingArray(),
+      signal: new GrowingArray(),
+      line: new GrowingArray(),
+      concentrations: new Map(),
+      temperature: { sum: 0, count: 0 },
+      empty: 0,
+    };
+    this.traces.set(source, trace);
+    return trace;
+  }
+
+  private find(row: Row, column: number, reading: CellFinding["reading"]): void {
+    const key = `${column}:${reading.kind}`;
+    const count = (this.counts.get(key) ?? 0) + 1;
+    this.counts.set(key, count);
+    if (count > KEPT) return;
+    const trace = this.traces.get(`c${column}`);
+    const cell: CellFinding = {
+      line: row.line,
+      column,
+      text: row.cells[column] ?? "",
+      reading,
+      before: trace?.signal.last() ?? null,
+      after: null,
+    };
+    this.cells.push(cell);
+    this.open.set(column, [...(this.open.get(column) ?? []), cell]);
+  }
+
+  private checkWidth(row: Row, finding: LineFinding): void {
+    const filled = lastFilled(row.cells) + 1;
+    if (filled > this.width) this.keep("long", { ...finding, cells: filled });
+    else if (row.cells.length < this.width && this.usedColumns.some((column) => column >= row.cells.length)) {
+      this.keep("short", finding);
+    }
+  }
+
+  private keep(kind: keyof typeof this.kept, finding: LineFinding): void {
+    this.count[kind] += 1;
+    if (this.kept[kind].length < KEPT) this.kept[kind].push(finding);
+  }
+
+  private pend(finding: LineFinding): void {
+    this.pendingCount.words += 1;
+    if (this.pending.length < KEPT) this.pending.push(finding);
+  }
+
+  private flushPending(): void {
+    this.count.words += this.pendingCount.words;
+    this.count.blank += this.pendingCount.blank;
+    this.kept.words.push(...this.pending.slice(0, KEPT - this.kept.words.length));
+    this.pending = [];
+    this.pendingCount = { words: 0, blank: 0 };
+  }
+
+  result(): Gathered {
+    return {
+      traces: [...this.traces.values()],
+      cells: this.cells,
+      counts: this.counts,
+      numbers: this.numbers,
+      longLines: this.kept.long,
+      longLineCount: this.count.long,
+      shortLines: this.kept.short,
+      shortLineCount: this.count.short,
+      timeless: this.kept.timeless,
+      timelessCount: this.count.timeless,
+      wordLines: this.kept.words,
+      wordLineCount: this.count.words,
+      blankLineCount: this.count.blank,
+      tail: this.pending,
+      tailCount: this.pendingCount.words,
+      brokenQuotes: this.brokenQuotes,
+      lastDataLine: this.lastDataLine,
+      lines: this.lines,
+      tooManyPoints: this.tooManyPoints,
+    };
+  }
+}
+
+function lineFinding(row: Row): LineFinding {
+  return {
+    line: row.line,
+    text: row.cells
+      .filter((cell) => cell !== "")
+      .join(" ")
+      .slice(0, 80),
+    cells: row.cells.length,
+  };
+}

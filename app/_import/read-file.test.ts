@@ -1,0 +1,398 @@
+import { readFileSync } from "node:fs";
+import path from "node:path";
+import { describe, expect, it } from "vitest";
+import { applyChange, type Corrections } from "./corrections";
+import { readFile } from "./read-file";
+import type { FileReading, Issue, StudyContext } from "./reading";
+import { EMPTY_STUDY } from "./testing-context";
+
+/** Every file of corpus/, written by hand for these tests: what must be read from it, or what must be said. */
+
+function bytesOf(file: string): Uint8Array {
+  return readFileSync(path.join(import.meta.dirname, "corpus", file));
+}
+
+function read(file: string, corrections: Corrections = {}, context: StudyContext = EMPTY_STUDY): FileReading {
+  const reading = readFile(bytesOf(file), context, corrections);
+  if (reading.status !== "read") throw new Error(`${file} was refused: ${reading.message}`);
+  return reading;
+}
+
+function refusal(file: string): string {
+  const reading = readFile(bytesOf(file), EMPTY_STUDY, {});
+  return reading.status === "refused" ? reading.message : "not refused";
+}
+
+function traces(reading: FileReading) {
+  return Object.fromEntries(
+    reading.traces.map((trace) => [trace.label, [[...trace.timeSeconds], [...trace.signal]]]),
+  );
+}
+
+function issue(reading: FileReading, code: string): Issue {
+  const found = reading.issues.find((one) => one.code === code);
+  if (!found) throw new Error(`no issue ${code} among ${reading.issues.map((one) => one.code).join(", ")}`);
+  return found;
+}
+
+function blocking(reading: FileReading): string[] {
+  return reading.issues.filter((one) => one.severity === "blocks").map((one) => one.code);
+}
+
+function repaired(file: string, code: string, label: string | RegExp): FileReading {
+  const repair = issue(read(file), code).repairs.find((one) =>
+    typeof label === "string" ? one.label === label : label.test(one.label),
+  );
+  if (!repair) throw new Error(`no repair ${label} for ${code} in ${file}`);
+  return read(file, applyChange({}, repair.change));
+}
+
+const TWO_RUNS = {
+  R1: [
+    [0, 1, 2.5, 4],
+    [0.01, 0.015, 0.019, 0.022],
+  ],
+  R2: [
+    [0, 1, 2.5, 4],
+    [0.02, 0.031, 0.04, 0.048],
+  ],
+};
+
+describe("one table in every dress", () => {
+  it.each([
+    ["comma-point.csv", ",", ".", "utf-8"],
+    ["semicolon-comma.csv", ";", ",", "utf-8"],
+    ["tab-comma.tsv", "\t", ",", "utf-8"],
+    ["pipe-point.txt", "|", ".", "utf-8"],
+    ["comma-quoted-decimal-comma.csv", ",", ",", "utf-8"],
+    ["paste-from-spreadsheet.txt", "\t", ".", "utf-8"],
+    ["utf8-bom.csv", ";", ",", "utf-8"],
+    ["utf16le-bom.csv", ";", ",", "utf-16le"],
+    ["utf16be-bom.csv", ";", ",", "utf-16be"],
+    ["utf16le-no-bom.csv", ";", ",", "utf-16le"],
+    ["old-mac-line-ends.csv", ",", ".", "utf-8"],
+  ])("%s gives the same traces", (file, separator, decimalMark, encoding) => {
+    const reading = read(file);
+    expect(reading.separator.value).toBe(separator);
+    expect(reading.decimalMark.value).toBe(decimalMark);
+    expect(reading.encoding.value).toBe(encoding);
+    expect(traces(reading)).toEqual(TWO_RUNS);
+    expect(blocking(reading)).toEqual([]);
+  });
+
+  it("reads Windows-1252 and keeps the mean of a temperature column with each run", () => {
+    const reading = read("windows-1252.csv");
+    expect(reading.encoding.value).toBe("windows-1252");
+    expect(issue(reading, "preamble").message).toContain("Küvette");
+    expect(traces(reading)).toEqual(TWO_RUNS);
+    expect(reading.traces.map((trace) => trace.temperatureKelvin)).toEqual([298.15, 298.15]);
+  });
+});
+
+describe("what stands around the data", () => {
+  it("finds preamble, names, units and a blank tail", () => {
+    const reading = read("preamble-units-tail.csv");
+    expect(reading.headerLine.value).toBe(6);
+    expect(reading.unitLine.value).toBe(7);
+    expect(reading.dataLines.value).toEqual({ from: 8, to: 11 });
+    expect(reading.traces.map((trace) => trace.label)).toEqual(["R14", "R13"]);
+    expect(issue(reading, "preamble").place).toBe("lines 1 to 4");
+    expect(issue(reading, "tail").place).toBe("lines 12 to 14");
+    expect(reading.shownLines.map(({ kind }) => kind)).toEqual([
+      "preamble",
+      "preamble",
+      "preamble",
+      "preamble",
+      "preamble",
+      "header",
+      "unit",
+      "data",
+      "data",
+      "data",
+      "data",
+      "skipped",
+      "skipped",
+    ]);
+  });
+
+  it("takes starting concentrations from the preamble, by symbol and by name", () => {
+    const [first, second, third] = read("recipes.csv").traces.map((trace) => trace.recipe);
+    expect(first).toMatchObject({ a: { molar: 0.0005 }, b: { molar: 0.02 } });
+    expect(second).toMatchObject({ a: { molar: 0.001 }, b: { molar: 0.02 } });
+    expect(third).toMatchObject({ a: { molar: 0.002 }, b: { molar: 0.04 } });
+  });
+
+  it("says which unit it assumed where the preamble gives none", () => {
+    const reading = read("recipe-without-unit.csv");
+    expect(reading.traces.map((trace) => trace.recipe.b?.molar)).toEqual([0.02, 0.02]);
+    expect(issue(reading, "recipe").severity).toBe("note");
+    expect(issue(reading, "recipe").message).toContain("taken as mmol/L");
+  });
+
+  it("converts minutes and milliabsorbance named in the line of names", () => {
+    const reading = read("minutes-and-milliabsorbance.csv");
+    expect(reading.timeUnit.value).toBe("min");
+    expect(reading.signalUnit.value).toBe("thousandths");
+    expect(traces(reading)).toEqual({
+      R1: [
+        [0, 30, 60, 90],
+        [0.01, 0.015, 0.019, 0.024],
+      ],
+      R2: [
+        [0, 30, 60, 90],
+        [0.02, 0.031, 0.04, 0.048],
+      ],
+    });
+  });
+
+  it("reads a table without names and says that it assumed the study's unit of time", () => {
+    const reading = read("no-header.csv");
+    expect(reading.headerLine.value).toBeNull();
+    expect(reading.timeUnit.basis).toBe("assumed");
+    expect(Object.keys(traces(reading))).toEqual(["R1", "R2"]);
+  });
+
+  it("skips trailing separators and the lines that hold nothing else", () => {
+    const reading = read("trailing-separators.csv");
+    expect(reading.traces).toHaveLength(2);
+    expect(issue(reading, "tail").place).toBe("lines 6 to 7");
+  });
+
+  it("keeps traces of different length whole", () => {
+    const reading = read("different-lengths.csv");
+    expect(reading.traces.map((trace) => trace.signal.length)).toEqual([5, 3]);
+    expect(issue(reading, "short-line").severity).toBe("weakens");
+  });
+
+  it("leaves a counter and a clock out and says so", () => {
+    const reading = read("counter-and-clock.csv");
+    expect(reading.columns.map((column) => column.role)).toEqual(["left-out", "left-out", "time", "signal"]);
+  });
+
+  it("reads scientific notation and the true minus to the double of the literal", () => {
+    expect(traces(read("scientific-and-true-minus.csv"))).toEqual({
+      R1: [
+        [-1, 0, 1, 2],
+        [-1.5e-3, 1e-3, 2e-3, 3e-3],
+      ],
+      R2: [
+        [-1, 0, 1, 2],
+        [2.5e-3, 3.5e-3, 4.5e-3, 5.5e-3],
+      ],
+    });
+  });
+
+  it("reads thousands grouped by the mark that is not the decimal mark", () => {
+    expect([...(read("grouped-thousands.csv").traces[0]?.signal ?? [])]).toEqual([
+      1234.5, 1250.25, 1300.75, 12345.5,
+    ]);
+  });
+
+  it("shows markup and formulas in names as plain text", () => {
+    expect(read("formula-like.csv").traces.map((trace) => trace.label)).toEqual([
+      '=HYPERLINK("http://example.org")',
+      "<b>R2</b>",
+    ]);
+  });
+});
+
+describe("other layouts", () => {
+  it("reads a long table with its runs and their concentrations", () => {
+    const reading = read("long.csv");
+    expect(reading.layout.value).toBe("long");
+    expect(traces(reading)).toEqual({
+      R1: [
+        [0, 1, 2],
+        [0.01, 0.015, 0.019],
+      ],
+      R2: [
+        [0, 1, 2],
+        [0.02, 0.031, 0.04],
+      ],
+    });
+    expect(reading.traces.map((trace) => trace.recipe.a?.molar)).toEqual([0.0005, 0.001]);
+  });
+
+  it("reads a time column for each signal, named by the line above", () => {
+    const reading = read("paired.csv");
+    expect(reading.layout.value).toBe("paired");
+    expect(traces(reading)).toEqual({
+      R1: [
+        [0, 1, 2, 3],
+        [0.01, 0.015, 0.019, 0.022],
+      ],
+      R2: [
+        [0.5, 1.5, 2.5],
+        [0.02, 0.031, 0.04],
+      ],
+    });
+  });
+});
+
+describe("questions that are asked and not guessed", () => {
+  it("asks whether a mark before three digits is decimal, and reads either answer", () => {
+    expect(blocking(read("either-mark.csv"))).toEqual(["decimal-mark"]);
+    expect(repaired("either-mark.csv", "decimal-mark", "Read as 1.000").traces[0]?.signal[0]).toBe(1.234);
+    expect(repaired("either-mark.csv", "decimal-mark", "Read as 1000").traces[0]?.signal[0]).toBe(1234);
+  });
+
+  it("asks when a file has decimal points and decimal commas", () => {
+    expect(issue(read("both-marks.csv"), "decimal-mark").message).toContain("“0,010” on line 2");
+    const both = repaired("both-marks.csv", "decimal-mark", "Read both as decimal marks");
+    expect(blocking(both)).toEqual([]);
+    expect(traces(both)).toEqual({
+      R1: [
+        [0.5, 1.5, 2.5, 3.5],
+        [0.01, 0.015, 0.019, 0.022],
+      ],
+    });
+  });
+
+  it("refuses to tell cells apart where the comma is separator and decimal mark", () => {
+    const asked = issue(read("comma-for-everything.csv"), "decimal-mark");
+    expect(asked).toMatchObject({ severity: "blocks", line: 2 });
+    expect(asked.message).toMatch(/“0,5,0,010”.*Export again with semicolons or tabs/);
+  });
+
+  it("offers the digit that a letter stands for, or leaving the cell out", () => {
+    const slip = issue(read("typing-slip.csv"), "unreadable-cell");
+    expect(slip).toMatchObject({ line: 3, column: 2, place: "line 3, R15" });
+    expect(slip.message).toContain("“0,2l4”");
+    expect([
+      ...(repaired("typing-slip.csv", "unreadable-cell", "Read as 0.214").traces[1]?.signal ?? []),
+    ]).toEqual([0.213, 0.214, 0.216, 0.219]);
+    const left = repaired("typing-slip.csv", "unreadable-cell", "Leave the cell out");
+    expect(left.traces.map((trace) => trace.signal.length)).toEqual([4, 3]);
+    expect(issue(left, "cell-corrected").repairs[0]?.label).toBe("Undo");
+  });
+});
+
+describe("what cannot be a table", () => {
+  it.each([
+    ["empty.csv", /empty: it holds 0 bytes/],
+    ["blank-lines.csv", /nothing but blank lines/],
+    ["workbook.xlsx", /Excel workbook \(XLSX\).*Save the sheet as CSV/],
+    ["old-workbook.xls", /old Excel workbook.*Save the sheet as CSV/],
+    ["noise.bin", /binary file.*save the sheet as CSV/],
+    ["picture.png", /picture/],
+    ["spectrum.jdx", /JCAMP-DX.*as CSV/],
+    ["only-text.csv", /No line of numbers.*“name colour”/],
+    ["spaces.txt", /separated by spaces/],
+  ])("%s is refused with the way out", (file, message) => {
+    expect(refusal(file)).toMatch(message);
+  });
+});
+
+describe("what is wrong within a table", () => {
+  it("leaves a column of text out, and blocks when it is wanted as a signal", () => {
+    const reading = read("column-of-text.csv");
+    expect(issue(reading, "column-left-out").message).toContain(
+      "“remark” is left out: text, no numbers: “dry”",
+    );
+    expect(blocking(reading)).toEqual([]);
+    const wanted = read("column-of-text.csv", { columns: { "2": "signal" } });
+    expect(blocking(wanted).length).toBeGreaterThan(0);
+  });
+
+  it("names the lines of a repeated time and takes the first or the mean", () => {
+    const repeated = issue(read("repeated-times.csv"), "repeated-time");
+    expect(repeated).toMatchObject({ severity: "blocks", line: 4, place: "line 4" });
+    expect(repeated.message).toContain("1 s stands on line 3 and line 4");
+    expect(traces(repaired("repeated-times.csv", "repeated-time", "Keep the first reading")).R1).toEqual([
+      [0, 1, 2, 3],
+      [0.01, 0.015, 0.019, 0.022],
+    ]);
+    expect(traces(repaired("repeated-times.csv", "repeated-time", "Take their mean")).R2?.[1]).toEqual([
+      0.02, 0.032, 0.04, 0.048,
+    ]);
+  });
+
+  it("names the line where time falls, and sorts when asked", () => {
+    expect(issue(read("falling-times.csv"), "falling-time").message).toContain(
+      "from 3 s on line 4 to 2 s on line 5",
+    );
+    expect(traces(repaired("falling-times.csv", "falling-time", /^Sort/)).R1).toEqual([
+      [0, 1, 2, 3, 4],
+      [0.01, 0.015, 0.019, 0.022, 0.025],
+    ]);
+  });
+
+  it("suspects another run where time starts again", () => {
+    expect(issue(read("time-starts-again.csv"), "falling-time").message).toContain("another run begins");
+    expect(
+      repaired("time-starts-again.csv", "falling-time", "Read up to line 11 only").traces[0]?.signal,
+    ).toHaveLength(10);
+  });
+
+  it("allows one run, equal runs, zero and falling signals: the law says what they are worth", () => {
+    expect(blocking(read("one-run.csv"))).toEqual([]);
+    expect(blocking(read("equal-runs.csv"))).toEqual([]);
+    expect(issue(read("equal-runs.csv"), "equal-traces").message).toContain(
+      "All traces hold the very same readings",
+    );
+    expect(blocking(read("zero-and-falling-signal.csv"))).toEqual([]);
+  });
+
+  it("leaves words for 'no reading' out and names them", () => {
+    const reading = read("nan-and-inf.csv");
+    expect(reading.issues.filter((one) => one.code === "no-reading").map((one) => one.place)).toEqual([
+      "line 3, R1",
+      "line 4, R2",
+    ]);
+    expect(traces(reading).R1?.[0]).toEqual([0, 2, 3, 4]);
+  });
+
+  it("blocks a line with more cells than the others", () => {
+    expect(issue(read("too-long-lines.csv"), "long-line")).toMatchObject({ severity: "blocks", line: 3 });
+    expect(blocking(repaired("too-long-lines.csv", "long-line", "Leave line 3 out"))).toEqual([]);
+  });
+
+  it("names an unclosed quotation mark", () => {
+    expect(issue(read("open-quote.csv"), "broken-quotes")).toMatchObject({ severity: "blocks", line: 1 });
+    expect(blocking(repaired("open-quote.csv", "broken-quotes", /plain/))).toEqual([]);
+  });
+
+  it("blocks numbers beyond a double", () => {
+    expect(
+      read("huge-and-tiny.csv")
+        .issues.filter((one) => one.code === "unreadable-cell")
+        .map((one) => one.line),
+    ).toEqual([2, 4]);
+  });
+
+  it("gives a name that stands twice the next free labels, and refuses a label taken twice", () => {
+    expect(read("same-run-twice.csv").traces.map((trace) => trace.label)).toEqual(["R1", "R2"]);
+    const twice = read("same-run-twice.csv", { labels: { c1: "R7", c2: "R7" } });
+    expect(issue(twice, "run-taken-twice")).toMatchObject({ severity: "blocks", column: 2 });
+  });
+
+  it("blocks more readings than a study holds, without reading on", () => {
+    const crowded: StudyContext = { ...EMPTY_STUDY, points: 4_999_997 };
+    expect(issue(read("comma-point.csv", {}, crowded), "too-many-points").severity).toBe("blocks");
+  });
+
+  it("blocks while the set-up does not say what the signal is", () => {
+    expect(blocking(read("one-run.csv", {}, { ...EMPTY_STUDY, signal: null }))).toEqual(["no-signal-model"]);
+  });
+});
+
+describe("runs of the study", () => {
+  const planned: StudyContext = {
+    ...EMPTY_STUDY,
+    runs: [
+      { id: "r1", label: "R01", hasTrace: false, molar: { a: 0.0001, b: 0.01 } },
+      { id: "r2", label: "R02", hasTrace: true, molar: { a: 0.0002, b: 0.02 } },
+    ],
+  };
+
+  it("matches names by number; a run with a trace keeps it and its recipe is offered to the new run", () => {
+    const [first, second] = read("comma-point.csv", {}, planned).traces;
+    expect(first).toMatchObject({ label: "R01", runId: "r1", recipe: { a: { molar: 0.0001 } } });
+    expect(second).toMatchObject({ label: "R02 (2)", runId: null, recipe: { b: { molar: 0.02 } } });
+  });
+
+  it("refuses a label by hand that belongs to a run with a trace", () => {
+    const reading = read("comma-point.csv", { labels: { c2: "r02" } }, planned);
+    expect(issue(reading, "run-taken-twice").message).toContain("has a trace already");
+  });
+});

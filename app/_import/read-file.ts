@@ -1,0 +1,300 @@
+import { cellIssues } from "./cell-issues";
+import { type ColumnGuess, guessColumns } from "./columns";
+import type { Corrections } from "./corrections";
+import { guessDecimalMark } from "./decimal-mark";
+import { decodeText } from "./decode";
+import { type Frame, findFrame } from "./frame";
+import { type Gathered, gather } from "./gather";
+import { brokenQuotes, lineIssues } from "./line-issues";
+import type { DecimalMark, NumberFormat } from "./number";
+import type { FileReading, Guess, Issue, IssueSeverity, Reading, StudyContext } from "./reading";
+import { type RecipeLine, readRecipeRow, speciesKey } from "./recipes";
+import { firstRows, type Row, type RowFormat, SEPARATOR_NAMES, type Separator } from "./rows";
+import { guessSeparator } from "./separator";
+import { shownLines } from "./shown-lines";
+import { signalUnitOfTable, timeUnitOfTable } from "./table-units";
+import { MOST_POINTS, traceChecks } from "./trace-checks";
+import { buildTraces } from "./traces";
+import { columnName, joined, lines, quoted } from "./words";
+
+/**
+ * A file or a paste into traces of runs. Reading is a pure function of the bytes, the study and the corrections, so
+ * that a preview, the same preview with one thing changed, and what is stored in the end cannot differ.
+ */
+
+const SAMPLE_ROWS = 2000;
+const MOST_COLUMNS = 2002;
+
+export function readFile(bytes: Uint8Array, context: StudyContext, corrections: Corrections): Reading {
+  const decoded = decodeText(bytes, corrections.encoding);
+  if (decoded.status === "refused") return decoded;
+  const { text } = decoded;
+
+  const quotes = quotesOf(text, corrections);
+  const { separator, issues: separatorIssues } = separatorOf(text, quotes.value, corrections);
+  const rowFormat: RowFormat = { separator: separator.value, quotes: quotes.value };
+  const sample = firstRows(text, rowFormat, SAMPLE_ROWS);
+  const mark = decimalMarkOf(sample, separator.value, corrections);
+  const numberFormat: NumberFormat = {
+    decimalMark: mark.guess.value ?? "either",
+    stated: corrections.decimalMark !== undefined,
+  };
+  const frame = findFrame(sample, numberFormat, context.species, corrections);
+  if (frame === null) return refused(text, sample);
+  if (frame.columns > MOST_COLUMNS) {
+    return {
+      status: "refused",
+      message: `Line ${frame.data[0]?.line} has ${frame.columns} cells; at most ${MOST_COLUMNS} columns are read. Split the file.`,
+    };
+  }
+  const guessed = guessColumns(frame, numberFormat, context.species, corrections.columns);
+  const timeUnit = timeUnitOfTable(guessed.columns, context.timeUnit, corrections.timeUnit);
+  const signalUnit = signalUnitOfTable(guessed.columns, context.signal, corrections.signalUnit);
+  const found = gather(text, {
+    rowFormat,
+    numberFormat,
+    roles: guessed.columns.map((column) => column.role),
+    firstDataLine: frame.firstDataLine.value,
+    lastDataLine: corrections.lastDataLine,
+    corrections,
+    pointsLeft: Math.max(0, MOST_POINTS - context.points),
+  });
+  const recipes = frame.recipes.flatMap((row): RecipeLine[] => {
+    const line = readRecipeRow(row, context.species, numberFormat);
+    return line === null ? [] : [line];
+  });
+  const built = buildTraces(found.traces, {
+    columns: guessed.columns,
+    context,
+    corrections,
+    timeUnit: timeUnit.value,
+    signalUnit: signalUnit.guess.value,
+    recipes,
+    titles: frame.titles?.cells ?? [],
+    speciesColumns: speciesColumns(guessed, context),
+  });
+  const labelOf = new Map(built.traces.map((trace) => [trace.source, trace.label]));
+  const nameOf = (column: number) =>
+    labelOf.get(`c${column}`) ?? columnName(column, guessed.columns[column]?.name ?? "");
+  const total = countLines(text);
+  const issues = [
+    ...quotes.issues,
+    ...separatorIssues,
+    ...mark.issues,
+    ...signalUnit.issues,
+    ...columnIssues(guessed),
+    ...cellIssues(found, { columns: guessed.columns, nameOf }, corrections),
+    ...cellsCorrected(corrections, nameOf),
+    ...lineIssues(found, frame.columns, total, corrections),
+    ...built.issues,
+    ...preambleIssues(frame, sample, recipes),
+    ...traceChecks(built.traces, context, found.tooManyPoints),
+  ].sort((a, b) => RANK[a.severity] - RANK[b.severity] || (a.line ?? 0) - (b.line ?? 0));
+
+  return {
+    status: "read",
+    lines: total,
+    encoding: decoded.encoding,
+    separator,
+    quotes: rowFormat.quotes,
+    decimalMark: mark.guess,
+    headerLine: frame.headerLine,
+    unitLine: frame.unitLine,
+    dataLines: dataLines(frame, found, corrections),
+    layout: guessed.layout,
+    columns: guessed.columns,
+    timeUnit,
+    signalUnit: signalUnit.guess,
+    traces: built.traces,
+    issues,
+    shownLines: shownLines({ text, rowFormat, frame, recipes, found, total, issues }),
+    corrections,
+  };
+}
+
+const RANK: Record<IssueSeverity, number> = { blocks: 0, weakens: 1, note: 2, settled: 3 };
+
+/** An unclosed quotation mark near the top swallows the table: the preview shows it read plainly, and asks. */
+function quotesOf(
+  text: string,
+  corrections: Corrections,
+): { readonly value: RowFormat["quotes"]; readonly issues: readonly Issue[] } {
+  if (corrections.quotes) return { value: corrections.quotes, issues: [] };
+  if (!text.includes('"') || guessSeparator(text, "quoting").guess.basis === "file") {
+    return { value: "quoting", issues: [] };
+  }
+  const { value: separator, basis } = guessSeparator(text, "plain").guess;
+  const head = firstRows(text, { separator, quotes: "quoting" }, SAMPLE_ROWS);
+  const broken = head.find((row) => row.brokenQuotes);
+  if (basis !== "file" || !broken) return { value: "quoting", issues: [] };
+  return { value: "plain", issues: [brokenQuotes(broken.line)] };
+}
+
+function separatorOf(
+  text: string,
+  quotes: RowFormat["quotes"],
+  corrections: Corrections,
+): { separator: Guess<Separator>; issues: Issue[] } {
+  if (corrections.separator) {
+    return {
+      separator: { value: corrections.separator, reason: "chosen by hand", basis: "stated" },
+      issues: [],
+    };
+  }
+  const { guess, rivals } = guessSeparator(text, quotes);
+  if (rivals.length === 0) return { separator: guess, issues: [] };
+  const all = [guess.value, ...rivals];
+  return {
+    separator: guess,
+    issues: [
+      {
+        code: "separator",
+        severity: "blocks",
+        line: null,
+        column: null,
+        place: "file",
+        message: `The columns can be divided by ${joined(all.map((one) => SEPARATOR_NAMES[one]))} equally well. Which is it?`,
+        repairs: all.map((one) => ({
+          label: `Divide by ${SEPARATOR_NAMES[one]}`,
+          change: { kind: "set", values: { separator: one } },
+        })),
+      },
+    ],
+  };
+}
+
+function decimalMarkOf(
+  sample: readonly Row[],
+  separator: Separator,
+  corrections: Corrections,
+): { guess: Guess<DecimalMark | null>; issues: Issue[] } {
+  if (corrections.decimalMark) {
+    return {
+      guess: { value: corrections.decimalMark, reason: "chosen by hand", basis: "stated" },
+      issues: [],
+    };
+  }
+  const { guess, question } = guessDecimalMark(sample, separator);
+  if (question === null) return { guess, issues: [] };
+  return {
+    guess,
+    issues: [
+      {
+        code: "decimal-mark",
+        severity: "blocks",
+        line: question.line,
+        column: question.column < 0 ? null : question.column,
+        place: `line ${question.line}`,
+        message: question.message,
+        repairs: question.choices.map(({ mark, label }) => ({
+          label,
+          change: { kind: "set", values: { decimalMark: mark } },
+        })),
+      },
+    ],
+  };
+}
+
+function refused(text: string, sample: readonly Row[]): Reading {
+  const spaced = text.split("\n").filter((line) => /^\s*[+\-−]?[\d.,]+ +[+\-−]?[\d.,]+/.test(line)).length;
+  if (spaced > 1) {
+    return {
+      status: "refused",
+      message:
+        "The columns seem to be separated by spaces, which also occur inside cells. Export again with tabs, semicolons or commas between the columns.",
+    };
+  }
+  const first = sample.find((row) => row.cells.some((cell) => cell !== ""));
+  return {
+    status: "refused",
+    message: `No line of numbers was found; the file begins with ${quoted(first?.cells.join(" ") ?? "")}. A table with a column of times and a column of readings is needed.`,
+  };
+}
+
+function speciesColumns(guessed: ColumnGuess, context: StudyContext) {
+  return new Map(
+    guessed.columns.flatMap((column) => {
+      if (!column.role.startsWith("species:")) return [];
+      const id = column.role.slice("species:".length);
+      const species = context.species.find((one) => one.id === id);
+      if (!species) return [];
+      const label = column.unit === "" ? column.name : `${column.name} / ${column.unit}`;
+      const named = speciesKey(label, [species]);
+      return [[id, named ?? { species, unit: species.unit, unitInFile: false, explicit: false }] as const];
+    }),
+  );
+}
+
+/** Columns that were left out or read as something else than a signal, said so that nobody misses one. */
+function columnIssues(guessed: ColumnGuess): Issue[] {
+  return guessed.columns.flatMap((column): Issue[] => {
+    if (column.basis === "stated" || column.reason === "empty") return [];
+    if (column.role !== "left-out" && column.role !== "temperature") return [];
+    const isTemperature = column.role === "temperature";
+    return [
+      {
+        code: isTemperature ? "temperature-column" : "column-left-out",
+        severity: "note",
+        line: null,
+        column: column.index,
+        place: `column ${column.index + 1}`,
+        message: isTemperature
+          ? `Read as cell temperature and stored with each run as its mean: ${column.reason}.`
+          : `${column.name === "" ? "This column is" : `“${column.name}” is`} left out: ${column.reason}. The raw file keeps it.`,
+        repairs: [
+          { label: "Read as a signal", change: { kind: "column", column: column.index, role: "signal" } },
+        ],
+      },
+    ];
+  });
+}
+
+function cellsCorrected(corrections: Corrections, nameOf: (column: number) => string): Issue[] {
+  return (corrections.cells ?? []).map((cell) => ({
+    code: "cell-corrected",
+    severity: "settled",
+    line: cell.line,
+    column: cell.column,
+    place: `line ${cell.line}, ${nameOf(cell.column)}`,
+    message: `${cell.as === null ? "Left out" : `Read as ${cell.as}`}, by hand; the raw file keeps what stands there.`,
+    repairs: [{ label: "Undo", change: { kind: "forget-cell", line: cell.line, column: cell.column } }],
+  }));
+}
+
+function preambleIssues(frame: Frame, sample: readonly Row[], recipes: readonly RecipeLine[]): Issue[] {
+  const top = Math.min(frame.headerLine.value ?? Number.POSITIVE_INFINITY, frame.firstDataLine.value);
+  const preamble = sample.filter(
+    (row) =>
+      row.line < top &&
+      !recipes.some((line) => line.line === row.line) &&
+      row.cells.some((cell) => cell !== ""),
+  );
+  const first = preamble[0];
+  if (!first) return [];
+  return [
+    {
+      code: "preamble",
+      severity: "settled",
+      line: first.line,
+      column: null,
+      place: lines(first.line, preamble.at(-1)?.line ?? first.line),
+      message: `Preamble, kept with the raw file: ${quoted(first.cells.filter((cell) => cell !== "").join(" "))}.`,
+      repairs: [],
+    },
+  ];
+}
+
+function dataLines(frame: Frame, found: Gathered, corrections: Corrections): FileReading["dataLines"] {
+  const stated = corrections.firstDataLine !== undefined || corrections.lastDataLine !== undefined;
+  return {
+    value: { from: frame.firstDataLine.value, to: Math.max(found.lastDataLine, frame.firstDataLine.value) },
+    reason: stated ? "chosen by hand" : "from the first to the last line of numbers",
+    basis: stated ? "stated" : "file",
+  };
+}
+
+function countLines(text: string): number {
+  let count = 1;
+  for (let i = text.indexOf("\n"); i >= 0; i = text.indexOf("\n", i + 1)) count += 1;
+  return text.endsWith("\n") ? count - 1 : count;
+}
