@@ -31,13 +31,18 @@ export function layOut(
   size: ChartSize,
   x: AxisChoice,
   y: AxisChoice,
-  room: { readonly top?: number; readonly right?: number; readonly bottom?: number } = {},
+  room: {
+    readonly top?: number;
+    readonly right?: number;
+    readonly bottom?: number;
+    readonly left?: number;
+  } = {},
 ): ChartArea {
   const top = room.top ?? 26;
   const bottom = size.height - (room.bottom ?? 40);
-  const yTicks = ticksOf(y, Math.max(3, Math.round((bottom - top) / 42)));
+  const yTicks = ticksOf(y, Math.max(2, Math.round((bottom - top) / 42)));
   const widest = Math.max(1, ...yTicks.major.map((tick) => tick.text.length));
-  const left = Math.max(34, 14 + widest * 6.6);
+  const left = room.left ?? Math.max(34, 14 + widest * 6.6);
   const right = size.width - (room.right ?? 14);
   const xTicks = ticksOf(x, Math.max(3, Math.round((right - left) / 74)));
   return {

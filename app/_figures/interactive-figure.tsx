@@ -16,18 +16,21 @@ const Plot = dynamic(() => import("./plot-inner").then((module) => module.PlotIn
 export function InteractiveFigure({
   plot,
   name,
+  height = 420,
   children,
 }: {
   plot: PlotView;
   /** Names the figure to a screen reader. */
   name: string;
+  /** Of the plot, in pixels. */
+  height?: number;
   /** The drawing. */
   children: ReactNode;
 }) {
   const [exploring, setExploring] = useState(false);
   return (
     <div>
-      {exploring ? <Plot view={plot} name={name} /> : children}
+      {exploring ? <Plot view={plot} name={name} height={height} /> : children}
       <div className="figure-tools mt-1">
         <button
           type="button"

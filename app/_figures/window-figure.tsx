@@ -1,44 +1,234 @@
 "use client";
 
-import type { ReactNode } from "react";
-import { Chart, type ChartSize, layOut, pointsOf } from "./chart";
+import { type ReactNode, useRef } from "react";
+import { Axes, type ChartArea, layOut, Paper, pointsOf } from "./chart";
+import { decimate } from "./decimate";
 import type { WindowChoice, WindowFigureView } from "./figure-view";
-import { linearDomain } from "./ticks";
+import { SvgProse } from "./svg-prose";
+import { extent, linearDomain } from "./ticks";
+import { useWidth } from "./use-width";
+import { useWindowChoice } from "./use-window-choice";
+import { WindowGrips } from "./window-grips";
+
+const PLOT_TOP = 46;
+const RESIDUAL_HEIGHT = 116;
 
 /**
  * A trace with its window. Two grips move over readings: drag, or arrows one reading, Shift ten, Home and End to the
- * limits. `onPreview` follows every step, `onCommit` comes once on release. Without `onCommit` it is a drawing.
+ * limits. `onPreview` follows every step (answer with a new curve, slope and residuals; leave `view.window` as
+ * saved), `onCommit` comes once on release. Without `onCommit` it is a drawing.
  */
 export function WindowFigure({
   view,
   label,
   number,
   caption,
-  height = 380,
+  height = 370,
+  onPreview,
+  onCommit,
 }: {
   view: WindowFigureView;
   label: string;
   number?: number;
   caption?: ReactNode;
+  /** Of the trace's plot, without the residuals. */
   height?: number;
   onPreview?: (choice: WindowChoice) => void;
   onCommit?: (choice: WindowChoice) => void;
 }) {
-  const size: ChartSize = { width: 840, height };
-  const area = layOut(
-    size,
-    { kind: "linear", domain: [0, view.time.at(-1) ?? 1] },
-    { kind: "linear", domain: linearDomain(view.signal) },
-  );
+  const { ref, width } = useWidth<HTMLDivElement>(820);
+  const drawing = useRef<SVGSVGElement>(null);
+  const area = areaOf(view, width, height);
+  const timeAt = (clientX: number) => {
+    const box = drawing.current?.getBoundingClientRect();
+    if (box === undefined || box.width === 0) return view.window[0];
+    return area.x.invert(((clientX - box.left) / box.width) * width);
+  };
+  const { choice, handlers } = useWindowChoice(view, timeAt, onPreview, onCommit);
+  const total = view.residuals === null ? height : height + RESIDUAL_HEIGHT;
   return (
     <figure className="figure">
-      <Chart size={size} area={area} xAxis={view.x} yAxis={view.y} label={label}>
-        <polyline points={pointsOf(area, view.time, view.signal)} fill="none" stroke="var(--ink-3)" />
-      </Chart>
-      <figcaption>
-        {number !== undefined && <b>Figure {number}. </b>}
-        {caption}
-      </figcaption>
+      <div ref={ref} className="relative">
+        <svg viewBox={`0 0 ${width} ${total}`} className="chart" role="img" aria-label={label}>
+          <Paper area={area} />
+          <rect
+            className="window"
+            x={area.x(choice.from)}
+            y={area.top}
+            width={Math.max(0, area.x(choice.to) - area.x(choice.from))}
+            height={area.bottom - area.top}
+          />
+          <Axes area={area} xAxis={view.x} yAxis={view.y} />
+          <Readings view={view} area={area} choice={choice} />
+          <Fit view={view} area={area} choice={choice} />
+          <Note view={view} area={area} choice={choice} />
+          {view.residuals !== null && (
+            <g transform={`translate(0 ${height})`}>
+              <Residuals view={view} width={width} left={area.left} choice={choice} />
+            </g>
+          )}
+        </svg>
+        {/* The grips lie over the drawing in one of their own: what is inside an image is hidden from readers. */}
+        {/* biome-ignore lint/a11y/useSemanticElements: two sliders inside an SVG are a group, not a fieldset */}
+        <svg
+          ref={drawing}
+          viewBox={`0 0 ${width} ${total}`}
+          className="chart absolute inset-0"
+          role="group"
+          aria-label={`Window of ${view.run.label}`}
+        >
+          <WindowGrips
+            area={area}
+            time={view.time}
+            unit={view.x.unit}
+            choice={choice}
+            leastPoints={view.leastPoints}
+            handlers={onCommit === undefined ? null : handlers}
+          />
+        </svg>
+      </div>
+      {(caption !== undefined || number !== undefined) && (
+        <figcaption>
+          {number !== undefined && <b>Figure {number}. </b>}
+          {caption}
+        </figcaption>
+      )}
     </figure>
+  );
+}
+
+function areaOf(view: WindowFigureView, width: number, height: number): ChartArea {
+  const [first, last] = extent(view.time);
+  return layOut(
+    { width, height },
+    {
+      kind: "linear",
+      domain: [Math.min(first, view.slope?.x ?? first, 0), last === first ? first + 1 : last],
+    },
+    { kind: "linear", domain: linearDomain([...extent(view.signal), view.slope?.y ?? view.signal[0] ?? 0]) },
+    { top: PLOT_TOP },
+  );
+}
+
+/** Every reading as a dot, in ink inside the window; long traces thinned to what the width can show. */
+function Readings({ view, area, choice }: { view: WindowFigureView; area: ChartArea; choice: WindowChoice }) {
+  const { time, signal } = view;
+  const { fromIndex, toIndex } = choice;
+  const columns = Math.round((area.right - area.left) / 2);
+  const dots = (from: number, to: number) => {
+    const thin = decimate(time.slice(from, to), signal.slice(from, to), columns);
+    return thin.x.map((value, i) => `M${area.x(value)} ${area.y(thin.y[i] ?? 0)}h0`).join("");
+  };
+  return (
+    <g fill="none" strokeLinecap="round">
+      <path d={dots(0, fromIndex) + dots(toIndex + 1, time.length)} stroke="var(--ctl)" strokeWidth="3.2" />
+      <path d={dots(fromIndex, toIndex + 1)} stroke="var(--ink)" strokeWidth="3.4" />
+    </g>
+  );
+}
+
+/** The fitted curve in full, the tangent at mixing in dashes as far as it helps the eye. */
+function Fit({ view, area, choice }: { view: WindowFigureView; area: ChartArea; choice: WindowChoice }) {
+  const { curve, slope } = view;
+  return (
+    <>
+      {curve !== null && (
+        <polyline points={pointsOf(area, curve.x, curve.y)} fill="none" stroke="var(--ink)" strokeWidth="2" />
+      )}
+      {slope !== null && <Tangent slope={slope} area={area} windowEnd={choice.to} />}
+    </>
+  );
+}
+
+function Tangent({
+  slope,
+  area,
+  windowEnd,
+}: {
+  slope: { readonly x: number; readonly y: number; readonly slope: number };
+  area: ChartArea;
+  windowEnd: number;
+}) {
+  const [yLow, yHigh] = area.y.domain;
+  const limit = slope.slope > 0 ? yHigh : yLow;
+  const leaves = slope.slope === 0 ? Number.POSITIVE_INFINITY : slope.x + (limit - slope.y) / slope.slope;
+  const end = Math.min(area.x.domain[1], leaves, slope.x + 2.7 * (windowEnd - slope.x));
+  const at = (x: number) => area.y(slope.y + slope.slope * (x - slope.x));
+  return (
+    <path
+      d={`M${area.x(slope.x)} ${at(slope.x)}L${area.x(end)} ${at(end)}`}
+      fill="none"
+      stroke="var(--ink)"
+      strokeWidth="1.6"
+      strokeDasharray="7 4"
+    />
+  );
+}
+
+/** The rate in words, right of the window where there is room, else in the corner that the trace leaves free. */
+function Note({ view, area, choice }: { view: WindowFigureView; area: ChartArea; choice: WindowChoice }) {
+  if (view.note === "") return null;
+  const room = area.right - area.x(choice.to) > view.note.length * 7.4 + 30;
+  const rising = (view.signal.at(-1) ?? 0) >= (view.signal[0] ?? 0);
+  const x = room ? area.x(choice.to) + 26 : area.right - 12;
+  const y = room || !rising ? area.top + 30 : area.bottom - 34;
+  const anchor = room ? "start" : "end";
+  return (
+    <>
+      <text className="in-law" x={x} y={y} textAnchor={anchor} style={{ fontSize: 18 }}>
+        <SvgProse text={view.note} />
+      </text>
+      <text x={x} y={y + 19} textAnchor={anchor}>
+        <SvgProse text={view.noteDetail} />
+      </text>
+    </>
+  );
+}
+
+/** Signal minus curve as stems, on the trace's own time axis. */
+function Residuals({
+  view,
+  width,
+  left,
+  choice,
+}: {
+  view: WindowFigureView;
+  width: number;
+  left: number;
+  choice: WindowChoice;
+}) {
+  const { residuals } = view;
+  if (residuals === null) return null;
+  const [low, high] = extent(residuals.y);
+  const reach = Math.max(Math.abs(low), Math.abs(high)) * 1.15 || 1;
+  const [first, last] = extent(view.time);
+  const area = layOut(
+    { width, height: RESIDUAL_HEIGHT },
+    {
+      kind: "linear",
+      domain: [Math.min(first, view.slope?.x ?? first, 0), last === first ? first + 1 : last],
+    },
+    { kind: "linear", domain: [-reach, reach] },
+    { top: 24, bottom: 10, left },
+  );
+  const thin = decimate(residuals.x, residuals.y, Math.round((area.right - area.left) / 3));
+  const zero = area.y(0);
+  const stems = thin.x.map((x, i) => `M${area.x(x)} ${zero}V${area.y(thin.y[i] ?? 0)}`).join("");
+  const heads = thin.x.map((x, i) => `M${area.x(x)} ${area.y(thin.y[i] ?? 0)}h0`).join("");
+  return (
+    <>
+      <Paper area={area} />
+      <rect
+        className="window"
+        x={area.x(choice.from)}
+        y={area.top}
+        width={Math.max(0, area.x(choice.to) - area.x(choice.from))}
+        height={area.bottom - area.top}
+      />
+      <Axes area={area} xAxis={null} yAxis={{ quantity: "residual", unit: view.y.unit }} />
+      <path className="axis" d={`M${left} ${zero}H${area.right}`} />
+      <path d={stems} stroke="var(--ink)" fill="none" />
+      <path d={heads} stroke="var(--ink)" strokeWidth="3.4" strokeLinecap="round" fill="none" />
+    </>
   );
 }

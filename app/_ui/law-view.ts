@@ -34,6 +34,8 @@ export interface FactView {
   readonly label: string;
   /** "9 runs"; prose. */
   readonly headline: string;
+  /** Sets the headline in the law's serif, for a rival law. */
+  readonly asLaw?: boolean;
   /** "2 set aside"; prose. */
   readonly detail: string;
   /** Station that answers for it. */

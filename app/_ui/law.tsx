@@ -16,10 +16,21 @@ export function LawExpression({ law }: { law: LawView }) {
   );
 }
 
-/** "k = 11.8 ± 0.3 L mol⁻¹ s⁻¹" in the serif; `marked` draws the highlighter under it, for what currently stands. */
-export function Constant({ constant, marked = false }: { constant: ConstantView; marked?: boolean }) {
+/**
+ * "k = 11.8 ± 0.3 L mol⁻¹ s⁻¹" in the serif; `marked` draws the highlighter under it, for what currently stands, and
+ * `wiping` draws it from left to right, for what has just changed.
+ */
+export function Constant({
+  constant,
+  marked = false,
+  wiping = false,
+}: {
+  constant: ConstantView;
+  marked?: boolean;
+  wiping?: boolean;
+}) {
   return (
-    <span className={marked ? "law marked whitespace-nowrap" : "law whitespace-nowrap"}>
+    <span className={`law whitespace-nowrap ${marked ? "marked" : ""} ${wiping ? "wiping" : ""}`.trim()}>
       {typeset(constant.symbol)} = <Value number={constant.number} unit={constant.unit} />
     </span>
   );

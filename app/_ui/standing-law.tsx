@@ -1,6 +1,7 @@
 "use client";
 
 import Link from "next/link";
+import { useState } from "react";
 import { Constant, LawExpression } from "./law";
 import type { StandingLawView } from "./law-view";
 import { typeset } from "./prose";
@@ -11,15 +12,18 @@ import { typeset } from "./prose";
  */
 export function StandingLaw({ view, refitting = false }: { view: StandingLawView; refitting?: boolean }) {
   const { law } = view;
+  // Counted while drawing: the strip stays mounted across stations, and only a change of the law is worth a word.
+  const [seen, setSeen] = useState({ changeKey: view.changeKey, changes: 0, announcement: "" });
+  if (seen.changeKey !== view.changeKey) {
+    setSeen({ changeKey: view.changeKey, changes: seen.changes + 1, announcement: view.announcement });
+  }
   return (
     <section className="standing-law" aria-label="Standing law">
       <div className="say law">
         {law.status === "law" ? (
           <>
             <LawExpression law={law.expression} />
-            <span key={view.changeKey} className="wiped-frame">
-              <Constant constant={law.constant} marked />
-            </span>
+            <Constant key={seen.changes} constant={law.constant} marked wiping={seen.changes > 0} />
           </>
         ) : (
           <span>No law yet. {typeset(law.missing)}</span>
@@ -40,14 +44,16 @@ export function StandingLaw({ view, refitting = false }: { view: StandingLawView
           <div key={fact.label}>
             <dt>{fact.label}</dt>
             <dd>
-              <Link href={fact.href}>{typeset(fact.headline)}</Link>
+              <Link href={fact.href} className={fact.asLaw ? "law" : undefined}>
+                {typeset(fact.headline)}
+              </Link>
               <small>{typeset(fact.detail)}</small>
             </dd>
           </div>
         ))}
       </dl>
       <p className="sr-only" role="status">
-        {view.announcement}
+        {seen.announcement}
       </p>
     </section>
   );
