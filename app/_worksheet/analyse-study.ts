@@ -1,38 +1,57 @@
+import {
+  chooseFromSurveys,
+  estimateInitialRate,
+  type InitialRateOptions,
+  type StudyRuleChoice,
+  surveyTrace,
+} from "kinetics-core/initial-rate";
 import type { Kysely } from "kysely";
 import { canonicalJson, sha256Of } from "@/db/canonical-json";
 import type { Database } from "@/db/database";
 import type { Sheet, SheetRun } from "@/db/sheet/sheet.schema";
-import type { RunAnalysis, RunRate, StudyAnalysis } from "./analysis";
+import type { LawAnalysis, RunAnalysis, RunRate, StudyAnalysis } from "./analysis";
+import { signalSpan } from "./assemble";
+import { findChecks } from "./checks/find-checks";
 import { CORE_VERSION } from "./core-version";
 import type { CarryingRun } from "./law-input";
 import { missingForLaw } from "./missing-law";
 import { lawSpecies, presentRuns } from "./present-runs";
 import { RecentResults } from "./recent-results";
 import { runMarks } from "./run-marks";
+import { rateOfReaction, rateOptions } from "./run-rate";
+import { keepStage, makeStage } from "./stage";
+import { initialRateSchema, traceSurveySchema } from "./stored-results";
+import { type TraceReader, traceReader } from "./trace-reader";
 
 /**
  * The sheet's analysis, in stages that are each kept under the hash of what they depend on:
  *
- *   traces of the standing runs → the study's rule → each run's rate → the law → the checks
+ *   traces → what each allows (survey) → the study's rule → each run's rate → the law → the checks
  *
- * The first two read traces and are also kept in the database; the law and its checks take a millisecond or two
- * and are made afresh, so that setting a run aside costs one fit. The study's rule is chosen from standing runs
- * alone, since a faulty trace must not choose the window of the others; the runs set aside are then measured by
- * the same rule, and carry nothing.
+ * Surveys and rates read traces and are also kept in the database; the rule, the law and its checks take a
+ * millisecond or two and are made afresh, so that setting a run aside costs one fit. The study's rule is chosen
+ * from standing runs alone, since a faulty trace must not choose the window of the others; the runs set aside are
+ * then measured by the same rule, and carry nothing.
  */
-export async function analyseStudy(_db: Kysely<Database>, sheet: Sheet): Promise<StudyAnalysis> {
+export async function analyseStudy(db: Kysely<Database>, sheet: Sheet): Promise<StudyAnalysis> {
   const hash = sha256Of(canonicalJson([CORE_VERSION, whatCounts(sheet)]));
-  return recentAnalyses.get(hash, () => analyse(sheet, hash));
+  return recentAnalyses.get(hash, () => analyse(db, sheet, hash));
 }
 
 /** Enough for every study that a group has open at once; one analysis of 300 runs is about half a megabyte. */
 const recentAnalyses = new RecentResults<StudyAnalysis>(64);
 
-async function analyse(sheet: Sheet, hash: string): Promise<StudyAnalysis> {
+const surveyStage = makeStage("survey", traceSurveySchema);
+const rateStage = makeStage("rate", initialRateSchema);
+
+async function analyse(db: Kysely<Database>, sheet: Sheet, hash: string): Promise<StudyAnalysis> {
   const runs = presentRuns(sheet);
+  const readTrace = traceReader(db);
+  const rule = await findRule(db, sheet, runs, readTrace);
+  const rates = await findRates(db, sheet, runs, rule, readTrace);
   const marks = runMarks(sheet);
   const analysed = runs.map((run): RunAnalysis => {
-    const rate: RunRate = run.enteredRate === null ? NOT_MEASURED : { kind: "entered", ...run.enteredRate };
+    const rate = rates.get(run.id) ?? NOT_MEASURED;
     return {
       runId: run.id,
       label: run.label,
@@ -45,8 +64,14 @@ async function analyse(sheet: Sheet, hash: string): Promise<StudyAnalysis> {
     const one = analysed[index];
     return one?.state === "standing" && one.rate.kind !== "none" ? [{ run, rate: one.rate }] : [];
   });
-  const missing = missingForLaw(sheet, carrying, null) ?? "Runs with a rate are needed.";
-  return { hash, rule: null, runs: analysed, law: { status: "no-law", missing, fit: null }, checks: [] };
+  const law = findLaw(sheet, carrying);
+  return {
+    hash,
+    rule,
+    runs: analysed,
+    law,
+    checks: findChecks({ sheet, rule, runs: analysed, carrying, law }),
+  };
 }
 
 const NOT_MEASURED: RunRate = {
@@ -61,6 +86,62 @@ function canCarry(sheet: Sheet, run: SheetRun, rate: RunRate): boolean {
     rate.molarPerSecond > 0 &&
     lawSpecies(sheet).every((species) => (run.concentrations[species.id]?.molar ?? 0) > 0)
   );
+}
+
+function findLaw(sheet: Sheet, carrying: readonly CarryingRun[]): LawAnalysis {
+  return {
+    status: "no-law",
+    missing: missingForLaw(sheet, carrying, null) ?? "Runs with a rate are needed.",
+    fit: null,
+  };
+}
+
+async function findRule(
+  db: Kysely<Database>,
+  sheet: Sheet,
+  runs: readonly SheetRun[],
+  readTrace: TraceReader,
+): Promise<StudyRuleChoice | null> {
+  const standing = runs.flatMap((run) =>
+    run.trace === null || run.setAside !== null
+      ? []
+      : [{ sha256: run.trace.sha256, timeZero: run.timeZeroSeconds, signalSpan: signalSpan(sheet, run) }],
+  );
+  const surveys = await keepStage(db, surveyStage, standing, async ({ sha256, ...rest }) =>
+    surveyTrace({ label: sha256, trace: await readTrace(sha256), ...rest }),
+  );
+  return chooseFromSurveys(surveys);
+}
+
+/** What a rate depends on; equal inputs, equal rate, whatever run they belong to. */
+interface RateInput {
+  readonly sha256: string;
+  readonly options: InitialRateOptions;
+}
+
+async function findRates(
+  db: Kysely<Database>,
+  sheet: Sheet,
+  runs: readonly SheetRun[],
+  rule: StudyRuleChoice | null,
+  readTrace: TraceReader,
+): Promise<ReadonlyMap<string, RunRate>> {
+  const rates = new Map<string, RunRate>();
+  for (const run of runs)
+    if (run.enteredRate !== null) rates.set(run.id, { kind: "entered", ...run.enteredRate });
+  const traced = runs.flatMap((run) => (run.trace === null ? [] : [{ run, sha256: run.trace.sha256 }]));
+  const inputs = traced.map(
+    ({ run, sha256 }): RateInput => ({ sha256, options: rateOptions(sheet, run, rule?.rule ?? null) }),
+  );
+  const estimates = await keepStage(db, rateStage, inputs, async ({ sha256, options }) =>
+    estimateInitialRate(await readTrace(sha256), options),
+  );
+  // A measured trace goes before a rate typed in by hand.
+  for (const [index, { run }] of traced.entries()) {
+    const estimate = estimates[index];
+    if (estimate !== undefined) rates.set(run.id, rateOfReaction(sheet, run, estimate));
+  }
+  return rates;
 }
 
 /** What the analysis depends on; remarks, hazards, uploads and revision numbers are none of it. */

@@ -1,0 +1,95 @@
+import { afterAll, beforeAll, describe, expect, test, vi } from "vitest";
+import type { Sheet } from "@/db/sheet/sheet.schema";
+import { type TemporaryDatabase, temporaryDatabase } from "@/db/testing/temporary-database";
+import { writeTrace } from "@/db/trace/write-trace";
+import { exampleRun, exampleSheet } from "@/tests/example-sheet";
+
+/**
+ * Exact pseudo-first-order traces of A + B → P at k = 12 L mol⁻¹ s⁻¹ with a ripple in place of noise: the initial
+ * rates are k[A][B] to within what the ripple allows.
+ */
+const K = 12;
+const RECIPES = [
+  { A: 50e-6, B: 0.5e-3 },
+  { A: 50e-6, B: 1e-3 },
+  { A: 50e-6, B: 2e-3 },
+  { A: 50e-6, B: 4e-3 },
+  { A: 20e-6, B: 2e-3 },
+  { A: 100e-6, B: 2e-3 },
+] as const;
+
+let temporary: TemporaryDatabase;
+let sheet: Sheet;
+
+beforeAll(async () => {
+  vi.stubEnv("KINETICS_CORE_HASH", "test");
+  temporary = await temporaryDatabase();
+  const runs = [];
+  for (const [index, recipe] of RECIPES.entries()) {
+    const slowness = Math.log(2) / (K * recipe.B);
+    const timeSeconds = Float64Array.from({ length: 200 }, (_, i) => (i * 2 * slowness) / 200);
+    const signal = timeSeconds.map(
+      (time, i) =>
+        18_000 * recipe.A * (1 - Math.exp(-K * recipe.B * time)) + 2e-4 * Math.sin(12.9898 * (i + 7 * index)),
+    );
+    const sha256 = await temporary.db
+      .transaction()
+      .execute((trx) => writeTrace(trx, { timeSeconds, signal }));
+    runs.push(
+      exampleRun(index, recipe, {
+        trace: { sha256, points: 200, uploadId: null, column: `run ${index + 1}` },
+      }),
+    );
+  }
+  sheet = exampleSheet({ runs });
+});
+
+afterAll(() => temporary.close());
+
+/** A process that has just started: no memory, the same database. */
+async function freshly() {
+  vi.resetModules();
+  return import("./analyse-study");
+}
+
+describe("analysis of a study", () => {
+  test("every run's rate of reaction comes from its trace by one rule", async () => {
+    const { analyseStudy } = await freshly();
+    const analysis = await analyseStudy(temporary.db, sheet);
+    expect(analysis.rule).not.toBeNull();
+    for (const [index, run] of analysis.runs.entries()) {
+      const recipe = RECIPES[index];
+      const { rate } = run;
+      if (rate.kind !== "estimated" || recipe === undefined) throw new Error("a rate is estimated");
+      const error = rate.molarPerSecond - K * recipe.A * recipe.B;
+      expect(Math.abs(error)).toBeLessThan(4 * rate.standardError);
+      expect(run.state).toBe("standing");
+    }
+  });
+
+  test("once rates are kept, neither a restart nor setting a run aside reads a trace again", async () => {
+    const aside = { reason: "bubble", memberId: "m", at: "2026-01-05T10:00:00.000Z" };
+    const without = {
+      ...sheet,
+      runs: sheet.runs.map((run, index) => (index === 2 ? { ...run, setAside: aside } : run)),
+    };
+    const whole = await (await freshly()).analyseStudy(temporary.db, sheet);
+    // Were a trace read now, the analysis would fail on its missing bytes.
+    await temporary.db.deleteFrom("blob_part").execute();
+    const { analyseStudy } = await freshly();
+    expect(await analyseStudy(temporary.db, sheet)).toEqual(whole);
+    const less = await analyseStudy(temporary.db, without);
+    expect(less.runs[2]).toMatchObject({ state: "set-aside", rate: { kind: "estimated" } });
+    expect(less.hash).not.toBe(whole.hash);
+  });
+
+  test("what is no input of the analysis does not change its hash", async () => {
+    const { analyseStudy } = await freshly();
+    const whole = await analyseStudy(temporary.db, sheet);
+    const remarked = {
+      ...sheet,
+      runs: sheet.runs.map((run) => ({ ...run, remark: "cloudy", changedIn: 7 })),
+    };
+    expect((await analyseStudy(temporary.db, remarked)).hash).toBe(whole.hash);
+  });
+});
