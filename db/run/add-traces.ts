@@ -5,7 +5,7 @@ import { bytesKeptByGroup } from "../group/bytes-kept";
 import { newIdentifier } from "../identifier";
 import { BYTES_PER_GROUP, limitSentences, POINTS_PER_STUDY } from "../limits";
 import { type Actor, mayActAs } from "../member/actor";
-import type { SheetUpload } from "../sheet/sheet.schema";
+import type { Sheet, SheetUpload } from "../sheet/sheet.schema";
 import { type ChangeResult, type ChangeTarget, changeStudyIn } from "../study/change-study";
 import { readStudy } from "../study/study.queries";
 import { packTrace, type StoredTrace } from "../trace/trace-bytes";
@@ -16,6 +16,8 @@ import { addedNote, type NewRun, withRuns } from "./run.commands";
 export interface TracedRun extends Omit<NewRun, "id" | "trace"> {
   readonly trace: StoredTrace;
   readonly column: string;
+  /** A run of the sheet that has neither trace nor rate yet and takes these readings; null for a new run. */
+  readonly plannedRunId?: string | null;
 }
 
 export interface TraceImport {
@@ -109,9 +111,10 @@ async function storeIn(
           reading: wanted.reading,
         };
   const runs = newRuns(wanted, staged);
-  const result = await changeStudyIn(trx, actor, target, addedNote(runs), (sheet) => {
-    const next = withRuns(runs)(sheet);
-    return upload === null ? next : { ...next, uploads: [...next.uploads, upload] };
+  const result = await changeStudyIn(trx, actor, target, addedNote(runs.map(({ run }) => run)), (sheet) => {
+    const next = withTracedRuns(sheet, runs);
+    if ("refused" in next || upload === null) return next;
+    return { ...next, uploads: [...next.uploads, upload] };
   });
   if (result.status !== "changed") return nothing(result);
 
@@ -122,16 +125,46 @@ async function storeIn(
   return { result, unneeded, unneededFile: sealed ? null : waiting.blobId };
 }
 
-function newRuns(wanted: TraceImport, staged: readonly StagedTrace[]): NewRun[] {
-  return wanted.runs.map(({ trace: _readings, column, ...run }, index) => {
+interface WantedRun {
+  readonly run: NewRun;
+  readonly plannedRunId: string | null;
+}
+
+function newRuns(wanted: TraceImport, staged: readonly StagedTrace[]): WantedRun[] {
+  return wanted.runs.map(({ trace: _readings, column, plannedRunId = null, ...run }, index) => {
     const trace = staged[index];
     if (trace === undefined) throw new Error("every run has a staged trace");
     return {
-      ...run,
-      id: newIdentifier(),
-      trace: { sha256: trace.sha256, points: trace.points, uploadId: wanted.uploadId, column },
+      plannedRunId,
+      run: {
+        ...run,
+        id: plannedRunId ?? newIdentifier(),
+        trace: { sha256: trace.sha256, points: trace.points, uploadId: wanted.uploadId, column },
+      },
     };
   });
+}
+
+/** New runs below the others; planned ones take their readings where they stand, and only if they have none. */
+function withTracedRuns(sheet: Sheet, runs: readonly WantedRun[]): Sheet | { refused: string } {
+  const planned = new Map(
+    runs.flatMap(({ run, plannedRunId }) => (plannedRunId === null ? [] : [[plannedRunId, run] as const])),
+  );
+  const free = sheet.runs.filter(
+    (run) => planned.has(run.id) && run.trace === null && run.enteredRate === null && run.removedIn === null,
+  );
+  if (free.length < planned.size) {
+    return {
+      refused:
+        "A run that was to take readings has some already, or is gone. Look at the preview again; nothing was stored.",
+    };
+  }
+  const filled = sheet.runs.map((run) => {
+    const readings = planned.get(run.id);
+    return readings === undefined ? run : { ...run, ...readings };
+  });
+  const added = runs.flatMap(({ run, plannedRunId }) => (plannedRunId === null ? [run] : []));
+  return withRuns(added)({ ...sheet, runs: filled });
 }
 
 interface WaitingUpload {

@@ -4,6 +4,7 @@ import { afterEach, beforeEach, expect, test } from "vitest";
 import { PART_BYTES } from "../blob/blob.commands";
 import { BYTES_PER_FILE } from "../limits";
 import { addTraces } from "../run/add-traces";
+import { addRuns } from "../run/run.commands";
 import { readStudy } from "../study/study.queries";
 import { makeGroup, type TestGroup } from "../testing/make-group";
 import { makeStudy } from "../testing/make-study";
@@ -124,6 +125,30 @@ test("a file over the limit is refused, declared or not, and nothing of it is le
   if (undeclared.status === "refused") expect(undeclared.message).toContain("50\u202fMB");
   expect(sent).toBeLessThan(BYTES_PER_FILE + 2 * PART_BYTES);
   expect(await leftInBlobs()).toBe(0);
+});
+
+test("a planned run takes readings where it stands, once; a second time is refused and nothing is stored", async () => {
+  const { db } = temporary;
+  const study = await makeStudy(db, group.lead);
+  const planned = {
+    id: "planned",
+    label: "R01",
+    concentrations: { a: { molar: 0.001, relativeUncertainty: 0 } },
+  };
+  await addRuns(db, group.analyst, { studyId: study, base: 1 }, [planned]);
+  const readings = oneRun(null);
+  const wanted = { ...readings, runs: readings.runs.map((run) => ({ ...run, plannedRunId: "planned" })) };
+  expect(await addTraces(db, group.analyst, { studyId: study, base: 2 }, wanted)).toMatchObject({
+    status: "changed",
+  });
+  const after = await readStudy(db, group.reader, study);
+  expect(after?.sheet.runs).toHaveLength(1);
+  expect(after?.sheet.runs[0]).toMatchObject({ id: "planned", trace: { points: 3 } });
+  const kept = await leftInBlobs();
+  const again = await addTraces(db, group.analyst, { studyId: study, base: 3 }, wanted);
+  expect(again).toMatchObject({ status: "refused" });
+  expect((await readStudy(db, group.reader, study))?.revision).toBe(after?.revision);
+  expect(await leftInBlobs()).toBe(kept);
 });
 
 test("an empty file and one that broke off are refused by a sentence, and nothing of them is left", async () => {
