@@ -1,0 +1,40 @@
+import type { ReactNode } from "react";
+import { database } from "@/app/_server/database";
+import { openStudy } from "@/app/_server/study";
+import { InventedBanner } from "@/app/_ui/invented-banner";
+import { StandingLaw } from "@/app/_ui/standing-law";
+import { StationRail } from "@/app/_ui/station-rail";
+import { ToastRegion } from "@/app/_ui/toast";
+import { analyseStudy } from "@/app/_worksheet/analyse-study";
+import { standingLawView } from "@/app/_worksheet/standing-law.view";
+import { stationRailView } from "@/app/_worksheet/station-rail.view";
+import { BenchHead } from "@/app/(bench)/bench-head";
+import { StudyWatch } from "./_components/study-watch";
+import { stationAddress } from "./station-address";
+
+/** The frame of every station: where you are, the standing law, the rail. Access is decided here and in each page. */
+export default async function StudyLayout({
+  params,
+  children,
+}: {
+  params: Promise<{ studyId: string }>;
+  children: ReactNode;
+}) {
+  const { studyId } = await params;
+  const { sheet, study, revision } = await openStudy(studyId);
+  const analysis = await analyseStudy(database(), sheet);
+  const hrefOf = stationAddress(studyId);
+  return (
+    <ToastRegion>
+      <BenchHead
+        trail={[{ name: "Studies", href: "/studies" }, { name: sheet.study.name }]}
+        aside={`Saved ${study.updatedAt.slice(0, 10)}, revision ${revision}`}
+      />
+      {sheet.study.invented && <InventedBanner />}
+      <StandingLaw view={standingLawView(sheet, analysis, hrefOf)} />
+      <StationRail stations={stationRailView(sheet, analysis, hrefOf)} />
+      {children}
+      <StudyWatch studyId={studyId} revision={revision} />
+    </ToastRegion>
+  );
+}
