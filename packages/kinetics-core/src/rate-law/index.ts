@@ -1,10 +1,16 @@
+export { fitRateLaw } from "./fit-rate-law";
 export type {
   AddedVariable,
+  BudgetLine,
+  LackOfFit,
+  OrderCombination,
   RateConstant,
   RateLawFit,
   RateLawInput,
   RateLawResult,
   RateLawRun,
+  Separability,
   SharedUncertainty,
   SimpleOrderReading,
 } from "./rate-law";
+export { nearestSimpleOrder, SIMPLE_ORDERS } from "./simple-orders";

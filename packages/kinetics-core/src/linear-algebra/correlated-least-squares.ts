@@ -1,0 +1,145 @@
+import { householderQr, invertUpper, solveUpper } from "./householder-qr";
+import { inverseGram } from "./least-squares";
+import { columnOf, dot, entry, type Matrix, zeroMatrix } from "./matrix";
+
+/**
+ * Generalised least squares of y on X with V = diag(d) + U Uᵀ, where U holds a few error terms that rows share.
+ *
+ * V is never formed. With a standard normal z for each column of U, y = X b + U z + e, and minimising
+ * |d^−½ (y − X b − U z)|² + |z|² gives the generalised estimate of b (Henderson's mixed-model equations), here by QR
+ * of the augmented matrix
+ *     K = [ d^−½ U   d^−½ X ]  = Q R,
+ *         [    I        0   ]
+ * so that the work grows linearly with the rows. From the same factors follow |V|, |XᵀV⁻¹X| and the projection
+ * P = V⁻¹ − V⁻¹X(XᵀV⁻¹X)⁻¹XᵀV⁻¹ = d^−½ (I − Q₁Q₁ᵀ) d^−½, Q₁ the upper m rows of Q.
+ * Searle, Casella and McCulloch, Variance Components (1992), 6.6 and 7.
+ */
+export interface CorrelatedFit {
+  readonly coefficients: Float64Array;
+  /** (XᵀV⁻¹X)⁻¹. */
+  readonly inverseInformation: Matrix;
+  /** n by m: coefficients = gain · y, so an error e in y moves them by gain · e. */
+  readonly gain: Matrix;
+  /** y − X b. */
+  readonly residuals: Float64Array;
+  /** rᵀV⁻¹r. */
+  readonly weightedSumOfSquares: number;
+  /** ln|V| + ln|XᵀV⁻¹X| + rᵀV⁻¹r: −2 times the restricted log-likelihood but for a constant. */
+  readonly restrictedDeviance: number;
+  /** 1 − P_jj/(V⁻¹)_jj, the usual leverage where nothing is shared. */
+  readonly leverage: Float64Array;
+  /** Diagonal of P. */
+  readonly projectionDiagonal: Float64Array;
+  /** P y = V⁻¹ r. */
+  readonly projected: Float64Array;
+  /** P times any vector. */
+  readonly project: (vector: ArrayLike<number>) => Float64Array;
+}
+
+/**
+ * `variances`: d, all above 0, one a row; `shared`: columns of U, may be empty. X of full column rank, m ≥ n rows.
+ */
+export function correlatedLeastSquares(
+  x: Matrix,
+  y: ArrayLike<number>,
+  variances: ArrayLike<number>,
+  shared: readonly ArrayLike<number>[],
+): CorrelatedFit {
+  const m = x.rows;
+  const n = x.columns;
+  const p = shared.length;
+  const roots = Float64Array.from({ length: m }, (_, i) => Math.sqrt(variances[i] ?? 0));
+  if (!roots.every((root) => root > 0)) throw new RangeError("every variance must be above 0");
+
+  const augmented = zeroMatrix(m + p, p + n);
+  shared.forEach((column, j) => {
+    const target = columnOf(augmented, j);
+    for (let i = 0; i < m; i++) target[i] = (column[i] ?? 0) / (roots[i] ?? 1);
+    target[m + j] = 1;
+  });
+  for (let j = 0; j < n; j++) {
+    const source = columnOf(x, j);
+    const target = columnOf(augmented, p + j);
+    for (let i = 0; i < m; i++) target[i] = (source[i] ?? 0) / (roots[i] ?? 1);
+  }
+  const { q, r } = householderQr(augmented);
+  const upper = (column: number) => columnOf(q, column).subarray(0, m);
+
+  const project = (vector: ArrayLike<number>): Float64Array => {
+    const rest = Float64Array.from({ length: m }, (_, i) => (vector[i] ?? 0) / (roots[i] ?? 1));
+    const whitened = rest.slice();
+    for (let j = 0; j < p + n; j++) {
+      const column = upper(j);
+      const projection = dot(column, whitened);
+      for (let i = 0; i < m; i++) rest[i] = (rest[i] ?? 0) - projection * (column[i] ?? 0);
+    }
+    return rest.map((value, i) => value / (roots[i] ?? 1));
+  };
+
+  const tail = zeroMatrix(n, n);
+  for (let j = 0; j < n; j++) for (let i = 0; i <= j; i++) tail.values[j * n + i] = entry(r, p + i, p + j);
+  const rotated = Float64Array.from({ length: n }, (_, j) => {
+    const column = upper(p + j);
+    let sum = 0;
+    for (let i = 0; i < m; i++) sum += ((column[i] ?? 0) * (y[i] ?? 0)) / (roots[i] ?? 1);
+    return sum;
+  });
+  const coefficients = solveUpper(tail, rotated);
+
+  const residuals = Float64Array.from({ length: m }, (_, i) => {
+    let fitted = 0;
+    for (let j = 0; j < n; j++) fitted += (coefficients[j] ?? 0) * (x.values[j * m + i] ?? 0);
+    return (y[i] ?? 0) - fitted;
+  });
+  const projected = project(residuals);
+  const weightedSumOfSquares = Math.max(0, dot(residuals, projected));
+
+  let logDeterminants = 0;
+  for (const root of roots) logDeterminants += 2 * Math.log(root);
+  for (let j = 0; j < p + n; j++) logDeterminants += 2 * Math.log(Math.abs(entry(r, j, j)));
+
+  const leverage = new Float64Array(m);
+  const projectionDiagonal = new Float64Array(m);
+  for (let i = 0; i < m; i++) {
+    let byShared = 0;
+    for (let j = 0; j < p; j++) byShared += entry(q, i, j) ** 2;
+    let byTerms = 0;
+    for (let j = p; j < p + n; j++) byTerms += entry(q, i, j) ** 2;
+    leverage[i] = Math.min(1, byTerms / Math.max(1 - byShared, Number.MIN_VALUE));
+    projectionDiagonal[i] = Math.max(0, 1 - byShared - byTerms) / (roots[i] ?? 1) ** 2;
+  }
+  return {
+    coefficients,
+    inverseInformation: inverseGram(tail),
+    gain: gainOf(tail, upper, p, roots),
+    residuals,
+    weightedSumOfSquares,
+    restrictedDeviance: logDeterminants + weightedSumOfSquares,
+    leverage,
+    projectionDiagonal,
+    projected,
+    project,
+  };
+}
+
+/** R₂₂⁻¹ Q₂ᵀ d^−½. */
+function gainOf(
+  tail: Matrix,
+  upper: (column: number) => Float64Array,
+  offset: number,
+  roots: Float64Array,
+): Matrix {
+  const n = tail.columns;
+  const m = roots.length;
+  const inverse = invertUpper(tail);
+  const gain = zeroMatrix(n, m);
+  for (let j = 0; j < n; j++) {
+    const column = upper(offset + j);
+    for (let i = 0; i < m; i++) {
+      const weighted = (column[i] ?? 0) / (roots[i] ?? 1);
+      for (let k = 0; k <= j; k++)
+        gain.values[i * n + k] = (gain.values[i * n + k] ?? 0) + entry(inverse, k, j) * weighted;
+    }
+  }
+  return gain;
+}

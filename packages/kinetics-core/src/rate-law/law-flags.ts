@@ -1,0 +1,91 @@
+import type { Estimate, Flag } from "kinetics-core/quantities";
+import type { OrdersFit } from "./fit-orders";
+import type { RateLawFit } from "./rate-law";
+import { nearestSimpleOrder } from "./simple-orders";
+import { inARow } from "./wording";
+
+/** What a reader should know about the law as a whole. */
+
+/** No freedom: the numbers are exact solutions. One or two: an interval, but a wide and fragile one. */
+export function freedomFlags(fit: OrdersFit): readonly Flag[] {
+  const freedom = fit.degreesOfFreedom;
+  const runs = fit.runs.length;
+  const parameters = fit.design.terms.columns;
+  if (freedom === 0)
+    return [
+      {
+        code: "no-freedom",
+        severity: "blocks",
+        message: `${runs === 1 ? "One run carries" : `${runs} runs carry`} ${parameters === 1 ? "one parameter" : `${parameters} parameters`}: the values are exact solutions, and no uncertainty can be given. One more run gives a first interval, three more a usable one.`,
+      },
+    ];
+  if (freedom > 2) return [];
+  return [
+    {
+      code: "little-freedom",
+      severity: "weakens",
+      message: `The intervals rest on ${freedom === 1 ? "one degree" : "two degrees"} of freedom (${runs} runs, ${parameters === 1 ? "one parameter" : `${parameters} parameters`}), so they are wide and their width is itself uncertain. ${freedom === 1 ? "Two more runs" : "One more run"} would narrow them.`,
+    },
+  ];
+}
+
+export function scopeFlags(fit: OrdersFit, blocksIgnored: boolean): readonly Flag[] {
+  const flags: Flag[] = [];
+  if (blocksIgnored)
+    flags.push({
+      code: "blocks-not-separable",
+      severity: "weakens",
+      message:
+        "The runs cannot tell a difference between blocks from the orders or from scatter, so blocks were not counted. Repeat one recipe in every block.",
+    });
+  if (!fit.settled)
+    flags.push({
+      code: "rate-scale-unsettled",
+      severity: "blocks",
+      message:
+        "The fit to the rates themselves did not settle: rates that cannot be told from zero leave the law open. Set those runs aside, or measure them for longer.",
+    });
+  return flags;
+}
+
+/** Orders that no simple order matches, and simple orders that hang on a single run. */
+export function readingFlags(
+  species: readonly string[],
+  orders: readonly Estimate[],
+  simple: RateLawFit["simpleOrders"],
+  without: RateLawFit["leaveOneOut"],
+  fit: OrdersFit,
+): readonly Flag[] {
+  return species.flatMap((name, i): readonly Flag[] => {
+    const order = orders[i];
+    if (order === undefined || order.estimate === null || order.interval === null) return [];
+    if (simple.reading[name] === "nearest") {
+      const [low, high] = order.interval;
+      return [
+        {
+          code: "order-not-simple",
+          severity: "note",
+          message: `The order in ${name} lies between ${signed(low)} and ${signed(high)}, which contains no simple order near it: a law of another form may lie behind it.`,
+        },
+      ];
+    }
+    if (simple.reading[name] !== "is" || fit.exact) return [];
+    const settled = simple.orders[name];
+    const turning = without.filter((one) => {
+      const value = one.orders[name] ?? null;
+      return value !== null && nearestSimpleOrder(value) !== settled;
+    });
+    if (turning.length === 0) return [];
+    return [
+      {
+        code: "reading-on-one-run",
+        severity: "weakens",
+        message: `Without ${inARow(turning.map((one) => one.label))} the order in ${name} would read otherwise. A repeat would show whether the law may rest on ${turning.length === 1 ? "it" : "them"}.`,
+      },
+    ];
+  });
+}
+
+function signed(value: number): string {
+  return value.toFixed(2).replace("-", "\u2212");
+}

@@ -1,0 +1,165 @@
+import { type CorrelatedFit, correlatedLeastSquares, dot, type Matrix } from "kinetics-core/linear-algebra";
+
+/**
+ * Variance between runs (τ²) and between blocks by restricted maximum likelihood: the least of
+ *     ln|V| + ln|XᵀV⁻¹X| + rᵀV⁻¹r,   V = diag(u² + τ²) + Σ_shared + σ_b² Z Zᵀ,   τ², σ_b² ≥ 0.
+ * Its derivative by τ² is Σ P_jj − |P y|², by σ_b² it is Σ_b zᵀP z − (zᵀP y)² (Searle, Casella and McCulloch 1992,
+ * 6.6). The least is located on a logarithmic grid, so that a second minimum is not missed, and refined on the
+ * derivative's root.
+ */
+export interface VarianceComponents {
+  readonly betweenRuns: number;
+  readonly betweenBlocks: number;
+}
+
+export interface VarianceProblem {
+  readonly terms: Matrix;
+  readonly response: ArrayLike<number>;
+  /** u² of each run, ≥ 0. */
+  readonly stated: readonly number[];
+  readonly shared: readonly ArrayLike<number>[];
+  /** Runs of each block; empty where blocks are no part of the model. */
+  readonly blocks: readonly (readonly number[])[];
+}
+
+/** Needs at least one degree of freedom (more runs than terms). */
+export function varianceComponents(problem: VarianceProblem): VarianceComponents {
+  const { terms, response, stated } = problem;
+  const ones = stated.map(() => 1);
+  const plain = correlatedLeastSquares(terms, response, ones, []);
+  const scatter = plain.weightedSumOfSquares / (terms.rows - terms.columns);
+  if (problem.shared.length === 0 && problem.blocks.length === 0) {
+    const first = stated[0] ?? 0;
+    // With equal u² the answer is in closed form: what the residual variance exceeds u² by.
+    if (stated.every((value) => Math.abs(value - first) <= 1e-12 * first))
+      return { betweenRuns: Math.max(0, scatter - first), betweenBlocks: 0 };
+  }
+  if (!(scatter > 0)) return { betweenRuns: 0, betweenBlocks: 0 };
+
+  const fitAt = (betweenRuns: number, betweenBlocks: number) =>
+    fitWithComponents(problem, betweenRuns, betweenBlocks);
+  const runsGiven = (betweenBlocks: number) =>
+    leastDeviance(
+      (variance) => {
+        const fit = fitAt(variance, betweenBlocks);
+        return { deviance: fit.restrictedDeviance, slope: slopeByRuns(fit) };
+      },
+      scatter,
+      stated.every((value) => value > 0),
+    );
+  const blocksGiven = (betweenRuns: number) =>
+    leastDeviance(
+      (variance) => {
+        const fit = fitAt(betweenRuns, variance);
+        return { deviance: fit.restrictedDeviance, slope: slopeByBlocks(fit, problem.blocks, terms.rows) };
+      },
+      scatter,
+      true,
+    );
+
+  let betweenRuns = runsGiven(0);
+  if (problem.blocks.length === 0) return { betweenRuns, betweenBlocks: 0 };
+  let betweenBlocks = 0;
+  for (let round = 0; round < 100; round++) {
+    const before = [betweenRuns, betweenBlocks];
+    betweenBlocks = blocksGiven(betweenRuns);
+    betweenRuns = runsGiven(betweenBlocks);
+    const moved = Math.abs(betweenRuns - (before[0] ?? 0)) + Math.abs(betweenBlocks - (before[1] ?? 0));
+    if (moved <= 1e-9 * (betweenRuns + betweenBlocks)) break;
+  }
+  return { betweenRuns, betweenBlocks };
+}
+
+/** Blocks of one run differ from scatter by nothing but their variance on the diagonal. */
+export function blockLoadings(blocks: readonly (readonly number[])[], rows: number): readonly Float64Array[] {
+  return blocks.map((members) => {
+    const column = new Float64Array(rows);
+    for (const j of members) column[j] = 1;
+    return column;
+  });
+}
+
+function fitWithComponents(
+  { terms, response, stated, shared, blocks }: VarianceProblem,
+  betweenRuns: number,
+  betweenBlocks: number,
+): CorrelatedFit {
+  const variances = stated.map((value) => value + betweenRuns);
+  const deviation = Math.sqrt(betweenBlocks);
+  const columns: ArrayLike<number>[] = [...shared];
+  if (betweenBlocks > 0) {
+    for (const members of blocks) {
+      const only = members[0];
+      if (members.length === 1 && only !== undefined)
+        variances[only] = (variances[only] ?? 0) + betweenBlocks;
+      else {
+        const column = new Float64Array(terms.rows);
+        for (const j of members) column[j] = deviation;
+        columns.push(column);
+      }
+    }
+  }
+  return correlatedLeastSquares(terms, response, variances, columns);
+}
+
+function slopeByRuns(fit: CorrelatedFit): number {
+  return sum(fit.projectionDiagonal) - dot(fit.projected, fit.projected);
+}
+
+function slopeByBlocks(fit: CorrelatedFit, blocks: readonly (readonly number[])[], rows: number): number {
+  return blockLoadings(blocks, rows)
+    .map((z) => dot(z, fit.project(z)) - dot(z, fit.projected) ** 2)
+    .reduce((total, one) => total + one, 0);
+}
+
+interface DevianceAt {
+  readonly deviance: number;
+  readonly slope: number;
+}
+
+/** Grid over ten decades about `scale`, 0 included where the variance may vanish, then bisection and secant on the slope. */
+function leastDeviance(at: (variance: number) => DevianceAt, scale: number, mayVanish: boolean): number {
+  const grid = Array.from({ length: 21 }, (_, i) => scale * 10 ** (-8 + i / 2));
+  const points = (mayVanish ? [0, ...grid] : grid).map((variance) => ({ variance, ...at(variance) }));
+  let best = 0;
+  points.forEach((point, i) => {
+    if (point.deviance < (points[best]?.deviance ?? Number.POSITIVE_INFINITY)) best = i;
+  });
+  const here = points[best];
+  if (here === undefined || here.slope === 0) return here?.variance ?? 0;
+  const neighbour = points[here.slope > 0 ? best - 1 : best + 1];
+  // At an end of the grid with the slope pointing outwards the end is the answer.
+  if (neighbour === undefined) return here.variance;
+  return here.slope > 0
+    ? slopeRoot(at, neighbour.variance, here.variance)
+    : slopeRoot(at, here.variance, neighbour.variance);
+}
+
+function slopeRoot(at: (variance: number) => DevianceAt, from: number, to: number): number {
+  let low = from;
+  let high = to;
+  let lowSlope = at(low).slope;
+  let highSlope = at(high).slope;
+  for (let i = 0; i < 100 && high - low > 1e-13 * high; i++) {
+    const secant =
+      lowSlope < 0 && highSlope > 0 ? low - (lowSlope * (high - low)) / (highSlope - lowSlope) : Number.NaN;
+    // Every third step halves the bracket, so that a flat side cannot hold the secant up.
+    const middle = i % 3 === 2 || !(secant > low && secant < high) ? 0.5 * (low + high) : secant;
+    const { slope } = at(middle);
+    if (slope === 0) return middle;
+    if (slope < 0) {
+      low = middle;
+      lowSlope = slope;
+    } else {
+      high = middle;
+      highSlope = slope;
+    }
+  }
+  return 0.5 * (low + high);
+}
+
+function sum(values: ArrayLike<number>): number {
+  let total = 0;
+  for (let i = 0; i < values.length; i++) total += values[i] ?? 0;
+  return total;
+}

@@ -1,0 +1,79 @@
+import type { Flag } from "kinetics-core/quantities";
+import type { RateLawInput, SharedUncertainty } from "./rate-law";
+import type { UsableRun } from "./usable-runs";
+import { inARow } from "./wording";
+
+/**
+ * Errors that runs share. A common relative error e of a stock moves ln v by Σ n_i e over the species made from it; on
+ * the rate (ε·l) it moves the measured ln v by e. Where one calibration gives both the rates and a stock's
+ * concentration the two partly cancel: the effect is 1 − Σ n_i.
+ */
+export interface SharedError {
+  readonly source: string;
+  readonly species: readonly number[];
+  readonly onRate: boolean;
+  readonly relative: number;
+  /** Indices of the runs that share it; null where all do, so that it moves k and never the orders. */
+  readonly runs: readonly number[] | null;
+}
+
+export function sharedErrors(
+  input: RateLawInput,
+  runs: readonly UsableRun[],
+): { readonly errors: readonly SharedError[]; readonly flags: readonly Flag[] } {
+  const flags: Flag[] = [];
+  const errors = (input.shared ?? []).flatMap((shared) => {
+    const unknown = shared.species.filter((name) => !input.species.includes(name));
+    if (unknown.length > 0)
+      flags.push({
+        code: "shared-species-unknown",
+        severity: "weakens",
+        message: `The shared error ${sourceOf(shared)} names ${inARow(unknown)}, which the law does not contain; that part was not counted. Correct the name, or add the species to the law.`,
+      });
+    if (!(shared.relative > 0) || !Number.isFinite(shared.relative)) return [];
+    const members = membersOf(shared, runs);
+    if (members !== null && members.length === 0) return [];
+    return [
+      {
+        source: sourceOf(shared),
+        species: [...new Set(shared.species)]
+          .map((name) => input.species.indexOf(name))
+          .filter((i) => i >= 0),
+        onRate: shared.onRate ?? false,
+        relative: shared.relative,
+        runs: members,
+      },
+    ];
+  });
+  return { errors, flags };
+}
+
+/** Change of ln v per unit of the relative error. */
+export function effectOf(error: SharedError, orders: readonly number[]): number {
+  return error.species.reduce((sum, i) => sum - (orders[i] ?? 0), error.onRate ? 1 : 0);
+}
+
+/** Standard deviation that the error brings to each run's ln v, with its sign. */
+export function loadingOf(error: SharedError, orders: readonly number[], rows: number): Float64Array {
+  const size = error.relative * effectOf(error, orders);
+  const column = new Float64Array(rows);
+  if (error.runs === null) column.fill(size);
+  else for (const j of error.runs) column[j] = size;
+  return column;
+}
+
+/** An averaged run shares an error if any of its readings does: it is one mixture. */
+function membersOf(shared: SharedUncertainty, runs: readonly UsableRun[]): readonly number[] | null {
+  if (shared.runs === undefined) return null;
+  const labels = new Set(shared.runs);
+  const members = runs.flatMap((run, j) => (run.readings.some((label) => labels.has(label)) ? [j] : []));
+  return members.length === runs.length ? null : members;
+}
+
+function sourceOf(shared: SharedUncertainty): string {
+  if (shared.source !== undefined && shared.source !== "") return shared.source;
+  const stock = shared.species.length > 0 ? `Stock of ${inARow(shared.species)}` : "";
+  const what = shared.onRate === true ? (stock === "" ? "Rate scale" : `${stock} and the rate scale`) : stock;
+  const named = what === "" ? "Shared error" : what;
+  return shared.runs === undefined ? named : `${named} (${inARow(shared.runs, 4)})`;
+}
