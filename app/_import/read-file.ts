@@ -1,3 +1,4 @@
+import { POINTS_PER_STUDY } from "@/db/limits";
 import { cellIssues } from "./cell-issues";
 import { type ColumnGuess, guessColumns } from "./columns";
 import type { Corrections } from "./corrections";
@@ -13,7 +14,7 @@ import { firstRows, type Row, type RowFormat, SEPARATOR_NAMES, type Separator } 
 import { guessSeparator } from "./separator";
 import { shownLines } from "./shown-lines";
 import { signalUnitOfTable, timeUnitOfTable } from "./table-units";
-import { MOST_POINTS, traceChecks } from "./trace-checks";
+import { traceChecks } from "./trace-checks";
 import { buildTraces } from "./traces";
 import { columnName, joined, lines, quoted } from "./words";
 
@@ -57,7 +58,7 @@ export function readFile(bytes: Uint8Array, context: StudyContext, corrections: 
     firstDataLine: frame.firstDataLine.value,
     lastDataLine: corrections.lastDataLine,
     corrections,
-    pointsLeft: Math.max(0, MOST_POINTS - context.points),
+    pointsLeft: Math.max(0, POINTS_PER_STUDY - context.points),
   });
   const recipes = frame.recipes.flatMap((row): RecipeLine[] => {
     const line = readRecipeRow(row, context.species, numberFormat);

@@ -26,6 +26,8 @@ export interface StudyContext {
   /** Species of the law: their starting concentrations belong to every run. */
   readonly species: readonly SpeciesContext[];
   readonly runs: readonly RunContext[];
+  /** Rows of the run sheet, those in the bin too: they count against what a study holds. */
+  readonly runRows: number;
   /** Points that the study's traces hold already. */
   readonly points: number;
 }

@@ -9,5 +9,6 @@ export const EMPTY_STUDY: StudyContext = {
     { id: "b", symbol: "B", name: "hydroxide", unit: "mmol/L" },
   ],
   runs: [],
+  runRows: 0,
   points: 0,
 };

@@ -1,10 +1,8 @@
+import { POINTS_PER_STUDY, RUNS_PER_STUDY } from "@/db/limits";
 import type { Issue, StudyContext, TraceReading } from "./reading";
 import { counted, grouped, joined } from "./words";
 
 /** What the traces as a whole say: too few readings, the same readings twice, more than a study holds. */
-
-export const MOST_RUNS = 2000;
-export const MOST_POINTS = 5_000_000;
 
 /** An initial rate needs three readings at least; a study's rule needs eight. */
 const FEWEST_READINGS = 3;
@@ -38,12 +36,12 @@ export function traceChecks(
     });
   }
   const newRuns = traces.filter((trace) => trace.runId === null).length;
-  if (context.runs.length + newRuns > MOST_RUNS) {
+  if (context.runRows + newRuns > RUNS_PER_STUDY) {
     add({
       code: "too-many-runs",
       severity: "blocks",
       place: "file",
-      message: `The file adds ${counted(newRuns, "run")} to the ${grouped(context.runs.length)} of this study; a study holds ${grouped(MOST_RUNS)}. Leave columns out, or start another study.`,
+      message: `The file adds ${counted(newRuns, "run")} to the ${grouped(context.runRows)} of this study; a study holds ${grouped(RUNS_PER_STUDY)}. Leave columns out, or start another study.`,
     });
   }
   if (tooManyPoints) {
@@ -51,7 +49,7 @@ export function traceChecks(
       code: "too-many-points",
       severity: "blocks",
       place: "file",
-      message: `With this file the study would hold more than ${grouped(MOST_POINTS)} readings, the most a study takes (${grouped(context.points)} are stored already). Thin the traces out, leave columns out, or start another study.`,
+      message: `With this file the study would hold more than ${grouped(POINTS_PER_STUDY)} readings, the most a study takes (${grouped(context.points)} are stored already). Thin the traces out, leave columns out, or start another study.`,
     });
   }
   const few = traces.filter((trace) => trace.timeSeconds.length < FEWEST_READINGS);

@@ -1,0 +1,21 @@
+import type { Corrections } from "@/app/_import/corrections";
+import { type ImportPreview, previewOf } from "@/app/_import/preview";
+import { readFile } from "@/app/_import/read-file";
+import type { Reading, StudyContext } from "@/app/_import/reading";
+
+/** What the pool does. Workers read bytes and compute; only the main thread touches the database. */
+
+export interface ReadTask {
+  readonly bytes: Uint8Array;
+  readonly context: StudyContext;
+  readonly corrections: Corrections;
+}
+
+export function readUpload({ bytes, context, corrections }: ReadTask): Reading {
+  return readFile(bytes, context, corrections);
+}
+
+/** As `readUpload`, thinned for the page here, so that millions of readings need not cross between threads. */
+export function previewUpload({ bytes, context, corrections }: ReadTask): ImportPreview {
+  return previewOf(readFile(bytes, context, corrections));
+}
