@@ -9,12 +9,19 @@ export interface NewAccount {
   readonly password: string;
 }
 
-/**
- * An account and its id; it belongs to no group yet. `email` must be new: the unique column throws otherwise.
- * Hashing takes tens of milliseconds, so call it outside a transaction.
- */
+/** An account and its id; it belongs to no group yet. `email` must be new: the unique column throws otherwise. */
 export async function createAccount(db: Handle, account: NewAccount): Promise<string> {
-  const passwordHash = await hashPassword(account.password);
+  // Hashing takes tens of milliseconds, which nobody who writes should wait for.
+  if (db.isTransaction) throw new Error("Hash the password first and use insertAccount in a transaction.");
+  return insertAccount(db, account, await hashPassword(account.password));
+}
+
+/** As `createAccount`, with a password that was hashed before: for a transaction. */
+export async function insertAccount(
+  db: Handle,
+  account: Omit<NewAccount, "password">,
+  passwordHash: string,
+): Promise<string> {
   const id = newIdentifier();
   await db
     .insertInto("account")

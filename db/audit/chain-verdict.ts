@@ -47,13 +47,23 @@ export async function verifyChainOfGroup(
     previous = entry.hash;
     seen ||= entry.hash === seenHead;
   }
-  for (const [studyId, entry] of latest) {
-    const present = await readSheet(db, studyId);
-    if (present === undefined || packSheet(present).sheetHash !== entry.sheet_hash) {
+  const studies = await db
+    .selectFrom("study")
+    .select(["id", "revision"])
+    .where("group_id", "=", groupId)
+    .execute();
+  for (const { id, revision } of studies) {
+    const entry = latest.get(id);
+    const present = await readSheet(db, id);
+    if (
+      entry?.revision !== revision ||
+      present === undefined ||
+      packSheet(present).sheetHash !== entry.sheet_hash
+    ) {
       return {
         status: "broken",
-        entry: entry.number,
-        message: `The tables of study ${studyId} differ from its latest revision.`,
+        entry: entry?.number ?? rows.length,
+        message: `The tables of study ${id} differ from its latest recorded revision.`,
       };
     }
   }
