@@ -1,5 +1,5 @@
 import { SeverityMark } from "@/app/_ui/check";
-import type { SetUpForm } from "./set-up-form";
+import type { SetUpForm } from "./set-up-form.schema";
 import { type Caution, usualCautions, writtenCautions } from "./usual-cautions";
 
 /** Cautions of a study: what the reaction gives away and what people wrote. Never instead of sheet, rules and supervision. */

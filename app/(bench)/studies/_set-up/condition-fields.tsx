@@ -2,7 +2,7 @@
 
 import { Field } from "@/app/_ui/field";
 import type { FormFault } from "./read-set-up-form";
-import type { SetUpForm } from "./set-up-form";
+import type { SetUpForm } from "./set-up-form.schema";
 
 type Conditions = Pick<
   SetUpForm,

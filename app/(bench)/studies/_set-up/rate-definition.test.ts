@@ -1,6 +1,7 @@
 import { describe, expect, it } from "vitest";
 import { rateDefinition } from "./rate-definition";
-import { emptySetUpForm, type SpeciesForm } from "./set-up-form";
+import { emptySetUpForm } from "./set-up-form";
+import type { SpeciesForm } from "./set-up-form.schema";
 import { usualCautions, writtenCautions } from "./usual-cautions";
 
 function species(symbol: string, stoichiometricNumber: number, more: Partial<SpeciesForm> = {}): SpeciesForm {

@@ -1,4 +1,4 @@
-import type { SetUpForm } from "./set-up-form";
+import type { SetUpForm } from "./set-up-form.schema";
 
 /**
  * The rate of reaction as an equation, v = (1/ν_i) d[i]/dt (IUPAC, constant volume), once per species that has a

@@ -6,7 +6,8 @@ import { Reaction } from "@/app/_ui/formula";
 import { parseReaction, type ReactionReading } from "@/app/_worksheet/reaction/parse-reaction";
 import { speciesOfReaction } from "@/app/_worksheet/reaction/reaction-species";
 import { reactionView } from "./reaction-view";
-import { type SpeciesForm, speciesAfterReaction } from "./set-up-form";
+import { speciesAfterReaction } from "./set-up-form";
+import type { SpeciesForm } from "./set-up-form.schema";
 
 /** The reaction as typed, typeset as it was understood, with its balance. The species table follows what is typed. */
 export function ReactionField({

@@ -1,7 +1,7 @@
 import type { ReactionTerm as DrawnTerm } from "@/app/_ui/formula";
 import { type Balance, balanceOf } from "@/app/_worksheet/reaction/balance";
 import type { Reaction, ReactionTerm } from "@/app/_worksheet/reaction/parse-reaction";
-import type { SpeciesForm } from "./set-up-form";
+import type { SpeciesForm } from "./set-up-form.schema";
 
 /** A reaction as it is typeset: terms with a note beneath, and the sentence that a screen reader says instead. */
 export interface ReactionView {

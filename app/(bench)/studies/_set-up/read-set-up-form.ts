@@ -2,7 +2,7 @@ import { parseReaction } from "@/app/_worksheet/reaction/parse-reaction";
 import { parseNumber } from "@/app/_worksheet/typed-number/parse-number";
 import { parseUncertain } from "@/app/_worksheet/typed-number/parse-uncertain";
 import type { SetUp } from "@/db/study/set-up.schema";
-import type { SetUpForm } from "./set-up-form";
+import type { SetUpForm } from "./set-up-form.schema";
 
 /** Names a box by its path in the form ("species.0.symbol") with the sentence that stands under it. */
 export interface FormFault {

@@ -3,13 +3,8 @@ import { parseReaction } from "@/app/_worksheet/reaction/parse-reaction";
 import { speciesOfReaction } from "@/app/_worksheet/reaction/reaction-species";
 import { sheet as sheetSchema } from "@/db/sheet/sheet.schema";
 import { readSetUpForm } from "./read-set-up-form";
-import {
-  emptySetUpForm,
-  type SetUpForm,
-  type SpeciesForm,
-  setUpFormOf,
-  speciesAfterReaction,
-} from "./set-up-form";
+import { emptySetUpForm, setUpFormOf, speciesAfterReaction } from "./set-up-form";
+import type { SetUpForm, SpeciesForm } from "./set-up-form.schema";
 
 const hydrolysis = "CH3CO2C6H4NO2 [A] + 2 OH- [B] -> CH3CO2- + NO2C6H4O- [P] + H2O";
 

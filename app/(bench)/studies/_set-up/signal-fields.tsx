@@ -3,7 +3,7 @@
 import { Choice, Field, Select } from "@/app/_ui/field";
 import { parseUncertain } from "@/app/_worksheet/typed-number/parse-uncertain";
 import type { FormFault } from "./read-set-up-form";
-import type { SetUpForm } from "./set-up-form";
+import type { SetUpForm } from "./set-up-form.schema";
 import { CONCENTRATION_UNITS } from "./species-table";
 
 type Signal = SetUpForm["signal"];

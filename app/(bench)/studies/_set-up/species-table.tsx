@@ -4,7 +4,7 @@ import { Button } from "@/app/_ui/button";
 import { Formula } from "@/app/_ui/formula";
 import { signed } from "./reaction-view";
 import type { FormFault } from "./read-set-up-form";
-import type { SpeciesForm } from "./set-up-form";
+import type { SpeciesForm } from "./set-up-form.schema";
 import "./species-table.css";
 
 const ROLES: readonly (readonly [SpeciesForm["role"], string])[] = [

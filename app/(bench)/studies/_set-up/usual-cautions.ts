@@ -1,4 +1,4 @@
-import type { SpeciesForm } from "./set-up-form";
+import type { SpeciesForm } from "./set-up-form.schema";
 
 /** A caution as it stands in the margin: whom it concerns and what to mind. */
 export interface Caution {

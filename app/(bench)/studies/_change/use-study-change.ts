@@ -1,0 +1,102 @@
+"use client";
+
+import { useCallback, useEffect, useMemo, useRef } from "react";
+import type { ActionResult } from "@/app/_server/action-result";
+import type { ChangedLaw } from "@/app/_server/study-change";
+import { useToast } from "@/app/_ui/toast";
+import { undoChange } from "./actions";
+
+/**
+ * Says what each change of a study did to the law and offers to take it back: in the toast, and by Ctrl+Z and
+ * Ctrl+Shift+Z on the page. Only changes made from this page are taken back by keys, latest first.
+ */
+export function useStudyChange(studyId: string) {
+  const toast = useToast();
+  const made = useRef<number[]>([]);
+  const undone = useRef<number[]>([]);
+
+  const refuse = useCallback((message: string) => toast({ text: message, severity: "blocks" }), [toast]);
+
+  const takeBack = useCallback(
+    async (revision: number): Promise<number | null> => {
+      const result = await undoChange({ studyId, revision });
+      if (!result.ok) {
+        refuse(result.message);
+        return null;
+      }
+      toast({ text: sentence(result.value) });
+      return result.value.revision;
+    },
+    [studyId, toast, refuse],
+  );
+
+  const undo = useCallback(
+    async (revision: number) => {
+      made.current = made.current.filter((other) => other !== revision);
+      const by = await takeBack(revision);
+      if (by !== null) undone.current.push(by);
+    },
+    [takeBack],
+  );
+
+  /** After a change went through. */
+  const announce = useCallback(
+    (value: ChangedLaw) => {
+      const { revision } = value;
+      if (revision === null) {
+        toast({ text: value.summary });
+        return;
+      }
+      made.current.push(revision);
+      undone.current = [];
+      toast({ text: sentence(value), undo: () => undo(revision) });
+    },
+    [toast, undo],
+  );
+
+  /** Announces a change, or says why it was refused. True where it went through. */
+  const report = useCallback(
+    (result: ActionResult<ChangedLaw>): boolean => {
+      if (result.ok) announce(result.value);
+      else refuse(result.message);
+      return result.ok;
+    },
+    [announce, refuse],
+  );
+
+  const undoLast = useCallback(async () => {
+    const revision = made.current.at(-1);
+    if (revision !== undefined) await undo(revision);
+  }, [undo]);
+
+  const redoLast = useCallback(async () => {
+    const revision = undone.current.pop();
+    if (revision === undefined) return;
+    const by = await takeBack(revision);
+    if (by !== null) made.current.push(by);
+  }, [takeBack]);
+
+  useEffect(() => {
+    function onKeyDown(event: KeyboardEvent) {
+      if (!(event.ctrlKey || event.metaKey) || event.altKey || event.key.toLowerCase() !== "z") return;
+      if (
+        event.target instanceof HTMLElement &&
+        event.target.closest("input, textarea, select, [role=dialog]")
+      )
+        return;
+      event.preventDefault();
+      void (event.shiftKey ? redoLast() : undoLast());
+    }
+    document.addEventListener("keydown", onKeyDown);
+    return () => document.removeEventListener("keydown", onKeyDown);
+  }, [undoLast, redoLast]);
+
+  return useMemo(
+    () => ({ announce, report, refuse, undoLast, redoLast }),
+    [announce, report, refuse, undoLast, redoLast],
+  );
+}
+
+function sentence({ summary, effect }: ChangedLaw): string {
+  return effect === "" ? summary : `${summary} ${effect}`;
+}
