@@ -1,0 +1,66 @@
+import type { z } from "zod";
+import type { Computed } from "./estimate.schema";
+import { computeInitialRate } from "./initial-rate/compute";
+import { initialRateRequest, initialRateResponse } from "./initial-rate/schema";
+import { computeRateLaw } from "./rate-law/compute";
+import { rateLawRequest, rateLawResponse } from "./rate-law/schema";
+
+/** One computation of the public API: what comes in, what goes out, and the face over the library between them. */
+export interface Computation<Request extends z.ZodType = z.ZodType, Response extends z.ZodType = z.ZodType> {
+  readonly name: string;
+  readonly summary: string;
+  readonly request: Request;
+  readonly response: Response;
+  readonly compute: (request: z.output<Request>) => Computed<z.input<Response>>;
+}
+
+function computation<Request extends z.ZodType, Response extends z.ZodType>(
+  entry: Computation<Request, Response>,
+): Computation<Request, Response> {
+  return entry;
+}
+
+export const initialRateComputation = computation({
+  name: "initial-rate",
+  summary: "Initial rate of one trace, with its window, its noise and the other estimators beside it.",
+  request: initialRateRequest,
+  response: initialRateResponse,
+  compute: computeInitialRate,
+});
+
+export const rateLawComputation = computation({
+  name: "rate-law",
+  summary: "Orders and rate constant from initial rates, with intervals and an uncertainty budget.",
+  request: rateLawRequest,
+  response: rateLawResponse,
+  compute: computeRateLaw,
+});
+
+/** A request checked against the schema of its computation, then computed; faults carry the path of their place. */
+export function runComputation<Request extends z.ZodType, Response extends z.ZodType>(
+  entry: Computation<Request, Response>,
+  body: unknown,
+): Computed<z.input<Response>> {
+  const parsed = entry.request.safeParse(body);
+  if (!parsed.success) {
+    return {
+      ok: false,
+      errors: parsed.error.issues.map((issue) => ({ path: issue.path.join("."), message: issue.message })),
+    };
+  }
+  return entry.compute(parsed.data);
+}
+
+/** By the last segment of their path. */
+export function computeByName(name: string, body: unknown): Computed<unknown> | undefined {
+  switch (name) {
+    case initialRateComputation.name:
+      return runComputation(initialRateComputation, body);
+    case rateLawComputation.name:
+      return runComputation(rateLawComputation, body);
+    default:
+      return undefined;
+  }
+}
+
+export const COMPUTATION_NAMES = [initialRateComputation.name, rateLawComputation.name];
