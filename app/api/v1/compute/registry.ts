@@ -1,4 +1,5 @@
 import type { z } from "zod";
+import { fieldMessages } from "@/app/_server/problem";
 import type { Computed } from "./estimate.schema";
 import { computeInitialRate } from "./initial-rate/compute";
 import { initialRateRequest, initialRateResponse } from "./initial-rate/schema";
@@ -42,12 +43,7 @@ export function runComputation<Request extends z.ZodType, Response extends z.Zod
   body: unknown,
 ): Computed<z.input<Response>> {
   const parsed = entry.request.safeParse(body);
-  if (!parsed.success) {
-    return {
-      ok: false,
-      errors: parsed.error.issues.map((issue) => ({ path: issue.path.join("."), message: issue.message })),
-    };
-  }
+  if (!parsed.success) return { ok: false, errors: fieldMessages(parsed.error) };
   return entry.compute(parsed.data);
 }
 
