@@ -72,7 +72,7 @@ function answerOf(fit: RateLawFit): RateLawResponse {
     rateConstant: plainConstant(fit.rateConstant),
     logRateConstant: plain(fit.logRateConstant),
     centre: { concentrations: { ...fit.centre.concentrations }, rate: plain(fit.centre.rate) },
-    covariance: fit.covariance.map((row) => [...row]),
+    covariance: fit.covariance?.map((row) => [...row]) ?? null,
     budget: fit.budget.map((line) => ({ source: line.source, relative: line.relative })),
     betweenRunStandardDeviation: fit.betweenRunStandardDeviation,
     degreesOfFreedom: fit.degreesOfFreedom,

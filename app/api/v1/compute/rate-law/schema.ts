@@ -61,8 +61,8 @@ export const rateLawResponse = z
     rateConstant,
     logRateConstant: estimate.meta({ description: "Natural logarithm of k in the given units." }),
     centre: z.object({ concentrations: z.record(z.string(), z.number()), rate: estimate }),
-    covariance: z.array(z.array(z.number())).meta({
-      description: "Of ln k, then the orders in the order of `species`. Empty where there is no uncertainty.",
+    covariance: z.array(z.array(z.number())).nullable().meta({
+      description: "Of ln k, then the orders in the order of `species`. Null where there is no uncertainty.",
     }),
     budget: z.array(budgetLine).meta({
       description: "Relative standard uncertainty of k by source; their squares add up to that of ln k.",
