@@ -3,6 +3,7 @@ import type { Sheet } from "@/db/sheet/sheet.schema";
 import { type TemporaryDatabase, temporaryDatabase } from "@/db/testing/temporary-database";
 import { writeTrace } from "@/db/trace/write-trace";
 import { exampleRun, exampleSheet } from "@/tests/example-sheet";
+import { standingLawView } from "./standing-law.view";
 
 /**
  * Exact pseudo-first-order traces of A + B → P at k = 12 L mol⁻¹ s⁻¹ with a ripple in place of noise: the initial
@@ -65,6 +66,31 @@ describe("analysis of a study", () => {
       expect(Math.abs(error)).toBeLessThan(4 * rate.standardError);
       expect(run.state).toBe("standing");
     }
+  });
+
+  test("orders and k come back from the traces, and the strip words them", async () => {
+    const { analyseStudy } = await freshly();
+    const analysis = await analyseStudy(temporary.db, sheet);
+    const { law } = analysis;
+    if (law.status !== "law") throw new Error(law.missing);
+    expect(law.fit.simpleOrders).toMatchObject({ orders: { A: 1, B: 1 }, reading: { A: "is", B: "is" } });
+    const [low, high] = law.fit.simpleOrders.rateConstant.interval ?? [0, 0];
+    expect(low).toBeLessThan(K);
+    expect(high).toBeGreaterThan(K);
+    const view = standingLawView(sheet, analysis, (station) => `/${station}`);
+    expect(view.law).toMatchObject({
+      status: "law",
+      expression: {
+        factors: [
+          { symbol: "A", order: "1" },
+          { symbol: "B", order: "1" },
+        ],
+      },
+      constant: { symbol: "*k*", unit: "L mol^-1 s^-1" },
+    });
+    expect(view.conditions).toMatch(
+      /^95 % confidence interval, 25\.0 °C, water\. A is species A, B is species B\.$/,
+    );
   });
 
   test("once rates are kept, neither a restart nor setting a run aside reads a trace again", async () => {

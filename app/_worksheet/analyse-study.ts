@@ -5,6 +5,7 @@ import {
   type StudyRuleChoice,
   surveyTrace,
 } from "kinetics-core/initial-rate";
+import { fitRateLaw } from "kinetics-core/rate-law";
 import type { Kysely } from "kysely";
 import { canonicalJson, sha256Of } from "@/db/canonical-json";
 import type { Database } from "@/db/database";
@@ -13,7 +14,7 @@ import type { LawAnalysis, RunAnalysis, RunRate, StudyAnalysis } from "./analysi
 import { signalSpan } from "./assemble";
 import { findChecks } from "./checks/find-checks";
 import { CORE_VERSION } from "./core-version";
-import type { CarryingRun } from "./law-input";
+import { type CarryingRun, lawInput } from "./law-input";
 import { missingForLaw } from "./missing-law";
 import { lawSpecies, presentRuns } from "./present-runs";
 import { RecentResults } from "./recent-results";
@@ -89,11 +90,12 @@ function canCarry(sheet: Sheet, run: SheetRun, rate: RunRate): boolean {
 }
 
 function findLaw(sheet: Sheet, carrying: readonly CarryingRun[]): LawAnalysis {
-  return {
-    status: "no-law",
-    missing: missingForLaw(sheet, carrying, null) ?? "Runs with a rate are needed.",
-    fit: null,
-  };
+  const fittable = lawSpecies(sheet).length > 0 && carrying.length > 0;
+  const result = fittable ? fitRateLaw(lawInput(sheet, carrying)) : null;
+  const missing = missingForLaw(sheet, carrying, result);
+  const fit = result?.status === "fitted" ? result : null;
+  if (missing === null && fit !== null) return { status: "law", fit };
+  return { status: "no-law", missing: missing ?? "Runs with a rate are needed.", fit };
 }
 
 async function findRule(

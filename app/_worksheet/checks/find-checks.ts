@@ -2,8 +2,9 @@ import type { StudyRuleChoice } from "kinetics-core/initial-rate";
 import type { Sheet } from "@/db/sheet/sheet.schema";
 import type { Check, CheckSeverity, LawAnalysis, RunAnalysis } from "../analysis";
 import type { CarryingRun } from "../law-input";
+import { designChecks } from "./design-checks";
+import { lawChecks } from "./law-checks";
 import { rateChecks } from "./rate-checks";
-import { replicateChecks } from "./replicate-checks";
 import { setUpChecks } from "./set-up-checks";
 import { temperatureChecks } from "./temperature-checks";
 
@@ -22,7 +23,8 @@ export function findChecks(checked: Checked): readonly Check[] {
     ...setUpChecks(checked),
     ...temperatureChecks(checked),
     ...rateChecks(checked),
-    ...replicateChecks(checked),
+    ...designChecks(checked),
+    ...lawChecks(checked),
   ].sort((a, b) => weight(a) - weight(b));
 }
 
