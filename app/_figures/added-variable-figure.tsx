@@ -1,11 +1,12 @@
 import type { ReactNode } from "react";
-import { type AxisChoice, Chart, type ChartArea, type ChartSize, layOut, pointsOf } from "./chart";
+import { type AxisChoice, Chart, type ChartArea, type ChartSize, Clipped, layOut } from "./chart";
 import { Figure, PHONE_WIDTH } from "./figure";
 import type { AddedVariableView } from "./figure-view";
 import { InteractiveFigure } from "./interactive-figure";
 import { MarkShape } from "./mark-shape";
-import { placeNames } from "./name-places";
+import { type Box, box, boxesAlong, placeNames } from "./name-places";
 import { plotOfAddedVariable } from "./plot-view";
+import { RunName } from "./run-name";
 import { SvgProse } from "./svg-prose";
 import { logDomain } from "./ticks";
 
@@ -52,12 +53,13 @@ function AddedVariable({ view, size, label }: { view: AddedVariableView; size: C
     log(view.points.map((point) => point.y)),
   );
   const spread = spreadHeld(view, area);
+  const lines = linesOf(view, area);
   const named = view.points.filter((point) => !point.held);
   const marks = named.map((point) => ({ x: area.x(point.x), y: area.y(point.y) }));
   const names = placeNames(
     marks,
     named.map((point) => point.label),
-    spread.places,
+    { spots: spread.places, boxes: [...lines.flatMap(obstacles), noteBox(view.note, area)] },
     area,
   );
   return (
@@ -67,7 +69,7 @@ function AddedVariable({ view, size, label }: { view: AddedVariableView; size: C
       xAxis={view.x}
       yAxis={view.y}
       label={label}
-      below={<Lines view={view} area={area} />}
+      below={<Lines band={view.band} lines={lines} area={area} />}
     >
       {spread.bracket !== "" && <path d={spread.bracket} fill="none" stroke="var(--ctl)" strokeWidth="1.1" />}
       {spread.places.map((place) => (
@@ -77,24 +79,13 @@ function AddedVariable({ view, size, label }: { view: AddedVariableView; size: C
         </g>
       ))}
       {named.map((point, index) => (
-        <g key={point.label}>
-          <MarkShape
-            mark={point.mark}
-            setAside={point.setAside}
-            x={marks[index]?.x ?? 0}
-            y={marks[index]?.y ?? 0}
-            scale={0.82}
-          />
-          <text
-            className="name"
-            x={names[index]?.x}
-            y={names[index]?.y}
-            textAnchor={names[index]?.anchor}
-            style={point.setAside ? { textDecoration: "line-through" } : undefined}
-          >
-            {point.label}
-          </text>
-        </g>
+        <RunName
+          key={point.label}
+          run={point}
+          x={marks[index]?.x ?? 0}
+          y={marks[index]?.y ?? 0}
+          name={names[index]}
+        />
       ))}
       <text className="in-law" x={area.left + 12} y={area.top + 18}>
         <SvgProse text={view.note} />
@@ -103,37 +94,70 @@ function AddedVariable({ view, size, label }: { view: AddedVariableView; size: C
   );
 }
 
+/** A straight line of the log-log plot in pixels; a guide carries its name. */
+interface PlacedLine {
+  readonly from: Place;
+  readonly to: Place;
+  readonly guide: { readonly label: string; readonly x: number; readonly y: number } | null;
+}
+
+function linesOf({ line, guides }: AddedVariableView, area: ChartArea): readonly PlacedLine[] {
+  if (line === null) return [];
+  const between = (slope: number) => {
+    const [from, to] = powerLine(slope, line.through, area);
+    return { from: { x: area.x(from.x), y: area.y(from.y) }, to: { x: area.x(to.x), y: area.y(to.y) } };
+  };
+  return [
+    ...guides.map((guide) => {
+      const ends = between(guide.slope);
+      return { ...ends, guide: { label: guide.label, x: ends.to.x - 6, y: ends.to.y + 15 } };
+    }),
+    { ...between(line.slope), guide: null },
+  ];
+}
+
+/** What names keep off: the fitted line, and the guides' own names. */
+function obstacles({ from, to, guide }: PlacedLine): Box[] {
+  if (guide === null) return boxesAlong(from, to);
+  const width = guide.label.length * 6.6;
+  return [box(guide.x - width, guide.y - 11, width, 14)];
+}
+
+function noteBox(note: string, area: ChartArea): Box {
+  return box(area.left + 12, area.top + 4, note.length * 7.2, 18);
+}
+
 /** Band, fitted line and the guides of neighbouring simple orders, each named where it leaves the plot. */
-function Lines({ view, area }: { view: AddedVariableView; area: ChartArea }) {
-  const band = [
-    ...view.band.map((at) => `${area.x(at.x)},${area.y(at.low)}`),
-    ...[...view.band].reverse().map((at) => `${area.x(at.x)},${area.y(at.high)}`),
+function Lines({
+  band,
+  lines,
+  area,
+}: {
+  band: AddedVariableView["band"];
+  lines: readonly PlacedLine[];
+  area: ChartArea;
+}) {
+  const edge = [
+    ...band.map((at) => `${area.x(at.x)},${area.y(at.low)}`),
+    ...[...band].reverse().map((at) => `${area.x(at.x)},${area.y(at.high)}`),
   ].join(" ");
-  const { line } = view;
   return (
     <>
-      {view.band.length > 1 && <polygon className="band" points={band} />}
-      {line !== null &&
-        view.guides.map((guide) => {
-          const [from, to] = powerLine(guide.slope, line.through, area);
-          const rising = guide.slope > line.slope;
-          return (
-            <g key={guide.label}>
-              <polyline className="guide" points={pointsOf(area, [from.x, to.x], [from.y, to.y])} />
-              <text x={area.x(to.x) - 6} y={area.y(to.y) + (rising ? 14 : 16)} textAnchor="end">
-                {guide.label}
-              </text>
-            </g>
-          );
-        })}
-      {line !== null && (
-        <polyline
-          className="fit"
-          points={powerLine(line.slope, line.through, area)
-            .map((end) => `${area.x(end.x)},${area.y(end.y)}`)
-            .join(" ")}
-        />
+      {band.length > 1 && (
+        <Clipped area={area}>
+          <polygon className="band" points={edge} />
+        </Clipped>
       )}
+      {lines.map(({ from, to, guide }) => (
+        <g key={guide?.label ?? "fit"}>
+          <path className={guide === null ? "fit" : "guide"} d={`M${from.x} ${from.y}L${to.x} ${to.y}`} />
+          {guide !== null && (
+            <text x={guide.x} y={guide.y} textAnchor="end">
+              {guide.label}
+            </text>
+          )}
+        </g>
+      ))}
     </>
   );
 }

@@ -40,7 +40,7 @@ export function layOut(
 ): ChartArea {
   const top = room.top ?? 26;
   const bottom = size.height - (room.bottom ?? 40);
-  const yTicks = ticksOf(y, Math.max(2, Math.round((bottom - top) / 42)));
+  const yTicks = ticksOf(y, Math.max(4, Math.round((bottom - top) / 42)));
   const widest = Math.max(1, ...yTicks.major.map((tick) => tick.text.length));
   const left = room.left ?? Math.max(34, 14 + widest * 6.6);
   const right = size.width - (room.right ?? 14);
@@ -68,12 +68,14 @@ function ticksOf({ kind, domain: [low, high] }: AxisChoice, count: number): Axis
   };
 }
 
+const UNIT_SPACE = "\u2005";
+
 /** "[P] / µmol L^-1", with the power of ten that the ticks leave out: quantity divided by unit. */
 export function axisTitle(axis: AxisView, scale: Scale): string {
   const power = axisPower(scale.domain[0], scale.domain[1]);
-  const unit = [power === 0 ? "" : `10^${power}`, axis.unit.replaceAll(" ", "\u2009")]
+  const unit = [power === 0 ? "" : `10^${power}`, axis.unit.replaceAll(" ", UNIT_SPACE)]
     .filter(Boolean)
-    .join("\u2009");
+    .join(UNIT_SPACE);
   return unit === "" ? axis.quantity : `${axis.quantity} / ${unit}`;
 }
 
@@ -158,6 +160,26 @@ export function Axes({ area, xAxis, yAxis }: { area: ChartArea; xAxis: AxisView 
         </text>
       )}
     </g>
+  );
+}
+
+/** Shows of its children what lies inside the plot. */
+export function Clipped({ area, children }: { area: ChartArea; children: ReactNode }) {
+  const { left, top } = area;
+  const width = area.right - left;
+  const height = area.bottom - top;
+  return (
+    <svg
+      x={left}
+      y={top}
+      width={width}
+      height={height}
+      viewBox={`${left} ${top} ${width} ${height}`}
+      overflow="hidden"
+      aria-hidden="true"
+    >
+      {children}
+    </svg>
   );
 }
 

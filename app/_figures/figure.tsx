@@ -21,8 +21,12 @@ export function Figure({
 }) {
   return (
     <figure className="figure">
-      <div className="for-desk">{draw(desk)}</div>
-      <div className="for-phone">{draw(phone)}</div>
+      <div className="for-desk" style={{ maxWidth: desk.width * LARGEST_SCALE }}>
+        {draw(desk)}
+      </div>
+      <div className="for-phone" style={{ maxWidth: phone.width * LARGEST_SCALE }}>
+        {draw(phone)}
+      </div>
       {(caption !== undefined || number !== undefined) && (
         <figcaption>
           {number !== undefined && <b>Figure {number}. </b>}
@@ -32,6 +36,9 @@ export function Figure({
     </figure>
   );
 }
+
+/** A wider column leaves paper free rather than swelling lines and letters. */
+const LARGEST_SCALE = 1.2;
 
 /** Width of a drawing on a phone of 390 px with 16 px on both sides. */
 export const PHONE_WIDTH = 358;

@@ -1,6 +1,6 @@
 import type { ChartArea } from "./chart";
 
-interface Spot {
+export interface Spot {
   readonly x: number;
   readonly y: number;
 }
@@ -9,7 +9,7 @@ export interface NamePlace extends Spot {
   readonly anchor: "start" | "middle" | "end";
 }
 
-interface Box {
+export interface Box {
   readonly left: number;
   readonly right: number;
   readonly top: number;
@@ -23,10 +23,12 @@ interface Box {
 export function placeNames(
   marks: readonly Spot[],
   names: readonly string[],
-  others: readonly Spot[],
+  /** What else a name should not cover: other marks' middles, and boxes of text or line. */
+  others: { readonly spots: readonly Spot[]; readonly boxes?: readonly Box[] },
   area: Pick<ChartArea, "left" | "right" | "top" | "bottom">,
 ): readonly NamePlace[] {
-  const taken: Box[] = [...marks, ...others].map(({ x, y }) => box(x - 6, y - 6, 12, 12));
+  const taken: Box[] = [...marks, ...others.spots].map(({ x, y }) => box(x - 6, y - 6, 12, 12));
+  taken.push(...(others.boxes ?? []));
   return marks.map((mark, index) => {
     const width = (names[index]?.length ?? 0) * 7.2;
     let best: { place: NamePlace; frame: Box; cost: number } | undefined;
@@ -69,7 +71,7 @@ function around({ x, y }: Spot): NamePlace[] {
   ];
 }
 
-function box(left: number, top: number, width: number, height: number): Box {
+export function box(left: number, top: number, width: number, height: number): Box {
   return { left, right: left + width, top, bottom: top + height };
 }
 
@@ -77,4 +79,12 @@ function overlap(a: Box, b: Box): number {
   const across = Math.min(a.right, b.right) - Math.max(a.left, b.left);
   const down = Math.min(a.bottom, b.bottom) - Math.max(a.top, b.top);
   return across > 0 && down > 0 ? across * down : 0;
+}
+
+/** A straight line as a row of small boxes, so that names keep off it. */
+export function boxesAlong(from: Spot, to: Spot): Box[] {
+  const steps = Math.max(1, Math.round(Math.hypot(to.x - from.x, to.y - from.y) / 6));
+  return Array.from({ length: steps + 1 }, (_, i) =>
+    box(from.x + ((to.x - from.x) * i) / steps - 2, from.y + ((to.y - from.y) * i) / steps - 2, 4, 4),
+  );
 }

@@ -2,8 +2,8 @@ import type { ReactNode } from "react";
 import { type AxisChoice, Chart, type ChartSize, layOut } from "./chart";
 import { Figure, PHONE_WIDTH } from "./figure";
 import type { MarkedPoint, RunMapView } from "./figure-view";
-import { MarkShape } from "./mark-shape";
 import { placeNames } from "./name-places";
+import { RunName } from "./run-name";
 import { linearDomain, logDomain } from "./ticks";
 
 /** Where the runs lie in the space of two starting concentrations, and where the next one would help most. */
@@ -45,7 +45,7 @@ function RunMap({ view, size, label }: { view: RunMapView; size: ChartSize; labe
   const names = placeNames(
     marks,
     marks.map((mark) => mark.point.label),
-    next === null ? [] : [next],
+    { spots: next === null ? [] : [next] },
     { ...area, right: size.width },
   );
   return (
@@ -64,18 +64,7 @@ function RunMap({ view, size, label }: { view: RunMapView; size: ChartSize; labe
         </g>
       )}
       {marks.map(({ point, x, y }, index) => (
-        <g key={point.label}>
-          <MarkShape mark={point.mark} setAside={point.setAside} x={x} y={y} scale={0.82} />
-          <text
-            className="name"
-            x={names[index]?.x}
-            y={names[index]?.y}
-            textAnchor={names[index]?.anchor}
-            style={point.setAside ? { fill: "var(--ink-2)", textDecoration: "line-through" } : undefined}
-          >
-            {point.label}
-          </text>
-        </g>
+        <RunName key={point.label} run={point} x={x} y={y} name={names[index]} />
       ))}
     </Chart>
   );

@@ -44,8 +44,9 @@ export function linearDomain(values: readonly number[], air = 0.06): readonly [n
   if (least === most)
     return least === 0 ? [-1, 1] : [least - Math.abs(least) * 0.1, most + Math.abs(most) * 0.1];
   const span = most - least;
-  const low = least >= 0 && least < 0.35 * most ? 0 : least - span * air;
-  const high = most <= 0 && most > 0.35 * least ? 0 : most + span * air;
+  // Noise about zero lets the axis reach to the outermost reading and no further.
+  const low = least < 0.35 * most && least > -0.05 * most ? Math.min(0, least) : least - span * air;
+  const high = most > 0.35 * least && most < -0.05 * least ? Math.max(0, most) : most + span * air;
   return [low, high];
 }
 

@@ -38,7 +38,7 @@ export function WindowFigure({
 }) {
   const { ref, width } = useWidth<HTMLDivElement>(820);
   const drawing = useRef<SVGSVGElement>(null);
-  const area = areaOf(view, width, height);
+  const { area, residualArea } = areasOf(view, width, height);
   const timeAt = (clientX: number) => {
     const box = drawing.current?.getBoundingClientRect();
     if (box === undefined || box.width === 0) return view.window[0];
@@ -51,20 +51,14 @@ export function WindowFigure({
       <div ref={ref} className="relative">
         <svg viewBox={`0 0 ${width} ${total}`} className="chart" role="img" aria-label={label}>
           <Paper area={area} />
-          <rect
-            className="window"
-            x={area.x(choice.from)}
-            y={area.top}
-            width={Math.max(0, area.x(choice.to) - area.x(choice.from))}
-            height={area.bottom - area.top}
-          />
+          <WindowShade area={area} choice={choice} />
           <Axes area={area} xAxis={view.x} yAxis={view.y} />
           <Readings view={view} area={area} choice={choice} />
           <Fit view={view} area={area} choice={choice} />
           <Note view={view} area={area} choice={choice} />
           {view.residuals !== null && (
             <g transform={`translate(0 ${height})`}>
-              <Residuals view={view} width={width} left={area.left} choice={choice} />
+              <Residuals residuals={view.residuals} unit={view.y.unit} area={residualArea} choice={choice} />
             </g>
           )}
         </svg>
@@ -97,17 +91,31 @@ export function WindowFigure({
   );
 }
 
-function areaOf(view: WindowFigureView, width: number, height: number): ChartArea {
+/** Both plots share one time axis and, so that they line up, one left edge. */
+function areasOf(view: WindowFigureView, width: number, height: number) {
   const [first, last] = extent(view.time);
-  return layOut(
-    { width, height },
-    {
-      kind: "linear",
-      domain: [Math.min(first, view.slope?.x ?? first, 0), last === first ? first + 1 : last],
-    },
-    { kind: "linear", domain: linearDomain([...extent(view.signal), view.slope?.y ?? view.signal[0] ?? 0]) },
-    { top: PLOT_TOP },
+  const time = {
+    kind: "linear",
+    domain: [Math.min(first, view.slope?.x ?? first, 0), last === first ? first + 1 : last],
+  } as const;
+  const signal = {
+    kind: "linear",
+    domain: linearDomain([...extent(view.signal), view.slope?.y ?? view.signal[0] ?? 0]),
+  } as const;
+  const [low, high] = extent(view.residuals?.y ?? [-1, 1]);
+  const reach = Math.max(Math.abs(low), Math.abs(high)) * 1.15 || 1;
+  const residual = { kind: "linear", domain: [-reach, reach] } as const;
+  const upper = { width, height };
+  const lower = { width, height: RESIDUAL_HEIGHT };
+  const below = { top: 24, bottom: 10 };
+  const left = Math.max(
+    layOut(upper, time, signal).left,
+    view.residuals === null ? 0 : layOut(lower, time, residual, below).left,
   );
+  return {
+    area: layOut(upper, time, signal, { top: PLOT_TOP, left }),
+    residualArea: layOut(lower, time, residual, { ...below, left }),
+  };
 }
 
 /** Every reading as a dot, in ink inside the window; long traces thinned to what the width can show. */
@@ -187,30 +195,16 @@ function Note({ view, area, choice }: { view: WindowFigureView; area: ChartArea;
 
 /** Signal minus curve as stems, on the trace's own time axis. */
 function Residuals({
-  view,
-  width,
-  left,
+  residuals,
+  unit,
+  area,
   choice,
 }: {
-  view: WindowFigureView;
-  width: number;
-  left: number;
+  residuals: { readonly x: readonly number[]; readonly y: readonly number[] };
+  unit: string;
+  area: ChartArea;
   choice: WindowChoice;
 }) {
-  const { residuals } = view;
-  if (residuals === null) return null;
-  const [low, high] = extent(residuals.y);
-  const reach = Math.max(Math.abs(low), Math.abs(high)) * 1.15 || 1;
-  const [first, last] = extent(view.time);
-  const area = layOut(
-    { width, height: RESIDUAL_HEIGHT },
-    {
-      kind: "linear",
-      domain: [Math.min(first, view.slope?.x ?? first, 0), last === first ? first + 1 : last],
-    },
-    { kind: "linear", domain: [-reach, reach] },
-    { top: 24, bottom: 10, left },
-  );
   const thin = decimate(residuals.x, residuals.y, Math.round((area.right - area.left) / 3));
   const zero = area.y(0);
   const stems = thin.x.map((x, i) => `M${area.x(x)} ${zero}V${area.y(thin.y[i] ?? 0)}`).join("");
@@ -218,17 +212,23 @@ function Residuals({
   return (
     <>
       <Paper area={area} />
-      <rect
-        className="window"
-        x={area.x(choice.from)}
-        y={area.top}
-        width={Math.max(0, area.x(choice.to) - area.x(choice.from))}
-        height={area.bottom - area.top}
-      />
-      <Axes area={area} xAxis={null} yAxis={{ quantity: "residual", unit: view.y.unit }} />
-      <path className="axis" d={`M${left} ${zero}H${area.right}`} />
+      <WindowShade area={area} choice={choice} />
+      <Axes area={area} xAxis={null} yAxis={{ quantity: "residual", unit }} />
+      <path className="axis" d={`M${area.left} ${zero}H${area.right}`} />
       <path d={stems} stroke="var(--ink)" fill="none" />
       <path d={heads} stroke="var(--ink)" strokeWidth="3.4" strokeLinecap="round" fill="none" />
     </>
+  );
+}
+
+function WindowShade({ area, choice }: { area: ChartArea; choice: WindowChoice }) {
+  return (
+    <rect
+      className="window"
+      x={area.x(choice.from)}
+      y={area.top}
+      width={Math.max(0, area.x(choice.to) - area.x(choice.from))}
+      height={area.bottom - area.top}
+    />
   );
 }
