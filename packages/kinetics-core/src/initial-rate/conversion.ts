@@ -13,7 +13,7 @@ export interface Progress {
 
 /**
  * The signal at mixing comes from a quadratic over the readings up to 45 % conversion, which in turn are found
- * from a first guess (mean of the first three readings). `readings`: at least 5.
+ * from a first guess (mean of the first three readings). `readings`: at least 3.
  */
 export function progressOf(readings: Readings, span: number): Progress {
   const { time, signal } = readings;

@@ -25,9 +25,11 @@ export function estimateInitialRate(trace: Trace, options: InitialRateOptions = 
   if ("status" in scope) return scope;
   const pairs = pairsIn(prepared, scope);
   const named = namedBy(options);
+  // A window by hand leaves the study's rule altogether: its pair was chosen for another window.
+  const rule = options.window ? undefined : options.rule;
   const selected = named
     ? selectByName(prepared, scope, pairs, named)
-    : selectAutomatically(prepared, scope, pairs, options.rule);
+    : selectAutomatically(prepared, scope, pairs, rule);
   if (selected.status === "too-few-points") return tooFew(selected);
 
   const { slope, standardError, shown, pair } = selected;
@@ -72,7 +74,8 @@ function alternativesOf(
   const freePairs = ruled ? pairsIn(prepared, free) : pairs;
   return SIDE_BY_SIDE.flatMap((named) => {
     const selected = selectByName(prepared, free, freePairs, named);
-    return selected.status === "selected" ? [slopeEstimate(prepared, selected.shown)] : [];
+    if (selected.status !== "selected") return [];
+    return [{ ...slopeEstimate(prepared, selected.shown), standardError: selected.standardError }];
   });
 }
 

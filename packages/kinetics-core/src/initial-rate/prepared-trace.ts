@@ -33,7 +33,7 @@ export function prepareTrace(
     status: "prepared",
     readings,
     noise: noiseOf(readings),
-    progress: known && got > 4 ? progressOf(readings, span) : null,
+    progress: known ? progressOf(readings, span) : null,
     scratch: new Float64Array(got * 5),
   };
 }

@@ -96,17 +96,17 @@ export function noiseOf(readings: Readings): NoiseModel {
     largest = Math.max(largest, Math.abs(value));
   }
 
-  const lagOne = squares > 0 ? lagged / squares : 0;
-  const estimated = (n * lagOne + coefficients) / (n - coefficients - 2);
-  const autocorrelation =
-    short || squares === 0 ? 0 : Math.min(Math.max(estimated, 0), LARGEST_AUTOCORRELATION);
+  const roundingError = (Number.EPSILON / 2) * (largest || 1);
+  // What is left of exact numbers is the rounding of this very fit, and no noise to be correlated.
+  const exact = squares <= n * (ROUNDINGS * roundingError) ** 2;
+  const estimated = ((n * lagged) / squares + coefficients) / (n - coefficients - 2);
+  const autocorrelation = short || exact ? 0 : Math.min(Math.max(estimated, 0), LARGEST_AUTOCORRELATION);
   const steps = stepCorrelations(time, autocorrelation);
   let taken = 0;
   for (let j = 0; j < coefficients; j++) {
     taken += quadraticForm(basis.columns.subarray(j * n, (j + 1) * n), steps, 0);
   }
   const effectivePoints = (n * (1 - autocorrelation)) / (1 + autocorrelation);
-  const roundingError = (Number.EPSILON / 2) * (largest || 1);
   return {
     standardDeviation: Math.max(Math.sqrt(squares / (n - taken)), roundingError),
     autocorrelation,
@@ -119,3 +119,6 @@ export function noiseOf(readings: Readings): NoiseModel {
     roundingError,
   };
 }
+
+/** A residual of a fit with seven terms collects about this many roundings. */
+const ROUNDINGS = 8;
