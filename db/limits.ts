@@ -1,5 +1,6 @@
 /** How much a study and a group may hold, each with the sentence that says so and the way out. */
 export const RUNS_PER_STUDY = 2_000;
+export const SPECIES_PER_STUDY = 24;
 export const POINTS_PER_STUDY = 5_000_000;
 /** Raw files and traces of all studies of a group together. */
 export const BYTES_PER_GROUP = 5 * 1024 ** 3;
@@ -8,6 +9,10 @@ export const BYTES_PER_FILE = 50 * 1024 ** 2;
 export const limitSentences = {
   runs: (got: number) =>
     `A study holds at most ${grouped(RUNS_PER_STUDY)} runs and would have ${grouped(got)}. Put the rest into a second study.`,
+  files: (got: number) =>
+    `A study keeps at most ${grouped(RUNS_PER_STUDY)} files and would have ${grouped(got)}. Put the rest into a second study.`,
+  species: (got: number) =>
+    `A study has at most ${SPECIES_PER_STUDY} species and would have ${got}. Leave out those that neither react nor count for the ionic strength.`,
   points: (got: number) =>
     `A study holds at most ${grouped(POINTS_PER_STUDY)} points and would have ${grouped(got)}. Import every second or tenth reading, or put the rest into a second study.`,
   group: (got: number) =>

@@ -1,5 +1,6 @@
-import { limitSentences, POINTS_PER_STUDY, RUNS_PER_STUDY } from "../limits";
+import { limitSentences, POINTS_PER_STUDY, RUNS_PER_STUDY, SPECIES_PER_STUDY } from "../limits";
 import type { Sheet } from "./sheet.schema";
+import type { SheetRows } from "./sheet-rows";
 
 /**
  * What stands against keeping this sheet, as a sentence with the way out; undefined where nothing does. The schema
@@ -7,6 +8,15 @@ import type { Sheet } from "./sheet.schema";
  */
 export function sheetProblem(sheet: Sheet): string | undefined {
   return speciesProblem(sheet) ?? runProblem(sheet);
+}
+
+/** The same for numbers of rows, which the schema would only throw at. The bin counts: its runs are kept. */
+export function rowCountProblem(rows: SheetRows): string | undefined {
+  const count = (section: string) => [...rows.keys()].filter((key) => key.startsWith(`${section}/`)).length;
+  if (count("runs") > RUNS_PER_STUDY) return limitSentences.runs(count("runs"));
+  if (count("uploads") > RUNS_PER_STUDY) return limitSentences.files(count("uploads"));
+  if (count("species") > SPECIES_PER_STUDY) return limitSentences.species(count("species"));
+  return undefined;
 }
 
 function speciesProblem({ species, followedSpeciesId }: Sheet): string | undefined {
@@ -46,7 +56,6 @@ function runProblem({ runs }: Sheet): string | undefined {
     }
     labels.add(run.label);
   }
-  if (runs.length > RUNS_PER_STUDY) return limitSentences.runs(runs.length);
   if (points > POINTS_PER_STUDY) return limitSentences.points(points);
   return undefined;
 }

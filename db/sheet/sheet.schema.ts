@@ -1,4 +1,5 @@
 import { z } from "zod";
+import { RUNS_PER_STUDY, SPECIES_PER_STUDY } from "../limits";
 
 /**
  * The sheet: everything of a study but trace bytes, which it names by SHA-256. One shape with seven uses: the
@@ -111,14 +112,14 @@ export const sheet = z.object({
     timeUnit,
     hazards: z.string().max(4000),
   }),
-  species: z.array(sheetSpecies).max(24),
+  species: z.array(sheetSpecies).max(SPECIES_PER_STUDY),
   followedSpeciesId: identifier.nullable(),
   conditions,
   signal: signalModel.nullable(),
   /** Order of each species of the law: null is free, a number is held. A species not listed is free. */
   orders: z.record(identifier, z.number().min(-4).max(6).nullable()),
-  runs: z.array(sheetRun).max(2000),
-  uploads: z.array(sheetUpload).max(2000),
+  runs: z.array(sheetRun).max(RUNS_PER_STUDY),
+  uploads: z.array(sheetUpload).max(RUNS_PER_STUDY),
 });
 
 export type Sheet = z.infer<typeof sheet>;

@@ -6,9 +6,10 @@ import { readRevisionSheet } from "../revision/revision.queries";
 import { readSheet } from "../sheet/read-sheet";
 import { rowsInWords } from "../sheet/row-words";
 import type { Sheet } from "../sheet/sheet.schema";
-import { sheetProblem } from "../sheet/sheet-problem";
+import { rowCountProblem, sheetProblem } from "../sheet/sheet-problem";
 import { rowsOf, type SheetRows, sameRow, sheetOf, touchedRows } from "../sheet/sheet-rows";
 import { writeSheet } from "../sheet/write-sheet";
+import { whoChanged } from "./who-changed";
 
 /**
  * The one door through which a study changes: role, conflict, limits, snapshot, chain and audit in one transaction.
@@ -94,13 +95,17 @@ export async function changeStudyIn(
   const clashing = clashes(touched, rowsOf(seen), rowsOf(wanted), rowsOf(current));
   if (clashing.length > 0) {
     const rows = rowsInWords(clashing, current, seen);
+    const who = await whoChanged(trx, actor, { studyId, base }, clashing);
     return {
       status: "conflict",
-      message: `Somebody else changed ${rows} since you opened this page. Nothing of yours was kept; look at the new state and repeat your change.`,
+      message: `Since you opened this page, ${rows} ${clashing.length === 1 ? "was" : "were"} changed by ${who}. Your change was not made; look at the new state and repeat it.`,
     };
   }
 
-  const merged = sheetOf(current.version, overlay(rowsOf(current), rowsOf(wanted), touched, revision));
+  const rows = overlay(rowsOf(current), rowsOf(wanted), touched, revision);
+  const tooMany = rowCountProblem(rows);
+  if (tooMany !== undefined) return { status: "refused", message: tooMany };
+  const merged = sheetOf(current.version, rows);
   if (touchedRows(rowsOf(current), rowsOf(merged)).size === 0) return { status: "unchanged" };
   const problem = sheetProblem(merged);
   if (problem !== undefined) return { status: "refused", message: problem };

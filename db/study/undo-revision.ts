@@ -1,6 +1,6 @@
 import type { Kysely, Transaction } from "kysely";
 import type { Database } from "../database";
-import type { Actor } from "../member/actor";
+import { type Actor, mayActAs } from "../member/actor";
 import { readRevisionSheet } from "../revision/revision.queries";
 import { readSheet } from "../sheet/read-sheet";
 import { rowsInWords } from "../sheet/row-words";
@@ -32,6 +32,7 @@ async function undoIn(
     .where("group_id", "=", actor.groupId)
     .executeTakeFirst();
   if (study === undefined) return { status: "not-found" };
+  if (!mayActAs(actor.role, "analyst")) return { status: "forbidden" };
   const after = await readRevisionSheet(trx, studyId, revision);
   if (after === undefined) return { status: "not-found" };
   const before = await readRevisionSheet(trx, studyId, revision - 1);
