@@ -4,14 +4,16 @@ import Plotly from "plotly.js-dist-min";
 import createPlot from "react-plotly.js/factory";
 import { resolveColour, usePlotTemplate } from "./plot-theme";
 import type { PlotSeries, PlotView } from "./plot-view";
+import { spreadApart } from "./spread";
+import { extent } from "./ticks";
 
 const Plot = createPlot(Plotly);
 
-/** Fewer tools than the library offers: zoom, pan, back to all, and the picture as SVG. */
+/** Named one by one, since the library's own set grows: nothing here leaves the page. */
 const CONFIG = {
   displaylogo: false,
   responsive: true,
-  modeBarButtonsToRemove: ["select2d", "lasso2d", "autoScale2d"],
+  modeBarButtons: [["zoom2d", "pan2d", "zoomIn2d", "zoomOut2d", "resetScale2d"], ["toImage"]],
   toImageButtonOptions: { format: "svg", filename: "figure" },
 };
 
@@ -23,14 +25,14 @@ export function PlotInner({ view, name, height }: { view: PlotView; name: string
     // biome-ignore lint/a11y/useSemanticElements: the plot is a group of controls, not a fieldset
     <div role="group" aria-label={name}>
       <Plot
-        data={view.series.map(traceOf)}
+        data={view.series.flatMap(tracesOf)}
         layout={{
           template,
           font,
           hoverlabel: { font },
           autosize: true,
           height,
-          margin: { l: 56, r: 30, t: 34, b: 48 },
+          margin: MARGIN,
           xaxis: { type: view.x.kind, title: { text: markedUp(view.x.title) } },
           yaxis: { type: view.y.kind },
           annotations: [
@@ -44,7 +46,7 @@ export function PlotInner({ view, name, height }: { view: PlotView; name: string
               yshift: 20,
               showarrow: false,
             },
-            ...view.series.flatMap(nameAtEnd),
+            ...namesAtEnds(view, height - MARGIN.t - MARGIN.b),
           ],
         }}
         config={CONFIG}
@@ -55,29 +57,56 @@ export function PlotInner({ view, name, height }: { view: PlotView; name: string
   );
 }
 
-function traceOf(series: PlotSeries) {
+const MARGIN = { l: 56, r: 48, t: 34, b: 48 };
+const NAME_HEIGHT = 14;
+
+/** A line with its run's mark on the last point, or marks alone. */
+function tracesOf(series: PlotSeries): object[] {
   const colour = resolveColour(series.colour);
-  const marks = series.drawing === "marks";
-  return {
+  const common = {
     // The library's other scatter compiles shaders from strings, which the content security policy refuses.
     type: "scatter",
-    mode: marks ? "markers" : "lines",
     name: series.name,
+    marker: { color: colour, symbol: series.symbol },
+  };
+  const silent = series.drawing === "guide";
+  const drawn = {
+    ...common,
+    mode: series.drawing === "marks" ? "markers" : "lines",
     x: series.x,
     y: series.y,
-    line: { color: colour, dash: series.dash, width: series.drawing === "guide" ? 1 : 1.9 },
-    marker: { color: colour, symbol: series.symbol },
-    hovertemplate: `<b>${series.name}</b> %{x:.4~g}, %{y:.4~g}<extra></extra>`,
-    ...(series.drawing === "guide" ? { hoverinfo: "skip", hovertemplate: undefined } : {}),
+    line: { color: colour, dash: series.dash, width: silent ? 1 : 1.9 },
+    ...(silent
+      ? { hoverinfo: "skip" }
+      : { hovertemplate: `<b>${series.name}</b> %{x:.4~g}, %{y:.4~g}<extra></extra>` }),
   };
+  if (series.drawing !== "line") return [drawn];
+  return [
+    drawn,
+    { ...common, mode: "markers", x: series.x.slice(-1), y: series.y.slice(-1), hoverinfo: "skip" },
+  ];
 }
 
-/** The name at a line's last point, as in the drawing; the library has no legend here. */
-function nameAtEnd(series: PlotSeries) {
-  const x = series.x.at(-1);
-  const y = series.y.at(-1);
-  if (series.drawing === "fit" || x === undefined || y === undefined) return [];
-  return [{ text: series.name, x, y, xanchor: "left", xshift: 6, showarrow: false, font: { size: 11.5 } }];
+/** Names at the last points, as in the drawing; the library has no legend here and does not part labels. */
+function namesAtEnds(view: PlotView, plotHeight: number): object[] {
+  const place = view.y.kind === "log" ? Math.log10 : (value: number) => value;
+  const named = view.series.filter((series) => series.drawing !== "fit" && series.y.length > 0);
+  const ends = named.map((series) => place(series.y.at(-1) ?? 0));
+  const [low, high] = extent(view.series.flatMap((series) => extent(series.y)).map(place));
+  const pixels = (value: number) => ((value - low) / (high - low || 1)) * plotHeight;
+  const wishes = ends.map(pixels);
+  const parted = spreadApart(wishes, NAME_HEIGHT, -NAME_HEIGHT, plotHeight + NAME_HEIGHT);
+  return named.map((series, index) => ({
+    text: series.name,
+    // Annotations on a logarithmic axis are placed by the logarithm.
+    x: view.x.kind === "log" ? Math.log10(series.x.at(-1) ?? 1) : series.x.at(-1),
+    y: ends[index],
+    xanchor: "left",
+    xshift: 8,
+    yshift: (parted[index] ?? 0) - (wishes[index] ?? 0),
+    showarrow: false,
+    font: { size: 11.5 },
+  }));
 }
 
 /** Prose as the library's own little HTML. */

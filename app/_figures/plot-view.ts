@@ -37,8 +37,8 @@ export function plotOfTraces(view: TraceFigureView): PlotView {
     y: plotAxis(view.y, "linear", values),
     series: view.traces.map((trace) => ({
       ...identity(trace),
-      x: trace.x,
-      y: trace.y,
+      x: trace.x.map(forReading),
+      y: trace.y.map(forReading),
       drawing: "line",
       dash: trace.setAside ? "dot" : trace.mark.repeat ? "dash" : "solid",
     })),
@@ -77,6 +77,11 @@ export function plotOfAddedVariable(view: AddedVariableView): PlotView {
       ),
     ],
   };
+}
+
+/** Six digits are more than a cursor can read, and a third of what a page would otherwise carry. */
+function forReading(value: number): number {
+  return Number(value.toPrecision(6));
 }
 
 function plotAxis(axis: AxisView, kind: "linear" | "log", values: readonly number[]): PlotAxis {
