@@ -36,6 +36,12 @@ export interface CorrelatedFit {
   readonly project: (vector: ArrayLike<number>) => Float64Array;
 }
 
+/** What restricted likelihood needs of a fit, and nothing more: see the fields of the same name in `CorrelatedFit`. */
+export type RestrictedFit = Pick<
+  CorrelatedFit,
+  "restrictedDeviance" | "projectionDiagonal" | "projected" | "project"
+>;
+
 /**
  * `variances`: d, all above 0, one a row; `shared`: columns of U, may be empty. X of full column rank, m ≥ n rows.
  */
@@ -45,36 +51,10 @@ export function correlatedLeastSquares(
   variances: ArrayLike<number>,
   shared: readonly ArrayLike<number>[],
 ): CorrelatedFit {
-  const m = x.rows;
   const n = x.columns;
-  const p = shared.length;
-  const roots = Float64Array.from({ length: m }, (_, i) => Math.sqrt(variances[i] ?? 0));
-  if (!roots.every((root) => root > 0)) throw new RangeError("every variance must be above 0");
-
-  const augmented = zeroMatrix(m + p, p + n);
-  shared.forEach((column, j) => {
-    const target = columnOf(augmented, j);
-    for (let i = 0; i < m; i++) target[i] = (column[i] ?? 0) / (roots[i] ?? 1);
-    target[m + j] = 1;
-  });
-  for (let j = 0; j < n; j++) {
-    const source = columnOf(x, j);
-    const target = columnOf(augmented, p + j);
-    for (let i = 0; i < m; i++) target[i] = (source[i] ?? 0) / (roots[i] ?? 1);
-  }
-  const { q, r } = householderQr(augmented);
+  const factors = factorise(x, variances, shared);
+  const { m, p, roots, q, r } = factors;
   const upper = (column: number) => columnOf(q, column).subarray(0, m);
-
-  const project = (vector: ArrayLike<number>): Float64Array => {
-    const rest = Float64Array.from({ length: m }, (_, i) => (vector[i] ?? 0) / (roots[i] ?? 1));
-    const whitened = rest.slice();
-    for (let j = 0; j < p + n; j++) {
-      const column = upper(j);
-      const projection = dot(column, whitened);
-      for (let i = 0; i < m; i++) rest[i] = (rest[i] ?? 0) - projection * (column[i] ?? 0);
-    }
-    return rest.map((value, i) => value / (roots[i] ?? 1));
-  };
 
   const tail = zeroMatrix(n, n);
   for (let j = 0; j < n; j++) for (let i = 0; i <= j; i++) tail.values[j * n + i] = entry(r, p + i, p + j);
@@ -85,41 +65,104 @@ export function correlatedLeastSquares(
     return sum;
   });
   const coefficients = solveUpper(tail, rotated);
-
   const residuals = Float64Array.from({ length: m }, (_, i) => {
     let fitted = 0;
     for (let j = 0; j < n; j++) fitted += (coefficients[j] ?? 0) * (x.values[j * m + i] ?? 0);
     return (y[i] ?? 0) - fitted;
   });
-  const projected = project(residuals);
-  const weightedSumOfSquares = Math.max(0, dot(residuals, projected));
-
-  let logDeterminants = 0;
-  for (const root of roots) logDeterminants += 2 * Math.log(root);
-  for (let j = 0; j < p + n; j++) logDeterminants += 2 * Math.log(Math.abs(entry(r, j, j)));
 
   const leverage = new Float64Array(m);
-  const projectionDiagonal = new Float64Array(m);
   for (let i = 0; i < m; i++) {
-    let byShared = 0;
-    for (let j = 0; j < p; j++) byShared += entry(q, i, j) ** 2;
-    let byTerms = 0;
-    for (let j = p; j < p + n; j++) byTerms += entry(q, i, j) ** 2;
-    leverage[i] = Math.min(1, byTerms / Math.max(1 - byShared, Number.MIN_VALUE));
-    projectionDiagonal[i] = Math.max(0, 1 - byShared - byTerms) / (roots[i] ?? 1) ** 2;
+    const byShared = squaredRow(q, i, 0, p);
+    leverage[i] = Math.min(1, squaredRow(q, i, p, p + n) / Math.max(1 - byShared, Number.MIN_VALUE));
   }
+  // From residuals rather than from y: what the terms explain is gone before it can leave rounding behind.
+  const restricted = restrictedFrom(factors, residuals);
   return {
     coefficients,
     inverseInformation: inverseGram(tail),
     gain: gainOf(tail, upper, p, roots),
     residuals,
-    weightedSumOfSquares,
-    restrictedDeviance: logDeterminants + weightedSumOfSquares,
+    weightedSumOfSquares: Math.max(0, dot(residuals, restricted.projected)),
     leverage,
-    projectionDiagonal,
-    projected,
-    project,
+    ...restricted,
   };
+}
+
+/** The same fit, as far as restricted likelihood needs it: for the many evaluations of a search. */
+export function restrictedFit(
+  x: Matrix,
+  y: ArrayLike<number>,
+  variances: ArrayLike<number>,
+  shared: readonly ArrayLike<number>[],
+): RestrictedFit {
+  return restrictedFrom(factorise(x, variances, shared), y);
+}
+
+interface Factors {
+  readonly m: number;
+  readonly p: number;
+  /** √d. */
+  readonly roots: Float64Array;
+  readonly q: Matrix;
+  readonly r: Matrix;
+}
+
+function factorise(x: Matrix, variances: ArrayLike<number>, shared: readonly ArrayLike<number>[]): Factors {
+  const m = x.rows;
+  const p = shared.length;
+  const roots = new Float64Array(m);
+  for (let i = 0; i < m; i++) {
+    const root = Math.sqrt(variances[i] ?? 0);
+    if (!(root > 0)) throw new RangeError("every variance must be above 0");
+    roots[i] = root;
+  }
+  const augmented = zeroMatrix(m + p, p + x.columns);
+  shared.forEach((column, j) => {
+    const target = columnOf(augmented, j);
+    for (let i = 0; i < m; i++) target[i] = (column[i] ?? 0) / (roots[i] ?? 1);
+    target[m + j] = 1;
+  });
+  for (let j = 0; j < x.columns; j++) {
+    const source = columnOf(x, j);
+    const target = columnOf(augmented, p + j);
+    for (let i = 0; i < m; i++) target[i] = (source[i] ?? 0) / (roots[i] ?? 1);
+  }
+  return { m, p, roots, ...householderQr(augmented) };
+}
+
+function restrictedFrom({ m, roots, q, r }: Factors, y: ArrayLike<number>): RestrictedFit {
+  const project = (vector: ArrayLike<number>): Float64Array => {
+    const whitened = new Float64Array(m);
+    for (let i = 0; i < m; i++) whitened[i] = (vector[i] ?? 0) / (roots[i] ?? 1);
+    const rest = whitened.slice();
+    for (let j = 0; j < q.columns; j++) {
+      const column = columnOf(q, j).subarray(0, m);
+      const projection = dot(whitened, column);
+      for (let i = 0; i < m; i++) rest[i] = (rest[i] ?? 0) - projection * (column[i] ?? 0);
+    }
+    for (let i = 0; i < m; i++) rest[i] = (rest[i] ?? 0) / (roots[i] ?? 1);
+    return rest;
+  };
+  const projected = project(y);
+  const projectionDiagonal = new Float64Array(m);
+  let restrictedDeviance = Math.max(0, dot(y, projected));
+  for (let i = 0; i < m; i++) {
+    const root = roots[i] ?? 1;
+    projectionDiagonal[i] = Math.max(0, 1 - squaredRow(q, i, 0, q.columns)) / root ** 2;
+    restrictedDeviance += 2 * Math.log(root);
+  }
+  for (let j = 0; j < r.columns; j++) restrictedDeviance += 2 * Math.log(Math.abs(entry(r, j, j)));
+  return { restrictedDeviance, projectionDiagonal, projected, project };
+}
+
+function squaredRow(q: Matrix, row: number, from: number, to: number): number {
+  let sum = 0;
+  for (let j = from; j < to; j++) {
+    const value = q.values[j * q.rows + row] ?? 0;
+    sum += value * value;
+  }
+  return sum;
 }
 
 /** R₂₂⁻¹ Q₂ᵀ d^−½. */

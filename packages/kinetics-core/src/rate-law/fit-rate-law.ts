@@ -10,7 +10,7 @@ import {
 import { addedVariables } from "./added-variables";
 import { designOf, isDetermined } from "./design";
 import { type FitSettings, fitOrders, type OrdersFit, separableBlocks } from "./fit-orders";
-import { freedomFlags, readingFlags, scopeFlags } from "./law-flags";
+import { exactTableFlags, freedomFlags, readingFlags, scopeFlags } from "./law-flags";
 import { leaveOneOut } from "./leave-one-out";
 import { pairOrders } from "./pairs";
 import type { RateLawFit, RateLawInput, RateLawResult, SimpleOrderReading } from "./rate-law";
@@ -148,6 +148,7 @@ function fitUsable(
       ...scopeFlags(fit, hasBlocks && blocks === null),
       ...separated.flags,
       ...freedomFlags(fit),
+      ...exactTableFlags(fit),
       ...residualFlags(fit, residuals),
       ...replicateFlags(fit),
       ...lackOfFitFlags(lack),

@@ -6,6 +6,19 @@ import { inARow } from "./wording";
 
 /** What a reader should know about the law as a whole. */
 
+/** Figures of an exercise, or computed ones: measured rates always scatter. */
+export function exactTableFlags(fit: OrdersFit): readonly Flag[] {
+  if (!fit.exact || fit.degreesOfFreedom === 0) return [];
+  return [
+    {
+      code: "exact-table",
+      severity: "note",
+      message:
+        "The rates obey the law to the last digit, as computed figures do. Measured rates scatter, so the intervals here say nothing about a measurement.",
+    },
+  ];
+}
+
 /** No freedom: the numbers are exact solutions. One or two: an interval, but a wide and fragile one. */
 export function freedomFlags(fit: OrdersFit): readonly Flag[] {
   const freedom = fit.degreesOfFreedom;

@@ -1,4 +1,4 @@
-import { fSurvival, studentTSurvival } from "kinetics-core/distributions";
+import { fSurvival, normalQuantile, studentTSurvival } from "kinetics-core/distributions";
 import type { Flag } from "kinetics-core/quantities";
 import type { OrdersFit } from "./fit-orders";
 import { groupsByRecipe } from "./pairs";
@@ -12,8 +12,6 @@ import { inARow, percent } from "./wording";
 const LEVERAGE_BEYOND_CHECK = 0.99;
 const FAMILY_LEVEL = 0.05;
 const LACK_OF_FIT_LEVEL = 0.01;
-/** 1.96·√2: two results of one recipe differ by more in one case of twenty. */
-const REPLICATE_FACTOR = 2.77;
 
 export function residualRows(fit: OrdersFit): RateLawFit["residuals"] {
   const greatest = 1 / Math.min(...fit.ownVariances);
@@ -66,18 +64,26 @@ export function residualFlags(fit: OrdersFit, rows: RateLawFit["residuals"]): re
   return flags;
 }
 
-/** One finding for each recipe whose most distant replicates differ by more than 2.77 times their scatter allows. */
+/**
+ * One finding for each recipe whose most distant replicates differ by more than their scatter allows: |Δ ln v| over
+ * 2.77 √(mean u² + τ̂²) for a single pair (1.96·√2: one case of twenty), the factor rising with the number of pairs in
+ * the study so that one clean study of twenty is named, not every one (Bonferroni).
+ */
 export function replicateFlags(fit: OrdersFit): readonly Flag[] {
   const scatter = fit.betweenRuns;
   if (scatter === null || fit.exact) return [];
-  return replicateGroups(fit).flatMap((group): readonly Flag[] => {
+  const groups = replicateGroups(fit);
+  const pairs = groups.reduce((sum, group) => sum + (group.length * (group.length - 1)) / 2, 0);
+  if (pairs === 0) return [];
+  const factor = Math.SQRT2 * normalQuantile(1 - FAMILY_LEVEL / 2 / pairs);
+  return groups.flatMap((group): readonly Flag[] => {
     const sorted = group.filter((run) => run.rate > 0).sort((a, b) => a.rate - b.rate);
     const low = sorted[0];
     const high = sorted.at(-1);
     if (low === undefined || high === undefined || low === high) return [];
     const difference = Math.log(high.rate / low.rate);
     const stated = [low, high].reduce((sum, run) => sum + statedVariance(fit, run), 0) / 2;
-    if (difference <= REPLICATE_FACTOR * Math.sqrt(stated + scatter)) return [];
+    if (difference <= factor * Math.sqrt(stated + scatter)) return [];
     return [
       {
         code: "replicates-disagree",

@@ -1,4 +1,10 @@
-import { type CorrelatedFit, correlatedLeastSquares, dot, type Matrix } from "kinetics-core/linear-algebra";
+import {
+  correlatedLeastSquares,
+  dot,
+  type Matrix,
+  type RestrictedFit,
+  restrictedFit,
+} from "kinetics-core/linear-algebra";
 
 /**
  * Variance between runs (τ²) and between blocks by restricted maximum likelihood: the least of
@@ -36,8 +42,10 @@ export function varianceComponents(problem: VarianceProblem): VarianceComponents
   }
   if (!(scatter > 0)) return { betweenRuns: 0, betweenBlocks: 0 };
 
+  // P takes out the terms, so residuals serve as well as the response and leave less to rounding.
+  const centred = { ...problem, response: plain.residuals };
   const fitAt = (betweenRuns: number, betweenBlocks: number) =>
-    fitWithComponents(problem, betweenRuns, betweenBlocks);
+    fitWithComponents(centred, betweenRuns, betweenBlocks);
   const runsGiven = (betweenBlocks: number) =>
     leastDeviance(
       (variance) => {
@@ -83,7 +91,7 @@ function fitWithComponents(
   { terms, response, stated, shared, blocks }: VarianceProblem,
   betweenRuns: number,
   betweenBlocks: number,
-): CorrelatedFit {
+): RestrictedFit {
   const variances = stated.map((value) => value + betweenRuns);
   const deviation = Math.sqrt(betweenBlocks);
   const columns: ArrayLike<number>[] = [...shared];
@@ -99,14 +107,14 @@ function fitWithComponents(
       }
     }
   }
-  return correlatedLeastSquares(terms, response, variances, columns);
+  return restrictedFit(terms, response, variances, columns);
 }
 
-function slopeByRuns(fit: CorrelatedFit): number {
+function slopeByRuns(fit: RestrictedFit): number {
   return sum(fit.projectionDiagonal) - dot(fit.projected, fit.projected);
 }
 
-function slopeByBlocks(fit: CorrelatedFit, blocks: readonly (readonly number[])[], rows: number): number {
+function slopeByBlocks(fit: RestrictedFit, blocks: readonly (readonly number[])[], rows: number): number {
   return blockLoadings(blocks, rows)
     .map((z) => dot(z, fit.project(z)) - dot(z, fit.projected) ** 2)
     .reduce((total, one) => total + one, 0);
@@ -119,7 +127,7 @@ interface DevianceAt {
 
 /** Grid over ten decades about `scale`, 0 included where the variance may vanish, then bisection and secant on the slope. */
 function leastDeviance(at: (variance: number) => DevianceAt, scale: number, mayVanish: boolean): number {
-  const grid = Array.from({ length: 21 }, (_, i) => scale * 10 ** (-8 + i / 2));
+  const grid = Array.from({ length: 11 }, (_, i) => scale * 10 ** (i - 8));
   const points = (mayVanish ? [0, ...grid] : grid).map((variance) => ({ variance, ...at(variance) }));
   let best = 0;
   points.forEach((point, i) => {

@@ -1,0 +1,432 @@
+import { studentTFactor } from "kinetics-core/distributions";
+import { describe, expect, it } from "vitest";
+import { fitRateLaw } from "./fit-rate-law";
+import type { RateLawFit, RateLawInput } from "./rate-law";
+import { labelOf, normalDeviates, type Scenario, simulateRuns } from "./simulated-runs";
+
+const recipes = [
+  [0.01, 0.02],
+  [0.02, 0.02],
+  [0.04, 0.02],
+  [0.08, 0.02],
+  [0.02, 0.01],
+  [0.02, 0.04],
+  [0.02, 0.08],
+  [0.02, 0.02],
+  [0.05, 0.05],
+] as const;
+const scenario: Scenario = {
+  species: ["A", "B"],
+  orders: [1, 2],
+  rateConstant: 11.8,
+  recipes,
+  scatter: 0.02,
+  rateErrors: recipes.map((_, j) => 0.005 + 0.003 * (j % 4)),
+  pipetting: 0.004,
+};
+const study = simulateRuns(scenario, normalDeviates(8));
+
+function law(input: RateLawInput): RateLawFit {
+  const result = fitRateLaw(input);
+  if (result.status !== "fitted") throw new Error(`expected a law, got ${result.status}: ${result.message}`);
+  return result;
+}
+
+/** Every number of a fit that does not depend on the order of the runs. */
+function numbers(fit: RateLawFit): readonly number[] {
+  const flat = (value: unknown): number[] =>
+    typeof value === "number"
+      ? [value]
+      : value !== null && typeof value === "object"
+        ? Object.values(value).flatMap(flat)
+        : [];
+  return flat([
+    fit.orders,
+    fit.logRateConstant,
+    fit.rateConstant,
+    fit.centre,
+    fit.covariance,
+    fit.budget,
+    fit.betweenRunStandardDeviation,
+    fit.simpleOrders,
+  ]);
+}
+
+function expectSameNumbers(got: readonly number[], wanted: readonly number[], relative: number): void {
+  expect(got).toHaveLength(wanted.length);
+  wanted.forEach((value, i) => {
+    expect(Math.abs((got[i] ?? Number.NaN) - value)).toBeLessThanOrEqual(relative * Math.abs(value) + 1e-13);
+  });
+}
+
+describe("what must not matter", () => {
+  it("the order of the runs", () => {
+    const shuffled = { ...study, runs: [3, 8, 1, 0, 6, 2, 7, 5, 4].flatMap((j) => study.runs[j] ?? []) };
+    expectSameNumbers(numbers(law(shuffled)), numbers(law(study)), 1e-8);
+  });
+
+  it("the unit of concentration and of time, but for k itself", () => {
+    const there = law(study);
+    const inMillimolePerMinute = law({
+      ...study,
+      concentrationUnit: "mmol/L",
+      timeUnit: "min",
+      runs: study.runs.map((run) => ({
+        ...run,
+        concentrations: Object.fromEntries(
+          Object.entries(run.concentrations).map(([name, c]) => [name, 1000 * c]),
+        ),
+        rate: run.rate * 60_000,
+        rateStandardError: (run.rateStandardError ?? 0) * 60_000,
+      })),
+    });
+    for (const name of study.species) {
+      const [a, b] = [there.orders[name], inMillimolePerMinute.orders[name]];
+      expect(b?.estimate).toBeCloseTo(a?.estimate ?? Number.NaN, 10);
+      expect(b?.standardError).toBeCloseTo(a?.standardError ?? Number.NaN, 10);
+    }
+    const scale = inMillimolePerMinute.simpleOrders.rateConstant;
+    // Overall order 3: (10³ mmol/mol)^(1 − 3) · 60 s/min.
+    expect((scale.estimate ?? 0) / (there.simpleOrders.rateConstant.estimate ?? 1)).toBeCloseTo(6e-5, 12);
+    expect(scale.unit).toBe("L^2 mmol^-2 min^-1");
+    expect(inMillimolePerMinute.centre.rate.estimate).toBeCloseTo(
+      60_000 * (there.centre.rate.estimate ?? 0),
+      8,
+    );
+  });
+
+  it("the scale of the rates: twice the rates, twice k, the same orders and relative errors", () => {
+    const once = law(study);
+    const twice = law({
+      ...study,
+      runs: study.runs.map((run) => ({
+        ...run,
+        rate: 2 * run.rate,
+        rateStandardError: 2 * (run.rateStandardError ?? 0),
+      })),
+    });
+    expect((twice.rateConstant.estimate ?? 0) / (once.rateConstant.estimate ?? 1)).toBeCloseTo(2, 9);
+    expect(twice.orders.A?.estimate).toBeCloseTo(once.orders.A?.estimate ?? Number.NaN, 11);
+    expect(twice.logRateConstant.standardError).toBeCloseTo(
+      once.logRateConstant.standardError ?? Number.NaN,
+      11,
+    );
+  });
+});
+
+describe("shared errors", () => {
+  const shared = [
+    { species: ["B"], relative: 0.02, source: "Titre of stock B" },
+    { species: [], onRate: true, relative: 0.01, source: "ε·l" },
+  ];
+
+  it("of all runs move ln k and not the orders", () => {
+    const without = law({ ...study, orders: { A: 1, B: 2 } });
+    const withThem = law({ ...study, orders: { A: 1, B: 2 }, shared, temperatureRelative: 0.007 });
+    const free = law({ ...study, shared });
+    expect(free.orders).toEqual(law(study).orders);
+    expect(withThem.logRateConstant.estimate).toBe(without.logRateConstant.estimate);
+    const scatter = without.logRateConstant.standardError ?? 0;
+    // Σ n² u² by hand: order 2 in B doubles the titre's 2 %.
+    const total = Math.sqrt(scatter ** 2 + 0.04 ** 2 + 0.01 ** 2 + 0.007 ** 2);
+    expect(withThem.logRateConstant.standardError).toBeCloseTo(total, 12);
+    expect(withThem.budget.map((line) => [line.source, Number(line.relative.toFixed(6))])).toEqual([
+      ["Scatter of the runs", Number(scatter.toFixed(6))],
+      ["Titre of stock B", 0.04],
+      ["ε·l", 0.01],
+      ["Temperature", 0.007],
+    ]);
+    // Welch: only the scatter spends freedom.
+    expect(withThem.rateConstantDegreesOfFreedom).toBeCloseTo((8 * total ** 4) / scatter ** 4, 6);
+  });
+
+  it("make the budget add up to the variance of ln k, whatever is shared", () => {
+    const chain = { species: ["A"], relative: 0.03, runs: ["R01", "R02", "R05"], source: "Dilution" };
+    for (const fit of [
+      law({ ...study, shared: [...shared, chain] }),
+      law({ ...study, shared: [chain], temperatureRelative: 0.01 }),
+      law(study),
+    ]) {
+      const sum = fit.budget.reduce((total, line) => total + line.relative ** 2, 0);
+      expect(Math.sqrt(sum)).toBeCloseTo(fit.logRateConstant.standardError ?? Number.NaN, 12);
+      expect(fit.covariance?.[0]?.[0]).toBeCloseTo(sum, 12);
+      const ofSimple = fit.simpleOrders.budget.reduce((total, line) => total + line.relative ** 2, 0);
+      expect(Math.sqrt(ofSimple)).toBeCloseTo(
+        fit.simpleOrders.logRateConstant.standardError ?? Number.NaN,
+        12,
+      );
+    }
+  });
+
+  it("of a dilution step widen the order of the species that was diluted", () => {
+    const chain = { species: ["B"], relative: 0.05, runs: ["R06", "R07"] };
+    const plain = law(study);
+    const diluted = law({ ...study, shared: [chain] });
+    expect(diluted.orders.B?.standardError ?? 0).toBeGreaterThan(1.2 * (plain.orders.B?.standardError ?? 1));
+    expect(diluted.budget.some((line) => line.source === "Stock of B (R06 and R07)")).toBe(true);
+    expect(diluted.covariance?.[2]?.[2]).toBeCloseTo((diluted.orders.B?.standardError ?? 0) ** 2, 12);
+  });
+
+  it("cancel where one calibration gives the rates and the concentration of a first-order species", () => {
+    const fit = law({
+      ...study,
+      orders: { A: 1, B: 2 },
+      shared: [{ species: ["A"], onRate: true, relative: 0.05 }],
+    });
+    expect(fit.budget.find((line) => line.source === "Stock of A and the rate scale")?.relative).toBe(0);
+  });
+});
+
+describe("the interval", () => {
+  it("of k is that of ln k back-transformed, and lopsided", () => {
+    const { rateConstant, logRateConstant } = law(study);
+    const [low, high] = logRateConstant.interval ?? [Number.NaN, Number.NaN];
+    expect(rateConstant.interval).toEqual([Math.exp(low), Math.exp(high)]);
+    const k = rateConstant.estimate ?? Number.NaN;
+    expect(high - low).toBeGreaterThan(0);
+    expect((rateConstant.interval?.[1] ?? 0) - k).toBeGreaterThan(k - (rateConstant.interval?.[0] ?? 0));
+  });
+
+  it("of an order is t standard errors at m − q, at the level asked for", () => {
+    const fit = law({ ...study, level: 0.99 });
+    const { estimate, standardError, interval, level } = fit.orders.A ?? law(study).logRateConstant;
+    expect(level).toBe(0.99);
+    expect(fit.degreesOfFreedom).toBe(6);
+    expect(interval?.[1]).toBeCloseTo((estimate ?? 0) + studentTFactor(0.99, 6) * (standardError ?? 0), 12);
+  });
+
+  it("with equal errors is that of ordinary least squares (three runs by hand)", () => {
+    // ln v = 0, 1 + 0.03, 2 at ln c = 0, 1, 2: slope 1, residuals −0.01, 0.02, −0.01.
+    const fit = law({
+      species: ["A"],
+      runs: [0, 1.03, 2].map((logarithm, j) => ({
+        label: labelOf(j),
+        concentrations: { A: Math.exp(j) },
+        rate: Math.exp(logarithm),
+      })),
+    });
+    expect(fit.orders.A?.estimate).toBeCloseTo(1, 12);
+    expect(fit.orders.A?.standardError).toBeCloseTo(Math.sqrt(6e-4 / 2), 12);
+    expect(fit.betweenRunStandardDeviation).toBeCloseTo(Math.sqrt(6e-4), 12);
+    expect(fit.residuals.map((row) => Number(row.residual.toFixed(10)))).toEqual([-0.01, 0.02, -0.01]);
+    expect(fit.residuals[0]?.leverage).toBeCloseTo(5 / 6, 12);
+  });
+
+  it("rests on one degree of freedom with a warning that names it, and is absent with none", () => {
+    const two = { ...study, species: ["A"], runs: study.runs.slice(0, 2) };
+    const exact = law(two);
+    expect(exact.orders.A?.interval).toBeNull();
+    expect(exact.rateConstant.interval).toBeNull();
+    expect(exact.covariance).toBeNull();
+    expect(exact.betweenRunStandardDeviation).toBeNull();
+    expect(exact.simpleOrders.reading.A).toBe("nearest");
+    expect(exact.flags.find((flag) => flag.code === "no-freedom")?.severity).toBe("blocks");
+    const three = law({ ...two, runs: study.runs.slice(0, 3) });
+    expect(three.orders.A?.interval).not.toBeNull();
+    expect(three.flags.find((flag) => flag.code === "little-freedom")?.message).toContain(
+      "one degree of freedom",
+    );
+  });
+});
+
+describe("the parts of a report", () => {
+  const fit = law(study);
+
+  it("a held order is reported as held, without an uncertainty, with zeros in the covariance", () => {
+    const held = law({ ...study, orders: { B: 2 } });
+    expect(held.orders.B).toEqual({ estimate: 2, standardError: null, interval: null, level: 0.95 });
+    expect(held.covariance?.map((row) => row[2])).toEqual([0, 0, 0]);
+    expect(held.degreesOfFreedom).toBe(7);
+    expect(held.simpleOrders.orders.B).toBe(2);
+  });
+
+  it("the centre is the geometric mean of the recipes, and k, orders and the rate there belong together", () => {
+    const a = fit.centre.concentrations.A ?? 0;
+    const b = fit.centre.concentrations.B ?? 0;
+    const product = recipes.reduce((sum, row) => sum + Math.log(row[0]), 0) / recipes.length;
+    expect(a).toBeCloseTo(Math.exp(product), 12);
+    const predicted =
+      (fit.rateConstant.estimate ?? 0) *
+      a ** (fit.orders.A?.estimate ?? 0) *
+      b ** (fit.orders.B?.estimate ?? 0);
+    expect(predicted / (fit.centre.rate.estimate ?? 1)).toBeCloseTo(1, 10);
+    const [kk, , kb] = fit.covariance?.[0] ?? [];
+    expect(kk).toBeGreaterThan(0);
+    // ln k at 1 mol/L lies above all runs: a larger order means a larger k.
+    expect(kb).toBeGreaterThan(0);
+  });
+
+  it("the weighted slope of every added-variable plot is the order", () => {
+    for (const plot of fit.addedVariables) {
+      const sums = plot.points.reduce(
+        ({ xy, xx }, point, j) => {
+          const weight = fit.residuals[j]?.weight ?? 0;
+          return { xy: xy + weight * (point.x ?? 0) * (point.y ?? 0), xx: xx + weight * (point.x ?? 0) ** 2 };
+        },
+        { xy: 0, xx: 0 },
+      );
+      expect(sums.xy / sums.xx).toBeCloseTo(fit.orders[plot.species]?.estimate ?? Number.NaN, 10);
+      expect(plot.slope).toBe(fit.orders[plot.species]?.estimate);
+    }
+    const [first] = fit.addedVariables[0]?.points ?? [];
+    const b = fit.centre.concentrations.B ?? 1;
+    const moved = (study.runs[0]?.rate ?? 0) * (b / 0.02) ** (fit.orders.B?.estimate ?? 0);
+    expect((first?.rateAtCentre ?? 0) / moved).toBeCloseTo(1, 12);
+  });
+
+  it("pairs are runs that differ in one concentration only, with the ratio's order and its propagated error", () => {
+    const pair = fit.pairs.find((one) => one.runs[0] === "R01" && one.runs[1] === "R02");
+    const [one, two] = study.runs;
+    const order = Math.log((two?.rate ?? 1) / (one?.rate ?? 1)) / Math.log(2);
+    expect(pair?.species).toBe("A");
+    expect(pair?.order.estimate).toBeCloseTo(order, 12);
+    const relative = [one, two].map((run) => (run?.rateStandardError ?? 0) / (run?.rate ?? 1));
+    const b = fit.orders.B?.estimate ?? 0;
+    const variance = relative.reduce((sum, u) => sum + u ** 2, 0) + 2 * 0.004 ** 2 * (order ** 2 + b ** 2);
+    expect(pair?.order.standardError).toBeCloseTo(Math.sqrt(variance) / Math.log(2), 9);
+    expect(fit.pairs.some((one_) => one_.runs.includes("R09"))).toBe(false);
+    expect(fit.pairs.filter((one_) => one_.species === "A")).toHaveLength(9);
+  });
+
+  it("pairs of runs without stated errors have no made-up uncertainty", () => {
+    const bare = law({
+      ...study,
+      runs: study.runs.map(({ label, concentrations, rate }) => ({ label, concentrations, rate })),
+    });
+    expect(bare.pairs[0]?.order).toMatchObject({ standardError: null, interval: null });
+  });
+
+  it("leaving a run out agrees with a fit without it where weights are equal", () => {
+    const equal = {
+      ...study,
+      runs: study.runs.map(({ label, concentrations, rate }) => ({ label, concentrations, rate })),
+    };
+    const all = law(equal);
+    const without = law({ ...equal, runs: equal.runs.filter((run) => run.label !== "R04") });
+    const row = all.leaveOneOut.find((one) => one.label === "R04");
+    expect(row?.orders.A).toBeCloseTo(without.orders.A?.estimate ?? Number.NaN, 11);
+    expect((row?.rateConstant ?? 0) / (without.simpleOrders.rateConstant.estimate ?? 1)).toBeCloseTo(1, 11);
+  });
+
+  it("a run that departs is named, with the size of its departure", () => {
+    const spoilt = law({
+      ...study,
+      runs: study.runs.map((run) => (run.label === "R06" ? { ...run, rate: 1.4 * run.rate } : run)),
+    });
+    const flag = spoilt.flags.find((one) => one.code === "influential-run");
+    expect(flag?.message).toContain("R06");
+    expect(flag?.severity).toBe("weakens");
+    expect(fit.flags.some((one) => one.code === "influential-run")).toBe(false);
+  });
+
+  it("replicates that differ by more than their scatter allows are named", () => {
+    const thrice = [...recipes, ...recipes, ...recipes];
+    const large = simulateRuns(
+      { ...scenario, recipes: thrice, rateErrors: thrice.map(() => 0.005) },
+      normalDeviates(12),
+    );
+    const spoilt = law({
+      ...large,
+      runs: large.runs.map((run) => (run.label === "R14" ? { ...run, rate: 1.4 * run.rate } : run)),
+    });
+    const messages = spoilt.flags
+      .filter((one) => one.code === "replicates-disagree")
+      .map((one) => one.message);
+    expect(messages).toHaveLength(1);
+    expect(messages[0]).toContain("R14");
+    expect(law(large).flags.some((one) => one.code === "replicates-disagree")).toBe(false);
+  });
+
+  it("replicates test the law's fit, with the freedom that they have", () => {
+    expect(fit.lackOfFit?.degreesOfFreedom).toEqual([5, 1]);
+    expect(fit.lackOfFit?.pValue).toBeGreaterThan(0.01);
+  });
+
+  it("a curved law is caught by replicates", () => {
+    const levels = [0.01, 0.01, 0.03, 0.03, 0.1, 0.1, 0.3, 0.3];
+    const saturating = law({
+      species: ["S"],
+      runs: levels.map((c, j) => ({
+        label: labelOf(j),
+        concentrations: { S: c },
+        rate: (c / (0.05 + c)) * (1 + 0.01 * (j % 2 === 0 ? 1 : -1)),
+      })),
+    });
+    expect(saturating.lackOfFit?.pValue).toBeLessThan(1e-4);
+    expect(saturating.flags.some((one) => one.code === "lack-of-fit")).toBe(true);
+  });
+});
+
+describe("re-readings and blocks", () => {
+  it("readings of one mixture count as one run", () => {
+    const [first] = study.runs;
+    if (first === undefined) throw new Error("the study has runs");
+    const readings = [1.02, 0.98, 1].map((factor, i) => ({
+      ...first,
+      label: `R01${"abc"[i]}`,
+      rate: first.rate * factor,
+      mixture: "M1",
+    }));
+    const fit = law({ ...study, runs: [...readings, ...study.runs.slice(1)] });
+    const plain = law(study);
+    expect(fit.degreesOfFreedom).toBe(plain.degreesOfFreedom);
+    expect(fit.residuals[0]?.readings).toEqual(["R01a", "R01b", "R01c"]);
+    expect(fit.orders.A?.estimate).toBeCloseTo(plain.orders.A?.estimate ?? Number.NaN, 2);
+  });
+
+  it("readings of one mixture with different recipes are named and kept apart", () => {
+    const fit = law({
+      ...study,
+      runs: study.runs.map((run, j) => (j < 2 ? { ...run, mixture: "M1" } : run)),
+    });
+    expect(fit.residuals).toHaveLength(study.runs.length);
+    expect(fit.flags.find((flag) => flag.code === "mixture-differs")?.message).toContain("R01 and R02");
+  });
+
+  it("a difference between days widens k, not the orders that each day measured in full", () => {
+    const days = [...recipes, ...recipes, ...recipes];
+    const input = simulateRuns(
+      {
+        ...scenario,
+        recipes: days,
+        rateErrors: days.map(() => 0.005),
+        blocks: days.map((_, j) => `day ${Math.floor(j / recipes.length) + 1}`),
+        blockScatter: 0.15,
+      },
+      normalDeviates(5),
+    );
+    const blocked = law(input);
+    const ignored = law({ ...input, runs: input.runs.map(({ block: _, ...run }) => run) });
+    expect(blocked.betweenBlockStandardDeviation).toBeGreaterThan(0.05);
+    expect(blocked.orders.A?.standardError ?? 1).toBeLessThan(0.5 * (ignored.orders.A?.standardError ?? 0));
+    expect(blocked.simpleOrders.budget.find((line) => line.source === "Blocks")?.relative).toBeGreaterThan(
+      0.03,
+    );
+  });
+
+  it("says so where blocks cannot be told from the orders", () => {
+    const fit = law({ ...study, runs: study.runs.map((run) => ({ ...run, block: run.label })) });
+    expect(fit.flags.some((flag) => flag.code === "blocks-not-separable")).toBe(true);
+    expect(fit.betweenBlockStandardDeviation).toBeNull();
+  });
+});
+
+it("takes 500 runs in less than a second and grows about in line with their number", () => {
+  const many = (size: number) => {
+    const big = Array.from({ length: size }, (_, j) => [0.01 * 1.01 ** (j % 97), 0.02 * 1.02 ** (j % 89)]);
+    return simulateRuns(
+      { ...scenario, recipes: big, rateErrors: big.map((_, j) => 0.01 + 0.001 * (j % 7)) },
+      normalDeviates(3),
+    );
+  };
+  const timed = (input: RateLawInput) => {
+    const start = performance.now();
+    law(input);
+    return performance.now() - start;
+  };
+  timed(many(50));
+  const small = Math.min(timed(many(125)), timed(many(125)), timed(many(125)));
+  const large = Math.min(timed(many(500)), timed(many(500)), timed(many(500)));
+  expect(large).toBeLessThan(1000);
+  expect(large / small).toBeLessThan(16);
+});
