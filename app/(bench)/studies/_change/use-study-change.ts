@@ -17,8 +17,10 @@ export function useStudyChange(studyId: string) {
 
   const refuse = useCallback((message: string) => toast({ text: message, severity: "blocks" }), [toast]);
 
-  const takeBack = useCallback(
+  /** Undoes one revision; the revision that did it, or null where it was refused. Undoing that one is the redo. */
+  const undo = useCallback(
     async (revision: number): Promise<number | null> => {
+      made.current = made.current.filter((other) => other !== revision);
       const result = await undoChange({ studyId, revision });
       if (!result.ok) {
         refuse(result.message);
@@ -28,15 +30,6 @@ export function useStudyChange(studyId: string) {
       return result.value.revision;
     },
     [studyId, toast, refuse],
-  );
-
-  const undo = useCallback(
-    async (revision: number) => {
-      made.current = made.current.filter((other) => other !== revision);
-      const by = await takeBack(revision);
-      if (by !== null) undone.current.push(by);
-    },
-    [takeBack],
   );
 
   /** After a change went through. */
@@ -49,7 +42,13 @@ export function useStudyChange(studyId: string) {
       }
       made.current.push(revision);
       undone.current = [];
-      toast({ text: sentence(value), undo: () => undo(revision) });
+      toast({
+        text: sentence(value),
+        undo: async () => {
+          const by = await undo(revision);
+          if (by !== null) undone.current.push(by);
+        },
+      });
     },
     [toast, undo],
   );
@@ -64,17 +63,20 @@ export function useStudyChange(studyId: string) {
     [announce, refuse],
   );
 
+  /** Whether a change made here still stands to be undone: not by a toast or a key already. */
+  const isOpen = useCallback((revision: number) => made.current.includes(revision), []);
+
   const undoLast = useCallback(async () => {
     const revision = made.current.at(-1);
-    if (revision !== undefined) await undo(revision);
+    const by = revision === undefined ? null : await undo(revision);
+    if (by !== null) undone.current.push(by);
   }, [undo]);
 
   const redoLast = useCallback(async () => {
     const revision = undone.current.pop();
-    if (revision === undefined) return;
-    const by = await takeBack(revision);
+    const by = revision === undefined ? null : await undo(revision);
     if (by !== null) made.current.push(by);
-  }, [takeBack]);
+  }, [undo]);
 
   useEffect(() => {
     function onKeyDown(event: KeyboardEvent) {
@@ -92,8 +94,8 @@ export function useStudyChange(studyId: string) {
   }, [undoLast, redoLast]);
 
   return useMemo(
-    () => ({ announce, report, refuse, undoLast, redoLast }),
-    [announce, report, refuse, undoLast, redoLast],
+    () => ({ announce, report, refuse, undo, isOpen }),
+    [announce, report, refuse, undo, isOpen],
   );
 }
 

@@ -1,0 +1,213 @@
+"use client";
+
+import { Button } from "@/app/_ui/button";
+import { Dialog } from "@/app/_ui/dialog";
+import { Grid } from "@/app/_ui/grid/grid";
+import type { GridColumn, GridProblem, GridRow } from "@/app/_ui/grid/grid-shape";
+import { Prose } from "@/app/_ui/prose";
+import { RunMark } from "@/app/_ui/run-mark";
+import { Unit } from "@/app/_ui/unit";
+import { draftFaults, isBlank } from "../draft-rows";
+import type { RunGridColumn, RunGridView } from "../run-grid.view";
+import { readCells } from "../run-row";
+import { type RowConflict, useRunDraft } from "./use-run-draft";
+
+const MOST_RUNS = 2000;
+
+/** Runs as a grid: typed, pasted and filled like a spreadsheet; every step is kept as soon as it is read. */
+export function RunGrid({
+  studyId,
+  revision,
+  view,
+  canEdit,
+}: {
+  studyId: string;
+  revision: number;
+  view: RunGridView;
+  canEdit: boolean;
+}) {
+  const sheet = useRunDraft({ studyId, revision, view });
+  const faults = draftFaults(sheet.draft, view);
+  const rows = [...keptRows(view, sheet, faults), ...(canEdit ? newRows(sheet, faults) : [])];
+  const columnOf = new Map(view.columns.map((column) => [column.id, column]));
+  return (
+    <>
+      <Grid
+        label="Runs of this study"
+        columns={view.columns.map(gridColumn)}
+        rows={rows}
+        editable={canEdit}
+        roomForNewRows={MOST_RUNS - rows.length}
+        onStep={(step) => void sheet.onStep(step)}
+        onUndo={() => void sheet.onUndo()}
+        onRedo={() => void sheet.onRedo()}
+        onSay={sheet.say}
+        speak={(_, columnId, text) => {
+          const fault = readCells({ [columnId]: text }, null, view.shape).faults[columnId];
+          const unit = columnOf.get(columnId)?.unit ?? "";
+          return (
+            fault ??
+            (text.trim() === "" ? "Empty." : `${text.trim()}${unit === "" ? "" : ` ${plainUnit(unit)}`}.`)
+          );
+        }}
+        status={
+          <>
+            <p>{sheet.saving ? "Refitting." : sheet.said}</p>
+            {canEdit && (
+              <p className="text-right">
+                <b>Paste a block</b> from a spreadsheet: rows become runs, decimal commas are read. 50.0 ± 0.4
+                carries its standard uncertainty.
+              </p>
+            )}
+          </>
+        }
+      />
+      <ConflictDialog
+        conflict={sheet.conflict}
+        columns={view.columns}
+        onTakeTheirs={sheet.takeTheirs}
+        onPutMineOver={() => void sheet.putMineOver()}
+      />
+    </>
+  );
+}
+
+function gridColumn(column: RunGridColumn): GridColumn {
+  return {
+    id: column.id,
+    label: column.label,
+    kind: column.kind,
+    width: column.id === "remark" ? "180px" : column.kind === "number" ? "92px" : "84px",
+    head: (
+      <>
+        <Prose text={column.head} />
+        <span className="head-unit">{column.unit === "" ? "\u00a0" : <Unit text={column.unit} />}</span>
+      </>
+    ),
+  };
+}
+
+type Sheet = ReturnType<typeof useRunDraft>;
+type Faults = ReturnType<typeof draftFaults>;
+
+function keptRows(view: RunGridView, sheet: Sheet, faults: Faults): GridRow[] {
+  return view.rows.map((row): GridRow => {
+    const cells = { ...row.cells, ...sheet.draft.texts[row.runId] };
+    const label = cells.label || row.cells.label || "run";
+    return {
+      id: row.runId,
+      label,
+      cells,
+      drawn: { label: <RunMark mark={row.mark} label={label} state={row.state} /> },
+      ...(row.state === "set-aside" ? { tone: "set-aside" as const } : {}),
+      ...faultsOf(faults[row.runId], view, label, {
+        label: "Return to the kept values",
+        act: () => sheet.discard(row.runId),
+      }),
+    };
+  });
+}
+
+function newRows(sheet: Sheet, faults: Faults): GridRow[] {
+  return sheet.draft.newKeys.map((key): GridRow => {
+    const cells = sheet.draft.texts[key] ?? {};
+    const label = cells.label?.trim() || "new run";
+    return {
+      id: key,
+      label,
+      cells,
+      tone: "new",
+      ...(isBlank(cells) ? { drawn: { label: <span className="text-ink-3">New run</span> } } : {}),
+      ...faultsOf(faults[key], null, label, { label: "Leave this row out", act: () => sheet.discard(key) }),
+    };
+  });
+}
+
+function faultsOf(
+  faults: Readonly<Record<string, string>> | undefined,
+  view: RunGridView | null,
+  label: string,
+  repair: GridProblem["repairs"][number],
+): Pick<GridRow, "faults" | "problem"> {
+  if (faults === undefined) return {};
+  return {
+    faults,
+    problem: {
+      title: view === null ? `${label} is not kept yet` : `${label} keeps its last good values in the law`,
+      detail: Object.values(faults).join(" "),
+      repairs: [repair],
+    },
+  };
+}
+
+function plainUnit(unit: string): string {
+  return unit.replaceAll("^-1", "⁻¹");
+}
+
+function ConflictDialog({
+  conflict,
+  columns,
+  onTakeTheirs,
+  onPutMineOver,
+}: {
+  conflict: RowConflict | null;
+  columns: readonly RunGridColumn[];
+  onTakeTheirs: () => void;
+  onPutMineOver: () => void;
+}) {
+  const cells = (conflict?.rows ?? []).flatMap((row) =>
+    Object.entries(row.cells).flatMap(([column, mine]) => {
+      const theirs = conflict?.theirs[row.runId ?? ""];
+      const head = columns.find(({ id }) => id === column)?.label ?? column;
+      const text = theirs?.[column];
+      return theirs === undefined || text === undefined || text === mine
+        ? []
+        : [
+            {
+              key: `${row.key} ${column}`,
+              run: theirs.label ?? row.cells.label ?? "",
+              head,
+              mine,
+              theirs: text,
+            },
+          ];
+    }),
+  );
+  return (
+    <Dialog
+      open={conflict !== null}
+      onOpenChange={(open) => !open && onTakeTheirs()}
+      title="Somebody else changed the same run"
+      lead="Your change was not kept yet. Whichever you choose, the other stays in the history."
+      actions={
+        <>
+          <Button onClick={onTakeTheirs}>Keep theirs</Button>
+          <Button kind="primary" onClick={onPutMineOver}>
+            Put mine over theirs
+          </Button>
+        </>
+      }
+    >
+      <table className="data-table mt-3">
+        <thead>
+          <tr>
+            <th scope="col">Run</th>
+            <th scope="col">Column</th>
+            <th scope="col">Theirs</th>
+            <th scope="col">Yours</th>
+          </tr>
+        </thead>
+        <tbody>
+          {cells.map((cell) => (
+            <tr key={cell.key}>
+              <th scope="row">{cell.run}</th>
+              <td>{cell.head}</td>
+              <td>{cell.theirs || "empty"}</td>
+              <td>{cell.mine || "empty"}</td>
+            </tr>
+          ))}
+        </tbody>
+      </table>
+    </Dialog>
+  );
+}

@@ -1,0 +1,85 @@
+import { CheckNote } from "@/app/_ui/check";
+import { Margin, MarginSection } from "@/app/_ui/margin";
+import type { Check } from "@/app/_worksheet/analysis";
+
+/** Checks on the runs, the common recipe, and the keys of the grid while it is open. */
+export function RunMargin({
+  checks,
+  recipe,
+  showsKeys,
+}: {
+  checks: readonly Check[];
+  recipe: readonly { readonly name: string; readonly value: string }[];
+  showsKeys: boolean;
+}) {
+  return (
+    <Margin label="Checks">
+      <MarginSection title="Checks on the runs">
+        {checks.length === 0 && <p className="text-ink-2">None yet: they come with the first rates.</p>}
+        {checks.map((check) => (
+          <CheckNote
+            key={`${check.code} ${check.runId} ${check.message}`}
+            severity={check.severity}
+            message={check.message}
+            settled={check.settled}
+            actions={
+              check.runId !== null && check.settled === null ? (
+                <a href={`#run-${check.runId}`}>Go to the run</a>
+              ) : undefined
+            }
+          />
+        ))}
+      </MarginSection>
+      {recipe.length > 0 && (
+        <MarginSection title="Recipe">
+          <dl className="fact-list">
+            {recipe.map(({ name, value }) => (
+              <div key={name} className="contents">
+                <dt>{name}</dt>
+                <dd>{value}</dd>
+              </div>
+            ))}
+          </dl>
+        </MarginSection>
+      )}
+      {showsKeys && (
+        <MarginSection title="Keys">
+          <dl className="key-list">
+            <dt>
+              <kbd>↑</kbd> <kbd>↓</kbd> <kbd>←</kbd> <kbd>→</kbd>
+            </dt>
+            <dd>move; with Shift select</dd>
+            <dt>
+              <kbd>Enter</kbd> <kbd>Tab</kbd>
+            </dt>
+            <dd>keep, go down or right</dd>
+            <dt>
+              <kbd>F2</kbd>
+            </dt>
+            <dd>edit in place</dd>
+            <dt>
+              <kbd>0</kbd> to <kbd>9</kbd>
+            </dt>
+            <dd>replace</dd>
+            <dt>
+              <kbd>Delete</kbd>
+            </dt>
+            <dd>empty</dd>
+            <dt>
+              <kbd>Ctrl Z</kbd>
+            </dt>
+            <dd>undo</dd>
+            <dt>
+              <kbd>Ctrl V</kbd>
+            </dt>
+            <dd>paste a block</dd>
+            <dt>
+              <kbd>Ctrl D</kbd>
+            </dt>
+            <dd>fill down</dd>
+          </dl>
+        </MarginSection>
+      )}
+    </Margin>
+  );
+}

@@ -1,0 +1,144 @@
+import type { GridStep } from "@/app/_ui/grid/grid-shape";
+import type { RunGridView } from "./run-grid.view";
+import { nextLabel, readCells } from "./run-row";
+import type { RowEdit } from "./schema";
+
+/**
+ * What is typed in the grid and not yet in the sheet, as plain data: texts over the kept ones, and rows that are
+ * new. A row leaves the draft once it was kept; a row that is not read stays here, and the law keeps its last good
+ * values.
+ */
+export interface Draft {
+  /** By row key (a run's id, or a key of the page's own) and column id. */
+  readonly texts: Readonly<Record<string, Readonly<Record<string, string>>>>;
+  /** Keys of new rows in order; the last one is blank and waits to be typed into. */
+  readonly newKeys: readonly string[];
+  readonly nextKey: number;
+}
+
+export const emptyDraft: Draft = { texts: {}, newKeys: ["new-0"], nextKey: 1 };
+
+export interface CellBefore {
+  readonly key: string;
+  readonly column: string;
+  /** Undefined where the kept text showed. */
+  readonly text: string | undefined;
+}
+
+export interface AppliedStep {
+  readonly draft: Draft;
+  readonly touched: readonly string[];
+  readonly before: readonly CellBefore[];
+}
+
+/** One step of the grid laid over the draft. New rows without a label get the next one. */
+export function applyStep(draft: Draft, step: GridStep, view: RunGridView): AppliedStep {
+  const texts: Record<string, Record<string, string>> = structuredClone(draft.texts) as Record<
+    string,
+    Record<string, string>
+  >;
+  const newKeys = [...draft.newKeys];
+  let { nextKey } = draft;
+  const before: CellBefore[] = [];
+  const touched = new Set<string>();
+  const write = (key: string, column: string, text: string) => {
+    before.push({ key, column, text: texts[key]?.[column] });
+    texts[key] = { ...texts[key], [column]: text };
+    touched.add(key);
+  };
+  const shownNew = newKeys.length;
+  for (const change of step.changes) {
+    const place = shownNew + change.newRow;
+    while (change.rowId === null && newKeys.length <= place) {
+      newKeys.push(`new-${nextKey}`);
+      nextKey += 1;
+    }
+    const key = change.rowId ?? newKeys[place];
+    if (key !== undefined) write(key, change.columnId, change.text);
+  }
+  for (const key of newKeys) {
+    const row = texts[key];
+    if (!touched.has(key) || row === undefined || (row.label ?? "") !== "" || isBlank(row)) continue;
+    write(key, "label", nextLabel(labelsOf({ ...draft, texts, newKeys }, view)));
+  }
+  const last = newKeys.at(-1);
+  if (last === undefined || !isBlank(texts[last] ?? {})) {
+    newKeys.push(`new-${nextKey}`);
+    nextKey += 1;
+  }
+  return { draft: { texts, newKeys, nextKey }, touched: [...touched], before };
+}
+
+/** Puts texts back to what they were before a step. */
+export function restoreCells(draft: Draft, cells: readonly CellBefore[]): Draft {
+  const texts: Record<string, Record<string, string>> = structuredClone(draft.texts) as Record<
+    string,
+    Record<string, string>
+  >;
+  for (const { key, column, text } of cells.toReversed()) {
+    const row = { ...texts[key] };
+    if (text === undefined) delete row[column];
+    else row[column] = text;
+    texts[key] = row;
+  }
+  return { ...draft, texts };
+}
+
+export function withoutRows(draft: Draft, keys: Iterable<string>): Draft {
+  const gone = new Set(keys);
+  return {
+    ...draft,
+    texts: Object.fromEntries(Object.entries(draft.texts).filter(([key]) => !gone.has(key))),
+    newKeys: draft.newKeys.filter((key) => !gone.has(key)),
+  };
+}
+
+export function isBlank(cells: Readonly<Record<string, string>>): boolean {
+  return Object.values(cells).every((text) => text.trim() === "");
+}
+
+/** By row key and column: what stands against keeping a row. A blank new row has no faults and is not kept. */
+export function draftFaults(
+  draft: Draft,
+  view: RunGridView,
+): Readonly<Record<string, Readonly<Record<string, string>>>> {
+  const faults: Record<string, Record<string, string>> = {};
+  const owners = labelOwners(draft, view);
+  for (const [key, cells] of Object.entries(draft.texts)) {
+    const isNew = draft.newKeys.includes(key);
+    if (isNew && isBlank(cells)) continue;
+    const found = { ...readCells(isNew ? { label: "", ...cells } : cells, null, view.shape).faults };
+    const label = cells.label?.trim();
+    if (label !== undefined && label !== "" && (owners.get(label)?.length ?? 0) > 1) {
+      found.label = `Another run is called ${label} already. Give one of them another label.`;
+    }
+    if (Object.keys(found).length > 0) faults[key] = found;
+  }
+  return faults;
+}
+
+/** The rows among `touched` that can be kept now. */
+export function keepableRows(draft: Draft, touched: readonly string[], view: RunGridView): RowEdit[] {
+  const faults = draftFaults(draft, view);
+  return touched.flatMap((key) => {
+    const cells = draft.texts[key] ?? {};
+    const isNew = draft.newKeys.includes(key);
+    if (faults[key] !== undefined || Object.keys(cells).length === 0 || (isNew && isBlank(cells))) return [];
+    return [{ key, runId: isNew ? null : key, cells }];
+  });
+}
+
+function labelsOf(draft: Draft, view: RunGridView): string[] {
+  return [...labelOwners(draft, view).keys()];
+}
+
+function labelOwners(draft: Draft, view: RunGridView): Map<string, string[]> {
+  const owners = new Map<string, string[]>();
+  const add = (label: string, key: string) => {
+    if (label !== "") owners.set(label, [...(owners.get(label) ?? []), key]);
+  };
+  for (const row of view.rows)
+    add((draft.texts[row.runId]?.label ?? row.cells.label ?? "").trim(), row.runId);
+  for (const key of draft.newKeys) add((draft.texts[key]?.label ?? "").trim(), key);
+  return owners;
+}
