@@ -1,7 +1,8 @@
 import { readFileSync } from "node:fs";
 import path from "node:path";
 import { describe, expect, it } from "vitest";
-import { applyChange, type Corrections } from "./corrections";
+import { applyChange } from "./change";
+import type { Corrections } from "./corrections";
 import { readFile } from "./read-file";
 import type { FileReading, Issue, StudyContext } from "./reading";
 import { EMPTY_STUDY } from "./testing-context";
@@ -126,7 +127,7 @@ describe("what stands around the data", () => {
     const reading = read("recipe-without-unit.csv");
     expect(reading.traces.map((trace) => trace.recipe.b?.molar)).toEqual([0.02, 0.02]);
     expect(issue(reading, "recipe").severity).toBe("note");
-    expect(issue(reading, "recipe").message).toContain("taken as mmol/L");
+    expect(issue(reading, "recipe").message).toContain("taken as mmol L⁻¹");
   });
 
   it("converts minutes and milliabsorbance named in the line of names", () => {

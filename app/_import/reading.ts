@@ -1,5 +1,6 @@
 import type { TimeUnit } from "@/db/sheet/sheet.schema";
-import type { Change, ColumnRole, Corrections } from "./corrections";
+import type { Change } from "./change";
+import type { ColumnRole, Corrections } from "./corrections";
 import type { Encoding } from "./decode";
 import type { DecimalMark } from "./number";
 import type { Separator } from "./rows";

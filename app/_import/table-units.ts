@@ -9,6 +9,7 @@ import {
   isThousandthOf,
   timeUnitOf,
 } from "./units";
+import { unitWords } from "./words";
 
 /** Units of the time and signal columns: what the file says, else what the study uses, said as an assumption. */
 
@@ -49,7 +50,7 @@ export function signalUnitOfTable(
     }
     return {
       guess: { value: signal.unit, reason: "the set-up's unit; the file names none", basis: "assumed" },
-      issues: named ? [disagreement(named, `a concentration in ${signal.unit}`)] : [],
+      issues: named ? [disagreement(named, `a concentration in ${unitWords(signal.unit)}`)] : [],
     };
   }
   if (signal === null) {

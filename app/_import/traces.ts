@@ -12,7 +12,7 @@ import {
   importedConcentrationToMolar,
   importedTimeToSeconds,
 } from "./units";
-import { counted, joined, lines } from "./words";
+import { counted, joined, lines, unitWords } from "./words";
 
 /** Gathered columns into traces of runs: ordered, converted, labelled, with the recipe the file or a run gives. */
 
@@ -173,7 +173,7 @@ function recipeOf(
   }
   for (const line of options.recipes) {
     const molar = typeof line.values === "number" ? line.values : line.values.get(trace.column);
-    const reason = `line ${line.line}, “${line.label}”${line.key.unitInFile ? "" : `, taken as ${line.key.unit}`}`;
+    const reason = `line ${line.line}, “${line.label}”${line.key.unitInFile ? "" : `, taken as ${unitWords(line.key.unit)}`}`;
     if (molar !== undefined) recipe[line.key.species.id] = { molar, reason };
   }
   for (const [id, { value, line }] of trace.concentrations) {
@@ -207,7 +207,7 @@ function recipeIssues(traces: readonly GatheredTrace[], options: TraceOptions): 
         ...base,
         code: "recipe",
         severity: line.key.unitInFile ? "settled" : "note",
-        message: `Starting concentrations of ${name}, ${count}, ${line.key.unitInFile ? `in ${line.key.unit}` : `no unit given, taken as ${line.key.unit}`}.`,
+        message: `Starting concentrations of ${name}, ${count}, ${line.key.unitInFile ? `in ${unitWords(line.key.unit)}` : `no unit given, taken as ${unitWords(line.key.unit)}`}.`,
       },
     ];
   });

@@ -1,3 +1,6 @@
+import { concentrationUnitText } from "kinetics-core/quantities";
+import type { ConcentrationUnitName } from "./reading";
+
 /** Small sentences that issues share: places, counts, lists. Columns are 0-based inside and 1-based in words. */
 
 export function columnName(column: number, name: string): string {
@@ -38,4 +41,9 @@ export function grouped(value: number): string {
 /** A number as typed back to the reader, with the true minus. */
 export function plain(value: number): string {
   return String(value).replace("-", "−");
+}
+
+/** "mmol L⁻¹", for sentences; never with a solidus. */
+export function unitWords(unit: ConcentrationUnitName): string {
+  return concentrationUnitText(unit).replace("^-1", "⁻¹").replace(/^umol/, "µmol");
 }
