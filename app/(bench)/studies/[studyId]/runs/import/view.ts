@@ -119,6 +119,11 @@ export function speciesHead(species: SpeciesContext): string {
   return species.symbol === "" ? species.name : `[${species.symbol}]`;
 }
 
+/** Plain text for typesetting: "mmol L^-1". */
+export function speciesUnit(species: SpeciesContext): string {
+  return concentrationUnitText(species.unit);
+}
+
 /** The text of a prefilled concentration, in the species' unit. */
 export function prefilled(molar: number, species: SpeciesContext): string {
   return typedNumber(molarTo(molar, species.unit));

@@ -1,6 +1,5 @@
 "use client";
 
-import { concentrationUnitText } from "kinetics-core/quantities";
 import { useMemo, useState } from "react";
 import type { Change } from "@/app/_import/change";
 import type { SpeciesContext } from "@/app/_import/reading";
@@ -8,8 +7,8 @@ import { Grid } from "@/app/_ui/grid/grid";
 import type { GridColumn, GridRow, GridStep } from "@/app/_ui/grid/grid-shape";
 import { SectionTitle } from "@/app/_ui/sheet";
 import { Unit } from "@/app/_ui/unit";
-import { speciesHead } from "../view";
-import type { RecipeRow } from "./use-recipes";
+import type { RecipeRow } from "../recipe-row";
+import { speciesHead, speciesUnit } from "../view";
 
 const LABEL = "label";
 
@@ -75,7 +74,7 @@ function gridColumns(species: readonly SpeciesContext[]): GridColumn[] {
           <>
             {speciesHead(one)}
             <span className="head-unit">
-              <Unit text={concentrationUnitText(one.unit)} />
+              <Unit text={speciesUnit(one)} />
             </span>
           </>
         ),
