@@ -14,12 +14,20 @@ export interface Prepared {
  * Makes the database ready to be served: tables up to date and, if nobody has an account yet and `demo` is true,
  * the demo group with its study.
  */
-export async function prepareDatabase(file: string, options: { demo: boolean }): Promise<Prepared> {
+export async function prepareDatabase(
+  file: string,
+  options: {
+    readonly demo: boolean;
+    /** For the people of the demo group if they are made now; random unless tests have to know it. */
+    readonly demoPassword?: string | undefined;
+  },
+): Promise<Prepared> {
   const db = connect(file);
   try {
     await migrateToLatest(db);
     const anybody = await db.selectFrom("account").select("id").limit(1).executeTakeFirst();
-    const password = anybody === undefined && options.demo ? await makeDemoPeople(db) : null;
+    const password =
+      anybody === undefined && options.demo ? await makeDemoPeople(db, options.demoPassword) : null;
     if (options.demo) await makeDemoStudies(db);
     return { demo: (await hasInventedGroup(db)) ? { email: DEMO_EMAIL, password } : null };
   } finally {

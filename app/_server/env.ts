@@ -17,6 +17,8 @@ const settings = z.object({
   PORT: z.coerce.number().int().min(1).max(65_535).default(3000),
   /** Seals session cookies; kept in a file beside the database where it is not given. */
   AUTH_SECRET: z.string().min(32, "AUTH_SECRET must have at least 32 characters").optional(),
+  /** Of the demo accounts, if they are made at this start. */
+  DEMO_PASSWORD: z.string().min(12, "DEMO_PASSWORD must have at least 12 characters").optional(),
 });
 
 const LOOPBACK_NAMES = new Set(["localhost", "127.0.0.1", "[::1]"]);
@@ -30,6 +32,7 @@ export interface Environment {
   /** Absolute path of the SQLite file; uploads and the session secret live beside it. */
   readonly databaseFile: string;
   readonly authSecret: string | null;
+  readonly demoPassword: string | undefined;
 }
 
 /** @throws where a variable is set to something that cannot be meant; the message names it. */
@@ -40,7 +43,7 @@ export function readEnvironment(variables: Record<string, string | undefined>): 
     const sentences = parsed.error.issues.map((issue) => `${issue.path.join(".")}: ${issue.message}`);
     throw new Error(`The environment cannot be used. ${sentences.join("; ")}`);
   }
-  const { PUBLIC_URL, PORT, AUTH_SECRET } = parsed.data;
+  const { PUBLIC_URL, PORT, AUTH_SECRET, DEMO_PASSWORD } = parsed.data;
   const publicUrl = PUBLIC_URL === undefined ? null : new URL(PUBLIC_URL);
   return {
     publicOrigin: publicUrl?.origin ?? null,
@@ -48,6 +51,7 @@ export function readEnvironment(variables: Record<string, string | undefined>): 
     port: PORT,
     databaseFile: path.resolve(/* turbopackIgnore: true */ databaseFile()),
     authSecret: AUTH_SECRET ?? null,
+    demoPassword: DEMO_PASSWORD,
   };
 }
 

@@ -19,9 +19,8 @@ const PEOPLE: readonly { role: Role; initials: string; name: string; email: stri
 
 export const DEMO_EMAIL = "ld@demo.example";
 
-/** The demo group and its people with one random password, all at once. Gives the password, which is not kept. */
-export async function makeDemoPeople(db: Kysely<Database>): Promise<string> {
-  const password = randomPassword();
+/** The demo group and its people with one password, all at once. Gives the password, which is not kept. */
+export async function makeDemoPeople(db: Kysely<Database>, password = randomPassword()): Promise<string> {
   const passwordHash = await hashPassword(password);
   await db.transaction().execute(async (trx) => {
     const groupId = await createGroup(trx, { name: "Demo group", invented: true });
