@@ -1,0 +1,69 @@
+import { setUpFormOf } from "@/app/(bench)/studies/_set-up/set-up-form";
+import type { World } from "./world";
+
+/**
+ * Who may enter where. Every page, route handler and server action has a line here; a new one without a line fails
+ * the test. Addresses are filled in from the world by parameter name ([studyId] is `world.studyId`, and so on).
+ */
+export type Rule =
+  /** Open to everybody; shows nothing of any group. `at` is the address to try where it cannot be guessed. */
+  | { readonly who: "anyone"; readonly at?: string }
+  /** Signed-in members; names no study or group, so everybody sees what is their own. */
+  | { readonly who: "member" }
+  /** Members of the group that the study belongs to. `send` is what a member would send to a handler or action. */
+  | { readonly who: "group"; readonly send?: (world: World) => unknown };
+
+const anyone: Rule = { who: "anyone" };
+const anyoneAt = (at: string): Rule => ({ who: "anyone", at });
+const member: Rule = { who: "member" };
+const group = (send?: (world: World) => unknown): Rule =>
+  send === undefined ? { who: "group" } : { who: "group", send };
+
+const setUp = ({ studyId, revision, sheet }: World) => ({
+  studyId,
+  base: revision,
+  form: setUpFormOf(sheet),
+});
+
+export const rules: Readonly<Record<string, Rule>> = {
+  // Pages
+  "page /": anyone,
+  "page /sign-in": anyone,
+  "page /studies/[studyId]": group(),
+
+  "page /studies/new": member,
+  "page /studies/[studyId]/set-up": group(),
+  "page /studies/[studyId]/share": group(),
+
+  // Route handlers
+  "GET /api/health": anyone,
+  "GET /api/auth/[...nextauth]": anyoneAt("/api/auth/session"),
+  "POST /api/auth/[...nextauth]": anyoneAt("/api/auth/signout"),
+
+  "GET /studies/[studyId]/revision": group(),
+  "POST /api/v1/compute/initial-rate": member,
+  "POST /api/v1/compute/rate-law": member,
+  "GET /api/v1/openapi.json": anyone,
+
+  // Server actions, by file and exported name
+  "action app/(bench)/actions.ts#signOut": member,
+  "action app/(bench)/actions.ts#signOutEverywhere": member,
+  "action app/(bench)/studies/new/actions.ts#makeStudy": member,
+  "action app/(bench)/studies/_change/actions.ts#undoChange": group(({ studyId, revision }) => ({
+    studyId,
+    revision,
+  })),
+  "action app/(bench)/studies/[studyId]/set-up/actions.ts#previewSetUp": group(setUp),
+  "action app/(bench)/studies/[studyId]/set-up/actions.ts#keepSetUp": group(setUp),
+  "action app/(bench)/studies/[studyId]/share/actions.ts#makeLink": group(({ studyId, revision }) => ({
+    studyId,
+    revision,
+    label: "For checking",
+    life: "7",
+    shows: "live",
+  })),
+  "action app/(bench)/studies/[studyId]/share/actions.ts#revokeLink": group(({ studyId, linkId }) => ({
+    studyId,
+    linkId,
+  })),
+};
