@@ -16,7 +16,7 @@ export const TRUTH = {
   /** ε·l in L mol⁻¹. */
   perMolar: 17_930,
   /** Standard deviation and lag-one autocorrelation of one reading's noise, in absorbance. */
-  noise: 0.0009,
+  noise: 0.0004,
   autocorrelation: 0.45,
   /** Blank of the cell, in absorbance: mean, and standard deviation from run to run. */
   blank: 0.012,

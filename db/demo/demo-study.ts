@@ -30,11 +30,11 @@ export async function makeDemoStudy(db: Kysely<Database>, actor: Actor): Promise
   if (received.status !== "received") throw new Error(`The demo file was not received: ${received.status}.`);
 
   const readings = new Map(demoReadings().map((run) => [run.label, run]));
-  const runs = DEMO_RUNS.map((run) => {
+  const runs = DEMO_RUNS.map((run, index) => {
     const { timeSeconds = [], absorbance = [] } = readings.get(run.label) ?? {};
     return {
       label: run.label,
-      column: run.label,
+      column: `column ${index + 2}, ${run.label}`,
       concentrations: {
         [ester]: { molar: run.esterMolar, relativeUncertainty: PIPETTING },
         [hydroxide]: { molar: run.hydroxideMolar, relativeUncertainty: PIPETTING },
