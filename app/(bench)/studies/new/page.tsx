@@ -9,13 +9,22 @@ import { NewStudyForm } from "./_components/new-study-form";
 
 export const metadata: Metadata = { title: "New study · Ratewright" };
 
-export default async function NewStudyPage() {
+/** Where to go once the study is made: its runs, or the import of traces at once. */
+const NEXT = { import: "/runs/import", paste: "/runs/import?paste" } as const;
+
+export default async function NewStudyPage({
+  searchParams,
+}: {
+  searchParams: Promise<{ then?: string | string[] }>;
+}) {
   const actor = await requireMember();
+  const { then: wanted } = await searchParams;
+  const next = wanted === "import" || wanted === "paste" ? NEXT[wanted] : "/runs";
   return (
     <>
       <BenchHead trail={[{ name: "Studies", href: "/studies" }, { name: "New study" }]} />
       {mayActAs(actor.role, "analyst") ? (
-        <NewStudyForm />
+        <NewStudyForm next={next} />
       ) : (
         <Sheet title="Studies are made by analysts and leads">
           <EmptyState

@@ -17,8 +17,8 @@ import { SignalFields } from "../../_set-up/signal-fields";
 import { SpeciesTable } from "../../_set-up/species-table";
 import { makeStudy } from "../actions";
 
-/** The least that a study needs; the rest has sensible values and waits in Set-up. */
-export function NewStudyForm() {
+/** The least that a study needs; the rest has sensible values and waits in Set-up. `next` follows the study's address. */
+export function NewStudyForm({ next }: { next: string }) {
   const router = useRouter();
   const [form, setForm] = useState<SetUpForm>(emptySetUpForm);
   const [faults, setFaults] = useState<readonly FormFault[]>([]);
@@ -35,7 +35,7 @@ export function NewStudyForm() {
     start(async () => {
       const result = await makeStudy(form);
       if (result.ok) {
-        router.push(`/studies/${result.value.studyId}/runs`);
+        router.push(`/studies/${result.value.studyId}${next}`);
         return;
       }
       setFaults(result.fields ?? []);
