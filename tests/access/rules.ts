@@ -25,14 +25,18 @@ const setUp = ({ studyId, revision, sheet }: World) => ({
   form: setUpFormOf(sheet),
 });
 
+const ofRun = ({ studyId, revision, runId }: World) => ({ studyId, base: revision, runIds: [runId] });
+
 export const rules: Readonly<Record<string, Rule>> = {
   // Pages
   "page /": anyone,
   "page /sign-in": anyone,
   "page /studies/[studyId]": group(),
 
+  "page /studies": member,
   "page /studies/new": member,
   "page /studies/[studyId]/set-up": group(),
+  "page /studies/[studyId]/runs": group(),
   "page /studies/[studyId]/share": group(),
 
   // Route handlers
@@ -55,6 +59,30 @@ export const rules: Readonly<Record<string, Rule>> = {
   })),
   "action app/(bench)/studies/[studyId]/set-up/actions.ts#previewSetUp": group(setUp),
   "action app/(bench)/studies/[studyId]/set-up/actions.ts#keepSetUp": group(setUp),
+  "action app/(bench)/studies/[studyId]/runs/actions.ts#previewAside": group(({ studyId, runId }) => ({
+    studyId,
+    runIds: [runId],
+    aside: true,
+  })),
+  "action app/(bench)/studies/[studyId]/runs/actions.ts#setAside": group((world) => ({
+    ...ofRun(world),
+    reason: "bubble",
+  })),
+  "action app/(bench)/studies/[studyId]/runs/actions.ts#takeBack": group(ofRun),
+  "action app/(bench)/studies/[studyId]/runs/actions.ts#putIntoBin": group(ofRun),
+  "action app/(bench)/studies/[studyId]/runs/actions.ts#restoreFromBin": group(ofRun),
+  "action app/(bench)/studies/[studyId]/runs/actions.ts#repeatRecipe": group(
+    ({ studyId, revision, runId }) => ({
+      studyId,
+      base: revision,
+      runId,
+    }),
+  ),
+  "action app/(bench)/studies/[studyId]/runs/actions.ts#keepRows": group(({ studyId, revision, runId }) => ({
+    studyId,
+    base: revision,
+    rows: [{ key: runId, runId, cells: { remark: "typed" } }],
+  })),
   "action app/(bench)/studies/[studyId]/share/actions.ts#makeLink": group(({ studyId, revision }) => ({
     studyId,
     revision,
