@@ -1,0 +1,129 @@
+import type { StudyAnalysis } from "@/app/_worksheet/analysis";
+import { list } from "@/app/_worksheet/missing-law";
+import { printHeldOrder } from "@/app/_worksheet/print-order";
+import { type NamedOrder, standingOrders } from "@/app/_worksheet/standing-constant";
+import type { Sheet } from "@/db/sheet/sheet.schema";
+
+/** The finding as a sentence: a claim that the highlighter marks, then the numbers that support it. */
+export interface VerdictView {
+  readonly claim: string;
+  readonly support: string;
+}
+
+export function verdictOf(sheet: Sheet, analysis: StudyAnalysis): VerdictView {
+  const { law, runs } = analysis;
+  if (law.status === "no-law") return { claim: "The runs do not support a law yet.", support: law.missing };
+  const standing = runs.filter((run) => run.state === "standing").length;
+  const orders = standingOrders(sheet, law.fit);
+  const settled = orders.filter((one) => one.reading.kind === "settled");
+  const held = orders.filter((one) => one.reading.kind === "held");
+  const free = orders.filter((one) => one.reading.kind === "free");
+  return {
+    claim: claimOf(counted(standing), settled, held, free),
+    support: [
+      departure(law.fit.residuals),
+      freeOrders(law.fit, [...settled, ...free]),
+      freedom(law.fit.degreesOfFreedom),
+    ]
+      .filter((sentence) => sentence !== "")
+      .join(" "),
+  };
+}
+
+const NUMBERS = [
+  "No",
+  "One",
+  "Two",
+  "Three",
+  "Four",
+  "Five",
+  "Six",
+  "Seven",
+  "Eight",
+  "Nine",
+  "Ten",
+  "Eleven",
+  "Twelve",
+];
+
+function counted(runs: number): string {
+  return `${NUMBERS[runs] ?? runs} runs`;
+}
+
+function claimOf(
+  runs: string,
+  settled: readonly NamedOrder[],
+  held: readonly NamedOrder[],
+  free: readonly NamedOrder[],
+): string {
+  if (free.length === 0 && held.length === 0) return `${runs} support ${ordersInWords(settled)}.`;
+  if (free.length === 0 && settled.length === 0)
+    return `${runs} fix *k* with ${list(held.map((one) => `the order in ${one.name} held at ${orderOf(one)}`))}.`;
+  const parts = [
+    ...(settled.length === 0 ? [] : [`support ${ordersInWords(settled)}`]),
+    ...(free.length === 0 ? [] : [`leave the order in ${list(free.map((one) => one.name))} unsettled`]),
+  ];
+  const holding =
+    held.length === 0 ? "" : `, with ${list(held.map((one) => `${one.name} held at ${orderOf(one)}`))}`;
+  return `${runs} ${list(parts)}${holding}.`;
+}
+
+const ORDINALS: Readonly<Record<string, string>> = {
+  "-1": "order −1",
+  "-0.5": "order −½",
+  "0": "zero order",
+  "0.5": "half order",
+  "1": "first order",
+  "1.5": "order 1½",
+  "2": "second order",
+  "3": "third order",
+};
+
+function ordersInWords(orders: readonly NamedOrder[]): string {
+  const numbers = orders.flatMap(({ reading }) => (reading.kind === "settled" ? [reading.order] : []));
+  const first = numbers[0];
+  if (first !== undefined && numbers.length > 1 && numbers.every((order) => order === first))
+    return `${ORDINALS[String(first)] ?? `order ${first}`} in each reactant`;
+  return list(
+    orders.map(({ name, reading }) =>
+      reading.kind === "settled"
+        ? `${ORDINALS[String(reading.order)] ?? `order ${reading.order}`} in ${name}`
+        : `an open order in ${name}`,
+    ),
+  );
+}
+
+function orderOf({ reading }: NamedOrder): string {
+  return reading.kind === "unknown" ? "?" : printHeldOrder(reading.order);
+}
+
+type Fit = Extract<StudyAnalysis["law"], { status: "law" }>["fit"];
+
+function departure(residuals: Fit["residuals"]): string {
+  const worst = [...residuals].sort((a, b) => Math.abs(b.residual) - Math.abs(a.residual))[0];
+  if (worst === undefined || residuals.length < 2) return "";
+  const percent = Math.abs(Math.expm1(worst.residual)) * 100;
+  if (percent < 0.05) return "No run departs from the law by more than 0.05 %.";
+  return `No run departs from the law by more than ${percent.toPrecision(2)} % (${worst.label}).`;
+}
+
+function freeOrders(fit: Fit, orders: readonly NamedOrder[]): string {
+  const intervals = orders.flatMap(({ name, heldAt, reading }) => {
+    const interval = heldAt === null ? (fit.orders[name]?.interval ?? null) : null;
+    if (interval === null || reading.kind !== "settled") return [];
+    return [Math.max(Math.abs(interval[0] - reading.order), Math.abs(interval[1] - reading.order))];
+  });
+  if (intervals.length === 0) return "";
+  const widest = Math.max(...intervals).toPrecision(2);
+  return intervals.length === 1
+    ? `Its free interval stays within ${widest} of the whole number.`
+    : `The intervals of the free orders stay within ${widest} of these.`;
+}
+
+function freedom(degrees: number): string {
+  if (degrees === 0)
+    return "As many runs as unknowns: nothing is left to judge them by, and no interval can be given.";
+  return degrees <= 2
+    ? `The intervals rest on ${degrees === 1 ? "one degree" : "two degrees"} of freedom.`
+    : "";
+}

@@ -1,0 +1,90 @@
+"use client";
+
+import { Button } from "@/app/_ui/button";
+import { CheckNote } from "@/app/_ui/check";
+import { MarginSection } from "@/app/_ui/margin";
+import { typeset } from "@/app/_ui/prose";
+import type { RuleView, RunRateView } from "../view";
+import { TimeZeroForm } from "./time-zero-form";
+import type { RunTarget, SavedWindow } from "./use-saved-window";
+
+/** Where the window lies and what the fit on it says, following the handles. */
+export function WindowSection({
+  target,
+  run,
+  window,
+  canEdit,
+}: {
+  target: RunTarget;
+  run: RunRateView;
+  window: SavedWindow;
+  canEdit: boolean;
+}) {
+  const { shown } = window;
+  if (shown === null) return null;
+  return (
+    <MarginSection title={`Window of ${run.label}`}>
+      <dl className="fact-list">
+        {shown.facts.map((fact) => (
+          <div key={fact.name} className="contents">
+            <dt>{fact.name}</dt>
+            <dd>{typeset(fact.text)}</dd>
+          </div>
+        ))}
+      </dl>
+      <p className="mt-2 text-caption text-ink-2" role="status">
+        {statusOf(run, window)}
+      </p>
+      {window.problem !== null && <p className="field-error mt-1">{window.problem}</p>}
+      {canEdit && (
+        <>
+          {(run.byHand || window.isPreview) && (
+            <p className="mt-2">
+              <Button size="small" onClick={window.reset} disabled={window.saving}>
+                Use the study’s rule
+              </Button>
+            </p>
+          )}
+          {run.trace !== null && (
+            <TimeZeroForm target={target} saved={run.timeZero} scale={run.trace.scale} />
+          )}
+        </>
+      )}
+    </MarginSection>
+  );
+}
+
+function statusOf(run: RunRateView, { saving, isPreview }: SavedWindow): string {
+  if (saving) return "Saving. The law follows.";
+  if (isPreview) return "A preview, not saved yet.";
+  return run.byHand ? "Set by hand for this run." : "Follows the study’s rule.";
+}
+
+export function RuleSection({ rule }: { rule: RuleView }) {
+  return (
+    <MarginSection title="The study’s rule">
+      <p>{typeset(rule.sentence)}</p>
+      <p className="mt-1.5 text-caption text-ink-2">{typeset(rule.reason)}</p>
+    </MarginSection>
+  );
+}
+
+export function RateChecks({ run }: { run: RunRateView }) {
+  return (
+    <MarginSection title="Checks on this rate">
+      {run.setAside !== null && <p className="mb-2">Set aside: {run.setAside}</p>}
+      {run.checks.length === 0 ? (
+        <CheckNote severity="holds" message="Nothing speaks against this rate." />
+      ) : (
+        run.checks.map((check) => (
+          <CheckNote
+            key={`${check.code} ${check.message}`}
+            severity={check.severity}
+            message={check.message}
+            settled={check.settled}
+          />
+        ))
+      )}
+    </MarginSection>
+  );
+}
