@@ -42,7 +42,8 @@ export function printExponent(fit: RateLawFit, species: string, heldAt: number |
   const reading = readOrder(fit, species, heldAt);
   if (reading.kind === "unknown") return "?";
   if (reading.kind !== "free") return printHeldOrder(reading.order);
-  const error = fit.orders[species]?.standardError ?? null;
-  // Without an uncertainty two places are shown: the page says that none can be given.
-  return printUncertain(reading.order, error ?? 0.05, { digits: 1, power: 0 }).value;
+  const interval = fit.orders[species]?.interval ?? null;
+  // Without an interval two places are shown: the page says that none can be given.
+  const half = interval === null ? 0.05 : (interval[1] - interval[0]) / 2;
+  return printUncertain(reading.order, half, { digits: 1, power: 0 }).value;
 }

@@ -44,7 +44,7 @@ export function standingConstant(sheet: Sheet, fit: RateLawFit): StandingConstan
   const orders = standingOrders(sheet, fit).map((one) => one.reading);
   const fixed = orders.flatMap((one) => (one.kind === "settled" || one.kind === "held" ? [one.order] : []));
   if (fixed.length < orders.length)
-    return { kind: "rate-at-centre", estimate: fit.centre.rate, budget: fit.budget };
+    return { kind: "rate-at-centre", estimate: fit.centre.rate, budget: fit.centre.budget };
   const overallOrder = fixed.reduce((sum, order) => sum + order, 0);
   // With all orders held the fit is already that of the law as it stands.
   const allHeld = orders.every((one) => one.kind === "held");

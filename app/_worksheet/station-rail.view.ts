@@ -66,14 +66,14 @@ const YIELDS: Readonly<Record<Station, (sheet: Sheet, analysis: StudyAnalysis) =
   "rate-law": (sheet, { law }) => {
     if (law.status === "no-law") return "no law yet";
     const orders = standingOrders(sheet, law.fit).map(
-      ({ name, heldAt }) => `${printExponent(law.fit, name, heldAt)} in ${name}`,
+      ({ name, heldAt }) => `[${name}]^{${printExponent(law.fit, name, heldAt)}}`,
     );
     const { estimate, interval } = standingConstant(sheet, law.fit).estimate;
     const width =
       estimate === null || interval === null
         ? ""
         : `, ±${(((interval[1] - interval[0]) / 2 / estimate) * 100).toPrecision(2)} %`;
-    return `${list(orders)}${width}`;
+    return `${orders.join(" ")}${width}`;
   },
 };
 

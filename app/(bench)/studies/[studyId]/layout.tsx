@@ -28,7 +28,7 @@ export default async function StudyLayout({
     <ToastRegion>
       <BenchHead
         trail={[{ name: "Studies", href: "/studies" }, { name: sheet.study.name }]}
-        aside={`Saved ${study.updatedAt.slice(0, 10)}, revision ${revision}`}
+        aside={`Revision ${revision}, saved ${study.updatedAt.slice(0, 16).replace("T", " ")} UTC`}
       />
       {sheet.study.invented && <InventedBanner />}
       <StandingLaw view={standingLawView(sheet, analysis, hrefOf)} />

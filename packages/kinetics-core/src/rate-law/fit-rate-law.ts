@@ -121,6 +121,7 @@ function fitUsable(
         input.species.map((_, i) => centreConcentration(runs, fit, i)),
       ),
       rate: exponentialOf(centreRate.estimate),
+      budget: centreRate.budget,
     },
     covariance: covariance(fit, constant.estimate, orders, reporting),
     budget: constant.estimate.estimate === null ? centreRate.budget : constant.budget,

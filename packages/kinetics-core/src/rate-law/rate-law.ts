@@ -114,6 +114,8 @@ export interface RateLawFit {
     /** Geometric means of the runs' concentrations. */
     readonly concentrations: Readonly<Record<string, number>>;
     readonly rate: Estimate;
+    /** Of the rate at the centre. */
+    readonly budget: readonly BudgetLine[];
   };
   /**
    * Of ln k, then the orders in the order of `species`; an order that was fixed has zeros. Null where no uncertainty

@@ -107,17 +107,31 @@ function departure(residuals: Fit["residuals"]): string {
   return `No run departs from the law by more than ${percent.toPrecision(2)} % (${worst.label}).`;
 }
 
+/** How close the data hold each settled order to its simple value, and where an unsettled one lies. */
 function freeOrders(fit: Fit, orders: readonly NamedOrder[]): string {
-  const intervals = orders.flatMap(({ name, heldAt, reading }) => {
-    const interval = heldAt === null ? (fit.orders[name]?.interval ?? null) : null;
-    if (interval === null || reading.kind !== "settled") return [];
-    return [Math.max(Math.abs(interval[0] - reading.order), Math.abs(interval[1] - reading.order))];
-  });
-  if (intervals.length === 0) return "";
-  const widest = Math.max(...intervals).toPrecision(2);
-  return intervals.length === 1
-    ? `Its free interval stays within ${widest} of the whole number.`
-    : `The intervals of the free orders stay within ${widest} of these.`;
+  const reach: { name: string; order: number; within: number }[] = [];
+  const open: string[] = [];
+  for (const { name, reading } of orders) {
+    const interval = fit.orders[name]?.interval ?? null;
+    if (interval === null) continue;
+    const [low, high] = interval;
+    if (reading.kind === "settled")
+      reach.push({ name, order: reading.order, within: Math.max(high - reading.order, reading.order - low) });
+    if (reading.kind === "free")
+      open.push(`The order in ${name} lies between ${twoPlaces(low)} and ${twoPlaces(high)}.`);
+  }
+  const widest = Math.max(...reach.map((one) => one.within)).toPrecision(2);
+  const [first, ...rest] = reach;
+  if (first === undefined) return open.join(" ");
+  const held =
+    rest.length > 0 && rest.every((one) => one.order === first.order)
+      ? `The free orders lie within ${widest} of ${printHeldOrder(first.order)}.`
+      : `${reach.length === 1 ? `The order in ${first.name} lies` : "The free orders lie"} within ${widest} of ${reach.length === 1 ? printHeldOrder(first.order) : "these"}.`;
+  return [held, ...open].join(" ");
+}
+
+function twoPlaces(value: number): string {
+  return value.toFixed(2).replace("-", "\u2212");
 }
 
 function freedom(degrees: number): string {

@@ -83,7 +83,8 @@ function shownRate(scale: TraceScale, estimate: InitialRateFound): PrintedNumber
 /** "1.182 ± 0.018", "(2.86 ± 0.07) × 10^-5". */
 export function inWords({ value, uncertainty, power }: PrintedNumber): string {
   const pair = uncertainty === null ? value : `${value} ± ${uncertainty}`;
-  return power === 0 ? pair : `(${pair}) × 10^${power}`;
+  if (power === 0) return pair;
+  return `${uncertainty === null ? pair : `(${pair})`} × 10^${power}`;
 }
 
 function curveOf(trace: ShownTrace, scale: TraceScale, estimate: InitialRateFound) {

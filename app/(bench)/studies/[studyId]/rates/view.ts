@@ -235,19 +235,25 @@ function estimatorRows(scale: TraceScale, estimate: InitialRate | null): readonl
   ];
 }
 
+/** Standard error, as a part of the reported slope, up to which a window is drawn. */
+const TELLING_PART = 0.25;
+
 function dependenceOf(
   scale: TraceScale,
   estimate: InitialRate | null,
   sweep: readonly SlopeAtEnd[],
 ): Pick<RunRateView, "dependence" | "dependenceInWords"> {
   const { rateFactor } = scale;
-  if (estimate === null || estimate.status !== "found" || rateFactor === null || sweep.length < 2)
+  if (estimate === null || estimate.status !== "found" || rateFactor === null)
     return { dependence: null, dependenceInWords: null };
-  const points = sweep.map(({ end, slope, standardError }) => {
+  // Windows too short to say anything would flatten the rest of the figure.
+  const telling = sweep.filter((one) => one.standardError <= TELLING_PART * Math.abs(estimate.slope));
+  const points = telling.map(({ end, slope, standardError }) => {
     const y = slope * rateFactor;
     const error = Math.abs(standardError * rateFactor);
     return { x: end / scale.secondsPerTime, y, low: y - error, high: y + error };
   });
+  if (points.length < 2) return { dependence: null, dependenceInWords: null };
   const chosen = {
     x: estimate.window[1] / scale.secondsPerTime,
     y: estimate.slope * rateFactor,
