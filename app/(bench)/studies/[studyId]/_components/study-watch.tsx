@@ -4,7 +4,7 @@ import { QueryClient, QueryClientProvider, useQuery } from "@tanstack/react-quer
 import { useRouter } from "next/navigation";
 import { useEffect, useRef, useState } from "react";
 import { useToast } from "@/app/_ui/toast";
-import type { LatestRevision } from "@/db/revision/latest-revision";
+import type { RevisionNotice } from "../revision-notice";
 
 /** Between two looks at the revision; a hidden window does not look. */
 const WATCH_MILLISECONDS = 4000;
@@ -44,7 +44,7 @@ function Watch({ studyId, revision }: Watched) {
   return null;
 }
 
-async function readRevision(studyId: string, signal: AbortSignal): Promise<LatestRevision> {
+async function readRevision(studyId: string, signal: AbortSignal): Promise<RevisionNotice> {
   const response = await fetch(`/studies/${encodeURIComponent(studyId)}/revision`, { signal });
   if (!response.ok) throw new Error(`The server answered ${response.status}.`);
   return response.json();

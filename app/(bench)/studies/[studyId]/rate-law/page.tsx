@@ -1,10 +1,10 @@
 import type { Metadata } from "next";
+import { rateLawView } from "@/app/_findings/rate-law.view";
+import { RateLawSheet } from "@/app/_findings/rate-law-sheet";
 import { database } from "@/app/_server/database";
 import { openStudy } from "@/app/_server/study";
 import { analyseStudy } from "@/app/_worksheet/analyse-study";
 import { OrderForm } from "./_components/order-form";
-import { RateLawSheet } from "./_components/rate-law-sheet";
-import { rateLawView } from "./view";
 
 export const metadata: Metadata = { title: "Rate law" };
 

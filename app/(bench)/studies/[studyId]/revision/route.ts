@@ -2,6 +2,7 @@ import { z } from "zod";
 import { notFoundProblem } from "@/app/_server/problem";
 import { route } from "@/app/_server/route";
 import { readLatestRevision } from "@/db/revision/latest-revision";
+import type { RevisionNotice } from "../revision-notice";
 
 /**
  * The newest revision of a study, for open pages to notice what others change. The entity tag is the revision: an
@@ -13,5 +14,5 @@ export const GET = route({ schema: z.object({}), scope: null, role: "reader" }, 
   const etag = `"${latest.revision}"`;
   const headers = { ETag: etag, "Cache-Control": "private, no-cache" };
   if (call.request.headers.get("if-none-match") === etag) return new Response(null, { status: 304, headers });
-  return Response.json(latest, { headers });
+  return Response.json(latest satisfies RevisionNotice, { headers });
 });

@@ -1,13 +1,13 @@
 "use client";
 
 import { useActionState, useState } from "react";
+import type { OrderView } from "@/app/_findings/rate-law.view";
 import { Button } from "@/app/_ui/button";
 import { Field } from "@/app/_ui/field";
 import { useToast } from "@/app/_ui/toast";
 import { printHeldOrder } from "@/app/_worksheet/print-order";
 import { saveOrders } from "../actions";
 import { readTypedOrder } from "../read-order";
-import type { OrderView } from "../view";
 
 interface Refusal {
   readonly speciesId: string | null;

@@ -1,7 +1,7 @@
 import { typeset } from "@/app/_ui/prose";
 import { SectionTitle } from "@/app/_ui/sheet";
 import { Whisker } from "@/app/_ui/whisker";
-import type { OrderView } from "../view";
+import type { OrderView } from "./rate-law.view";
 
 /** Simple orders that the common axis names. */
 const TICKS = [

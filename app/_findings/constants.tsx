@@ -3,7 +3,7 @@ import { SectionTitle } from "@/app/_ui/sheet";
 import { ColumnHead, DataTable } from "@/app/_ui/table";
 import { Unit } from "@/app/_ui/unit";
 import { Value } from "@/app/_ui/value";
-import type { BudgetView, ConstantRow } from "../view";
+import type { BudgetView, ConstantRow } from "./rate-law.view";
 
 /** k by every reading of the orders; what stands is marked. */
 export function ConstantTable({ rows }: { rows: readonly ConstantRow[] }) {

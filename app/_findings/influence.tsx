@@ -3,7 +3,7 @@ import { MarginSection } from "@/app/_ui/margin";
 import { typeset } from "@/app/_ui/prose";
 import { RunMark } from "@/app/_ui/run-mark";
 import { Unit } from "@/app/_ui/unit";
-import type { InfluenceView } from "../view";
+import type { InfluenceView } from "./rate-law.view";
 
 /** Runs that are listed before the rest folds away. */
 const SHOWN = 6;

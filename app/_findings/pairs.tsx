@@ -3,7 +3,7 @@ import { typeset } from "@/app/_ui/prose";
 import { RunMark } from "@/app/_ui/run-mark";
 import { SectionTitle } from "@/app/_ui/sheet";
 import { ColumnHead, DataTable } from "@/app/_ui/table";
-import type { PairRow } from "../view";
+import type { PairRow } from "./rate-law.view";
 
 /** Pairs that are listed before the rest folds away. */
 const SHOWN = 8;

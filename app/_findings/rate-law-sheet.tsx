@@ -7,11 +7,11 @@ import { EmptyState } from "@/app/_ui/empty-state";
 import { Margin, MarginSection } from "@/app/_ui/margin";
 import { typeset } from "@/app/_ui/prose";
 import { SectionTitle, Sheet } from "@/app/_ui/sheet";
-import type { RateLawView } from "../view";
 import { BudgetTable, ConstantTable } from "./constants";
 import { InfluenceTable } from "./influence";
 import { OrderList } from "./orders";
 import { PairTable } from "./pairs";
+import type { RateLawView } from "./rate-law.view";
 
 /** The Rate law station as it is drawn for whoever reads it; `orderForm` is null for readers. */
 export function RateLawSheet({
