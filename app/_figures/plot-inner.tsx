@@ -22,8 +22,7 @@ export function PlotInner({ view, name, height }: { view: PlotView; name: string
   const template = usePlotTemplate();
   const font = { family: getComputedStyle(document.body).fontFamily };
   return (
-    // biome-ignore lint/a11y/useSemanticElements: the plot is a group of controls, not a fieldset
-    <div role="group" aria-label={name}>
+    <section aria-label={name}>
       <Plot
         data={view.series.flatMap(tracesOf)}
         layout={{
@@ -53,7 +52,7 @@ export function PlotInner({ view, name, height }: { view: PlotView; name: string
         useResizeHandler
         style={{ width: "100%", height }}
       />
-    </div>
+    </section>
   );
 }
 

@@ -63,12 +63,11 @@ export function WindowFigure({
           )}
         </svg>
         {/* The grips lie over the drawing in one of their own: what is inside an image is hidden from readers. */}
-        {/* biome-ignore lint/a11y/useSemanticElements: two sliders inside an SVG are a group, not a fieldset */}
         <svg
           ref={drawing}
           viewBox={`0 0 ${width} ${total}`}
           className="chart absolute inset-0"
-          role="group"
+          role="graphics-object"
           aria-label={`Window of ${view.run.label}`}
         >
           <WindowGrips

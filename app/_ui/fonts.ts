@@ -3,6 +3,7 @@ import localFont from "next/font/local";
 /*
  * Source Sans 3 and STIX Two Text (both OFL 1.1) ship with the application. Each family comes in parts that the
  * browser walks in order: latin, latin-ext, greek, then the few signs that the web subsets lack, from the full file.
+ * Ranges keep the browser from fetching a part to look for a sign that it does not hold.
  */
 const sansLatin = localFont({
   src: [
@@ -34,6 +35,13 @@ const sansLatinExtended = localFont({
     },
   ],
   variable: "--sans-latin-ext",
+  declarations: [
+    {
+      prop: "unicode-range",
+      value:
+        "U+0100-02BA, U+02BD-02C5, U+02C7-02CC, U+02CE-02D7, U+02DD-02FF, U+1D00-1DBF, U+1E00-1EFF, U+20A0-20C0, U+2113, U+2C60-2C7F, U+A720-A7FF",
+    },
+  ],
   preload: false,
   adjustFontFallback: false,
 });
@@ -51,6 +59,7 @@ const sansGreek = localFont({
     },
   ],
   variable: "--sans-greek",
+  declarations: [{ prop: "unicode-range", value: "U+0370-03FF" }],
   preload: false,
   adjustFontFallback: false,
 });
@@ -101,6 +110,13 @@ const serifLatinExtended = localFont({
     },
   ],
   variable: "--serif-latin-ext",
+  declarations: [
+    {
+      prop: "unicode-range",
+      value:
+        "U+0100-02BA, U+02BD-02C5, U+02C7-02CC, U+02CE-02D7, U+02DD-02FF, U+1D00-1DBF, U+1E00-1EFF, U+20A0-20C0, U+2113, U+2C60-2C7F, U+A720-A7FF",
+    },
+  ],
   preload: false,
   adjustFontFallback: false,
 });
@@ -118,6 +134,7 @@ const serifGreek = localFont({
     },
   ],
   variable: "--serif-greek",
+  declarations: [{ prop: "unicode-range", value: "U+0370-03FF" }],
   preload: false,
   adjustFontFallback: false,
 });
