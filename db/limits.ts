@@ -17,8 +17,9 @@ export const limitSentences = {
     `A study holds at most ${grouped(POINTS_PER_STUDY)} points and would have ${grouped(got)}. Import every second or tenth reading, or put the rest into a second study.`,
   group: (got: number) =>
     `Your group keeps at most ${inMegabytes(BYTES_PER_GROUP)} and would have ${inMegabytes(got)}. Ask whoever runs this installation for more room.`,
-  file: (got: number) =>
-    `The file has ${inMegabytes(got)}; at most ${inMegabytes(BYTES_PER_FILE)} can be read. Split it, or leave out readings that are not needed.`,
+  /** \`got\` is null where the file was cut off at the limit and its length is not known. */
+  file: (got: number | null) =>
+    `The file has ${got === null ? "more" : inMegabytes(got)}; at most ${inMegabytes(BYTES_PER_FILE)} can be read. Split it, or leave out readings that are not needed.`,
 } as const;
 
 /** U+202F between groups of three digits. */

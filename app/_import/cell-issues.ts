@@ -21,7 +21,7 @@ export function cellIssues(found: Gathered, places: CellPlaces, corrections: Cor
     const cells = found.cells.filter((cell) => cell.column === column.index);
     if (cells.length === 0) continue;
     const countOf = (kind: string) => found.counts.get(`${column.index}:${kind}`) ?? 0;
-    const numbers = found.numbers.get(column.index) ?? 0;
+    const numbers = found.numbers[column.index] ?? 0;
 
     const silent = cells.filter((cell) => cell.reading.kind === "no-reading");
     if (silent.length > 0) issues.push(noReading(silent, countOf("no-reading"), places));

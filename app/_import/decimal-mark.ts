@@ -92,9 +92,15 @@ function whole(): DecimalMarkGuess {
   };
 }
 
+const MOST_CELLS = 40_000;
+
 function collect(rows: readonly Row[]) {
   const seen: { point: Sighting[]; comma: Sighting[]; open: Sighting[] } = { point: [], comma: [], open: [] };
+  let looked = 0;
   for (const row of rows) {
+    // Enough to know, and wide files have very many cells.
+    if (looked > MOST_CELLS) break;
+    looked += row.cells.length;
     for (const [column, cell] of row.cells.entries()) {
       if (!/[.,]/.test(cell) || !looksNumeric(cell)) continue;
       const text = cell.replace(/^[+\-−]/, "").replace(/[ \u00a0\u202f'’]/g, "");

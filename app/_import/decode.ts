@@ -105,11 +105,14 @@ function guessEncoding(bytes: Uint8Array): Guess<Encoding> | null {
   }
   if (zeros[0] + zeros[1] > 0 || controls > 0.01 * head.length) return null;
   try {
-    new TextDecoder("utf-8", { fatal: true }).decode(bytes);
-    const plain = bytes.every((byte) => byte < 128);
+    const text = new TextDecoder("utf-8", { fatal: true }).decode(bytes);
     return {
       value: "utf-8",
-      reason: plain ? "nothing but plain ASCII characters" : "every character is valid UTF-8",
+      // Every other character takes more bytes in UTF-8 than units of a string.
+      reason:
+        text.length === bytes.length
+          ? "nothing but plain ASCII characters"
+          : "every character is valid UTF-8",
       basis: "file",
     };
   } catch {

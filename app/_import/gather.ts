@@ -1,7 +1,7 @@
 import type { ColumnRole, Corrections } from "./corrections";
 import { lastFilled } from "./frame";
 import { GrowingArray } from "./growing-array";
-import { type CellReading, type NumberFormat, readCell } from "./number";
+import { type CellReading, type NumberFormat, plainNumber, readCell } from "./number";
 import { eachRow, isBlank, type Row, type RowFormat } from "./rows";
 
 /**
@@ -57,7 +57,7 @@ export interface Gathered {
   /** How many cells of a column are no number, by column and kind; `cells` holds the first of them only. */
   readonly counts: ReadonlyMap<string, number>;
   /** Numbers read, by column. */
-  readonly numbers: ReadonlyMap<number, number>;
+  readonly numbers: readonly (number | undefined)[];
   readonly longLines: readonly LineFinding[];
   readonly longLineCount: number;
   readonly shortLines: readonly LineFinding[];
@@ -90,7 +90,10 @@ class Pass {
   private readonly cells: CellFinding[] = [];
   private readonly open = new Map<number, CellFinding[]>();
   private readonly counts = new Map<string, number>();
-  private readonly numbers = new Map<number, number>();
+  private readonly numbers: number[] = [];
+  /** Of the line at hand, by column: its number, and what stands there where it is none. */
+  private readonly values: number[] = [];
+  private readonly oddities: (CellReading | undefined)[] = [];
   private readonly kept = {
     long: [] as LineFinding[],
     short: [] as LineFinding[],
@@ -112,6 +115,8 @@ class Pass {
   private readonly temperatures: readonly number[];
   private readonly species: readonly { column: number; id: string }[];
   private readonly usedColumns: readonly number[];
+  private readonly wide: readonly GatheredTrace[];
+  private readonly hasCompanions: boolean;
   private readonly corrected: ReadonlyMap<string, number | null>;
   private readonly leftOut: ReadonlySet<number>;
 
@@ -136,7 +141,9 @@ class Pass {
     );
     this.leftOut = new Set(corrections.linesLeftOut ?? []);
     // Columns of a wide table keep their place even when they turn out empty.
-    if (this.runColumn < 0) for (const { column } of this.signals) this.trace(`c${column}`, column, null);
+    this.wide =
+      this.runColumn < 0 ? this.signals.map(({ column }) => this.trace(`c${column}`, column, null)) : [];
+    this.hasCompanions = this.temperatures.length + this.species.length > 0;
   }
 
   visit(row: Row): boolean {
@@ -148,31 +155,46 @@ class Pass {
       this.pendingCount.blank += 1;
       return true;
     }
-    const finding = lineFinding(row);
     if (lastDataLine !== undefined && row.line > lastDataLine) {
-      this.pend(finding);
+      this.pend(row);
       return true;
     }
-    const readings = new Map(this.usedColumns.map((column) => [column, this.read(row, column)]));
-    if (
-      ![...readings.values()].some((reading) => reading.kind === "number" || reading.kind === "ambiguous")
-    ) {
-      // A line whose words are all 'no reading' is still a line of data.
-      const noReading = [...readings.values()].some((reading) => reading.kind === "no-reading");
-      if (!noReading) {
-        this.pend(finding);
-        return true;
-      }
+    if (!this.readUsed(row)) {
+      this.pend(row);
+      return true;
     }
     this.flushPending();
     this.lastDataLine = row.line;
-    this.checkWidth(row, finding);
-    this.take(row, readings, finding);
+    this.checkWidth(row);
+    this.take(row);
     if (this.points > this.options.pointsLeft) {
       this.tooManyPoints = true;
       return false;
     }
     return true;
+  }
+
+  /** Reads the time and signal cells; false where the line holds nothing that a line of data would. */
+  private readUsed(row: Row): boolean {
+    let isData = false;
+    for (const column of this.usedColumns) {
+      const value =
+        this.corrected.size === 0
+          ? plainNumber(row.cells[column] ?? "", this.options.numberFormat)
+          : Number.NaN;
+      this.values[column] = value;
+      this.oddities[column] = undefined;
+      if (!Number.isNaN(value)) {
+        isData = true;
+        continue;
+      }
+      const reading = this.read(row, column);
+      if (reading.kind === "number") this.values[column] = reading.value;
+      else this.oddities[column] = reading;
+      // A line whose words are all 'no reading' is still a line of data.
+      isData ||= reading.kind === "number" || reading.kind === "ambiguous" || reading.kind === "no-reading";
+    }
+    return isData;
   }
 
   private read(row: Row, column: number): CellReading {
@@ -182,35 +204,39 @@ class Pass {
     return readCell(row.cells[column] ?? "", this.options.numberFormat);
   }
 
-  private take(row: Row, readings: ReadonlyMap<number, CellReading>, finding: LineFinding): void {
-    for (const [column, reading] of readings) {
-      if (reading.kind === "number") {
-        this.numbers.set(column, (this.numbers.get(column) ?? 0) + 1);
-        const waiting = this.open.get(column);
-        if (waiting) {
-          for (const cell of waiting) cell.after = reading.value;
-          this.open.delete(column);
-        }
-      } else if (reading.kind !== "empty") this.find(row, column, reading);
+  private take(row: Row): void {
+    for (const column of this.usedColumns) {
+      const oddity = this.oddities[column];
+      if (oddity === undefined) this.countNumber(column);
+      else if (oddity.kind !== "number" && oddity.kind !== "empty") this.find(row, column, oddity);
     }
     const runName = this.runColumn < 0 ? null : (row.cells[this.runColumn] ?? "");
     let timeless = false;
-    for (const { column, time } of this.signals) {
-      const at = readings.get(time);
-      const value = readings.get(column);
-      const source = runName === null ? `c${column}` : `r:${runName.slice(0, 76)}`;
-      const trace = this.trace(source, column, runName);
-      if (value?.kind === "number" && at?.kind === "number") {
-        trace.time.push(at.value);
-        trace.signal.push(value.value);
+    for (const [position, { column, time }] of this.signals.entries()) {
+      const trace =
+        runName === null ? this.wide[position] : this.trace(`r:${runName.slice(0, 76)}`, column, runName);
+      if (trace === undefined) continue;
+      const value = this.oddities[column];
+      const at = this.oddities[time];
+      if (value === undefined && at === undefined) {
+        trace.time.push(this.values[time] ?? 0);
+        trace.signal.push(this.values[column] ?? 0);
         trace.line.push(row.line);
         this.points += 1;
-        this.takeCompanions(row, trace);
-      } else if (value?.kind === "number" && at?.kind === "empty") {
+        if (this.hasCompanions) this.takeCompanions(row, trace);
+      } else if (value === undefined && at?.kind === "empty") {
         timeless ||= this.corrected.get(`${row.line}:${time}`) !== null;
       } else if (value?.kind === "empty") trace.empty += 1;
     }
-    if (timeless) this.keep("timeless", finding);
+    if (timeless) this.keep("timeless", row);
+  }
+
+  private countNumber(column: number): void {
+    this.numbers[column] = (this.numbers[column] ?? 0) + 1;
+    const waiting = this.open.get(column);
+    if (waiting === undefined) return;
+    for (const cell of waiting) cell.after = this.values[column] ?? null;
+    this.open.delete(column);
   }
 
   private takeCompanions(row: Row, trace: GatheredTrace): void {
@@ -265,22 +291,22 @@ class Pass {
     this.open.set(column, [...(this.open.get(column) ?? []), cell]);
   }
 
-  private checkWidth(row: Row, finding: LineFinding): void {
+  private checkWidth(row: Row): void {
     const filled = lastFilled(row.cells) + 1;
-    if (filled > this.width) this.keep("long", { ...finding, cells: filled });
+    if (filled > this.width) this.keep("long", row, filled);
     else if (row.cells.length < this.width && this.usedColumns.some((column) => column >= row.cells.length)) {
-      this.keep("short", finding);
+      this.keep("short", row);
     }
   }
 
-  private keep(kind: keyof typeof this.kept, finding: LineFinding): void {
+  private keep(kind: keyof typeof this.kept, row: Row, cells = row.cells.length): void {
     this.count[kind] += 1;
-    if (this.kept[kind].length < KEPT) this.kept[kind].push(finding);
+    if (this.kept[kind].length < KEPT) this.kept[kind].push(lineFinding(row, cells));
   }
 
-  private pend(finding: LineFinding): void {
+  private pend(row: Row): void {
     this.pendingCount.words += 1;
-    if (this.pending.length < KEPT) this.pending.push(finding);
+    if (this.pending.length < KEPT) this.pending.push(lineFinding(row, row.cells.length));
   }
 
   private flushPending(): void {
@@ -316,13 +342,13 @@ class Pass {
   }
 }
 
-function lineFinding(row: Row): LineFinding {
+function lineFinding(row: Row, cells: number): LineFinding {
   return {
     line: row.line,
     text: row.cells
       .filter((cell) => cell !== "")
       .join(" ")
       .slice(0, 80),
-    cells: row.cells.length,
+    cells,
   };
 }

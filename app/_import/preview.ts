@@ -32,9 +32,10 @@ export function previewOf(reading: Reading): ImportPreview {
     ...rest,
     issues: issues.slice(0, SHOWN_ISSUES),
     traces: traces.map(({ timeSeconds, signal, ...trace }, i) => {
-      const rises = timeSeconds.every((time, j) => j === 0 || time > (timeSeconds[j - 1] ?? time));
       const drawn =
-        i < DRAWN_TRACES && rises ? decimate([...timeSeconds], [...signal], DRAWN_WIDTH) : { x: [], y: [] };
+        i < DRAWN_TRACES && rises(timeSeconds)
+          ? decimate(Array.from(timeSeconds), Array.from(signal), DRAWN_WIDTH)
+          : { x: [], y: [] };
       return {
         ...trace,
         readings: signal.length,
@@ -45,4 +46,9 @@ export function previewOf(reading: Reading): ImportPreview {
       };
     }),
   };
+}
+
+function rises(times: Float64Array): boolean {
+  for (let i = 1; i < times.length; i++) if (!((times[i] ?? 0) > (times[i - 1] ?? 0))) return false;
+  return true;
 }

@@ -2,7 +2,7 @@ import type { Frame } from "./frame";
 import type { Gathered } from "./gather";
 import type { Issue, ShownLine } from "./reading";
 import type { RecipeLine } from "./recipes";
-import { eachRow, isBlank, type RowFormat } from "./rows";
+import { eachRow, firstRows, isBlank, type Row, type RowFormat } from "./rows";
 
 /** The lines worth showing: what stands above the data, its first and last lines, and the lines about every issue. */
 
@@ -35,7 +35,7 @@ export function shownLines(file: {
   const last = Math.max(...wanted);
   const recipeLines = new Set(file.recipes.map((recipe) => recipe.line));
   const shown: ShownLine[] = [];
-  eachRow(file.text, file.rowFormat, (row) => {
+  eachWantedRow(file, wanted, (row) => {
     if (wanted.has(row.line)) {
       const kind = (): ShownLine["kind"] => {
         if (row.line === frame.headerLine.value) return "header";
@@ -55,4 +55,28 @@ export function shownLines(file: {
     return row.line < last;
   });
   return shown;
+}
+
+/** Without quoting a line is a row, so that the others need not be divided into cells again. */
+function eachWantedRow(
+  { text, rowFormat }: { readonly text: string; readonly rowFormat: RowFormat },
+  wanted: ReadonlySet<number>,
+  visit: (row: Row) => boolean,
+): void {
+  if (text.includes('"')) {
+    eachRow(text, rowFormat, visit);
+    return;
+  }
+  let line = 1;
+  for (let from = 0; from <= text.length; line += 1) {
+    const end = text.indexOf("\n", from);
+    const until = end < 0 ? text.length : end;
+    let more = true;
+    if (wanted.has(line)) {
+      const [row] = firstRows(text.slice(from, until), rowFormat, 1);
+      more = visit({ cells: row?.cells ?? [""], brokenQuotes: false, line });
+    }
+    if (!more) return;
+    from = until + 1;
+  }
 }

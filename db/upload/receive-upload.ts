@@ -136,7 +136,7 @@ function refusalOf(
 ): Extract<ReceiveResult, { status: "refused" }> | undefined {
   const refused = (code: Extract<ReceiveResult, { status: "refused" }>["code"], message: string) =>
     ({ status: "refused", code, message }) as const;
-  if (overLimit) return refused("too-large", limitSentences.file(declaredBytes ?? size));
+  if (overLimit) return refused("too-large", limitSentences.file(declaredBytes));
   if (declaredBytes !== null && declaredBytes !== size) {
     return refused(
       "incomplete",

@@ -97,7 +97,7 @@ export function traceFigure(
   const y =
     signal?.kind === "calibrated"
       ? { quantity: signal.quantity, unit: signal.unit === "1" ? "" : signal.unit }
-      : { quantity: "concentration", unit: signal === null ? "" : concentrationUnitText(signal.unit) };
+      : { quantity: "concentration", unit: signal === null ? "" : printedUnit(signal.unit) };
   const factor = signal?.kind === "concentration" ? molarTo(1, signal.unit) : 1;
   return {
     x: { quantity: "time", unit: "s" },
@@ -119,9 +119,13 @@ export function speciesHead(species: SpeciesContext): string {
   return species.symbol === "" ? species.name : `[${species.symbol}]`;
 }
 
+function printedUnit(unit: SpeciesContext["unit"]): string {
+  return concentrationUnitText(unit).replace(/^umol/, "µmol");
+}
+
 /** Plain text for typesetting: "mmol L^-1". */
 export function speciesUnit(species: SpeciesContext): string {
-  return concentrationUnitText(species.unit);
+  return printedUnit(species.unit);
 }
 
 /** The text of a prefilled concentration, in the species' unit. */

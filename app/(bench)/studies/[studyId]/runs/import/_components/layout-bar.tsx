@@ -76,7 +76,7 @@ export function LayoutBar({
           />
         )}
       </Guess>
-      <Guess name="to line" reason={`${reading.lines} lines in the file`}>
+      <Guess name="Data to line" reason={`${reading.lines} lines in the file`}>
         {(id) => (
           <LineNumber id={id} value={to} onChange={(line) => line !== null && set({ lastDataLine: line })} />
         )}

@@ -95,11 +95,13 @@ function gridColumns(species: readonly SpeciesContext[]): GridColumn[] {
 }
 
 function gridRow({ trace, texts, faults }: RecipeRow, species: readonly SpeciesContext[]): GridRow {
+  const reason = reasonOf(trace, species);
   const wrong = species.find((one) => faults[one.id] !== undefined);
   return {
     id: trace.source,
     label: trace.label,
-    cells: { ...texts, [LABEL]: trace.label, column: trace.column, reason: reasonOf(trace, species) },
+    cells: { ...texts, [LABEL]: trace.label, column: trace.column, reason },
+    drawn: { reason: <span className="whitespace-normal text-caption">{reason}</span> },
     faults,
     ...(wrong
       ? {
