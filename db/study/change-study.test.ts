@@ -1,4 +1,5 @@
-import { afterAll, beforeAll, beforeEach, describe, expect, test } from "vitest";
+import { afterAll, afterEach, beforeAll, beforeEach, describe, expect, test } from "vitest";
+import { verifyChainOfGroup } from "../audit/chain-verdict";
 import { listRevisions, readRevision } from "../revision/revision.queries";
 import {
   addRuns,
@@ -51,6 +52,11 @@ function revisionOf(result: ChangeResult): number {
   if (result.status !== "changed") throw new Error(JSON.stringify(result));
   return result.revision;
 }
+
+// Whatever a test did: tables, snapshots and chain still say the same.
+afterEach(async () => {
+  expect(await verifyChainOfGroup(temporary.db, group.groupId)).toMatchObject({ status: "holds" });
+});
 
 async function present(): Promise<{ revision: number; sheet: Sheet }> {
   const study = await readStudy(temporary.db, group.reader, studyId);
@@ -202,6 +208,15 @@ describe("two people at once", () => {
     expect(await editRun(db, group.analyst, { studyId, base }, "run-R02", { remark: "same" })).toEqual({
       status: "unchanged",
     });
+  });
+
+  test("a row that both changed to the same keeps the first one's revision beside what else the second changed", async () => {
+    const { db } = temporary;
+    const first = revisionOf(await setTimeZero(db, group.lead, { studyId, base }, ["run-R01"], 0.8));
+    const second = revisionOf(
+      await setTimeZero(db, group.analyst, { studyId, base }, ["run-R01", "run-R02"], 0.8),
+    );
+    expect((await present()).sheet.runs.map((one) => one.changedIn)).toEqual([first, second, base]);
   });
 
   test("a form that saves everything leaves alone what it did not change", async () => {

@@ -3,11 +3,12 @@ import type { Database } from "../database";
 import { type Actor, mayActAs } from "../member/actor";
 import { recordRevision } from "../revision/revision.commands";
 import { readRevisionSheet } from "../revision/revision.queries";
+import { mergeSheets } from "../sheet/merge-sheets";
 import { readSheet } from "../sheet/read-sheet";
 import { rowsInWords } from "../sheet/row-words";
 import type { Sheet } from "../sheet/sheet.schema";
 import { rowCountProblem, sheetProblem } from "../sheet/sheet-problem";
-import { rowsOf, type SheetRows, sameRow, sheetOf, touchedRows } from "../sheet/sheet-rows";
+import { rowsOf, type SheetRows, sameRow, touchedRows } from "../sheet/sheet-rows";
 import { writeSheet } from "../sheet/write-sheet";
 import { whoChanged } from "./who-changed";
 
@@ -91,6 +92,7 @@ export async function changeStudyIn(
   if ("refused" in wanted) return { status: "refused", message: wanted.refused };
   const touched = touchedRows(rowsOf(seen), rowsOf(wanted));
   if (touched.size === 0) return { status: "unchanged" };
+  forbidVanishing(touched, rowsOf(wanted));
 
   const clashing = clashes(touched, rowsOf(seen), rowsOf(wanted), rowsOf(current));
   if (clashing.length > 0) {
@@ -102,12 +104,12 @@ export async function changeStudyIn(
     };
   }
 
-  const rows = overlay(rowsOf(current), rowsOf(wanted), touched, revision);
-  const tooMany = rowCountProblem(rows);
-  if (tooMany !== undefined) return { status: "refused", message: tooMany };
-  const merged = sheetOf(current.version, rows);
-  if (touchedRows(rowsOf(current), rowsOf(merged)).size === 0) return { status: "unchanged" };
-  const problem = sheetProblem(merged);
+  // A row that is already as wanted was changed by somebody else to the same: it keeps their revision.
+  const [currentRows, wantedRows] = [rowsOf(current), rowsOf(wanted)];
+  const open = new Set([...touched].filter((key) => !sameRow(key, wantedRows, currentRows)));
+  if (open.size === 0) return { status: "unchanged" };
+  const merged = mergeSheets(current, marked(wanted, open, revision), open);
+  const problem = rowCountProblem(rowsOf(merged)) ?? sheetProblem(merged);
   if (problem !== undefined) return { status: "refused", message: problem };
 
   const summary = typeof note.summary === "string" ? note.summary : note.summary(seen, wanted);
@@ -134,28 +136,18 @@ function clashes(touched: ReadonlySet<string>, seen: SheetRows, wanted: SheetRow
   return [...touched].filter((key) => !sameRow(key, seen, current) && !sameRow(key, wanted, current));
 }
 
-/** `current` with the touched rows as wanted; runs note the revision that changed them. */
-function overlay(
-  current: SheetRows,
-  wanted: SheetRows,
-  touched: ReadonlySet<string>,
-  revision: number,
-): SheetRows {
-  const rows = new Map(current);
-  for (const key of touched) {
-    if (sameRow(key, wanted, current)) continue;
-    const row = wanted.get(key);
-    if (wanted.has(key)) {
-      rows.set(key, key.startsWith("runs/") && isRecord(row) ? { ...row, changedIn: revision } : row);
-    } else if (key.startsWith("runs/") || key.startsWith("uploads/")) {
-      throw new Error(`${key} left the sheet: runs go to the bin (removedIn), files stay.`);
-    } else {
-      rows.delete(key);
-    }
-  }
-  return rows;
+/** The touched runs note the revision that changes them. */
+function marked(wanted: Sheet, touched: ReadonlySet<string>, revision: number): Sheet {
+  return {
+    ...wanted,
+    runs: wanted.runs.map((run) => (touched.has(`runs/${run.id}`) ? { ...run, changedIn: revision } : run)),
+  };
 }
 
-function isRecord(value: unknown): value is Record<string, unknown> {
-  return value !== null && typeof value === "object";
+function forbidVanishing(touched: ReadonlySet<string>, wanted: SheetRows): void {
+  for (const key of touched) {
+    if (!wanted.has(key) && (key.startsWith("runs/") || key.startsWith("uploads/"))) {
+      throw new Error(`${key} left the sheet: runs go to the bin (removedIn), files stay.`);
+    }
+  }
 }
