@@ -65,7 +65,8 @@ export function labelTraces(
         repeats: matched,
       };
     }
-    const wanted = number !== null ? `R${number}` : unique && isName(name) ? name.slice(0, 40) : null;
+    const wanted =
+      number !== null ? runLabel(name, number) : unique && isName(name) ? name.slice(0, 40) : null;
     if (wanted !== null && !used.has(wanted.toLowerCase())) {
       return {
         label: claim(wanted, used),
@@ -83,6 +84,11 @@ export function labelTraces(
       repeats: null,
     };
   });
+}
+
+/** "R01" stays as written, "A_14" becomes R14. */
+function runLabel(name: string, number: number): string {
+  return /^r\d+$/i.test(name) ? name : `R${number}`;
 }
 
 function trailingNumber(name: string): number | null {

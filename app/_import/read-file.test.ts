@@ -378,6 +378,12 @@ describe("what is wrong within a table", () => {
 });
 
 describe("runs of the study", () => {
+  it("keeps a label as the file writes it", () => {
+    const bytes = new TextEncoder().encode("t / s,R01,A_2\n0,1.5,2.5\n1,1.6,2.6\n2,1.7,2.7\n");
+    const reading = readFile(bytes, EMPTY_STUDY, {});
+    expect(reading.status === "read" && reading.traces.map((trace) => trace.label)).toEqual(["R01", "R2"]);
+  });
+
   const planned: StudyContext = {
     ...EMPTY_STUDY,
     runs: [

@@ -19,7 +19,8 @@ test("every page, handler and action has a rule, and every rule something to rul
 
 test("what an address names by study, run or member is ruled for its group", () => {
   const loose = all.filter(
-    ({ key }) => /^(page|[A-Z]+) .*\[(studyId|runId|memberId)\]/.test(key) && rules[key]?.who !== "group",
+    ({ key }) =>
+      /^(page|[A-Z]+) .*\[(studyId|runId|uploadId|memberId)\]/.test(key) && rules[key]?.who !== "group",
   );
   expect(loose.map(({ key }) => key)).toEqual([]);
 });
@@ -111,6 +112,7 @@ function address(route: string): string {
   const values: Record<string, string> = {
     studyId: world.studyId,
     runId: world.runId,
+    uploadId: world.uploadId,
     revision: String(world.revision),
     memberId: world.memberId,
     token: "A".repeat(43),

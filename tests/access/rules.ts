@@ -37,6 +37,7 @@ export const rules: Readonly<Record<string, Rule>> = {
   "page /studies/new": member,
   "page /studies/[studyId]/set-up": group(),
   "page /studies/[studyId]/runs": group(),
+  "page /studies/[studyId]/runs/import": group(),
   "page /studies/[studyId]/share": group(),
 
   // Route handlers
@@ -45,6 +46,10 @@ export const rules: Readonly<Record<string, Rule>> = {
   "POST /api/auth/[...nextauth]": anyoneAt("/api/auth/signout"),
 
   "GET /studies/[studyId]/revision": group(),
+  "POST /api/v1/studies/[studyId]/uploads": group(),
+  "GET /api/v1/studies/[studyId]/uploads/[uploadId]": group(),
+  "DELETE /api/v1/studies/[studyId]/uploads/[uploadId]": group(),
+  "POST /api/v1/studies/[studyId]/uploads/[uploadId]/preview": group(),
   "POST /api/v1/compute/initial-rate": member,
   "POST /api/v1/compute/rate-law": member,
   "GET /api/v1/openapi.json": anyone,
@@ -83,6 +88,15 @@ export const rules: Readonly<Record<string, Rule>> = {
     base: revision,
     rows: [{ key: runId, runId, cells: { remark: "typed" } }],
   })),
+  "action app/(bench)/studies/[studyId]/runs/import/actions.ts#storeTraces": group(
+    ({ studyId, revision, uploadId }) => ({
+      studyId,
+      uploadId,
+      base: revision,
+      corrections: {},
+      recipes: {},
+    }),
+  ),
   "action app/(bench)/studies/[studyId]/share/actions.ts#makeLink": group(({ studyId, revision }) => ({
     studyId,
     revision,

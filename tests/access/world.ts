@@ -1,4 +1,5 @@
 import { randomBytes } from "node:crypto";
+import { Readable } from "node:stream";
 import { connect } from "@/db/connect";
 import { createShareLink } from "@/db/share-link/share-link.commands";
 import type { Sheet } from "@/db/sheet/sheet.schema";
@@ -6,6 +7,7 @@ import { changeStudy } from "@/db/study/change-study";
 import { readStudy } from "@/db/study/study.queries";
 import { makeGroup, TEST_PASSWORD } from "@/db/testing/make-group";
 import { exampleRun, exampleSetUp, makeStudy } from "@/db/testing/make-study";
+import { receiveUpload } from "@/db/upload/receive-upload";
 import { browserRun } from "../browser-run";
 import { Visitor } from "./visitor";
 
@@ -20,6 +22,8 @@ export interface World {
   readonly sheet: Sheet;
   readonly runId: string;
   readonly linkId: string;
+  /** A file that waits for its preview. */
+  readonly uploadId: string;
   readonly groupId: string;
   readonly memberId: string;
   readonly marker: string;
@@ -58,10 +62,23 @@ export async function makeWorld(file: string): Promise<World> {
     expiresAt: null,
     frozenRevision: null,
   });
+  const upload = await receiveUpload(
+    db,
+    theirs.lead,
+    { studyId, fileName: `${marker}.csv`, declaredBytes: null },
+    Readable.from([Buffer.from(`t / s,${marker}\n0,0.1\n1,0.2\n2,0.3\n`)]),
+  );
   const filled = await readStudy(db, theirs.lead, studyId);
   await db.destroy();
-  if (changed.status !== "changed" || link.status !== "created" || filled === undefined) {
-    throw new Error(`The study of the other group could not be filled: ${changed.status}, ${link.status}`);
+  if (
+    changed.status !== "changed" ||
+    link.status !== "created" ||
+    upload.status !== "received" ||
+    filled === undefined
+  ) {
+    throw new Error(
+      `The study of the other group could not be filled: ${changed.status}, ${link.status}, ${upload.status}`,
+    );
   }
   return {
     studyId,
@@ -69,6 +86,7 @@ export async function makeWorld(file: string): Promise<World> {
     sheet: filled.sheet,
     runId: run.id,
     linkId: link.id,
+    uploadId: upload.uploadId,
     groupId: theirs.groupId,
     memberId: theirs.lead.memberId,
     marker,
