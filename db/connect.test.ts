@@ -6,7 +6,7 @@ import { afterEach, beforeEach, expect, test } from "vitest";
 import { verifyChainOfGroup } from "./audit/chain-verdict";
 import { connect } from "./connect";
 import { readRevision } from "./revision/revision.queries";
-import { increaseInTurn } from "./testing/increase-in-turn";
+import { increaseInTurn, type Tally, withTally } from "./testing/increase-in-turn";
 import { makeGroup } from "./testing/make-group";
 import { makeStudy } from "./testing/make-study";
 import { type TemporaryDatabase, temporaryDatabase } from "./testing/temporary-database";
@@ -32,7 +32,8 @@ test("a connection writes with full synchronisation to a log of bounded size, wi
 });
 
 test("transactions that read first and write later take turns between processes", async () => {
-  await temporary.db.insertInto("sign_in_limit").values({ key: "a", points: 0, expire: null }).execute();
+  const db = await withTally(temporary.db);
+  await db.insertInto("tally").values({ count: 0 }).execute();
   const beside = promisify(execFile)(process.execPath, [
     "--import",
     "tsx",
@@ -42,31 +43,28 @@ test("transactions that read first and write later take turns between processes"
   ]);
   // Until the other process is there; then both run at once.
   await expect
-    .poll(
-      async () =>
-        (await temporary.db.selectFrom("sign_in_limit").select("points").executeTakeFirst())?.points,
-      {
-        timeout: 20_000,
-        interval: 2,
-      },
-    )
+    .poll(async () => (await db.selectFrom("tally").select("count").executeTakeFirst())?.count, {
+      timeout: 20_000,
+      interval: 2,
+    })
     .toBeGreaterThan(0);
   await increaseInTurn(temporary.db, 300);
   await beside;
-  const row = await temporary.db.selectFrom("sign_in_limit").select("points").executeTakeFirstOrThrow();
-  expect(row.points).toBe(600);
+  const row = await db.selectFrom("tally").select("count").executeTakeFirstOrThrow();
+  expect(row.count).toBe(600);
 });
 
 test("a read-only transaction takes no lock from a writer in another process", async () => {
-  const other = connect(temporary.file);
+  const db = await withTally(temporary.db);
+  const other = connect(temporary.file).withTables<{ tally: Tally }>();
   try {
     await sql`pragma busy_timeout = 0`.execute(other);
-    await temporary.db.transaction().execute(async (trx) => {
-      await trx.insertInto("sign_in_limit").values({ key: "b", points: 1, expire: null }).execute();
+    await db.transaction().execute(async (trx) => {
+      await trx.insertInto("tally").values({ count: 1 }).execute();
       const seen = await other
         .transaction()
         .setAccessMode("read only")
-        .execute((reading) => reading.selectFrom("sign_in_limit").select("key").execute());
+        .execute((reading) => reading.selectFrom("tally").select("count").execute());
       expect(seen).toEqual([]);
       await expect(other.transaction().execute(async () => undefined)).rejects.toThrow("locked");
     });

@@ -9,7 +9,6 @@ import type { RevisionTable } from "./revision/revision.table";
 import type { RunConcentrationTable, RunTable } from "./run/run.table";
 import type { SessionTable } from "./session/session.table";
 import type { ShareLinkTable } from "./share-link/share-link.table";
-import type { SignInLimitTable } from "./sign-in-limit/sign-in-limit.table";
 import type { SpeciesOrderTable, SpeciesTable } from "./species/species.table";
 import type { StudyTable } from "./study/study.table";
 import type { PersonalTokenTable } from "./token/token.table";
@@ -31,7 +30,6 @@ export interface Database {
   run_concentration: RunConcentrationTable;
   session: SessionTable;
   share_link: ShareLinkTable;
-  sign_in_limit: SignInLimitTable;
   species: SpeciesTable;
   species_order: SpeciesOrderTable;
   study: StudyTable;

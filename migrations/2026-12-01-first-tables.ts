@@ -57,13 +57,6 @@ const tables = [
   ) strict`,
   "create index personal_token_member on personal_token (member_id)",
 
-  // Shape demanded by the rate limiter that fills it.
-  `create table sign_in_limit (
-    key text primary key,
-    points integer not null default 0,
-    expire integer
-  )`,
-
   `create table study (
     id text primary key,
     group_id text not null references research_group (id),

@@ -27,7 +27,8 @@ describe("the tree", () => {
   });
 
   it("has no any", () => {
-    expect(matching(/(:|\bas|<|\||&|,|=>)\s*any\b(?!\s*\()/)).toEqual([]);
+    const withoutStrings = (source: string) => withoutComments(source).replace(/"(?:[^"\\\n]|\\.)*"/g, '""');
+    expect(matching(/(:|\bas|<|\||&|,|=>)\s*any\b(?!\s*\()/, withoutStrings)).toEqual([]);
   });
 
   it("silences neither the compiler nor the linter", () => {
@@ -78,6 +79,10 @@ describe("the picture", () => {
 
   it.each([
     ["packages/kinetics-core/src/rate-law/fit.ts", 'import { solve } from "../linear-algebra";'],
+    [
+      "packages/kinetics-core/src/rate-law/draws.ts",
+      'import { xoroshiro128plus } from "pure-rand/generator";',
+    ],
     ["packages/kinetics-core/src/rate-law/fit.test.ts", 'import { readFileSync } from "node:fs";'],
     ["db/run/run.queries.ts", 'import type { InitialRate } from "kinetics-core/initial-rate";'],
     ["db/run/run.queries.ts", 'import { type InitialRate } from "kinetics-core/initial-rate";'],
@@ -85,6 +90,7 @@ describe("the picture", () => {
     ["app/(bench)/studies/[studyId]/rates/_components/plot.tsx", 'import type { RatesView } from "../view";'],
     ["app/(bench)/studies/[studyId]/rates/_components/plot.tsx", 'import { saveWindow } from "../actions";'],
     ["app/(bench)/studies/[studyId]/rates/page.tsx", 'import { x } from "../../schema";'],
+    ["app/api/v1/openapi.json/document.ts", 'import { registry } from "../compute/registry";'],
     ["app/(bench)/studies/[studyId]/rates/page.tsx", '// import { x } from "../runs/view";'],
   ])("has nothing against %s with %s", (file, line) => {
     expect(objectionsIn(file, line)).toEqual([]);

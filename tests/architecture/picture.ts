@@ -39,7 +39,7 @@ function coreObjection(file: string, { specifier, target }: Import): string | nu
       ? null
       : "kinetics-core knows nothing outside itself";
   }
-  return specifier.startsWith("kinetics-core/") || NUMERIC_PACKAGES.has(specifier)
+  return specifier.startsWith("kinetics-core/") || NUMERIC_PACKAGES.has(specifier.split("/")[0] ?? "")
     ? null
     : "kinetics-core imports numeric packages only";
 }
@@ -115,5 +115,6 @@ export function roomOf(file: string): string | null {
   const folders = file.split("/").slice(0, -1);
   const inner = folders.findIndex((folder) => folder.startsWith("_"));
   const room = (inner === -1 ? folders : folders.slice(0, inner)).join("/");
-  return room === "app" ? null : room;
+  // The HTTP API is one room: its description has to know every part of it.
+  return room === "app" ? null : room.replace(/^(app\/api\/v\d+)\/.*$/, "$1");
 }
