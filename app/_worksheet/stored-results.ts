@@ -64,7 +64,7 @@ export const initialRateSchema = z.discriminatedUnion("status", [
   }),
   z.object({
     status: z.literal("unusable"),
-    code: z.enum(["not-increasing", "not-finite", "lengths-differ", "empty-window", "flat-time"]),
+    code: z.enum(["not-increasing", "not-finite", "lengths-differ", "empty-window", "flat-time", "no-slope"]),
     message: z.string(),
   }),
 ]) satisfies z.ZodType<InitialRate>;

@@ -15,7 +15,7 @@ export function stepCorrelations(time: Float64Array, autocorrelation: number): F
   const typical = medianStep(time);
   const logarithm = Math.log(autocorrelation);
   for (let i = 1; i < time.length; i++) {
-    const step = ((time[i] as number) - (time[i - 1] as number)) / typical;
+    const step = ((time[i] ?? Number.NaN) - (time[i - 1] ?? Number.NaN)) / typical;
     steps[i] = step === 1 ? autocorrelation : Math.exp(logarithm * step);
   }
   return steps;
@@ -28,8 +28,8 @@ export function quadraticForm(row: Float64Array, steps: Float64Array, from: numb
   let carried = 0;
   let before = 0;
   for (let i = 0; i < row.length; i++) {
-    const a = row[i] as number;
-    carried = i === 0 ? 0 : (steps[from + i] as number) * (carried + before);
+    const a = row[i] ?? Number.NaN;
+    carried = i === 0 ? 0 : (steps[from + i] ?? Number.NaN) * (carried + before);
     squares += a * a;
     crossed += a * carried;
     before = a;
@@ -39,9 +39,9 @@ export function quadraticForm(row: Float64Array, steps: Float64Array, from: numb
 
 function medianStep(time: Float64Array): number {
   const gaps = new Float64Array(time.length - 1);
-  for (let i = 1; i < time.length; i++) gaps[i - 1] = (time[i] as number) - (time[i - 1] as number);
+  for (let i = 1; i < time.length; i++) gaps[i - 1] = (time[i] ?? Number.NaN) - (time[i - 1] ?? Number.NaN);
   gaps.sort();
   const middle = gaps.length >> 1;
-  const upper = gaps[middle] as number;
-  return gaps.length % 2 === 1 ? upper : ((gaps[middle - 1] as number) + upper) / 2;
+  const upper = gaps[middle] ?? Number.NaN;
+  return gaps.length % 2 === 1 ? upper : ((gaps[middle - 1] ?? Number.NaN) + upper) / 2;
 }

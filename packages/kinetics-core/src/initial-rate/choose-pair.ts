@@ -21,10 +21,10 @@ export function chooseSlope(pairs: readonly PairFit[]): ChosenSlope {
   const near = pairs.filter((pair) => pair.criterion <= AVERAGED_WITHIN * least.criterion);
   const weights = near.map((pair) => least.criterion / pair.criterion);
   const total = weights.reduce((sum, weight) => sum + weight, 0);
-  const slope = near.reduce((sum, pair, i) => sum + (weights[i] as number) * pair.upper.slope, 0) / total;
+  const slope = near.reduce((sum, pair, i) => sum + (weights[i] ?? Number.NaN) * pair.upper.slope, 0) / total;
   const variance =
     near.reduce((sum, { upper }, i) => {
-      return sum + (weights[i] as number) * (upper.standardError ** 2 + (upper.slope - slope) ** 2);
+      return sum + (weights[i] ?? Number.NaN) * (upper.standardError ** 2 + (upper.slope - slope) ** 2);
     }, 0) / total;
   return { slope, standardError: Math.sqrt(variance), heaviest: least, averaged: near.length };
 }

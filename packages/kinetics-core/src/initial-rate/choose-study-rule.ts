@@ -24,19 +24,12 @@ export function chooseStudyRule(traces: readonly StudyTrace[]): StudyRuleChoice 
  */
 export function chooseFromSurveys(surveys: readonly TraceSurvey[]): StudyRuleChoice | null {
   const taking = surveys.filter(({ rules }) => rules.length > 0);
-  const byRule = new Map<string, RuleOnRun[]>();
-  for (const { rules } of taking) {
-    for (const rule of rules) {
-      const key = `${rule.conversionEnd} ${rule.pair}`;
-      const runs = byRule.get(key);
-      if (runs) runs.push(rule);
-      else byRule.set(key, [rule]);
-    }
-  }
-  const compared = [...byRule.values()]
-    .filter((runs) => runs.length === taking.length && isAdequateForAll(runs))
-    .flatMap((runs) => {
-      const [{ conversionEnd, pair }] = runs as [RuleOnRun];
+  const compared = (taking[0]?.rules ?? [])
+    .flatMap(({ conversionEnd, pair }) => {
+      const runs = taking.flatMap(
+        ({ rules }) => rules.find((rule) => rule.conversionEnd === conversionEnd && rule.pair === pair) ?? [],
+      );
+      if (runs.length < taking.length || !isAdequateForAll(runs)) return [];
       const criterion = criterionOf(runs);
       return Number.isFinite(criterion) ? [{ conversionEnd, pair, criterion, runs: runs.length }] : [];
     })

@@ -17,7 +17,7 @@ export interface Progress {
  */
 export function progressOf(readings: Readings, span: number): Progress {
   const { time, signal } = readings;
-  const guess = ((signal[0] as number) + (signal[1] as number) + (signal[2] as number)) / 3;
+  const guess = ((signal[0] ?? Number.NaN) + (signal[1] ?? Number.NaN) + (signal[2] ?? Number.NaN)) / 3;
   let excess = 0;
   for (const value of signal) excess += value - guess;
   const direction = excess < 0 ? -1 : 1;
@@ -28,7 +28,7 @@ export function progressOf(readings: Readings, span: number): Progress {
   const basis = orthonormalPolynomials(time, 0, early, 2);
   const projections = projectOn(basis, signal, 0);
   const { values } = polynomialsAt(basis.recurrence, 0);
-  const start = values.reduce((sum, value, j) => sum + value * (projections[j] as number), 0);
+  const start = values.reduce((sum, value, j) => sum + value * (projections[j] ?? Number.NaN), 0);
   return { start, direction, span };
 }
 
@@ -46,7 +46,7 @@ export function pointsTo(readings: Readings, progress: Progress, conversion: num
   let best = 0;
   let count = 0;
   for (let i = 0; i < signal.length; i++) {
-    const change = ((signal[i] as number) - progress.start) * progress.direction;
+    const change = ((signal[i] ?? Number.NaN) - progress.start) * progress.direction;
     score += change <= limit ? 1 : -1;
     if (score > best) {
       best = score;

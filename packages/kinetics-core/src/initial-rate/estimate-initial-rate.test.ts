@@ -350,6 +350,14 @@ describe("what cannot be used comes back as a sentence", () => {
     expect(result).toMatchObject({ status: "too-few-points", got });
   });
 
+  it("a general order of a trace that is level from the second reading on", () => {
+    const trace = traceOf(evenly(30, 29), (t) => (t > 0 ? 1 : 0));
+    const result = estimateInitialRate(trace, { estimator: "integrated", signalSpan: 1 });
+    expect(result).toMatchObject({ status: "unusable", code: "no-slope" });
+    const { alternatives } = found(trace, { signalSpan: 1 });
+    expect(alternatives.map(({ estimator }) => estimator)).not.toContain("integrated");
+  });
+
   it("four readings carry a straight line, asked for by name", () => {
     const result = found(
       traceOf([0, 1, 2, 3], (t) => 2 * t + (t === 1 ? 0.1 : 0)),

@@ -31,11 +31,12 @@ export function estimateInitialRate(trace: Trace, options: InitialRateOptions = 
     ? selectByName(prepared, scope, pairs, named)
     : selectAutomatically(prepared, scope, pairs, rule);
   if (selected.status === "too-few-points") return tooFew(selected);
+  if (selected.status === "unusable") return selected;
 
   const { slope, standardError, shown, pair } = selected;
   const { readings, noise } = prepared;
   const half = standardError * studentTFactor(level, noise.degreesOfFreedom);
-  const first = readings.time[shown.from] as number;
+  const first = readings.time[shown.from] ?? Number.NaN;
   return {
     status: "found",
     ...slopeEstimate(prepared, shown),

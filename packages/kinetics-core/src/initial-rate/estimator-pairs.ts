@@ -4,7 +4,7 @@ import { exponentialFit, generalOrderFit, type LackOfFit } from "./integrated-sl
 import { type PolynomialSlopes, polynomialCurve, polynomialSlopes } from "./polynomial-slopes";
 import type { Readings } from "./readings";
 import type { NoiseModel } from "./trace-noise";
-import type { WindowFit } from "./window-fit";
+import { isDetermined, type WindowFit } from "./window-fit";
 
 /** Two nested estimators on one window. */
 export interface PairFit {
@@ -30,8 +30,8 @@ export function polynomialFit(fit: PolynomialSlopes, degree: number): WindowFit 
     degree,
     from: fit.from,
     to: fit.to,
-    slope: fit.slopes[degree] as number,
-    standardError: fit.standardErrors[degree] as number,
+    slope: fit.slopes[degree] ?? Number.NaN,
+    standardError: fit.standardErrors[degree] ?? Number.NaN,
     curve: () => ({ kind: "polynomial", coefficients: polynomialCurve(fit, degree) }),
   };
 }
@@ -50,10 +50,12 @@ export function polynomialPairs(
   );
 }
 
-/** Exponential→general order on one window of at least 6 readings. */
-export function integratedPair(readings: Readings, noise: NoiseModel, from: number, to: number): PairFit {
+/** Exponential→general order on one window of at least 6 readings; none where the readings do not fix a slope. */
+export function integratedPairs(readings: Readings, noise: NoiseModel, from: number, to: number): PairFit[] {
+  const lower = exponentialFit(readings, noise, from, to);
   const upper = generalOrderFit(readings, noise, from, to);
-  return pairOf("exponential-general", exponentialFit(readings, noise, from, to), upper, upper.lackOfFit);
+  if (!isDetermined(lower) || !isDetermined(upper)) return [];
+  return [pairOf("exponential-general", lower, upper, upper.lackOfFit)];
 }
 
 /** Whether the pair may enter the choice: a general order that misses the trace's own shape may not. */

@@ -33,9 +33,10 @@ export function generalOrderShape(time: Float64Array): Shape {
       [LEAST_PROGRESS, LARGEST_PROGRESS],
     ],
     evaluate([curvature = 0, progress = 1], value, derivatives) {
-      const [byCurvature, byProgress] = derivatives as [Float64Array, Float64Array];
+      const [byCurvature, byProgress] = derivatives;
+      if (!byCurvature || !byProgress) throw new RangeError("The general order has two derivatives");
       for (let i = 0; i < time.length; i++) {
-        const t = time[i] as number;
+        const t = time[i] ?? Number.NaN;
         const z = (curvature - progress) * t;
         if (z <= -1) {
           value[i] = 1 / progress;
@@ -64,9 +65,10 @@ export function exponentialShape(time: Float64Array): Shape {
   return {
     bounds: [[-LARGEST_ACCELERATION, LARGEST_PROGRESS]],
     evaluate([progress = 0], value, derivatives) {
-      const [byProgress] = derivatives as [Float64Array];
+      const [byProgress] = derivatives;
+      if (!byProgress) throw new RangeError("The exponential has one derivative");
       for (let i = 0; i < time.length; i++) {
-        const t = time[i] as number;
+        const t = time[i] ?? Number.NaN;
         const x = progress * t;
         const h = x === 0 ? 1 : -Math.expm1(-x) / x;
         value[i] = t * h;

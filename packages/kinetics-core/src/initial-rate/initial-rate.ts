@@ -102,7 +102,14 @@ export type InitialRate =
     }
   | {
       readonly status: "unusable";
-      readonly code: "not-increasing" | "not-finite" | "lengths-differ" | "empty-window" | "flat-time";
+      readonly code:
+        | "not-increasing"
+        | "not-finite"
+        | "lengths-differ"
+        | "empty-window"
+        | "flat-time"
+        /** The estimator asked for by name has no slope at mixing that these readings fix. */
+        | "no-slope";
       readonly message: string;
     };
 

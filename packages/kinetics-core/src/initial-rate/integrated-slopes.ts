@@ -6,6 +6,7 @@ import {
   type Shape,
   type ShapeFit,
 } from "kinetics-core/least-squares";
+import { dot } from "kinetics-core/linear-algebra";
 import { quadraticForm } from "./autoregressive-noise";
 import { LEAST_DEGREES_OF_FREEDOM, NOISE_DEGREE } from "./constants";
 import { exponentialShape, generalOrderShape } from "./general-order";
@@ -63,7 +64,7 @@ interface WindowData {
 }
 
 function windowOf({ time, signal }: Readings, from: number, to: number): WindowData {
-  const unit = time[to - 1] as number;
+  const unit = time[to - 1] ?? Number.NaN;
   return {
     from,
     to,
@@ -73,8 +74,10 @@ function windowOf({ time, signal }: Readings, from: number, to: number): WindowD
   };
 }
 
-/** Points on which starting values compete. */
+/** Readings on which starting values compete. */
 const THINNED_POINTS = 40;
+/** Evaluations after which the best start shows. */
+const HEATS = 7;
 
 /** The best of several starts on a thinned trace, then all readings from there. */
 function fitFromStarts(
@@ -87,20 +90,21 @@ function fitFromStarts(
   const thinnedSignal = new Float64Array(count);
   for (let i = 0; i < count; i++) {
     const index = Math.round((i * (signal.length - 1)) / (count - 1));
-    thinnedTime[i] = scaledTime[index] as number;
-    thinnedSignal[i] = signal[index] as number;
+    thinnedTime[i] = scaledTime[index] ?? Number.NaN;
+    thinnedSignal[i] = signal[index] ?? Number.NaN;
   }
   const thinned = shapeOn(thinnedTime);
   const best = starts
-    .map((start) => fitShape(thinnedSignal, thinned, start))
+    .map((start) => fitShape(thinnedSignal, thinned, start, HEATS))
     .reduce((a, b) => (b.residualSquares < a.residualSquares ? b : a));
-  return count === signal.length ? best : fitShape(signal, shapeOn(scaledTime), best.parameters);
+  return fitShape(signal, shapeOn(scaledTime), best.parameters);
 }
 
 /**
  * The initial slope is the linear scale v of the fit over the unit of time. Its row is the part of ∂S/∂v = φ
  * that no other parameter can imitate, p = φ − (projection on 1 and v·∂φ/∂θ), divided by pᵀp: the row of the
- * least-squares slope in the tangent plane at the solution.
+ * least-squares slope in the tangent plane at the solution. Where nothing of p is left, the readings do not fix
+ * a slope at mixing and its error is infinite (`isDetermined`).
  */
 function windowFit(
   estimator: "exponential" | "integrated",
@@ -118,7 +122,9 @@ function windowFit(
     from,
     to,
     slope: fit.scale / unit,
-    standardError: (noise.standardDeviation * Math.sqrt(quadraticForm(row, noise.steps, from))) / unit,
+    standardError: row
+      ? (noise.standardDeviation * Math.sqrt(quadraticForm(row, noise.steps, from))) / unit
+      : Number.POSITIVE_INFINITY,
     curve: () => curveOf(fit, unit),
   };
 }
@@ -135,9 +141,10 @@ function curveOf({ parameters, offset, scale }: ShapeFit, unit: number): FittedC
 
 /** A direction that is all but a combination of earlier ones says nothing of its own. */
 const COLLINEAR = 1e-7;
+const NOTHING_LEFT = 1e-12;
 
-/** p/(pᵀp), p the part of `column` that is orthogonal to the constant and to `others`. */
-function loneliestPart(column: Float64Array, others: readonly Float64Array[]): Float64Array {
+/** p/(pᵀp), p the part of `column` that is orthogonal to the constant and to `others`; null where p is rounding. */
+function loneliestPart(column: Float64Array, others: readonly Float64Array[]): Float64Array | null {
   const n = column.length;
   const directions = [new Float64Array(n).fill(1 / Math.sqrt(n))];
   for (const other of others) {
@@ -151,6 +158,7 @@ function loneliestPart(column: Float64Array, others: readonly Float64Array[]): F
   const part = Float64Array.from(column);
   removeDirections(part, directions);
   const squares = dot(part, part);
+  if (!(squares > NOTHING_LEFT * NOTHING_LEFT * dot(column, column))) return null;
   return part.map((entry) => entry / squares);
 }
 
@@ -160,16 +168,10 @@ function removeDirections(column: Float64Array, directions: readonly Float64Arra
     for (const direction of directions) {
       const share = dot(column, direction);
       for (let i = 0; i < column.length; i++) {
-        column[i] = (column[i] as number) - share * (direction[i] as number);
+        column[i] = (column[i] ?? Number.NaN) - share * (direction[i] ?? Number.NaN);
       }
     }
   }
-}
-
-function dot(a: Float64Array, b: Float64Array): number {
-  let sum = 0;
-  for (let i = 0; i < a.length; i++) sum += (a[i] as number) * (b[i] as number);
-  return sum;
 }
 
 const GENERAL_ORDER_PARAMETERS = 4;
@@ -193,9 +195,9 @@ function lackOfFitOf(
   const projections = projectOn(basis, signal, from);
   let smoothSquares = 0;
   for (let i = 0; i < points; i++) {
-    let residual = signal[from + i] as number;
+    let residual = signal[from + i] ?? Number.NaN;
     for (let j = 0; j < coefficients; j++) {
-      residual -= (projections[j] as number) * (basis.columns[j * points + i] as number);
+      residual -= (projections[j] ?? Number.NaN) * (basis.columns[j * points + i] ?? Number.NaN);
     }
     smoothSquares += residual * residual;
   }

@@ -45,11 +45,11 @@ export function polynomialSlopes(
   // The first column is constant and never enters a slope: it carries the growing row a_d.
   const row = columns.subarray(0, points).fill(0);
   for (let d = 1; d <= degree; d++) {
-    const derivative = derivatives[d] as number;
-    slope += derivative * (projections[d] as number);
+    const derivative = derivatives[d] ?? Number.NaN;
+    slope += derivative * (projections[d] ?? Number.NaN);
     slopes.push(slope);
     const column = columns.subarray(d * points, (d + 1) * points);
-    for (let i = 0; i < points; i++) row[i] = (row[i] as number) + derivative * (column[i] as number);
+    for (let i = 0; i < points; i++) row[i] = (row[i] ?? Number.NaN) + derivative * (column[i] ?? Number.NaN);
     standardErrors.push(noise.standardDeviation * Math.sqrt(quadraticForm(row, noise.steps, from)));
   }
   return { from, to, slopes, standardErrors, recurrence: basis.recurrence, projections };
@@ -64,6 +64,6 @@ export function polynomialCurve(fit: PolynomialSlopes, degree: number): number[]
 export function polynomialValue(fit: PolynomialSlopes, degree: number, time: number): number {
   const { values } = polynomialsAt(fit.recurrence, time);
   let sum = 0;
-  for (let j = 0; j <= degree; j++) sum += (values[j] as number) * (fit.projections[j] as number);
+  for (let j = 0; j <= degree; j++) sum += (values[j] ?? Number.NaN) * (fit.projections[j] ?? Number.NaN);
   return sum;
 }

@@ -33,21 +33,21 @@ export function readingsOf(
   if (fault) return fault;
 
   let before = 0;
-  while (before < time.length && (time[before] as number) < timeZero) before++;
+  while (before < time.length && (time[before] ?? Number.NaN) < timeZero) before++;
   const count = time.length - before;
   const shifted = new Float64Array(count);
   const values = new Float64Array(count);
   for (let i = 0; i < count; i++) {
-    shifted[i] = (time[before + i] as number) - timeZero;
-    values[i] = signal[before + i] as number;
+    shifted[i] = (time[before + i] ?? Number.NaN) - timeZero;
+    values[i] = signal[before + i] ?? Number.NaN;
   }
   return { status: "usable", time: shifted, signal: values, before, timeZero };
 }
 
 function faultOf(time: ArrayLike<number>, signal: ArrayLike<number>): RefusedTrace | null {
   for (let i = 0; i < time.length; i++) {
-    const t = time[i] as number;
-    const s = signal[i] as number;
+    const t = time[i] ?? Number.NaN;
+    const s = signal[i] ?? Number.NaN;
     if (!Number.isFinite(t)) {
       return refused(
         "not-finite",
@@ -61,7 +61,7 @@ function faultOf(time: ArrayLike<number>, signal: ArrayLike<number>): RefusedTra
       );
     }
     if (i === 0) continue;
-    const previous = time[i - 1] as number;
+    const previous = time[i - 1] ?? Number.NaN;
     if (t > previous) continue;
     if (time.length > 1 && t === previous && isConstant(time)) {
       return refused("flat-time", `All ${time.length} readings have the time ${t}; check the time column.`);

@@ -6,7 +6,8 @@ import type { Estimator, EstimatorPair, StudyRule } from "./initial-rate";
 import { exponentialFit, generalOrderFit } from "./integrated-slopes";
 import { polynomialSlopes } from "./polynomial-slopes";
 import type { PreparedTrace } from "./prepared-trace";
-import type { WindowFit } from "./window-fit";
+import type { RefusedTrace } from "./readings";
+import { isDetermined, type WindowFit } from "./window-fit";
 import type { Scope, Window } from "./window-scope";
 
 /** What is reported, before it is dressed up with interval, conversion and flags. */
@@ -20,11 +21,10 @@ export interface Selection {
   readonly flags: readonly Flag[];
 }
 
-export interface TooFewPoints {
-  readonly status: "too-few-points";
-  readonly needed: number;
-  readonly got: number;
-}
+export type Selected =
+  | Selection
+  | { readonly status: "too-few-points"; readonly needed: number; readonly got: number }
+  | RefusedTrace;
 
 /** An estimator by name; `degree` of a tangent, null otherwise. */
 export interface NamedEstimator {
@@ -41,8 +41,12 @@ export function selectAutomatically(
   scope: Scope,
   pairs: readonly PairFit[],
   rule?: StudyRule,
-): Selection | TooFewPoints {
-  if (pairs.length === 0) return selectWhole(prepared, scope.widest, { estimator: "tangent", degree: 2 });
+): Selected {
+  if (pairs.length === 0) {
+    const whole = selectWhole(prepared, scope.widest, { estimator: "tangent", degree: 2 });
+    const wanted = rule && scope.integrated.length > 0 && whole.status === "selected";
+    return wanted ? { ...whole, flags: [RULE_NOT_APPLIED] } : whole;
+  }
   const ruled = pairs.filter(({ pair }) => pair === rule?.pair);
   const candidates = ruled.length > 0 ? ruled : pairs.filter(isAdequate);
   const { slope, standardError, heaviest } = chooseSlope(candidates);
@@ -65,7 +69,7 @@ export function selectByName(
   scope: Scope,
   pairs: readonly PairFit[],
   named: NamedEstimator,
-): Selection | TooFewPoints {
+): Selected {
   const own = pairs.filter((pair) => isNamed(memberOf(pair, named), named));
   if (own.length === 0) return selectWhole(prepared, scope.widest, named);
   const best = own.reduce((a, b) => (b.criterion < a.criterion ? b : a));
@@ -98,17 +102,14 @@ function isNamed(fit: WindowFit, { estimator, degree }: NamedEstimator): boolean
 const PARAMETERS = { straight: 2, exponential: 3, integrated: 4 } as const;
 
 /** One estimator on all of a window, with nothing to compare it to. */
-export function selectWhole(
-  prepared: PreparedTrace,
-  { from, to }: Window,
-  named: NamedEstimator,
-): Selection | TooFewPoints {
+export function selectWhole(prepared: PreparedTrace, { from, to }: Window, named: NamedEstimator): Selected {
   const { estimator } = named;
   const degree = named.degree ?? 2;
   const got = to - from;
   const needed = SPARE_POINTS + (estimator === "tangent" ? degree + 1 : PARAMETERS[estimator]);
   if (got < needed) return { status: "too-few-points", needed, got };
   const shown = fitWhole(prepared, { from, to }, estimator, degree);
+  if (!isDetermined(shown)) return { status: "unusable", code: "no-slope", message: NO_SLOPE };
   const { slope, standardError } = shown;
   return { status: "selected", slope, standardError, shown, pair: null, flags: [] };
 }
@@ -125,12 +126,16 @@ function fitWhole(
   return polynomialFit(polynomialSlopes(readings, noise, from, to, degree, scratch), degree);
 }
 
+const NO_SLOPE =
+  "These readings do not fix the slope of such a curve at mixing, because it is level from the second reading on; " +
+  "ask for a straight line or a tangent, or read the start more densely.";
+
 const RULE_NOT_APPLIED: Flag = {
   code: "rule-not-applied",
   severity: "weakens",
   message:
-    "This run has too few readings for the estimator that the study uses, so it chooses its own; " +
-    "read the run more densely.",
+    "The readings of this run do not carry the estimator that the study uses, so it has one of its own; " +
+    "read the run more densely from its start.",
 };
 
 function lackOfFitFlag({ lackOfFit }: PairFit): Flag {

@@ -43,7 +43,7 @@ export function slopeAgainstWindowEnd(
       const to = first + count;
       const selected = selectWhole(prepared, { from: first, to }, named);
       if (selected.status !== "selected") return [];
-      const end = (time[to - 1] as number) + timeZero;
+      const end = (time[to - 1] ?? Number.NaN) + timeZero;
       return [{ end, slope: selected.slope, standardError: selected.standardError }];
     },
   );

@@ -6,8 +6,8 @@ import type { WindowFit } from "./window-fit";
 /** A fit on one window as the caller sees it: window on the caller's clock, conversion where the span is known. */
 export function slopeEstimate({ readings, progress }: PreparedTrace, fit: WindowFit): SlopeEstimate {
   const curve = fit.curve();
-  const first = readings.time[fit.from] as number;
-  const last = readings.time[fit.to - 1] as number;
+  const first = readings.time[fit.from] ?? Number.NaN;
+  const last = readings.time[fit.to - 1] ?? Number.NaN;
   const change = Math.abs(evaluateCurve(curve, last) - evaluateCurve(curve, 0));
   return {
     estimator: fit.estimator,

@@ -5,7 +5,7 @@ import {
   STUDY_CONVERSION_ENDS,
 } from "./constants";
 import { type Progress, pointsTo } from "./conversion";
-import { integratedPair, type PairFit, polynomialPairs } from "./estimator-pairs";
+import { integratedPairs, type PairFit, polynomialPairs } from "./estimator-pairs";
 import type { StudyRule, StudyTrace } from "./initial-rate";
 import { type PreparedTrace, prepareTrace } from "./prepared-trace";
 import { pointsByRule } from "./window-scope";
@@ -43,21 +43,19 @@ function rulesOn(prepared: PreparedTrace, progress: Progress): RuleOnRun[] {
   const all = readings.time.length;
   const rules: RuleOnRun[] = [];
   // Runs that stop early meet several conversion ends with the same readings.
-  let before: { to: number; pairs: PairFit[] } | null = null;
+  let before = { polynomial: true, to: 0, pairs: [] as PairFit[] };
   for (const conversionEnd of STUDY_CONVERSION_ENDS) {
     const polynomial = conversionEnd <= POLYNOMIAL_CONVERSION_END;
     if (!polynomial && all < LEAST_LONG_WINDOW_POINTS) break;
     const reached = pointsTo(readings, progress, conversionEnd);
     const to = pointsByRule(all, reached, polynomial ? "line-quadratic" : "exponential-general");
-    const known: boolean = before?.to === to && before.pairs.length > 1 === polynomial;
-    const pairs: PairFit[] =
-      known && before
-        ? before.pairs
-        : polynomial
-          ? polynomialPairs(readings, noise, 0, to, scratch)
-          : [integratedPair(readings, noise, 0, to)];
-    before = { to, pairs };
-    for (const pair of pairs) rules.push(ruleOnRun(conversionEnd, pair));
+    if (before.to !== to || before.polynomial !== polynomial) {
+      const pairs = polynomial
+        ? polynomialPairs(readings, noise, 0, to, scratch)
+        : integratedPairs(readings, noise, 0, to);
+      before = { polynomial, to, pairs };
+    }
+    for (const pair of before.pairs) rules.push(ruleOnRun(conversionEnd, pair));
   }
   return rules;
 }

@@ -85,10 +85,10 @@ export function noiseOf(readings: Readings): NoiseModel {
   let largest = 0;
   let before = 0;
   for (let i = 0; i < n; i++) {
-    const value = signal[i] as number;
+    const value = signal[i] ?? Number.NaN;
     let residual = value;
     for (let j = 0; j < coefficients; j++) {
-      residual -= (projections[j] as number) * (basis.columns[j * n + i] as number);
+      residual -= (projections[j] ?? Number.NaN) * (basis.columns[j * n + i] ?? Number.NaN);
     }
     squares += residual * residual;
     lagged += i === 0 ? 0 : residual * before;

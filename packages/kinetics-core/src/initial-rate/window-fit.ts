@@ -11,3 +11,8 @@ export interface WindowFit {
   /** Made when asked for: most windows that are tried are never drawn. */
   readonly curve: () => FittedCurve;
 }
+
+/** Whether the readings fix this slope at all; an exponential that was over before the second reading has none. */
+export function isDetermined({ slope, standardError }: WindowFit): boolean {
+  return Number.isFinite(slope) && Number.isFinite(standardError);
+}

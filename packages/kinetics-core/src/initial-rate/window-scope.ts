@@ -7,7 +7,7 @@ import {
   POLYNOMIAL_CONVERSION_END,
 } from "./constants";
 import { type Progress, pointsTo } from "./conversion";
-import { integratedPair, type PairFit, polynomialPairs } from "./estimator-pairs";
+import { integratedPairs, type PairFit, polynomialPairs } from "./estimator-pairs";
 import type { InitialRate, InitialRateOptions, StudyRule } from "./initial-rate";
 import type { PreparedTrace } from "./prepared-trace";
 import { geometricWindows } from "./windows";
@@ -52,7 +52,7 @@ export function scopeOf(
 export function pairsIn({ readings, noise, scratch }: PreparedTrace, scope: Scope): PairFit[] {
   return [
     ...scope.polynomial.flatMap(({ from, to }) => polynomialPairs(readings, noise, from, to, scratch)),
-    ...scope.integrated.map(({ from, to }) => integratedPair(readings, noise, from, to)),
+    ...scope.integrated.flatMap(({ from, to }) => integratedPairs(readings, noise, from, to)),
   ];
 }
 
@@ -128,7 +128,7 @@ function countWhile(time: Float64Array, passes: (time: number) => boolean): numb
   let high = time.length;
   while (low < high) {
     const middle = (low + high) >> 1;
-    if (passes(time[middle] as number)) low = middle + 1;
+    if (passes(time[middle] ?? Number.NaN)) low = middle + 1;
     else high = middle;
   }
   return low;

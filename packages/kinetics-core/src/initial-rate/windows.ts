@@ -11,16 +11,16 @@ export function geometricWindows(
   windows = WINDOWS,
   from = 0,
 ): number[] {
-  const origin = time[from] as number;
-  const shortest = (time[from + least - 1] as number) - origin;
-  const longest = (time[from + most - 1] as number) - origin;
+  const origin = time[from] ?? Number.NaN;
+  const shortest = (time[from + least - 1] ?? Number.NaN) - origin;
+  const longest = (time[from + most - 1] ?? Number.NaN) - origin;
   const ratio = longest / shortest;
   const counts: number[] = [];
   let count = least;
   for (let w = 0; w < windows - 1; w++) {
     const length = shortest * ratio ** (w / (windows - 1));
     // The product above may round to just below a reading's own time.
-    while (count < most && (time[from + count] as number) - origin <= length * (1 + 1e-12)) count++;
+    while (count < most && (time[from + count] ?? Number.NaN) - origin <= length * (1 + 1e-12)) count++;
     if (counts.at(-1) !== count) counts.push(count);
   }
   if (counts.at(-1) !== most) counts.push(most);

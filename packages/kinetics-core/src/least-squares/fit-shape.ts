@@ -1,10 +1,12 @@
+import { dot } from "kinetics-core/linear-algebra";
+
 /**
  * Least squares of y ≈ offset + scale·φ(θ), a curve whose shape φ has one or two parameters, by
  * Levenberg-Marquardt on the shape alone: offset and scale are linear and are eliminated at every step
  * (variable projection; Golub and Pereyra, SIAM J. Numer. Anal. 10 (1973) 413-432, with the Jacobian of
  * Kaufman, BIT 15 (1975) 49-57, whose gradient is exact). With P the projector away from [1, φ],
  *
- *   r(θ) = P y,   J = −scale · P ∂φ/∂θ,   (JᵀJ + λD) δ = −Jᵀr,
+ *   r(θ) = P y,   J = scale · P ∂φ/∂θ,   (JᵀJ + λD) δ = Jᵀr,
  *
  * D the running maximum of diag JᵀJ (Moré, Lecture Notes in Mathematics 630 (1978) 105-116). J is projected
  * before the products are formed, so the two-by-two system carries no more than the shape's own degeneracy,
@@ -39,18 +41,28 @@ const SMALLEST_STEP = 1e-12;
 const ROUNDING = 1e-12;
 const LARGEST_DAMPING = 1e12;
 
-/** `values`: length n ≥ parameters + 2, finite. `start`: within the bounds. Never throws on data. */
-export function fitShape(values: Float64Array, shape: Shape, start: readonly number[]): ShapeFit {
+/**
+ * `values`: length n ≥ parameters + 2, finite. `start`: within the bounds. Never throws on data: a fit that has
+ * not converged after `largestEvaluations` evaluations of the shape says so.
+ */
+export function fitShape(
+  values: Float64Array,
+  shape: Shape,
+  start: readonly number[],
+  largestEvaluations = LARGEST_EVALUATIONS,
+): ShapeFit {
   const floor = values.length * (Number.EPSILON * largestOf(values)) ** 2;
-  let current = stateAt(values, shape, start);
-  let spare = stateAt(values, shape, start);
+  const mean = meanOf(values);
+  const target = centred(values);
+  let current = stateAt(target, shape, start);
+  let spare = stateAt(target, shape, start);
   let system = normalSystem(current, shape);
   const scales = [...system.least];
   let damping = 1e-3;
   let evaluations = 1;
   let converged = current.residualSquares <= floor;
 
-  while (!converged && evaluations < LARGEST_EVALUATIONS) {
+  while (!converged && evaluations < largestEvaluations) {
     const { next, moved, cut } = boundedStep(current.parameters, dampedStep(system, scales, damping), shape);
     const promised = gainOf(system, moved);
     const last = promised <= SMALLEST_GAIN * current.residualSquares || isSmall(moved, next);
@@ -59,7 +71,7 @@ export function fitShape(values: Float64Array, shape: Shape, start: readonly num
       damping *= 8;
       continue;
     }
-    fillState(values, shape, next, spare);
+    fillState(target, shape, next, spare);
     evaluations++;
     const gained = current.residualSquares - spare.residualSquares;
     if (last) {
@@ -70,7 +82,7 @@ export function fitShape(values: Float64Array, shape: Shape, start: readonly num
       [current, spare] = [spare, current];
       system = normalSystem(current, shape);
       system.least.forEach((entry, j) => {
-        scales[j] = Math.max(scales[j] as number, entry);
+        scales[j] = Math.max(scales[j] ?? Number.NaN, entry);
       });
       damping = Math.max(
         damping * (gained > 0.75 * promised ? 0.1 : gained > 0.25 * promised ? 0.5 : 2),
@@ -82,27 +94,17 @@ export function fitShape(values: Float64Array, shape: Shape, start: readonly num
       if (damping > LARGEST_DAMPING) break;
     }
   }
-  const { parameters, offset, scale, residualSquares, value, derivatives } = current;
-  const held = parameters.map((parameter, j) => {
-    const [low, high] = shape.bounds[j] as readonly [number, number];
+  const { parameters, scale, residualSquares, value, derivatives } = current;
+  const held = shape.bounds.map(([low, high], j) => {
+    const parameter = parameters[j] ?? Number.NaN;
     return parameter <= low || parameter >= high;
   });
-  return {
-    parameters,
-    offset,
-    scale,
-    residualSquares,
-    value,
-    derivatives,
-    held,
-    converged,
-    evaluations,
-  };
+  const offset = mean - scale * meanOf(value);
+  return { parameters, offset, scale, residualSquares, value, derivatives, held, converged, evaluations };
 }
 
 interface State {
   parameters: readonly number[];
-  offset: number;
   scale: number;
   residualSquares: number;
   readonly value: Float64Array;
@@ -110,100 +112,69 @@ interface State {
   readonly residuals: Float64Array;
 }
 
-function stateAt(values: Float64Array, shape: Shape, parameters: readonly number[]): State {
-  const state: State = {
-    parameters,
-    offset: 0,
-    scale: 0,
-    residualSquares: 0,
-    value: new Float64Array(values.length),
-    derivatives: shape.bounds.map(() => new Float64Array(values.length)),
-    residuals: new Float64Array(values.length),
-  };
-  fillState(values, shape, parameters, state);
+function stateAt(target: Float64Array, shape: Shape, parameters: readonly number[]): State {
+  const column = () => new Float64Array(target.length);
+  const columns = { value: column(), derivatives: shape.bounds.map(column), residuals: column() };
+  const state: State = { parameters, scale: 0, residualSquares: 0, ...columns };
+  fillState(target, shape, parameters, state);
   return state;
 }
 
-/** Shape, linear parameters and residuals at one set of shape parameters. */
-function fillState(values: Float64Array, shape: Shape, parameters: readonly number[], state: State): void {
+/** Shape, scale and residuals at one set of shape parameters. `target`: the values about their mean. */
+function fillState(target: Float64Array, shape: Shape, parameters: readonly number[], state: State): void {
   const { value, derivatives, residuals } = state;
   shape.evaluate(parameters, value, derivatives);
-  const n = values.length;
-  const meanValue = meanOf(values);
-  const meanShape = meanOf(value);
-  let across = 0;
-  let along = 0;
-  for (let i = 0; i < n; i++) {
-    const centred = (value[i] as number) - meanShape;
-    across += centred * ((values[i] as number) - meanValue);
-    along += centred * centred;
-  }
-  const scale = along > 0 ? across / along : 0;
-  let squares = 0;
-  for (let i = 0; i < n; i++) {
-    const residual = (values[i] as number) - meanValue - scale * ((value[i] as number) - meanShape);
-    residuals[i] = residual;
-    squares += residual * residual;
+  const direction = centred(value);
+  const along = dot(direction, direction);
+  const scale = along > 0 ? dot(direction, target) / along : 0;
+  for (let i = 0; i < target.length; i++) {
+    residuals[i] = (target[i] ?? Number.NaN) - scale * (direction[i] ?? Number.NaN);
   }
   state.parameters = parameters;
   state.scale = scale;
-  state.offset = meanValue - scale * meanShape;
-  state.residualSquares = squares;
+  state.residualSquares = dot(residuals, residuals);
 }
 
+/** JᵀJ and Jᵀr of the projected problem; a parameter that pushes against its bound has zeros. */
 interface NormalSystem {
+  readonly diagonal: readonly number[];
+  readonly cross: number;
+  readonly descent: readonly number[];
   /** A unit step counts for at least a thousandth of the whole curve, so that an idle parameter stays put. */
   readonly least: readonly number[];
-  /** diag JᵀJ, its one off-diagonal entry, and −Jᵀr (0 for a parameter that is held at its bound). */
-  readonly diagonal: number[];
-  readonly cross: number;
-  readonly descent: number[];
 }
 
-function normalSystem(state: State, shape: Shape): NormalSystem {
-  const { value, derivatives, residuals, scale, parameters } = state;
-  const n = value.length;
-  const meanShape = meanOf(value);
-  let along = 0;
-  for (let i = 0; i < n; i++) along += ((value[i] as number) - meanShape) ** 2;
-  const means = derivatives.map(meanOf);
-  const shares = derivatives.map((derivative, j) => {
-    let sum = 0;
-    for (let i = 0; i < n; i++) {
-      sum += ((value[i] as number) - meanShape) * ((derivative[i] as number) - (means[j] as number));
+function normalSystem(
+  { value, derivatives, residuals, scale, parameters }: State,
+  shape: Shape,
+): NormalSystem {
+  const direction = centred(value);
+  const along = dot(direction, direction);
+  const columns = derivatives.map((derivative) => {
+    const column = centred(derivative);
+    const share = along > 0 ? dot(direction, column) / along : 0;
+    for (let i = 0; i < column.length; i++) {
+      column[i] = scale * ((column[i] ?? Number.NaN) - share * (direction[i] ?? Number.NaN));
     }
-    return along > 0 ? sum / along : 0;
+    return column;
   });
-  const diagonal = derivatives.map(() => 0);
-  const descent = derivatives.map(() => 0);
-  let cross = 0;
-  for (let i = 0; i < n; i++) {
-    const centred = (value[i] as number) - meanShape;
-    let other = 0;
-    for (let j = 0; j < derivatives.length; j++) {
-      const column = derivatives[j] as Float64Array;
-      const entry = scale * ((column[i] as number) - (means[j] as number) - (shares[j] as number) * centred);
-      diagonal[j] = (diagonal[j] as number) + entry * entry;
-      descent[j] = (descent[j] as number) + entry * (residuals[i] as number);
-      if (j === 0) other = entry;
-      else cross += other * entry;
-    }
-  }
-  descent.forEach((slope, j) => {
-    const [low, high] = shape.bounds[j] as readonly [number, number];
-    const parameter = parameters[j] as number;
-    if ((parameter <= low && slope < 0) || (parameter >= high && slope > 0)) {
-      descent[j] = 0;
-      diagonal[j] = 0;
-      cross = 0;
-    }
+  const slopes = columns.map((column) => dot(column, residuals));
+  const free = shape.bounds.map(([low, high], j) => {
+    const [parameter = Number.NaN, slope = Number.NaN] = [parameters[j], slopes[j]];
+    return !((parameter <= low && slope < 0) || (parameter >= high && slope > 0));
   });
-  const least = diagonal.map((entry) => Math.max(entry, 1e-6 * scale * scale * along));
-  return { least, diagonal, cross, descent };
+  const diagonal = columns.map((column, j) => (free[j] ? dot(column, column) : 0));
+  const [first, second] = columns;
+  return {
+    diagonal,
+    cross: first && second && free.every(Boolean) ? dot(first, second) : 0,
+    descent: slopes.map((slope, j) => (free[j] ? slope : 0)),
+    least: diagonal.map((entry) => Math.max(entry, 1e-6 * scale * scale * along)),
+  };
 }
 
 function dampedStep(system: NormalSystem, scales: readonly number[], damping: number): number[] {
-  const damped = system.diagonal.map((entry, j) => entry + damping * (scales[j] as number));
+  const damped = system.diagonal.map((entry, j) => entry + damping * (scales[j] ?? Number.NaN));
   const [a = 0, b = 0] = damped;
   const [f = 0, g = 0] = system.descent;
   if (system.diagonal.length === 1) return [a > 0 ? f / a : 0];
@@ -218,13 +189,15 @@ function dampedStep(system: NormalSystem, scales: readonly number[], damping: nu
 function gainOf({ diagonal, cross, descent }: NormalSystem, step: readonly number[]): number {
   let gain = 0;
   step.forEach((move, j) => {
-    gain += 2 * move * (descent[j] as number) - move * move * (diagonal[j] as number);
+    gain += 2 * move * (descent[j] ?? Number.NaN) - move * move * (diagonal[j] ?? Number.NaN);
   });
   return gain - 2 * cross * (step[0] ?? 0) * (step[1] ?? 0);
 }
 
 function isSmall(step: readonly number[], parameters: readonly number[]): boolean {
-  return step.every((move, j) => Math.abs(move) <= SMALLEST_STEP * (1 + Math.abs(parameters[j] as number)));
+  return step.every(
+    (move, j) => Math.abs(move) <= SMALLEST_STEP * (1 + Math.abs(parameters[j] ?? Number.NaN)),
+  );
 }
 
 function boundedStep(
@@ -233,23 +206,29 @@ function boundedStep(
   shape: Shape,
 ): { readonly next: number[]; readonly moved: number[]; readonly cut: boolean } {
   let cut = false;
-  const next = parameters.map((parameter, j) => {
-    const [low, high] = shape.bounds[j] as readonly [number, number];
-    const wanted = parameter + (step[j] as number);
+  const next = shape.bounds.map(([low, high], j) => {
+    const wanted = (parameters[j] ?? Number.NaN) + (step[j] ?? Number.NaN);
     if (wanted < low || wanted > high) cut = true;
     return Math.min(Math.max(wanted, low), high);
   });
-  return { next, moved: next.map((value, j) => value - (parameters[j] as number)), cut };
+  return { next, moved: next.map((value, j) => value - (parameters[j] ?? Number.NaN)), cut };
 }
 
 function largestOf(values: Float64Array): number {
   let largest = 0;
-  for (let i = 0; i < values.length; i++) largest = Math.max(largest, Math.abs(values[i] as number));
+  for (let i = 0; i < values.length; i++) largest = Math.max(largest, Math.abs(values[i] ?? Number.NaN));
   return largest;
+}
+
+function centred(values: Float64Array): Float64Array {
+  const mean = meanOf(values);
+  const result = new Float64Array(values.length);
+  for (let i = 0; i < values.length; i++) result[i] = (values[i] ?? Number.NaN) - mean;
+  return result;
 }
 
 function meanOf(values: Float64Array): number {
   let sum = 0;
-  for (let i = 0; i < values.length; i++) sum += values[i] as number;
+  for (let i = 0; i < values.length; i++) sum += values[i] ?? Number.NaN;
   return sum / values.length;
 }

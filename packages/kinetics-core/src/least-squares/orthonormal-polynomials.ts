@@ -1,3 +1,5 @@
+import { dot } from "kinetics-core/linear-algebra";
+
 /**
  * Polynomials that are orthonormal on a set of abscissae, by the three-term recurrence of Forsythe
  * (J. Soc. Indust. Appl. Math. 5 (1957) 74-88):
@@ -57,19 +59,19 @@ export function orthonormalPolynomials(
     const next = columns.subarray((j + 1) * points, (j + 2) * points);
     let alphaJ = 0;
     for (let i = 0; i < points; i++) {
-      const p = current[i] as number;
-      alphaJ += (((abscissae[from + i] as number) - centre) / halfWidth) * p * p;
+      const p = current[i] ?? Number.NaN;
+      alphaJ += (((abscissae[from + i] ?? Number.NaN) - centre) / halfWidth) * p * p;
     }
     const betaJ = j === 0 ? 0 : (beta[j - 1] ?? 0);
     let squares = 0;
     for (let i = 0; i < points; i++) {
-      const u = ((abscissae[from + i] as number) - centre) / halfWidth;
-      const value = (u - alphaJ) * (current[i] as number) - betaJ * (previous[i] as number);
+      const u = ((abscissae[from + i] ?? Number.NaN) - centre) / halfWidth;
+      const value = (u - alphaJ) * (current[i] ?? Number.NaN) - betaJ * (previous[i] ?? Number.NaN);
       next[i] = value;
       squares += value * value;
     }
     const norm = Math.sqrt(squares);
-    for (let i = 0; i < points; i++) next[i] = (next[i] as number) / norm;
+    for (let i = 0; i < points; i++) next[i] = (next[i] ?? Number.NaN) / norm;
     alpha.push(alphaJ);
     beta.push(norm);
   }
@@ -79,14 +81,10 @@ export function orthonormalPolynomials(
 /** Inner products p_jᵀy, j = 0 … degree, with `values[from…from + points)`. */
 export function projectOn(basis: PolynomialBasis, values: Float64Array, from: number): number[] {
   const { points, columns, degree } = basis;
-  const projections: number[] = [];
-  for (let j = 0; j <= degree; j++) {
-    const offset = j * points;
-    let sum = 0;
-    for (let i = 0; i < points; i++) sum += (columns[offset + i] as number) * (values[from + i] as number);
-    projections.push(sum);
-  }
-  return projections;
+  const part = values.subarray(from, from + points);
+  return Array.from({ length: degree + 1 }, (_, j) =>
+    dot(columns.subarray(j * points, (j + 1) * points), part),
+  );
 }
 
 /** p_j and dp_j/dx at any abscissa, j = 0 … degree. */

@@ -68,6 +68,7 @@ const FAULT_PLACES = {
   "not-finite": "signal",
   "lengths-differ": "signal",
   "empty-window": "window",
+  "no-slope": "estimator",
 } as const;
 
 /**
