@@ -175,14 +175,15 @@ function Tangent({
 /** The rate in words, right of the window where there is room, else in the corner that the trace leaves free. */
 function Note({ view, area, choice }: { view: WindowFigureView; area: ChartArea; choice: WindowChoice }) {
   if (view.note === "") return null;
-  const room = area.right - area.x(choice.to) > view.note.length * 7.4 + 30;
+  const size = area.right - area.left > 480 ? 18 : 15;
+  const room = area.right - area.x(choice.to) > view.note.length * size * 0.41 + 30;
   const rising = (view.signal.at(-1) ?? 0) >= (view.signal[0] ?? 0);
   const x = room ? area.x(choice.to) + 26 : area.right - 12;
   const y = room || !rising ? area.top + 30 : area.bottom - 34;
   const anchor = room ? "start" : "end";
   return (
     <>
-      <text className="in-law" x={x} y={y} textAnchor={anchor} style={{ fontSize: 18 }}>
+      <text className="in-law" x={x} y={y} textAnchor={anchor} style={{ fontSize: size }}>
         <SvgProse text={view.note} />
       </text>
       <text x={x} y={y + 19} textAnchor={anchor}>

@@ -2,6 +2,7 @@
 
 import Link from "next/link";
 import { usePathname } from "next/navigation";
+import { useEffect, useRef } from "react";
 import { SeverityShape } from "./check";
 import type { StationState, StationView } from "./law-view";
 import { typeset } from "./prose";
@@ -9,17 +10,22 @@ import { typeset } from "./prose";
 /** The stations of a study with what each yields, so that the rail reads as the derivation in miniature. */
 export function StationRail({ stations }: { stations: readonly StationView[] }) {
   const pathname = usePathname();
+  const rail = useRef<HTMLElement>(null);
+  const here = stations.find((station) => isOrIsUnder(pathname, station.href))?.href;
+  // On a phone the rail scrolls sideways; it opens at the current station.
+  useEffect(() => {
+    const nav = rail.current;
+    const link = [...(nav?.querySelectorAll("a") ?? [])].find((one) => one.getAttribute("href") === here);
+    if (nav && link && nav.scrollWidth > nav.clientWidth) {
+      nav.scrollLeft += link.getBoundingClientRect().left - nav.getBoundingClientRect().left - 16;
+    }
+  }, [here]);
   return (
-    <nav className="station-rail" aria-label="Stations of this study">
+    <nav ref={rail} className="station-rail" aria-label="Stations of this study">
       <ol>
         {stations.map((station) => (
           <li key={station.href}>
-            <Link
-              href={station.href}
-              aria-current={
-                pathname === station.href || pathname.startsWith(`${station.href}/`) ? "page" : undefined
-              }
-            >
+            <Link href={station.href} aria-current={station.href === here ? "page" : undefined}>
               <span className="name">
                 <StateMark state={station.state} />
                 <span>{station.name}</span>
@@ -31,6 +37,10 @@ export function StationRail({ stations }: { stations: readonly StationView[] }) 
       </ol>
     </nav>
   );
+}
+
+function isOrIsUnder(pathname: string, href: string): boolean {
+  return pathname === href || pathname.startsWith(`${href}/`);
 }
 
 const TONE = { holds: "text-ok", weakens: "text-warn", blocks: "text-stop" } as const;
