@@ -6,8 +6,6 @@ import { hash, verify } from "@node-rs/argon2";
  */
 const settings = { memoryCost: 19_456, timeCost: 2, parallelism: 1 };
 
-export const PASSWORD_LENGTH = { least: 12, most: 200 } as const;
-
 export function hashPassword(password: string): Promise<string> {
   return hash(password, settings);
 }

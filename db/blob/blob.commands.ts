@@ -44,7 +44,7 @@ export async function sealBlob(
   return true;
 }
 
-export async function hasBlob(db: Handle, sha256: string): Promise<boolean> {
+async function hasBlob(db: Handle, sha256: string): Promise<boolean> {
   const row = await db.selectFrom("blob").select("id").where("sha256", "=", sha256).executeTakeFirst();
   return row !== undefined;
 }

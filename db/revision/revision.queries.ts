@@ -46,22 +46,10 @@ export async function listRevisions(db: Handle, actor: Actor, studyId: string): 
   return rows.map((row) => revisionSummary.parse(row));
 }
 
-/** The sheet as it was at revision `number`; undefined where there is none, or for an outsider. */
-export async function readRevision(
-  db: Handle,
-  actor: Actor,
-  study: { studyId: string; revision: number },
-): Promise<Sheet | undefined> {
-  const mine = await db
-    .selectFrom("study")
-    .select("id")
-    .where("id", "=", study.studyId)
-    .where("group_id", "=", actor.groupId)
-    .executeTakeFirst();
-  return mine === undefined ? undefined : readRevisionSheet(db, study.studyId, study.revision);
-}
-
-/** As `readRevision`, for callers who have decided access already: changes, undo, frozen links, verification. */
+/**
+ * The sheet as it was at revision `number`; undefined where there is none. Decides nothing about who may see it: for
+ * changes, undo, frozen links and verification, which have done so.
+ */
 export async function readRevisionSheet(
   db: Handle,
   studyId: string,

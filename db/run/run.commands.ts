@@ -71,22 +71,6 @@ export type RunEdit = Partial<
   >
 >;
 
-export function editRun(
-  db: Kysely<Database>,
-  actor: Actor,
-  target: ChangeTarget,
-  runId: string,
-  edit: RunEdit,
-): Promise<ChangeResult> {
-  return changeStudy(
-    db,
-    actor,
-    target,
-    { verb: "run edited", summary: about([runId], "edited") },
-    onRuns([runId], (run) => ({ ...run, ...edit })),
-  );
-}
-
 /** Sets runs aside with one reason. They keep trace and place; the law no longer stands on them. */
 export function setRunsAside(
   db: Kysely<Database>,
