@@ -1,0 +1,92 @@
+import Papa from "papaparse";
+import type { Sheet, SheetRun } from "@/db/sheet/sheet.schema";
+import type { RunAnalysis, StudyAnalysis } from "../analysis";
+import { concentrationDisplay, rateDisplay, timeDisplay } from "../display-units";
+import { lawName } from "../law-input";
+import { lawSpecies, presentRuns } from "../present-runs";
+
+/**
+ * Every run with its starting concentrations and its rate, as comma-separated text in UTF-8 for a colleague's own
+ * tools. Full precision, units in the heads, an empty cell for what is not known.
+ */
+export function runsAndRatesTable(sheet: Sheet, analysis: StudyAnalysis): string {
+  const species = lawSpecies(sheet);
+  const rate = rateDisplay(sheet);
+  const time = timeDisplay(sheet);
+  const analysed = new Map(analysis.runs.map((run) => [run.runId, run]));
+  const heads = [
+    "run",
+    "state",
+    "reason",
+    ...species.flatMap((one) => {
+      const { unit } = concentrationDisplay(one.unit);
+      return [`[${lawName(one)}]0 / ${unit}`, `u([${lawName(one)}]0) / ${unit}`];
+    }),
+    "temperature / degC",
+    "block",
+    `rate / ${rate.unit}`,
+    `u(rate) / ${rate.unit}`,
+    "estimator",
+    `window from / ${time.unit}`,
+    `window to / ${time.unit}`,
+    "points in window",
+    "conversion at window end",
+    "noise autocorrelation",
+    "readings",
+  ];
+  const rows = presentRuns(sheet).flatMap((run) => {
+    const one = analysed.get(run.id);
+    if (one === undefined) return [];
+    return [
+      [
+        run.label,
+        one.state,
+        run.setAside?.reason ?? (one.rate.kind === "none" ? one.rate.reason : ""),
+        ...species.flatMap(({ id, unit }) => {
+          const amount = run.concentrations[id];
+          if (amount === undefined) return [null, null];
+          const shown = amount.molar * concentrationDisplay(unit).factor;
+          return [exact(shown), exact(shown * amount.relativeUncertainty)];
+        }),
+        run.temperatureKelvin === null ? null : exact(run.temperatureKelvin - 273.15),
+        run.block,
+        ...rateCells(run, one, rate.factor, time.factor),
+      ],
+    ];
+  });
+  return commaSeparated(heads, rows);
+}
+
+function rateCells(run: SheetRun, { rate }: RunAnalysis, rateFactor: number, timeFactor: number) {
+  const readings = run.trace?.points ?? null;
+  if (rate.kind === "none") return [null, null, null, null, null, null, null, null, readings];
+  const measured = [
+    exact(rate.molarPerSecond * rateFactor),
+    rate.standardError === null ? null : exact(rate.standardError * rateFactor),
+  ];
+  if (rate.kind === "entered") return [...measured, "entered", null, null, null, null, null, readings];
+  const { estimator, window, points, conversion, autocorrelation } = rate.initialRate;
+  return [
+    ...measured,
+    estimator,
+    exact(window[0] * timeFactor),
+    exact(window[1] * timeFactor),
+    points,
+    conversion === null ? null : exact(conversion),
+    exact(autocorrelation),
+    readings,
+  ];
+}
+
+/** Twelve digits: all that the numbers carry, without the last bit's rounding from a change of unit. */
+function exact(value: number): number {
+  return Number(value.toPrecision(12));
+}
+
+/** A cell that a spreadsheet would run as a formula is quoted with an apostrophe; labels come from people. */
+export function commaSeparated(
+  heads: readonly string[],
+  rows: readonly (readonly (string | number | null)[])[],
+): string {
+  return `${Papa.unparse({ fields: [...heads], data: rows.map((row) => [...row]) }, { escapeFormulae: true, newline: "\n" })}\n`;
+}
