@@ -1,9 +1,9 @@
 import { decimate } from "@/app/_figures/decimate";
+import { type DrawableTrace, shownTrace } from "@/app/_findings/figures.view";
 import type { RunMark } from "@/app/_worksheet/analysis";
 import { timeDisplay } from "@/app/_worksheet/display-units";
 import { presentRuns } from "@/app/_worksheet/present-runs";
 import type { Sheet } from "@/db/sheet/sheet.schema";
-import { type DrawableTrace, shownTrace } from "./figures.view";
 import type { RunSheetView } from "./view";
 
 export interface SparkView {

@@ -1,10 +1,10 @@
 import { describe, expect, it } from "vitest";
+import { recipeLines, runMapView, shownTrace, traceFigureView } from "@/app/_findings/figures.view";
+import { printConcentrations } from "@/app/_findings/print-concentrations";
 import type { RunAnalysis, StudyAnalysis } from "@/app/_worksheet/analysis";
 import { runMarks } from "@/app/_worksheet/run-marks";
 import type { Sheet } from "@/db/sheet/sheet.schema";
 import { exampleRun, exampleSheet } from "@/tests/example-sheet";
-import { recipeLines, runMapView, shownTrace, traceFigureView } from "./figures.view";
-import { printConcentrations } from "./print-concentrations";
 import { sparkView } from "./sparks.view";
 import { runSheetView } from "./view";
 

@@ -1,10 +1,10 @@
 import { printUncertain } from "kinetics-core/quantities";
+import { type PrintedConcentrations, printConcentrations } from "@/app/_findings/print-concentrations";
 import type { RunAnalysis, RunMark, StudyAnalysis } from "@/app/_worksheet/analysis";
 import { concentrationDisplay, rateDisplay } from "@/app/_worksheet/display-units";
 import { lawSpecies, presentRuns } from "@/app/_worksheet/present-runs";
 import { variedSpecies } from "@/app/_worksheet/run-marks";
 import type { Sheet, SheetRun, SheetSpecies } from "@/db/sheet/sheet.schema";
-import { type PrintedConcentrations, printConcentrations } from "./print-concentrations";
 
 /** The run sheet as it is drawn: groups of rows by series, every text ready. */
 export interface RunSheetView {
