@@ -1,3 +1,5 @@
+import { execFile } from "node:child_process";
+import { promisify } from "node:util";
 import { afterAll, beforeAll, expect, test } from "vitest";
 import { makeGroup, type TestGroup } from "../testing/make-group";
 import { type TemporaryDatabase, temporaryDatabase } from "../testing/temporary-database";
@@ -61,4 +63,24 @@ test("making and revoking a token are entries of the group's chain", async () =>
     expect(entry.summary).toContain(made.id);
     expect(entry.summary).not.toContain(made.token);
   }
+});
+
+test("the command prints a token that works, lists the accounts without an e-mail, and refuses an unknown one", async () => {
+  const command = (...args: string[]) =>
+    promisify(execFile)(process.execPath, ["--import", "tsx", "db/token/make-token.ts", ...args], {
+      env: { ...process.env, DATABASE_FILE: temporary.file },
+    });
+  const [made, listed, unknown] = await Promise.allSettled([
+    command("analyst@group.example", "--scope", "read"),
+    command(),
+    command("nobody@group.example"),
+  ]);
+  if (made.status !== "fulfilled" || listed.status !== "fulfilled") throw new Error("both commands succeed");
+  expect(await actorOfToken(temporary.db, made.value.stdout.trim())).toEqual({
+    actor: group.analyst,
+    scope: "read",
+  });
+  expect(listed.value.stdout).toBe("");
+  expect(listed.value.stderr).toContain("reader@group.example");
+  expect(unknown).toMatchObject({ status: "rejected", reason: { code: 2, stdout: "" } });
 });
