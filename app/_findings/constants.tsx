@@ -16,7 +16,6 @@ export function ConstantTable({ rows }: { rows: readonly ConstantRow[] }) {
             <ColumnHead>Quantity</ColumnHead>
             <ColumnHead numeric>Value ± half width</ColumnHead>
             <ColumnHead numeric>Interval</ColumnHead>
-            <ColumnHead>Unit</ColumnHead>
           </tr>
         </thead>
         <tbody>
@@ -25,14 +24,14 @@ export function ConstantTable({ rows }: { rows: readonly ConstantRow[] }) {
               <td>
                 {typeset(row.name)}
                 {row.standing && <span className="sr-only">, stands</span>}
+                <small className="block text-label text-ink-3">
+                  <Unit text={row.unit} />
+                </small>
               </td>
               <td className="num">
                 <Value number={row.number} setting="table" />
               </td>
               <td className="num">{row.interval === null ? "none" : typeset(row.interval)}</td>
-              <td>
-                <Unit text={row.unit} />
-              </td>
             </tr>
           ))}
         </tbody>
@@ -77,6 +76,7 @@ export function BudgetTable({ budget }: { budget: BudgetView }) {
           </tr>
         </tbody>
       </DataTable>
+      {budget.note !== "" && <p className="mt-1.5 text-label text-ink-3">{typeset(budget.note)}</p>}
     </div>
   );
 }

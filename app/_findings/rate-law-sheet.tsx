@@ -73,14 +73,16 @@ function Findings({ view, orderForm }: { view: RateLawView; orderForm: ReactNode
   return (
     <>
       <div className="grid grid-cols-[minmax(0,.92fr)_minmax(0,2fr)] gap-x-7 gap-y-6 narrow:grid-cols-1">
-        <div>
+        <div className="narrow:grid narrow:grid-cols-2 narrow:gap-x-8 phone:grid-cols-1">
           <OrderList orders={view.orders} note={view.orderNote} />
-          {view.undetermined.map((message) => (
-            <p key={message} className="mt-2 text-small">
-              {typeset(message)}
-            </p>
-          ))}
-          {orderForm}
+          <div>
+            {view.undetermined.map((message) => (
+              <p key={message} className="mt-2 text-small">
+                {typeset(message)}
+              </p>
+            ))}
+            {orderForm}
+          </div>
         </div>
         <div className="grid grid-cols-2 gap-x-7 gap-y-6 phone:grid-cols-1">
           {view.figures.map(({ speciesId, figure, caption, label }, index) => (
@@ -95,12 +97,12 @@ function Findings({ view, orderForm }: { view: RateLawView; orderForm: ReactNode
         </div>
       </div>
       {view.constants.length > 0 && (
-        <div className="mt-7 grid grid-cols-[minmax(0,1.25fr)_minmax(0,1fr)] items-start gap-x-9 gap-y-6 narrow:grid-cols-1">
+        <div className="mt-7 grid grid-cols-[minmax(0,1.25fr)_minmax(0,1fr)] items-start gap-x-9 gap-y-6 phone:grid-cols-1">
           <ConstantTable rows={view.constants} />
           {view.budget !== null && <BudgetTable budget={view.budget} />}
         </div>
       )}
-      <div className="mt-7 grid grid-cols-[minmax(0,1.25fr)_minmax(0,1fr)] items-start gap-x-9 gap-y-6 narrow:grid-cols-1">
+      <div className="mt-7 grid grid-cols-[minmax(0,1.25fr)_minmax(0,1fr)] items-start gap-x-9 gap-y-6 phone:grid-cols-1">
         {view.residuals !== null && (
           <div>
             <SectionTitle note="percent of the rate">Residuals by run</SectionTitle>

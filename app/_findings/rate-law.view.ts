@@ -4,6 +4,7 @@ import type { MarkedRun, ResidualView } from "@/app/_figures/figure-view";
 import type { LawView, PrintedNumber } from "@/app/_ui/law-view";
 import type { Check, StudyAnalysis } from "@/app/_worksheet/analysis";
 import { type DisplayScale, rateConstantDisplay, rateDisplay } from "@/app/_worksheet/display-units";
+import { ASSUMED_ACTIVATION_ENERGY } from "@/app/_worksheet/law-input";
 import { printSimpleOrder } from "@/app/_worksheet/print-order";
 import { type NamedOrder, standingConstant, standingOrders } from "@/app/_worksheet/standing-constant";
 import { lawExpression, printEstimate } from "@/app/_worksheet/standing-law.view";
@@ -55,6 +56,8 @@ export interface BudgetView {
   readonly unit: string;
   readonly rows: readonly { readonly source: string; readonly half: string; readonly share: string }[];
   readonly total: string;
+  /** What a line rests on that the study does not say. */
+  readonly note: string;
 }
 
 export interface PairRow {
@@ -222,8 +225,14 @@ function budgetView(sheet: Sheet, fit: RateLawFit): BudgetView | null {
         share: ((100 * one.relative ** 2) / total).toFixed(0),
       })),
     total: print(half),
+    note: constant.budget.some((one) => one.source === TEMPERATURE_LINE && one.relative > 0)
+      ? `Temperature counts at ${ASSUMED_ACTIVATION_ENERGY / 1000} kJ mol^-1, assumed until the study has its own activation energy.`
+      : "",
   };
 }
+
+/** As the library names the line. */
+const TEMPERATURE_LINE = "Temperature";
 
 function pairRows(analysis: StudyAnalysis, fit: RateLawFit): readonly PairRow[] {
   return fit.pairs.flatMap((pair) => {

@@ -1,6 +1,6 @@
 import type { StudyAnalysis } from "@/app/_worksheet/analysis";
 import { list } from "@/app/_worksheet/missing-law";
-import { printHeldOrder } from "@/app/_worksheet/print-order";
+import { printExponent, printHeldOrder } from "@/app/_worksheet/print-order";
 import { type NamedOrder, standingOrders } from "@/app/_worksheet/standing-constant";
 import type { Sheet } from "@/db/sheet/sheet.schema";
 
@@ -18,8 +18,10 @@ export function verdictOf(sheet: Sheet, analysis: StudyAnalysis): VerdictView {
   const settled = orders.filter((one) => one.reading.kind === "settled");
   const held = orders.filter((one) => one.reading.kind === "held");
   const free = orders.filter((one) => one.reading.kind === "free");
+  const sharp = free.filter((one) => isSharp(law.fit, one.name));
+  const open = free.filter((one) => !sharp.includes(one));
   return {
-    claim: claimOf(counted(standing), settled, held, free),
+    claim: claimOf(counted(standing), { settled, held, sharp, open }, law.fit),
     support: [
       departure(law.fit.residuals),
       freeOrders(law.fit, [...settled, ...free]),
@@ -29,6 +31,19 @@ export function verdictOf(sheet: Sheet, analysis: StudyAnalysis): VerdictView {
       .join(" "),
   };
 }
+
+/** Known well, and near no simple order: a finding, where a wide interval is a lack of one. */
+function isSharp(fit: Fit, name: string): boolean {
+  const interval = fit.orders[name]?.interval ?? null;
+  return (
+    fit.simpleOrders.reading[name] === "nearest" &&
+    interval !== null &&
+    (interval[1] - interval[0]) / 2 <= SHARP_HALF_WIDTH
+  );
+}
+
+/** As wide as the interval of an order may be to settle it. */
+const SHARP_HALF_WIDTH = 0.25;
 
 const NUMBERS = [
   "No",
@@ -50,18 +65,25 @@ function counted(runs: number): string {
   return `${NUMBERS[runs] ?? runs} runs`;
 }
 
-function claimOf(
-  runs: string,
-  settled: readonly NamedOrder[],
-  held: readonly NamedOrder[],
-  free: readonly NamedOrder[],
-): string {
-  if (free.length === 0 && held.length === 0) return `${runs} support ${ordersInWords(settled)}.`;
-  if (free.length === 0 && settled.length === 0)
+interface Sorted {
+  readonly settled: readonly NamedOrder[];
+  readonly held: readonly NamedOrder[];
+  readonly sharp: readonly NamedOrder[];
+  readonly open: readonly NamedOrder[];
+}
+
+function claimOf(runs: string, { settled, held, sharp, open }: Sorted, fit: Fit): string {
+  if (settled.length + sharp.length + open.length === 0)
     return `${runs} fix *k* with ${list(held.map((one) => `the order in ${one.name} held at ${orderOf(one)}`))}.`;
+  const supported = [
+    ...(settled.length === 0 ? [] : [ordersInWords(settled)]),
+    ...sharp.map(({ name }) => `an order of ${printExponent(fit, name, null)} in ${name}`),
+  ];
   const parts = [
-    ...(settled.length === 0 ? [] : [`support ${ordersInWords(settled)}`]),
-    ...(free.length === 0 ? [] : [`leave the order in ${list(free.map((one) => one.name))} unsettled`]),
+    ...(supported.length === 0 ? [] : [`support ${list(supported)}`]),
+    ...(open.length === 0
+      ? []
+      : [`leave the order${open.length > 1 ? "s" : ""} in ${list(open.map((one) => one.name))} unsettled`]),
   ];
   const holding =
     held.length === 0 ? "" : `, with ${list(held.map((one) => `${one.name} held at ${orderOf(one)}`))}`;

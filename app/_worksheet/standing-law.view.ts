@@ -61,7 +61,7 @@ export function constantView(sheet: Sheet, fit: RateLawFit, digits: 1 | 2): Cons
       ? rateConstantDisplay(sheet, constant.overallOrder)
       : rateDisplay(sheet);
   return {
-    symbol: constant.kind === "rate-constant" ? "*k*" : "rate at the centre",
+    symbol: constant.kind === "rate-constant" ? "*k*" : "*v*_c",
     number: printEstimate(constant.estimate, display, digits),
     unit: display.unit,
   };
@@ -137,7 +137,7 @@ function centreInWords(sheet: Sheet, fit: RateLawFit): string {
     const display = concentrationDisplay(species.unit);
     return [`[${lawName(species)}] = ${Number((molar * display.factor).toPrecision(3))} ${display.unit}`];
   });
-  return `the centre is ${list(at)}`;
+  return `*v*_c is the rate at the centre of the runs, ${list(at)}`;
 }
 
 function celsius(kelvin: number): string {

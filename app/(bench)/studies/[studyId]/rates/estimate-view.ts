@@ -125,7 +125,7 @@ function factsOf(scale: TraceScale, estimate: InitialRateFound) {
     { name: "Fit", text: fitInWords(estimate) },
     { name: "Scatter", text: `${inWords({ ...noise, uncertainty: null })} ${scale.signal.unit}`.trim() },
     {
-      name: "Memory",
+      name: "Noise",
       text: `*ρ* ${estimate.autocorrelation.toFixed(2)}, ${Math.round(estimate.effectivePoints)} independent readings`,
     },
   ];

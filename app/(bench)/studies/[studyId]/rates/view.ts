@@ -1,5 +1,5 @@
 import type { InitialRate, InitialRateOptions, SlopeAtEnd } from "kinetics-core/initial-rate";
-import { printUncertain } from "kinetics-core/quantities";
+import { printNumber, printUncertain } from "kinetics-core/quantities";
 import { decimate } from "@/app/_figures/decimate";
 import type { DependenceView } from "@/app/_figures/figure-view";
 import type { PrintedNumber } from "@/app/_ui/law-view";
@@ -212,7 +212,7 @@ function recipeInWords(sheet: Sheet, { mark }: RunAnalysis, row: SheetRun | unde
     const molar = row?.concentrations[species.id]?.molar;
     if (molar === undefined) return [];
     const display = concentrationDisplay(species.unit);
-    return [`[${lawName(species)}] ${Number((molar * display.factor).toPrecision(3))} ${display.unit}`];
+    return [`[${lawName(species)}] ${printNumber(molar * display.factor, 3)} ${display.unit}`];
   });
   return [mark.series === "base" ? (mark.repeat ? "Base recipe again" : "Base recipe") : "", ...amounts]
     .filter((part) => part !== "")

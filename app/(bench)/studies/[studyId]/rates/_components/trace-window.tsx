@@ -21,7 +21,10 @@ export function TraceWindow({
 }) {
   const { shown } = window;
   if (shown === null) return null;
-  const fit = trace.estimate.status === "found" ? fitInWords(trace.estimate) : "no fit";
+  const fit =
+    trace.estimate.status === "found"
+      ? fitInWords(trace.estimate).replace(", slope at mixing", "")
+      : "no fit";
   return (
     <>
       {shown.refusal !== null && <Notice severity="blocks" title={shown.refusal} />}
