@@ -38,6 +38,8 @@ export const rules: Readonly<Record<string, Rule>> = {
   "page /studies/[studyId]/set-up": group(),
   "page /studies/[studyId]/runs": group(),
   "page /studies/[studyId]/runs/import": group(),
+  "page /studies/[studyId]/rates": group(),
+  "page /studies/[studyId]/rate-law": group(),
   "page /studies/[studyId]/share": group(),
 
   // Route handlers
@@ -46,6 +48,7 @@ export const rules: Readonly<Record<string, Rule>> = {
   "POST /api/auth/[...nextauth]": anyoneAt("/api/auth/signout"),
 
   "GET /studies/[studyId]/revision": group(),
+  "GET /studies/[studyId]/rates/trace/[runId]": group(),
   "POST /api/v1/studies/[studyId]/uploads": group(),
   "GET /api/v1/studies/[studyId]/uploads/[uploadId]": group(),
   "DELETE /api/v1/studies/[studyId]/uploads/[uploadId]": group(),
@@ -95,6 +98,24 @@ export const rules: Readonly<Record<string, Rule>> = {
       base: revision,
       corrections: {},
       recipes: {},
+    }),
+  ),
+  "action app/(bench)/studies/[studyId]/rates/actions.ts#saveWindow": group(
+    ({ studyId, revision, runId }) => ({
+      studyId,
+      base: revision,
+      runId,
+      window: { fromSeconds: 0, toSeconds: 10 },
+    }),
+  ),
+  "action app/(bench)/studies/[studyId]/rates/actions.ts#saveTimeZero": group(
+    ({ studyId, revision, runId }) => ({ studyId, base: revision, runId, timeZeroSeconds: 1 }),
+  ),
+  "action app/(bench)/studies/[studyId]/rate-law/actions.ts#saveOrders": group(
+    ({ studyId, revision, sheet }) => ({
+      studyId,
+      base: revision,
+      orders: Object.fromEntries(sheet.species.filter((one) => one.inLaw).map((one) => [one.id, 1])),
     }),
   ),
   "action app/(bench)/studies/[studyId]/share/actions.ts#makeLink": group(({ studyId, revision }) => ({

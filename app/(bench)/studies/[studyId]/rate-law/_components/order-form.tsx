@@ -4,8 +4,8 @@ import { useActionState, useState } from "react";
 import type { OrderView } from "@/app/_findings/rate-law.view";
 import { Button } from "@/app/_ui/button";
 import { Field } from "@/app/_ui/field";
-import { useToast } from "@/app/_ui/toast";
 import { printHeldOrder } from "@/app/_worksheet/print-order";
+import { useStudyChange } from "../../../_change/use-study-change";
 import { saveOrders } from "../actions";
 import { readTypedOrder } from "../read-order";
 
@@ -22,7 +22,7 @@ export function OrderForm({
   target: { readonly studyId: string; readonly base: number };
   orders: readonly OrderView[];
 }) {
-  const toast = useToast();
+  const change = useStudyChange(target.studyId);
   const [typed, setTyped] = useState(() =>
     Object.fromEntries(
       orders.map((order) => [order.speciesId, order.heldAt === null ? "" : printHeldOrder(order.heldAt)]),
@@ -41,8 +41,7 @@ export function OrderForm({
     }
     const result = await saveOrders({ ...target, orders: read });
     if (!result.ok) return { speciesId: null, message: result.message };
-    if (result.value.revision !== null)
-      toast({ text: `${result.value.summary} ${result.value.effect}`.trim() });
+    change.announce(result.value);
     return null;
   }, null);
   return (

@@ -6,18 +6,20 @@ import { MarginSection } from "@/app/_ui/margin";
 import { typeset } from "@/app/_ui/prose";
 import type { RuleView, RunRateView } from "../view";
 import { TimeZeroForm } from "./time-zero-form";
-import type { RunTarget, SavedWindow } from "./use-saved-window";
+import type { RunTarget, SavedWindow, StudyChange } from "./use-saved-window";
 
 /** Where the window lies and what the fit on it says, following the handles. */
 export function WindowSection({
   target,
   run,
   window,
+  change,
   canEdit,
 }: {
   target: RunTarget;
   run: RunRateView;
   window: SavedWindow;
+  change: StudyChange;
   canEdit: boolean;
 }) {
   const { shown } = window;
@@ -46,7 +48,7 @@ export function WindowSection({
             </p>
           )}
           {run.trace !== null && (
-            <TimeZeroForm target={target} saved={run.timeZero} scale={run.trace.scale} />
+            <TimeZeroForm change={change} target={target} saved={run.timeZero} scale={run.trace.scale} />
           )}
         </>
       )}

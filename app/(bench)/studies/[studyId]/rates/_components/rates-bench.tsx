@@ -5,6 +5,7 @@ import { Margin } from "@/app/_ui/margin";
 import { typeset } from "@/app/_ui/prose";
 import { Sheet } from "@/app/_ui/sheet";
 import { Value } from "@/app/_ui/value";
+import { useStudyChange } from "../../../_change/use-study-change";
 import { inWords } from "../estimate-view";
 import type { RatesView, RunRateView } from "../view";
 import { DependencePart, EstimatorTable, SourceTable } from "./how-it-came-about";
@@ -28,7 +29,8 @@ export function RatesBench({
   run: RunRateView;
 }) {
   const target = { studyId, base: revision, runId: run.runId };
-  const window = useSavedWindow(target, run);
+  const change = useStudyChange(studyId);
+  const window = useSavedWindow(target, run, change);
   const shown = window.shown?.rate ?? run.entered;
   const address = (label: string) => `/studies/${studyId}/rates?run=${encodeURIComponent(label)}`;
   return (
@@ -56,7 +58,7 @@ export function RatesBench({
       }
       margin={
         <Margin label={`Window and checks of ${run.label}`}>
-          <WindowSection target={target} run={run} window={window} canEdit={canEdit} />
+          <WindowSection target={target} run={run} window={window} change={change} canEdit={canEdit} />
           {rates.rule !== null && <RuleSection rule={rates.rule} />}
           <RateChecks run={run} />
         </Margin>

@@ -3,31 +3,30 @@
 import { useActionState } from "react";
 import { Button } from "@/app/_ui/button";
 import { Field } from "@/app/_ui/field";
-import { useToast } from "@/app/_ui/toast";
 import { saveTimeZero } from "../actions";
 import type { TraceScale } from "../trace-scale";
-import type { RunTarget } from "./use-saved-window";
+import type { RunTarget, StudyChange } from "./use-saved-window";
 
 /** When the reactants met, on this trace's clock. The slope is read back to it. */
 export function TimeZeroForm({
   target,
   saved,
   scale,
+  change,
 }: {
   target: RunTarget;
   /** In the shown unit of time. */
   saved: string;
   scale: TraceScale;
+  change: StudyChange;
 }) {
-  const toast = useToast();
   const [error, act, saving] = useActionState(async (_before: string | null, form: FormData) => {
     const typed = String(form.get("timeZero") ?? "").trim();
     const value = Number(typed.replace(",", ".").replace("\u2212", "-"));
     if (typed === "" || !Number.isFinite(value)) return `“${typed}” is no time. Type a number, 0 or 1.5.`;
     const result = await saveTimeZero({ ...target, timeZeroSeconds: value * scale.secondsPerTime });
     if (!result.ok) return result.message;
-    if (result.value.revision !== null)
-      toast({ text: `${result.value.summary} ${result.value.effect}`.trim() });
+    change.announce(result.value);
     return null;
   }, null);
   return (

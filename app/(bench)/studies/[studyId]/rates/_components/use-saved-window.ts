@@ -2,11 +2,14 @@
 
 import { useState, useTransition } from "react";
 import type { WindowChoice } from "@/app/_figures/figure-view";
-import { useToast } from "@/app/_ui/toast";
+import type { useStudyChange } from "../../../_change/use-study-change";
 import { saveWindow } from "../actions";
 import { type EstimateView, estimateView } from "../estimate-view";
 import type { RunRateView } from "../view";
 import { useWindowPreview, type WindowSeconds } from "./use-window-preview";
+
+/** Says what a change did and takes it back; one for the whole page, since it listens for Ctrl+Z. */
+export type StudyChange = ReturnType<typeof useStudyChange>;
 
 export interface RunTarget {
   readonly studyId: string;
@@ -27,9 +30,8 @@ export interface SavedWindow {
   reset(): void;
 }
 
-export function useSavedWindow(target: RunTarget, run: RunRateView): SavedWindow {
+export function useSavedWindow(target: RunTarget, run: RunRateView, change: StudyChange): SavedWindow {
   const { trace } = run;
-  const toast = useToast();
   const [saving, startSaving] = useTransition();
   const [refusal, setRefusal] = useState<string | null>(null);
   const live = useWindowPreview(
@@ -53,8 +55,7 @@ export function useSavedWindow(target: RunTarget, run: RunRateView): SavedWindow
         live.clear();
         setRefusal(result.ok ? null : result.message);
       });
-      if (result.ok && result.value.revision !== null)
-        toast({ text: `${result.value.summary} ${result.value.effect}`.trim() });
+      if (result.ok) change.announce(result.value);
     });
   }
 
