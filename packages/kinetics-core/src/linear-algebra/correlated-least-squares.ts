@@ -119,14 +119,13 @@ function factorise(x: Matrix, variances: ArrayLike<number>, shared: readonly Arr
   }
   const augmented = zeroMatrix(m + p, p + x.columns);
   shared.forEach((column, j) => {
-    const target = columnOf(augmented, j);
-    for (let i = 0; i < m; i++) target[i] = (column[i] ?? 0) / (roots[i] ?? 1);
-    target[m + j] = 1;
+    const target = j * augmented.rows;
+    for (let i = 0; i < m; i++) augmented.values[target + i] = (column[i] ?? 0) / (roots[i] ?? 1);
+    augmented.values[target + m + j] = 1;
   });
   for (let j = 0; j < x.columns; j++) {
-    const source = columnOf(x, j);
-    const target = columnOf(augmented, p + j);
-    for (let i = 0; i < m; i++) target[i] = (source[i] ?? 0) / (roots[i] ?? 1);
+    const target = (p + j) * augmented.rows;
+    for (let i = 0; i < m; i++) augmented.values[target + i] = (x.values[j * m + i] ?? 0) / (roots[i] ?? 1);
   }
   return { m, p, roots, ...householderQr(augmented) };
 }
@@ -137,9 +136,10 @@ function restrictedFrom({ m, roots, q, r }: Factors, y: ArrayLike<number>): Rest
     for (let i = 0; i < m; i++) whitened[i] = (vector[i] ?? 0) / (roots[i] ?? 1);
     const rest = whitened.slice();
     for (let j = 0; j < q.columns; j++) {
-      const column = columnOf(q, j).subarray(0, m);
-      const projection = dot(whitened, column);
-      for (let i = 0; i < m; i++) rest[i] = (rest[i] ?? 0) - projection * (column[i] ?? 0);
+      const start = j * q.rows;
+      let projection = 0;
+      for (let i = 0; i < m; i++) projection += (whitened[i] ?? 0) * (q.values[start + i] ?? 0);
+      for (let i = 0; i < m; i++) rest[i] = (rest[i] ?? 0) - projection * (q.values[start + i] ?? 0);
     }
     for (let i = 0; i < m; i++) rest[i] = (rest[i] ?? 0) / (roots[i] ?? 1);
     return rest;

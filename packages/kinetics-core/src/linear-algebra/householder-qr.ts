@@ -1,4 +1,4 @@
-import { columnOf, dot, entry, type Matrix, zeroMatrix } from "./matrix";
+import { entry, type Matrix, zeroMatrix } from "./matrix";
 
 /**
  * Thin QR factorisation A = Q R by Householder reflections, m ≥ n. Each column is divided by its norm first and R is
@@ -15,47 +15,60 @@ export interface QrFactors {
 export function householderQr(matrix: Matrix): QrFactors {
   const { rows: m, columns: n } = matrix;
   if (m < n) throw new RangeError(`QR needs at least as many rows as columns, got ${m} by ${n}`);
-  const work: Matrix = { rows: m, columns: n, values: Float64Array.from(matrix.values) };
+  // Plain index arithmetic: this loop runs inside every search for a variance.
+  const work = Float64Array.from(matrix.values);
   const norms = new Float64Array(n);
   for (let j = 0; j < n; j++) {
-    const column = columnOf(work, j);
-    const norm = Math.sqrt(dot(column, column));
+    const norm = normFrom(work, j * m, j * m + m);
     norms[j] = norm;
-    if (norm > 0) for (let i = 0; i < m; i++) column[i] = (column[i] ?? 0) / norm;
+    if (norm > 0) for (let i = j * m; i < j * m + m; i++) work[i] = (work[i] ?? 0) / norm;
   }
 
   const r = zeroMatrix(n, n);
   for (let k = 0; k < n; k++) {
     // The reflector v stays in place of column k from the diagonal down; H = I − 2 v vᵀ with |v| = 1.
-    const below = columnOf(work, k).subarray(k);
-    const norm = Math.sqrt(dot(below, below));
-    const diagonal = (below[0] ?? 0) > 0 ? -norm : norm;
+    const start = k * m + k;
+    const end = k * m + m;
+    const norm = normFrom(work, start, end);
+    const diagonal = (work[start] ?? 0) > 0 ? -norm : norm;
     if (norm > 0) {
-      below[0] = (below[0] ?? 0) - diagonal;
-      const length = Math.sqrt(dot(below, below));
-      for (let i = 0; i < below.length; i++) below[i] = (below[i] ?? 0) / length;
+      work[start] = (work[start] ?? 0) - diagonal;
+      const length = normFrom(work, start, end);
+      for (let i = start; i < end; i++) work[i] = (work[i] ?? 0) / length;
     }
     r.values[k * n + k] = diagonal * (norms[k] ?? 0);
     for (let j = k + 1; j < n; j++) {
-      const rest = columnOf(work, j).subarray(k);
-      reflect(below, rest);
-      r.values[j * n + k] = (rest[0] ?? 0) * (norms[j] ?? 0);
+      reflect(work, start, end, work, j * m + k);
+      r.values[j * n + k] = (work[j * m + k] ?? 0) * (norms[j] ?? 0);
     }
   }
 
   const q = zeroMatrix(m, n);
   for (let j = 0; j < n; j++) {
-    const column = columnOf(q, j);
-    column[j] = 1;
-    for (let k = n - 1; k >= 0; k--) reflect(columnOf(work, k).subarray(k), column.subarray(k));
+    q.values[j * m + j] = 1;
+    for (let k = n - 1; k >= 0; k--) reflect(work, k * m + k, k * m + m, q.values, j * m + k);
   }
   return { q, r };
 }
 
-function reflect(reflector: Float64Array, vector: Float64Array): void {
-  const projection = 2 * dot(reflector, vector);
+function normFrom(values: Float64Array, start: number, end: number): number {
+  let sum = 0;
+  for (let i = start; i < end; i++) {
+    const value = values[i] ?? 0;
+    sum += value * value;
+  }
+  return Math.sqrt(sum);
+}
+
+/** Applies the reflector `work[start, end)` to the stretch of `target` that begins at `at`. */
+function reflect(work: Float64Array, start: number, end: number, target: Float64Array, at: number): void {
+  const shift = at - start;
+  let projection = 0;
+  for (let i = start; i < end; i++) projection += (work[i] ?? 0) * (target[i + shift] ?? 0);
   if (projection === 0) return;
-  for (let i = 0; i < vector.length; i++) vector[i] = (vector[i] ?? 0) - projection * (reflector[i] ?? 0);
+  projection *= 2;
+  for (let i = start; i < end; i++)
+    target[i + shift] = (target[i + shift] ?? 0) - projection * (work[i] ?? 0);
 }
 
 /** x with R x = b for upper triangular R, from the last row up. A zero on the diagonal throws: rank is the caller's to settle. */

@@ -119,9 +119,18 @@ function logarithmicRounds(
   const response = Float64Array.from(runs, (run, j) => Math.log(run.rate) - (offset[j] ?? 0));
   const rateVariances = runs.map((run) => (run.rateError / run.rate) ** 2);
   let round = oneRound(runs, design, settings, response, rateVariances, ordersOf(design, start.coefficients));
-  for (let i = 1; i < ITERATIONS_OF_ORDERS; i++)
+  // Without pipetting errors and dilution steps no variance depends on the orders, and one round is final.
+  const rounds = dependsOnOrders(runs, settings) ? ITERATIONS_OF_ORDERS : 1;
+  for (let i = 1; i < rounds; i++)
     round = oneRound(runs, design, settings, response, rateVariances, round.orders);
   return { round, settled: true };
+}
+
+function dependsOnOrders(runs: readonly UsableRun[], settings: FitSettings): boolean {
+  return (
+    settings.shared.some((error) => error.runs !== null) ||
+    runs.some((run) => run.privateErrors.some((error) => error > 0))
+  );
 }
 
 function rateRounds(

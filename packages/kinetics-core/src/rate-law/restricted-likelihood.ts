@@ -55,27 +55,17 @@ export function varianceComponents(problem: VarianceProblem): VarianceComponents
       scatter,
       stated.every((value) => value > 0),
     );
-  const blocksGiven = (betweenRuns: number) =>
-    leastDeviance(
-      (variance) => {
-        const fit = fitAt(betweenRuns, variance);
-        return { deviance: fit.restrictedDeviance, slope: slopeByBlocks(fit, problem.blocks, terms.rows) };
-      },
-      scatter,
-      true,
-    );
-
-  let betweenRuns = runsGiven(0);
-  if (problem.blocks.length === 0) return { betweenRuns, betweenBlocks: 0 };
-  let betweenBlocks = 0;
-  for (let round = 0; round < 100; round++) {
-    const before = [betweenRuns, betweenBlocks];
-    betweenBlocks = blocksGiven(betweenRuns);
-    betweenRuns = runsGiven(betweenBlocks);
-    const moved = Math.abs(betweenRuns - (before[0] ?? 0)) + Math.abs(betweenBlocks - (before[1] ?? 0));
-    if (moved <= 1e-9 * (betweenRuns + betweenBlocks)) break;
-  }
-  return { betweenRuns, betweenBlocks };
+  if (problem.blocks.length === 0) return { betweenRuns: runsGiven(0), betweenBlocks: 0 };
+  // At the best τ² for each σ_b² the slope along σ_b² alone is that of the profile.
+  const betweenBlocks = leastDeviance(
+    (variance) => {
+      const fit = fitAt(runsGiven(variance), variance);
+      return { deviance: fit.restrictedDeviance, slope: slopeByBlocks(fit, problem.blocks, terms.rows) };
+    },
+    scatter,
+    true,
+  );
+  return { betweenRuns: runsGiven(betweenBlocks), betweenBlocks };
 }
 
 /** Blocks of one run differ from scatter by nothing but their variance on the diagonal. */
@@ -125,7 +115,7 @@ interface DevianceAt {
   readonly slope: number;
 }
 
-/** Grid over ten decades about `scale`, 0 included where the variance may vanish, then bisection and secant on the slope. */
+/** Grid over ten decades about `scale`, 0 included where the variance may vanish, then the root of the slope. */
 function leastDeviance(at: (variance: number) => DevianceAt, scale: number, mayVanish: boolean): number {
   const grid = Array.from({ length: 11 }, (_, i) => scale * 10 ** (i - 8));
   const points = (mayVanish ? [0, ...grid] : grid).map((variance) => ({ variance, ...at(variance) }));
@@ -138,32 +128,46 @@ function leastDeviance(at: (variance: number) => DevianceAt, scale: number, mayV
   const neighbour = points[here.slope > 0 ? best - 1 : best + 1];
   // At an end of the grid with the slope pointing outwards the end is the answer.
   if (neighbour === undefined) return here.variance;
-  return here.slope > 0
-    ? slopeRoot(at, neighbour.variance, here.variance)
-    : slopeRoot(at, here.variance, neighbour.variance);
+  return here.slope < 0 === neighbour.slope < 0 ? here.variance : slopeRoot(at, here, neighbour);
 }
 
-function slopeRoot(at: (variance: number) => DevianceAt, from: number, to: number): number {
-  let low = from;
-  let high = to;
-  let lowSlope = at(low).slope;
-  let highSlope = at(high).slope;
-  for (let i = 0; i < 100 && high - low > 1e-13 * high; i++) {
-    const secant =
-      lowSlope < 0 && highSlope > 0 ? low - (lowSlope * (high - low)) / (highSlope - lowSlope) : Number.NaN;
-    // Every third step halves the bracket, so that a flat side cannot hold the secant up.
-    const middle = i % 3 === 2 || !(secant > low && secant < high) ? 0.5 * (low + high) : secant;
-    const { slope } = at(middle);
-    if (slope === 0) return middle;
-    if (slope < 0) {
-      low = middle;
-      lowSlope = slope;
-    } else {
-      high = middle;
-      highSlope = slope;
+interface SlopeAt {
+  readonly variance: number;
+  readonly slope: number;
+}
+
+/**
+ * Variance between two of opposite slope at which the slope vanishes, by Chandrupatla's method (Advances in
+ * Engineering Software 28, 145, 1997): inverse quadratic interpolation where it is safe, bisection elsewhere.
+ */
+function slopeRoot(at: (variance: number) => DevianceAt, from: SlopeAt, to: SlopeAt): number {
+  let a = to;
+  let b = from;
+  let c = from;
+  let part = 0.5;
+  for (let i = 0; i < 100; i++) {
+    const variance = a.variance + part * (b.variance - a.variance);
+    const tried = { variance, slope: at(variance).slope };
+    if (tried.slope < 0 === a.slope < 0) c = a;
+    else {
+      c = b;
+      b = a;
     }
+    a = tried;
+    const best = Math.abs(a.slope) < Math.abs(b.slope) ? a : b;
+    const limit = (1e-11 * best.variance) / Math.abs(b.variance - c.variance);
+    if (limit > 0.5 || best.slope === 0) return best.variance;
+    const xi = (a.variance - b.variance) / (c.variance - b.variance);
+    const phi = (a.slope - b.slope) / (c.slope - b.slope);
+    const safe = phi ** 2 < xi && (1 - phi) ** 2 < 1 - xi;
+    const interpolated = safe
+      ? ((a.slope / (b.slope - a.slope)) * c.slope) / (b.slope - c.slope) +
+        ((((c.variance - a.variance) / (b.variance - a.variance)) * a.slope) / (c.slope - a.slope)) *
+          (b.slope / (c.slope - b.slope))
+      : 0.5;
+    part = Math.min(1 - limit, Math.max(limit, interpolated));
   }
-  return 0.5 * (low + high);
+  return a.variance;
 }
 
 function sum(values: ArrayLike<number>): number {
