@@ -110,7 +110,7 @@ describe("rates too uncertain for a logarithm", () => {
     expect(JSON.stringify(fit)).not.toMatch(/NaN|Infinity/);
   });
 
-  it("solve the weighted equations on the rate scale: Σ v̂(v − v̂)x/(u² + v̂²τ²) = 0", () => {
+  it("solve the weighted equations on the rate scale: Σ v̂(v − v̂)x/(u² + v̂²f) = 0", () => {
     const input = withRun({ rate: 0.031, rateStandardError: 0.008 });
     const fit = law({
       ...input,
@@ -118,12 +118,17 @@ describe("rates too uncertain for a logarithm", () => {
     });
     const k = fit.rateConstant.estimate ?? Number.NaN;
     const order = fit.orders.A?.estimate ?? Number.NaN;
-    const between = (fit.betweenRunStandardDeviation ?? 0) ** 2;
+    const relative = input.runs.map((run) => {
+      const expected = k * (run.concentrations.A ?? 1) ** order;
+      return ((run.rateStandardError ?? 0.001) / expected) ** 2;
+    });
+    const stated = relative.reduce((sum, value) => sum + Math.min(value, 0.01), 0) / relative.length;
+    const floor = Math.max((fit.betweenRunStandardDeviation ?? 0) ** 2, stated);
     const sums = input.runs.reduce(
       ({ level, slope, size }, run) => {
         const c = run.concentrations.A ?? 1;
         const expected = k * c ** order;
-        const variance = (run.rateStandardError ?? 0.001) ** 2 + expected ** 2 * between;
+        const variance = (run.rateStandardError ?? 0.001) ** 2 + expected ** 2 * floor;
         const term = (expected * (run.rate - expected)) / variance;
         return {
           level: level + term,
