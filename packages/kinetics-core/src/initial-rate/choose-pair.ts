@@ -7,7 +7,6 @@ export interface ChosenSlope {
   readonly standardError: number;
   /** The pair with the greatest weight: its window and curve stand for the average. */
   readonly heaviest: PairFit;
-  readonly averaged: number;
 }
 
 /**
@@ -26,5 +25,5 @@ export function chooseSlope(pairs: readonly PairFit[]): ChosenSlope {
     near.reduce((sum, { upper }, i) => {
       return sum + (weights[i] ?? Number.NaN) * (upper.standardError ** 2 + (upper.slope - slope) ** 2);
     }, 0) / total;
-  return { slope, standardError: Math.sqrt(variance), heaviest: least, averaged: near.length };
+  return { slope, standardError: Math.sqrt(variance), heaviest: least };
 }

@@ -292,6 +292,18 @@ describe("what weakens an estimate is flagged", () => {
     expect(codes(result)).toContain("autocorrelated");
   });
 
+  it("an order that a barely curved, noisy trace does not settle, which the rule then leaves out", () => {
+    const course = { order: 0, progress: 0.1, readings: 120, duration: 60, start: 0, span: 1, noise: 0.02 };
+    const deviate = normalDeviates(6);
+    const results = Array.from({ length: 20 }, () => {
+      const trace = simulateTrace({ ...course, autocorrelation: 0 }, deviate);
+      const byName = found(trace, { signalSpan: 1, estimator: "integrated", window: [0, 60] });
+      return { byName: codes(byName), byRule: codes(found(trace, { signalSpan: 1 })) };
+    });
+    expect(results.some(({ byName }) => byName.includes("order-not-settled"))).toBe(true);
+    expect(results.some(({ byRule }) => byRule.includes("order-not-settled"))).toBe(false);
+  });
+
   it("a first reading that comes after a fifth of the reaction", () => {
     const trace = traceOf(evenly(100, 90, 30), (t) => -Math.expm1(-t / 100));
     const flag = found(trace, { signalSpan: 1 }).flags.find(({ code }) => code === "dead-time");

@@ -32,6 +32,7 @@ export function polynomialFit(fit: PolynomialSlopes, degree: number): WindowFit 
     to: fit.to,
     slope: fit.slopes[degree] ?? Number.NaN,
     standardError: fit.standardErrors[degree] ?? Number.NaN,
+    settled: true,
     curve: () => ({ kind: "polynomial", coefficients: polynomialCurve(fit, degree) }),
   };
 }
@@ -59,8 +60,13 @@ export function integratedPairs(readings: Readings, noise: NoiseModel, from: num
 }
 
 /** Whether the pair may enter the choice: a general order that misses the trace's own shape may not. */
-export function isAdequate({ lackOfFit }: PairFit): boolean {
-  return lackOfFit === null || lackOfFit.pValue > LACK_OF_FIT_LEVEL;
+export function isAdequate(pair: PairFit): boolean {
+  return isSettled(pair) && (pair.lackOfFit === null || pair.lackOfFit.pValue > LACK_OF_FIT_LEVEL);
+}
+
+/** Whether the searches of both members ended; on readings that hardly curve, that of a general order may not. */
+export function isSettled({ lower, upper }: PairFit): boolean {
+  return lower.settled && upper.settled;
 }
 
 function pairOf(

@@ -125,6 +125,7 @@ function windowFit(
     standardError: row
       ? (noise.standardDeviation * Math.sqrt(quadraticForm(row, noise.steps, from))) / unit
       : Number.POSITIVE_INFINITY,
+    settled: fit.converged,
     curve: () => curveOf(fit, unit),
   };
 }

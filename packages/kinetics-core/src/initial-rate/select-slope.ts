@@ -1,7 +1,7 @@
 import type { Flag } from "kinetics-core/quantities";
 import { chooseSlope } from "./choose-pair";
 import { LACK_OF_FIT_LEVEL, SPARE_POINTS } from "./constants";
-import { isAdequate, type PairFit, polynomialFit } from "./estimator-pairs";
+import { isAdequate, isSettled, type PairFit, polynomialFit } from "./estimator-pairs";
 import type { Estimator, EstimatorPair, StudyRule } from "./initial-rate";
 import { exponentialFit, generalOrderFit } from "./integrated-slopes";
 import { polynomialSlopes } from "./polynomial-slopes";
@@ -50,7 +50,7 @@ export function selectAutomatically(
   const ruled = pairs.filter(({ pair }) => pair === rule?.pair);
   const candidates = ruled.length > 0 ? ruled : pairs.filter(isAdequate);
   const { slope, standardError, heaviest } = chooseSlope(candidates);
-  const flags = isAdequate(heaviest) ? [] : [lackOfFitFlag(heaviest)];
+  const flags = isAdequate(heaviest) ? [] : [misfitFlag(heaviest)];
   if (rule && ruled.length === 0) flags.push(RULE_NOT_APPLIED);
   return { status: "selected", slope, standardError, shown: heaviest.upper, pair: heaviest.pair, flags };
 }
@@ -79,7 +79,7 @@ export function selectByName(
   const disagreement = lower && own.length > 1 ? slope - best.upper.slope : 0;
   const flags: Flag[] = [];
   if (lower && isBent(best)) flags.push(biasFlag(named.estimator, slope, best.upper.slope));
-  if (!lower && !isAdequate(best)) flags.push(lackOfFitFlag(best));
+  if (lower ? !shown.settled : !isAdequate(best)) flags.push(misfitFlag(best));
   const standardError = Math.hypot(shown.standardError, disagreement);
   return { status: "selected", slope, standardError, shown, pair: null, flags };
 }
@@ -111,7 +111,8 @@ export function selectWhole(prepared: PreparedTrace, { from, to }: Window, named
   const shown = fitWhole(prepared, { from, to }, estimator, degree);
   if (!isDetermined(shown)) return { status: "unusable", code: "no-slope", message: NO_SLOPE };
   const { slope, standardError } = shown;
-  return { status: "selected", slope, standardError, shown, pair: null, flags: [] };
+  const flags = shown.settled ? [] : [UNSETTLED];
+  return { status: "selected", slope, standardError, shown, pair: null, flags };
 }
 
 function fitWhole(
@@ -138,16 +139,26 @@ const RULE_NOT_APPLIED: Flag = {
     "read the run more densely from its start.",
 };
 
-function lackOfFitFlag({ lackOfFit }: PairFit): Flag {
-  const p = lackOfFit?.pValue ?? 0;
+/** Why a general order may not enter the choice by itself. */
+function misfitFlag(pair: PairFit): Flag {
+  if (!isSettled(pair)) return UNSETTLED;
+  const p = pair.lackOfFit?.pValue ?? 0;
   return {
     code: "lack-of-fit",
     severity: "weakens",
     message:
-      `One reaction order does not follow this window (p = ${p < 0.001 ? "< 0.001" : p.toFixed(3)}, limit ${LACK_OF_FIT_LEVEL}); ` +
+      `One reaction order does not follow this window (p ${p < 0.001 ? "< 0.001" : `= ${p.toFixed(3)}`}, limit ${LACK_OF_FIT_LEVEL}); ` +
       "use a polynomial, or a shorter window.",
   };
 }
+
+const UNSETTLED: Flag = {
+  code: "order-not-settled",
+  severity: "weakens",
+  message:
+    "The readings curve too little to settle on a reaction order, and the slope may depend on where the search ended; " +
+    "use a straight line or a tangent, or a longer window.",
+};
 
 function biasFlag(estimator: Estimator, lower: number, upper: number): Flag {
   const percent = Math.abs((lower / upper - 1) * 100);

@@ -5,7 +5,7 @@ import {
   STUDY_CONVERSION_ENDS,
 } from "./constants";
 import { type Progress, pointsTo } from "./conversion";
-import { integratedPairs, type PairFit, polynomialPairs } from "./estimator-pairs";
+import { integratedPairs, isSettled, type PairFit, polynomialPairs } from "./estimator-pairs";
 import type { StudyRule, StudyTrace } from "./initial-rate";
 import { type PreparedTrace, prepareTrace } from "./prepared-trace";
 import { pointsByRule } from "./window-scope";
@@ -55,7 +55,7 @@ function rulesOn(prepared: PreparedTrace, progress: Progress): RuleOnRun[] {
         : integratedPairs(readings, noise, 0, to);
       before = { polynomial, to, pairs };
     }
-    for (const pair of before.pairs) rules.push(ruleOnRun(conversionEnd, pair));
+    rules.push(...before.pairs.filter(isSettled).map((pair) => ruleOnRun(conversionEnd, pair)));
   }
   return rules;
 }

@@ -8,6 +8,8 @@ export interface WindowFit {
   readonly to: number;
   readonly slope: number;
   readonly standardError: number;
+  /** Whether the search for its shape settled; polynomials need none. */
+  readonly settled: boolean;
   /** Made when asked for: most windows that are tried are never drawn. */
   readonly curve: () => FittedCurve;
 }
