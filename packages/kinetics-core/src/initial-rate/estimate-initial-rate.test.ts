@@ -446,14 +446,17 @@ describe("long traces", () => {
     };
     const took = [20_000, 200_000].map((readings) => {
       const trace = simulateTrace({ ...course, readings }, normalDeviates(2));
-      found(trace, { signalSpan: 1 });
-      const began = performance.now();
       const result = found(trace, { signalSpan: 1 });
-      const milliseconds = performance.now() - began;
       expect(Math.abs(result.slope - trueSlope({ ...course, readings }))).toBeLessThan(
         4 * result.standardError,
       );
-      return milliseconds;
+      // The least of three, because other work on the machine only ever adds.
+      const times = Array.from({ length: 3 }, () => {
+        const began = performance.now();
+        found(trace, { signalSpan: 1 });
+        return performance.now() - began;
+      });
+      return Math.min(...times);
     });
     // Ten times the readings: a quadratic cost would show as a hundred.
     expect(Number(took[1]) / Number(took[0])).toBeLessThan(40);
