@@ -1,4 +1,5 @@
 import type { ReactNode } from "react";
+import { NARROW_SPACE } from "../_ui/narrow-space";
 import type { AxisView } from "./figure-view";
 import { makeScale, type Scale } from "./scale";
 import { SvgProse } from "./svg-prose";
@@ -68,14 +69,12 @@ function ticksOf({ kind, domain: [low, high] }: AxisChoice, count: number): Axis
   };
 }
 
-const UNIT_SPACE = "\u2005";
-
 /** "[P] / µmol L^-1", with the power of ten that the ticks leave out: quantity divided by unit. */
 export function axisTitle(axis: AxisView, scale: Scale): string {
   const power = axisPower(scale.domain[0], scale.domain[1]);
-  const unit = [power === 0 ? "" : `10^${power}`, axis.unit.replaceAll(" ", UNIT_SPACE)]
+  const unit = [power === 0 ? "" : `10^${power}`, axis.unit.replaceAll(" ", NARROW_SPACE)]
     .filter(Boolean)
-    .join(UNIT_SPACE);
+    .join(NARROW_SPACE);
   return unit === "" ? axis.quantity : `${axis.quantity} / ${unit}`;
 }
 

@@ -10,6 +10,7 @@ const forms = (levels: number) =>
 describe("lookOfMark", () => {
   it("gives four, six and eight levels their own forms, lowest to highest", () => {
     expect(forms(4)).toEqual(["triangle-down", "diamond", "square", "triangle-up"]);
+    expect(forms(5).toSpliced(2, 1)).toEqual(forms(4));
     expect(forms(6)).toEqual(["triangle-down", "bowtie", "diamond", "square", "cross", "triangle-up"]);
     expect(new Set(forms(8)).size).toBe(8);
   });

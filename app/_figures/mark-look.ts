@@ -22,6 +22,8 @@ export interface MarkLook {
 
 const FORMS: readonly (readonly MarkForm[])[] = [
   ["triangle-down", "diamond", "square", "triangle-up"],
+  // Five levels of which the middle one is the base recipe keep the four forms about it.
+  ["triangle-down", "diamond", "hexagon", "square", "triangle-up"],
   ["triangle-down", "bowtie", "diamond", "square", "cross", "triangle-up"],
   ["triangle-down", "bowtie", "diamond", "hexagon", "square", "cross", "star", "triangle-up"],
 ];

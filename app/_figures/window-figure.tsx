@@ -11,6 +11,8 @@ import { useWindowChoice } from "./use-window-choice";
 import { WindowGrips } from "./window-grips";
 
 const PLOT_TOP = 46;
+/** Right of the plot, so that the last reading's time has a place beside its grip. */
+const GRIP_ROOM = 52;
 const RESIDUAL_HEIGHT = 116;
 
 /**
@@ -112,8 +114,8 @@ function areasOf(view: WindowFigureView, width: number, height: number) {
     view.residuals === null ? 0 : layOut(lower, time, residual, below).left,
   );
   return {
-    area: layOut(upper, time, signal, { top: PLOT_TOP, left }),
-    residualArea: layOut(lower, time, residual, { ...below, left }),
+    area: layOut(upper, time, signal, { top: PLOT_TOP, left, right: GRIP_ROOM }),
+    residualArea: layOut(lower, time, residual, { ...below, left, right: GRIP_ROOM }),
   };
 }
 

@@ -32,7 +32,7 @@ export function WindowGrips({
   const inBar = `${print(choice.to - choice.from)}, ${choice.points} points`;
   const fits = to - from > inBar.length * 6.4 + 16;
   const after = fits ? print(choice.to) : `${print(choice.to)}  (${inBar})`;
-  const endFits = to + 12 + after.length * 6.4 < area.right + 12;
+  const endFits = to + 12 + after.length * 6.4 < area.right + 56;
   return (
     <g>
       <rect x={from} y={top} width={Math.max(0, to - from)} height={BAR_HEIGHT} fill="var(--mark)" />

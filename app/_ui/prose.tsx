@@ -1,4 +1,5 @@
 import { Fragment, type ReactNode } from "react";
+import { NARROW_SPACE } from "./narrow-space";
 
 /**
  * Power: ^-1, ^0.5, ^{n}. Index: _0, _{obs}, only after a slanted letter or a bracket, so that names of runs and files
@@ -15,7 +16,20 @@ export function Prose({ text }: { text: string }) {
   return <>{typeset(text)}</>;
 }
 
-export function typeset(text: string): ReactNode[] {
+const UNIT = "[µmnk]?(?:mol|L|s|min|h|K|m|g)";
+const BETWEEN_FACTORS = new RegExp(`(?<=[A-Za-z]|\\^[-−]?[\\d.]+) (?=${UNIT}\\^)`, "g");
+const BEFORE_UNIT = new RegExp(`(?<=\\d) (?=%|°C|${UNIT}(?![A-Za-z]))`, "g");
+
+/** A value never parts from its unit, its sign or its uncertainty at the end of a line. */
+function keepTogether(text: string): string {
+  return text
+    .replaceAll(BETWEEN_FACTORS, NARROW_SPACE)
+    .replaceAll(BEFORE_UNIT, "\u00a0")
+    .replaceAll(/ ([=±×<>≤≥≈]) (?=\S)/g, "\u00a0$1\u00a0");
+}
+
+export function typeset(written: string): ReactNode[] {
+  const text = keepTogether(written);
   const nodes: ReactNode[] = [];
   let from = 0;
   for (const match of text.matchAll(MARKUP)) {

@@ -11,8 +11,19 @@ const text = (markup: string) => markup.replaceAll(/<[^>]+>/g, "");
 describe("Prose", () => {
   it("raises powers with a true minus, lowers indices of slanted letters, slants variables", () => {
     expect(renderToStaticMarkup(<Prose text="*k*_0 = 3 × 10^-3 s^-1" />)).toBe(
-      "<i>k</i><sub>0</sub> = 3 × 10<sup>−3</sup> s<sup>−1</sup>",
+      "<i>k</i><sub>0</sub>\u00a0=\u00a03\u00a0×\u00a010<sup>−3</sup>\u2005s<sup>−1</sup>",
     );
+  });
+
+  it("keeps a value with its unit, its sign and its uncertainty on one line, and nothing else", () => {
+    const set = (prose: string) => text(renderToStaticMarkup(<Prose text={prose} />));
+    expect(set("at 25.0 °C, 12 % of 50.0 µmol L^-1")).toBe(
+      "at 25.0\u00a0°C, 12\u00a0% of 50.0\u00a0µmol\u2005L−1",
+    );
+    expect(set("*k* = 11.8 ± 0.3 L mol^-1 s^-1")).toBe(
+      "k\u00a0=\u00a011.8\u00a0±\u00a00.3\u00a0L\u2005mol−1\u2005s−1",
+    );
+    expect(set("9 runs set aside by 2 members")).toBe("9 runs set aside by 2 members");
   });
 
   it("leaves underscores of names alone", () => {
@@ -56,11 +67,11 @@ describe("Value", () => {
     expect(text(markup)).toBe("(2.86\u00a0±\u00a00.07)\u00a0×\u00a010−5\u00a0s−1");
   });
 
-  it("closes the sign with thin spaces in a table", () => {
+  it("closes the sign with narrow spaces in a table", () => {
     const markup = renderToStaticMarkup(
       <Value number={{ value: "1.182", uncertainty: "0.018", power: 0 }} setting="table" />,
     );
-    expect(text(markup)).toBe("1.182\u2009±\u20090.018");
+    expect(text(markup)).toBe("1.182\u2005±\u20050.018");
   });
 
   it("prints a value alone where its uncertainty is unknown", () => {

@@ -1,9 +1,10 @@
 import type { PrintedNumber } from "./law-view";
+import { NARROW_SPACE } from "./narrow-space";
 import { Unit } from "./unit";
 
 /**
  * A value with its uncertainty, power of ten and unit, never broken across lines: (2.86 ± 0.07) × 10⁻⁵ mol L⁻¹.
- * `setting` "table" closes ± and × with thin spaces, "sentence" with no-break spaces.
+ * `setting` "table" closes ± and × with narrow spaces, "sentence" with no-break spaces.
  */
 export function Value({
   number,
@@ -14,7 +15,7 @@ export function Value({
   unit?: string | undefined;
   setting?: "sentence" | "table";
 }) {
-  const space = setting === "table" ? "\u2009" : "\u00a0";
+  const space = setting === "table" ? NARROW_SPACE : "\u00a0";
   const { value, uncertainty, power } = number;
   const pair = uncertainty === null ? value : `${value}${space}±${space}${uncertainty}`;
   const bracketed = power !== 0 && uncertainty !== null ? `(${pair})` : pair;

@@ -28,7 +28,7 @@ export function MemberMenu({
     <details className="relative">
       <summary
         className="grid size-7 cursor-pointer list-none place-items-center rounded-full border border-ctl font-semibold text-[12px] [&::-webkit-details-marker]:hidden"
-        aria-label={`Signed in as ${name}`}
+        aria-label={`Signed in as ${name}, ${initials}`}
       >
         {initials}
       </summary>
