@@ -75,3 +75,25 @@ export function simulateRuns(scenario: Scenario, deviate: () => number): RateLaw
 export function labelOf(run: number): string {
   return `R${String(run + 1).padStart(2, "0")}`;
 }
+
+/** Nine runs of a study to test with: two series, a repeat of the base recipe, and a run off both series. */
+export const nineRecipes = [
+  [0.01, 0.02],
+  [0.02, 0.02],
+  [0.04, 0.02],
+  [0.08, 0.02],
+  [0.02, 0.01],
+  [0.02, 0.04],
+  [0.02, 0.08],
+  [0.02, 0.02],
+  [0.05, 0.05],
+] as const;
+export const nineRuns: Scenario = {
+  species: ["A", "B"],
+  orders: [1, 2],
+  rateConstant: 11.8,
+  recipes: nineRecipes,
+  scatter: 0.02,
+  rateErrors: nineRecipes.map((_, j) => 0.005 + 0.003 * (j % 4)),
+  pipetting: 0.004,
+};
