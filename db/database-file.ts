@@ -1,3 +1,4 @@
+import "./load-env-file";
 import path from "node:path";
 
 /** Where the database lives: DATABASE_FILE, else data/ratewright.sqlite under the folder the command runs in. */

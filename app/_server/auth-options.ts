@@ -1,15 +1,12 @@
 import "server-only";
 import type { NextAuthOptions } from "next-auth";
 import CredentialsProvider from "next-auth/providers/credentials";
-import { endSession } from "@/db/session/session.commands";
+import { endSession, SESSION_LIMITS } from "@/db/session/session.commands";
 import { authSecret } from "./auth-secret";
 import { database } from "./database";
 import { env } from "./env";
 import { SECURE_COOKIES, SESSION_COOKIE } from "./session-cookie";
 import { signInWithPassword } from "./sign-in";
-
-/** The row's own limits decide; the cookie merely outlives them. */
-const COOKIE_LIFETIME_SECONDS = 30 * 24 * 60 * 60;
 
 /**
  * next-auth carries the sign-in: its CSRF token, its sealed cookie. Who the member is stays in our tables: the token
@@ -21,7 +18,7 @@ export function authOptions(): NextAuthOptions {
   const cookie = { httpOnly: true, sameSite: "lax" as const, path: "/", secure: SECURE_COOKIES };
   return {
     secret: authSecret(),
-    session: { strategy: "jwt", maxAge: COOKIE_LIFETIME_SECONDS },
+    session: { strategy: "jwt", maxAge: SESSION_LIMITS.absoluteSeconds },
     useSecureCookies: SECURE_COOKIES,
     cookies: { sessionToken: { name: SESSION_COOKIE, options: cookie } },
     // next-auth's own pages carry inline styles that our content security policy refuses.

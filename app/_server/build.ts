@@ -41,7 +41,8 @@ export function buildIfChanged(repository: string): void {
   writeFileSync(stamp, hash);
 }
 
-function hashOfSources(repository: string): string {
+/** SHA-256 over the names and contents of all sources and the version of Node. */
+export function hashOfSources(repository: string): string {
   const hash = createHash("sha256").update(process.version);
   for (const source of SOURCES) {
     for (const file of filesUnder(repository, source)) {
