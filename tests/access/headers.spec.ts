@@ -1,8 +1,13 @@
 import { expect, test } from "@playwright/test";
+import { connect } from "@/db/connect";
 import { browserRun } from "../browser-run";
 import { Visitor } from "./visitor";
+import { makeWorld } from "./world";
 
-const { origin } = browserRun();
+const { databaseFile, origin } = browserRun();
+/** A line of a stack, a path of the server, or the class of an error. */
+const LEAK =
+  /^\s*at .+:\d+:\d+\)?$|node_modules|\.next\/server|\.tsx?:\d|file:\/\/|\b(Type|Syntax|Range|Sqlite|Zod)Error\b/m;
 const visitor = new Visitor(origin);
 
 function nonceOf(policy: string | null): string | undefined {
@@ -78,8 +83,22 @@ test("no answer to bad input carries a stack trace, a file name or an error's cl
   for (const [path, init] of requests) {
     const { status, body } = await visitor.send(path, init);
     const what = `${init?.method ?? "GET"} ${path.slice(0, 60)} answered ${status}`;
-    expect(body, what).not.toMatch(/^\s*at .+:\d+:\d+\)?$/m);
-    expect(body, what).not.toMatch(/node_modules|\.next\/server|\.tsx?:\d|file:\/\//);
-    expect(body, what).not.toMatch(/\b(Type|Syntax|Range|Sqlite|Zod)Error\b/);
+    expect(body, what).not.toMatch(LEAK);
   }
+});
+
+test("a page that fails says so with a reference, and keeps the error in the log", async () => {
+  const { studyId, insider, marker } = await makeWorld("failing");
+  const db = connect(databaseFile);
+  // A row that no command can have written: reading it throws.
+  await db
+    .updateTable("study")
+    .set({ updated_at: `broken ${marker}` })
+    .where("id", "=", studyId)
+    .execute();
+  await db.destroy();
+  const { status, body } = await insider.send(`/studies/${studyId}/set-up`);
+  expect(status).toBe(500);
+  expect(body).not.toContain(marker);
+  expect(body).not.toMatch(LEAK);
 });
