@@ -17,7 +17,13 @@ export function problem(
   };
   return new Response(JSON.stringify(body), {
     status,
-    headers: { "Content-Type": "application/problem+json", "Cache-Control": "no-store", ...more.headers },
+    headers: {
+      "Content-Type": "application/problem+json",
+      "Cache-Control": "no-store",
+      // What is left of a body that nobody reads would stand in the way of the next call on this connection.
+      ...(status === 413 ? { Connection: "close" } : {}),
+      ...more.headers,
+    },
   });
 }
 

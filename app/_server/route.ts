@@ -143,9 +143,11 @@ async function readInput<Schema extends z.ZodType>(
     return { value: parsed.data };
   }
   const errors = fieldMessages(parsed.error);
-  const first = errors[0];
+  const [first] = errors;
   const detail =
-    first === undefined ? "The input could not be read." : `${first.path || "body"}: ${first.message}`;
+    first === undefined
+      ? "The input could not be read."
+      : sentence(`${first.path || "body"}: ${first.message}`);
   return problem(422, detail, { errors });
 }
 
@@ -154,4 +156,8 @@ function singleParams(params: Record<string, string | string[] | undefined>): Re
   return Object.fromEntries(
     Object.entries(params).filter((entry): entry is [string, string] => typeof entry[1] === "string"),
   );
+}
+
+function sentence(text: string): string {
+  return /[.!?]$/.test(text) ? text : `${text}.`;
 }
