@@ -44,6 +44,7 @@ export interface RouteCall<Input> {
 }
 
 interface RouteContext {
+  /** Resolves to undefined where the path has no parameters, whatever the framework's types say. */
   readonly params: Promise<Record<string, string | string[] | undefined>>;
 }
 
@@ -152,9 +153,11 @@ async function readInput<Schema extends z.ZodType>(
 }
 
 /** Our paths have no catch-all parameters under route(), so each is one string. */
-function singleParams(params: Record<string, string | string[] | undefined>): Record<string, string> {
+function singleParams(
+  params: Record<string, string | string[] | undefined> | undefined,
+): Record<string, string> {
   return Object.fromEntries(
-    Object.entries(params).filter((entry): entry is [string, string] => typeof entry[1] === "string"),
+    Object.entries(params ?? {}).filter((entry): entry is [string, string] => typeof entry[1] === "string"),
   );
 }
 
