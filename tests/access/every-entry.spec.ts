@@ -46,6 +46,10 @@ async function check(entry: Entry, rule: Rule): Promise<void> {
     expect(nobody.status, nobody.body).toBeLessThan(500);
     return;
   }
+  if (rule.who === "link") {
+    await expectOnlyByLink(entry, nobody);
+    return;
+  }
   expectTurnedAway(entry, nobody);
 
   const outsider = rule.who === "group" ? world.outsider : await world.passingOutsider();
@@ -60,6 +64,17 @@ async function check(entry: Entry, rule: Rule): Promise<void> {
       await expectShownToInsider(entry);
     }
   }
+}
+
+/** `guessed` came for a token that nobody made. The link's own token shows the study, or the refusals prove nothing. */
+async function expectOnlyByLink(entry: Entry, guessed: Answer): Promise<void> {
+  expect(guessed.status, guessed.body.slice(0, 400)).toBe(404);
+  const signedIn = await world.outsider.send(address(entry.route));
+  expect(signedIn.status).toBe(404);
+  expect(signedIn.body).not.toContain(world.marker);
+  const held = await world.signedOut.send(entry.route.replace("[token]", world.linkToken));
+  expect(held.status, held.body.slice(0, 400)).toBe(200);
+  expect(held.body).toContain(world.marker);
 }
 
 /** Signed out: a page or action leads to the sign-in page, a handler says 401. */

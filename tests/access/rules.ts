@@ -10,12 +10,15 @@ export type Rule =
   | { readonly who: "anyone"; readonly at?: string }
   /** Signed-in members; names no study or group, so everybody sees what is their own. */
   | { readonly who: "member" }
+  /** Whoever holds a read-only link; any other token finds nothing, signed in or not. */
+  | { readonly who: "link" }
   /** Members of the group that the study belongs to. `send` is what a member would send to a handler or action. */
   | { readonly who: "group"; readonly send?: (world: World) => unknown };
 
 const anyone: Rule = { who: "anyone" };
 const anyoneAt = (at: string): Rule => ({ who: "anyone", at });
 const member: Rule = { who: "member" };
+const link: Rule = { who: "link" };
 const group = (send?: (world: World) => unknown): Rule =>
   send === undefined ? { who: "group" } : { who: "group", send };
 
@@ -42,11 +45,15 @@ export const rules: Readonly<Record<string, Rule>> = {
   "page /studies/[studyId]/rate-law": group(),
   "page /studies/[studyId]/share": group(),
 
+  "page /share/[token]": link,
+
   // Route handlers
   "GET /api/health": anyone,
   "GET /api/auth/[...nextauth]": anyoneAt("/api/auth/session"),
   "POST /api/auth/[...nextauth]": anyoneAt("/api/auth/signout"),
 
+  "GET /share/[token]/runs.csv": link,
+  "GET /share/[token]/traces.csv": link,
   "GET /studies/[studyId]/revision": group(),
   "GET /studies/[studyId]/rates/trace/[runId]": group(),
   "POST /api/v1/studies/[studyId]/uploads": group(),

@@ -22,6 +22,7 @@ export interface World {
   readonly sheet: Sheet;
   readonly runId: string;
   readonly linkId: string;
+  readonly linkToken: string;
   /** A file that waits for its preview. */
   readonly uploadId: string;
   readonly groupId: string;
@@ -86,6 +87,7 @@ export async function makeWorld(file: string): Promise<World> {
     sheet: filled.sheet,
     runId: run.id,
     linkId: link.id,
+    linkToken: link.token,
     uploadId: upload.uploadId,
     groupId: theirs.groupId,
     memberId: theirs.lead.memberId,
