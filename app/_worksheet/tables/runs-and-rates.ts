@@ -54,7 +54,7 @@ export function runsAndRatesTable(sheet: Sheet, analysis: StudyAnalysis): string
       ],
     ];
   });
-  return commaSeparated(heads, rows);
+  return commaSeparated([heads, ...rows]);
 }
 
 function rateCells(run: SheetRun, { rate }: RunAnalysis, rateFactor: number, timeFactor: number) {
@@ -83,10 +83,11 @@ function exact(value: number): number {
   return Number(value.toPrecision(12));
 }
 
-/** A cell that a spreadsheet would run as a formula is quoted with an apostrophe; labels come from people. */
-export function commaSeparated(
-  heads: readonly string[],
-  rows: readonly (readonly (string | number | null)[])[],
-): string {
-  return `${Papa.unparse({ fields: [...heads], data: rows.map((row) => [...row]) }, { escapeFormulae: true, newline: "\n" })}\n`;
+/** A line a row. A cell that a spreadsheet would run as a formula gets an apostrophe; labels come from people. */
+export function commaSeparated(rows: readonly (readonly (string | number | null)[])[]): string {
+  if (rows.length === 0) return "";
+  return `${Papa.unparse(
+    rows.map((row) => [...row]),
+    { escapeFormulae: true, newline: "\n" },
+  )}\n`;
 }

@@ -11,7 +11,7 @@ import { commaSeparated } from "./runs-and-rates";
  */
 export async function* tracesTable(db: Kysely<Database>, sheet: Sheet): AsyncGenerator<string> {
   const quantity = sheet.signal?.kind === "calibrated" ? sheet.signal.quantity : "concentration / mol L^-1";
-  yield commaSeparated(["run", "time / s", quantity], []);
+  yield commaSeparated([["run", "time / s", quantity]]);
   for (const run of presentRuns(sheet)) {
     if (run.trace === null) continue;
     const { time, signal } = await traceReader(db)(run.trace.sha256);
@@ -20,10 +20,6 @@ export async function* tracesTable(db: Kysely<Database>, sheet: Sheet): AsyncGen
       time[index] ?? null,
       signal[index] ?? null,
     ]);
-    yield withoutHead(commaSeparated(["run", "time", "signal"], rows));
+    yield commaSeparated(rows);
   }
-}
-
-function withoutHead(table: string): string {
-  return table.slice(table.indexOf("\n") + 1);
 }

@@ -1,6 +1,7 @@
 import type { ReactNode } from "react";
 import { database } from "@/app/_server/database";
 import { openStudy } from "@/app/_server/study";
+import { ButtonLink } from "@/app/_ui/button";
 import { InventedBanner } from "@/app/_ui/invented-banner";
 import { StandingLaw } from "@/app/_ui/standing-law";
 import { StationRail } from "@/app/_ui/station-rail";
@@ -28,6 +29,11 @@ export default async function StudyLayout({
     <ToastRegion>
       <BenchHead
         trail={[{ name: "Studies", href: "/studies" }, { name: sheet.study.name }]}
+        actions={
+          <ButtonLink size="small" href={`/studies/${studyId}/share`}>
+            Share
+          </ButtonLink>
+        }
         aside={`Revision ${revision}, saved ${study.updatedAt.slice(0, 16).replace("T", " ")} UTC`}
       />
       {sheet.study.invented && <InventedBanner />}

@@ -57,16 +57,7 @@ export default async function SharedStudyPage({ params }: Props) {
   const law = standing.law;
   return (
     <>
-      <RunningHead
-        home={null}
-        aside={page.asOf}
-        actions={
-          <>
-            <ThemeToggle theme={themeOf(jar.get(THEME_COOKIE)?.value)} />
-            <PrintButton />
-          </>
-        }
-      />
+      <RunningHead home={null} aside={page.asOf} actions={<PrintButton />} />
       {sheet.study.invented && <InventedBanner />}
       <main id="main" tabIndex={-1} className="shared-sheet">
         <article>
@@ -184,6 +175,9 @@ export default async function SharedStudyPage({ params }: Props) {
           </ul>
           <h2>This link</h2>
           <p>{page.link}</p>
+          <p className="mt-6 print:hidden">
+            <ThemeToggle theme={themeOf(jar.get(THEME_COOKIE)?.value)} />
+          </p>
         </aside>
       </main>
     </>
