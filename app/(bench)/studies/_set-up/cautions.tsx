@@ -1,6 +1,6 @@
 import { SeverityMark } from "@/app/_ui/check";
 import type { SetUpForm } from "./set-up-form.schema";
-import { type Caution, usualCautions, writtenCautions } from "./usual-cautions";
+import { cautionsOf } from "./usual-cautions";
 
 /** Cautions of a study: what the reaction gives away and what people wrote. Never instead of sheet, rules and supervision. */
 export function Cautions({
@@ -11,7 +11,7 @@ export function Cautions({
   /** Under the cautions: the way to edit them. */
   children?: React.ReactNode;
 }) {
-  const cautions: readonly Caution[] = [...usualCautions(form.species), ...writtenCautions(form.hazards)];
+  const cautions = cautionsOf(form);
   return (
     <div className="rounded-[3px] border border-warn border-l-[3px] px-3.5 py-3">
       <h2>

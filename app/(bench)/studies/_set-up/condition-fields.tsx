@@ -39,7 +39,7 @@ export function ConditionFields({
         </div>
         <Field label="Inert electrolyte" {...box("electrolyte")} />
       </div>
-      <p className="hint max-w-[78ch]">
+      <p className="hint max-w-[110ch]">
         Write a value with its standard uncertainty as 25.0 ± 0.1 or 25.0(1). A value without ± is taken as
         exact; a box left empty says nothing.
       </p>

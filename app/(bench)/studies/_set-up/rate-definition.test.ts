@@ -2,7 +2,7 @@ import { describe, expect, it } from "vitest";
 import { rateDefinition } from "./rate-definition";
 import { emptySetUpForm } from "./set-up-form";
 import type { SpeciesForm } from "./set-up-form.schema";
-import { usualCautions, writtenCautions } from "./usual-cautions";
+import { cautionsOf, usualCautions, writtenCautions } from "./usual-cautions";
 
 function species(symbol: string, stoichiometricNumber: number, more: Partial<SpeciesForm> = {}): SpeciesForm {
   return {
@@ -82,9 +82,22 @@ describe("cautions", () => {
   });
 
   it("takes written cautions by the line", () => {
-    expect(writtenCautions("Acetonitrile, in stock A: flammable vapour, harmful.\n\nWear gloves.")).toEqual([
+    const text =
+      "Acetonitrile, in stock A: flammable vapour, harmful.\n\nWear gloves.\nRead the safety data sheet of each.";
+    expect(writtenCautions(text)).toEqual([
       { concerns: "Acetonitrile, in stock A", text: "Flammable vapour, harmful." },
       { concerns: "", text: "Wear gloves." },
     ]);
+  });
+
+  it("lets what was written about a reagent stand in place of the usual caution", () => {
+    const cautions = cautionsOf({
+      species: [
+        species("B", -2, { name: "hydroxide", formula: "OH-" }),
+        species("X", -1, { formula: "H2O2" }),
+      ],
+      hazards: "Potassium hydroxide, B: strong alkali.",
+    });
+    expect(cautions.map(({ concerns }) => concerns)).toEqual(["H2O2, X", "Potassium hydroxide, B"]);
   });
 });

@@ -6,10 +6,10 @@ export function RateOfReaction({ definition }: { definition: RateDefinition }) {
   return (
     <div className="grid grid-cols-[minmax(0,auto)_minmax(0,1fr)] items-center gap-x-10 gap-y-3 narrow:grid-cols-1">
       <div className="law flex flex-wrap items-center gap-x-3.5 gap-y-1 text-[25px] leading-[1.3] phone:text-[22px]">
-        <span>rate</span>
-        {definition.terms.map((term) => (
+        {definition.terms.length === 0 && <span>rate</span>}
+        {definition.terms.map((term, index) => (
           <span key={keyOf(term)} className="whitespace-nowrap">
-            = {term.sign}
+            {index === 0 && "rate "}= {term.sign}
             <Factor term={term} />
             <Fraction top={changeOf(term)} bottom={<Differential of={<i>t</i>} />} />
           </span>

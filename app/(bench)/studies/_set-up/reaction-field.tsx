@@ -33,6 +33,7 @@ export function ReactionField({
         }
         value={value}
         rows={1}
+        className="resize-none [field-sizing:content]"
         spellCheck={false}
         readOnly={readOnly}
         placeholder="CH3CO2C6H4NO2 [A] + 2 OH- [B] -> CH3CO2- + NO2C6H4O- [P] + H2O"

@@ -80,7 +80,7 @@ export function SignalFields({
           />
           <div className="col-span-2 phone:col-span-1">
             <Field
-              label={absorbance ? "ε·l, absorbance of 1 mol L⁻¹" : "Signal of 1 mol L⁻¹"}
+              label={absorbance ? "ε·l" : "Calibration factor"}
               unit={factorUnit}
               value={signal.perMolar}
               readOnly={readOnly}

@@ -1,4 +1,4 @@
-import type { SpeciesForm } from "./set-up-form.schema";
+import type { SetUpForm, SpeciesForm } from "./set-up-form.schema";
 
 /** A caution as it stands in the margin: whom it concerns and what to mind. */
 export interface Caution {
@@ -62,12 +62,30 @@ export function usualCautions(
   });
 }
 
+/** All cautions of a study. What people wrote about a reagent stands in place of the usual caution for it. */
+export function cautionsOf(form: Pick<SetUpForm, "species" | "hazards">): Caution[] {
+  const written = writtenCautions(form.hazards);
+  const spoken = written.map(({ concerns }) => concerns.toLowerCase());
+  const unspoken = form.species.filter((row) => {
+    const name = row.name.trim().toLowerCase();
+    const symbol = row.symbol.trim().toLowerCase();
+    return !spoken.some(
+      (concerns) =>
+        (name !== "" && concerns.includes(name)) || (symbol !== "" && concerns.endsWith(`, ${symbol}`)),
+    );
+  });
+  return [...usualCautions(unspoken), ...written];
+}
+
+/** The margin ends with this sentence by itself; written again it would stand there twice. */
+const STANDING_SENTENCE = /^read the safety data sheet/i;
+
 /** What people wrote: a line each, whom it concerns before the first colon. */
 export function writtenCautions(hazards: string): Caution[] {
   return hazards
     .split("\n")
     .map((line) => line.trim())
-    .filter((line) => line !== "")
+    .filter((line) => line !== "" && !STANDING_SENTENCE.test(line))
     .map((line) => {
       const colon = line.indexOf(":");
       return colon > 0 && colon < 60

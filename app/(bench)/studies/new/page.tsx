@@ -10,7 +10,7 @@ import { NewStudyForm } from "./_components/new-study-form";
 export const metadata: Metadata = { title: "New study · Ratewright" };
 
 /** Where to go once the study is made: its runs, or the import of traces at once. */
-const NEXT = { import: "/runs/import", paste: "/runs/import?paste" } as const;
+const NEXT = { import: "/runs/import", paste: "/runs/import#paste" } as const;
 
 export default async function NewStudyPage({
   searchParams,

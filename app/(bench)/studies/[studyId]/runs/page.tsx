@@ -54,7 +54,7 @@ export default async function RunsPage({ params, searchParams }: Props) {
       ) : (
         <ButtonLink href={`${here}?edit`}>Edit values</ButtonLink>
       )}
-      <ButtonLink href={`${here}/import?paste`}>Paste columns</ButtonLink>
+      <ButtonLink href={`${here}/import#paste`}>Paste columns</ButtonLink>
       <ButtonLink kind="primary" href={`${here}/import`}>
         Add traces
       </ButtonLink>
@@ -81,7 +81,7 @@ export default async function RunsPage({ params, searchParams }: Props) {
                   <ButtonLink kind="primary" href={`${here}/import`}>
                     Choose a file
                   </ButtonLink>
-                  <ButtonLink href={`${here}/import?paste`}>Paste columns</ButtonLink>
+                  <ButtonLink href={`${here}/import#paste`}>Paste columns</ButtonLink>
                 </>
               }
             >

@@ -22,7 +22,7 @@ describe("a run as a row of texts", () => {
       label: "R01",
       "c:A": "50.0 ± 0.5",
       "c:B": "2.00 ± 0.02",
-      temperature: "25",
+      temperature: "25.0",
       rate: "1.18 ± 0.02",
     });
   });

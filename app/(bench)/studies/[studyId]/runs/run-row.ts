@@ -36,7 +36,7 @@ export function cellsOf(run: SheetRun, { species, rateFactor }: RowShape): Recor
   return {
     label: run.label,
     ...Object.fromEntries(concentrations),
-    temperature: run.temperatureKelvin === null ? "" : typedNumber(run.temperatureKelvin - ZERO_CELSIUS),
+    temperature: run.temperatureKelvin === null ? "" : celsius(run.temperatureKelvin),
     block: run.block ?? "",
     rate:
       run.enteredRate === null
@@ -47,6 +47,12 @@ export function cellsOf(run: SheetRun, { species, rateFactor }: RowShape): Recor
           }),
     remark: run.remark,
   };
+}
+
+/** To a tenth at least, as thermometers are read. */
+function celsius(kelvin: number): string {
+  const text = typedNumber(kelvin - ZERO_CELSIUS);
+  return /[.e]/.test(text) ? text : `${text}.0`;
 }
 
 export interface RowReading {
