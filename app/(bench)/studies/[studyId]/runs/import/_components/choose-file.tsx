@@ -65,6 +65,7 @@ export function ChooseFile({
         />
       </section>
       <form
+        id="paste"
         className="grid gap-3"
         onSubmit={(event) => {
           event.preventDefault();

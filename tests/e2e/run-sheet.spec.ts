@@ -1,0 +1,355 @@
+import { randomBytes } from "node:crypto";
+import { expect, type Locator, type Page, test } from "@playwright/test";
+import { connect } from "@/db/connect";
+import { addRuns, editRun } from "@/db/run/run.commands";
+import { readStudy } from "@/db/study/study.queries";
+import { makeGroup, TEST_PASSWORD, type TestGroup } from "@/db/testing/make-group";
+import { exampleSetUp, makeStudy } from "@/db/testing/make-study";
+import { browserRun } from "../browser-run";
+
+/**
+ * The run sheet and its grid on a study of rates that were entered by hand: v = k[A][C] with k = 2 L mol⁻¹ s⁻¹ and a
+ * percent or so of scatter, and one run that is 40 % off.
+ */
+interface Bench {
+  readonly group: TestGroup;
+  readonly domain: string;
+  readonly studyId: string;
+}
+
+const runs: readonly (readonly [label: string, millimolarA: number, millimolarC: number, ratio: number])[] = [
+  ["R01", 1, 10, 1.006],
+  ["R02", 1, 20, 0.992],
+  ["R03", 1, 40, 1.011],
+  ["R04", 2, 10, 0.995],
+  ["R05", 4, 10, 1.004],
+  ["R06", 2, 20, 0.99],
+  ["R07", 4, 40, 1.4],
+];
+
+async function makeBench(): Promise<Bench> {
+  const db = connect(browserRun().databaseFile);
+  try {
+    const domain = `runs-${randomBytes(4).toString("hex")}.example`;
+    const group = await makeGroup(db, domain);
+    const studyId = await makeStudy(db, group.lead, exampleSetUp("Rates typed by hand"));
+    const added = await addRuns(
+      db,
+      group.lead,
+      { studyId, base: 1 },
+      runs.map(([label, a, c, ratio]) => ({
+        id: `${domain}-${label}`,
+        label,
+        concentrations: {
+          a: { molar: a / 1000, relativeUncertainty: 0 },
+          c: { molar: c / 1000, relativeUncertainty: 0 },
+        },
+        enteredRate: { molarPerSecond: (2 * a * c * ratio) / 1e6, standardError: null },
+      })),
+    );
+    if (added.status !== "changed") throw new Error(added.status);
+    return { group, domain, studyId };
+  } finally {
+    await db.destroy();
+  }
+}
+
+async function sheetOf({ group, studyId }: Bench) {
+  const db = connect(browserRun().databaseFile);
+  const study = await readStudy(db, group.lead, studyId);
+  await db.destroy();
+  if (study === undefined) throw new Error("the study is there");
+  return study;
+}
+
+async function signIn(page: Page, who: string, to: string) {
+  await page.goto(`/sign-in?to=${encodeURIComponent(to)}`);
+  await page.getByLabel("Email address").fill(who);
+  await page.getByLabel("Password").fill(TEST_PASSWORD);
+  await page.getByRole("button", { name: "Sign in" }).click();
+  await page.waitForURL((url) => url.pathname === to.split("?")[0]);
+}
+
+function standing(page: Page): Locator {
+  return page.getByRole("region", { name: "Standing law" });
+}
+
+/** The cell of a run in a column, by what the column is called. */
+function cell(page: Page, run: string, column: RegExp): Locator {
+  const grid = page.getByRole("grid");
+  const row = grid.getByRole("row").filter({ has: page.getByRole("gridcell", { name: run }) });
+  return row.locator(`[data-column="${column.source}"]`);
+}
+
+const LABEL = /0/;
+const A = /1/;
+const C = /2/;
+const RATE = /5/;
+
+async function pasteText(page: Page, text: string) {
+  await page.evaluate((block) => {
+    const data = new DataTransfer();
+    data.setData("text/plain", block);
+    document.activeElement?.dispatchEvent(
+      new ClipboardEvent("paste", { clipboardData: data, bubbles: true, cancelable: true }),
+    );
+  }, text);
+}
+
+test("a run is set aside with its effect seen first, taken back, and undone by key and by toast", async ({
+  page,
+}) => {
+  const bench = await makeBench();
+  await signIn(page, `analyst@${bench.domain}`, `/studies/${bench.studyId}/runs`);
+  await expect(page.getByRole("heading", { level: 1 })).toHaveText("Seven runs, all standing");
+  const before = await standing(page).innerText();
+
+  await page.getByLabel("Select R07").check();
+  await page.getByRole("button", { name: "Set aside…" }).click();
+  const dialog = page.getByRole("dialog", { name: "Set R07 aside" });
+  await expect(dialog.getByText("Now")).toBeVisible();
+  await expect(dialog.getByText("Then")).toBeVisible();
+
+  // Without a reason nothing happens.
+  await dialog.getByRole("button", { name: "Set R07 aside" }).click();
+  await expect(dialog.getByText("Say in a few words what was wrong.")).toBeVisible();
+  await dialog.getByLabel("Reason").fill("stirrer stopped");
+  await dialog.getByRole("button", { name: "Set R07 aside" }).click();
+
+  await expect(page.getByRole("heading", { level: 1 })).toHaveText("Seven runs, six standing");
+  await expect(page.getByText("R07 set aside: stirrer stopped.")).toBeVisible();
+  await expect(page.getByRole("row", { name: /R07/ })).toContainText("Set aside: stirrer stopped");
+  await expect(standing(page)).not.toHaveText(before);
+  // Six runs within 1.1 % of k = 2 give 2.00 to the second decimal.
+  await expect(standing(page)).toContainText(/2\.0\d/);
+
+  await page.getByLabel("Select R07").check();
+  await page.getByRole("button", { name: "Take back" }).click();
+  await expect(page.getByRole("heading", { level: 1 })).toHaveText("Seven runs, all standing");
+
+  // Ctrl+Z takes back the taking back; the first toast's Undo then belongs to a row that changed since.
+  await page.getByRole("heading", { level: 1 }).click();
+  await page.keyboard.press("Control+z");
+  await expect(page.getByRole("heading", { level: 1 })).toHaveText("Seven runs, six standing");
+  await page.keyboard.press("Control+Shift+z");
+  await expect(page.getByRole("heading", { level: 1 })).toHaveText("Seven runs, all standing");
+  expect((await sheetOf(bench)).revision).toBe(6);
+});
+
+test("runs go to the bin and come back, and a recipe is repeated", async ({ page }) => {
+  const bench = await makeBench();
+  await signIn(page, `analyst@${bench.domain}`, `/studies/${bench.studyId}/runs`);
+  await page.getByLabel("Select R07").check();
+  await page.getByRole("button", { name: "Put into the bin" }).click();
+  await expect(page.getByRole("heading", { level: 1 })).toHaveText("Six runs, all standing");
+  await page.getByText("In the bin (1)").click();
+  await page.getByRole("button", { name: "Restore R07" }).click();
+  await expect(page.getByRole("heading", { level: 1 })).toHaveText("Seven runs, all standing");
+
+  await page.getByLabel("Select R03").check();
+  await page.getByRole("button", { name: "New run from this recipe" }).click();
+  await expect(page.getByRole("row", { name: /R08/ })).toContainText("Repeats R03");
+  await expect(page.getByText("Planned")).toBeVisible();
+});
+
+test("the grid is one tab stop, walks by arrows, and edits as its keys say", async ({ page }) => {
+  const bench = await makeBench();
+  await signIn(page, `analyst@${bench.domain}`, `/studies/${bench.studyId}/runs?edit`);
+  const grid = page.getByRole("grid", { name: "Runs of this study" });
+  await expect(grid.locator('[tabindex="0"]')).toHaveCount(1);
+
+  await cell(page, "R01", LABEL).click();
+  await page.keyboard.press("ArrowRight");
+  await expect(cell(page, "R01", A)).toBeFocused();
+  await page.keyboard.press("Control+ArrowDown");
+  await expect(cell(page, "New run", A)).toBeFocused();
+  await page.keyboard.press("Control+ArrowUp");
+  await page.keyboard.press("End");
+  await expect(cell(page, "R01", /6/)).toBeFocused();
+  await page.keyboard.press("Home");
+  await expect(cell(page, "R01", LABEL)).toBeFocused();
+  await page.keyboard.press("Tab");
+  await expect(cell(page, "R01", A)).toBeFocused();
+
+  // Typing replaces; Esc returns the old value and nothing is kept.
+  await page.keyboard.type("7,5");
+  await expect(page.getByRole("textbox", { name: "[A]₀ of R01" })).toHaveValue("7,5");
+  await page.keyboard.press("Escape");
+  await expect(cell(page, "R01", A)).toHaveText("1");
+  expect((await sheetOf(bench)).revision).toBe(2);
+
+  // F2 edits in place and arrows move the caret; Enter keeps and goes down.
+  await page.keyboard.press("F2");
+  await page.keyboard.press("ArrowLeft");
+  await page.keyboard.type("1");
+  await page.keyboard.press("Enter");
+  await expect(cell(page, "R02", A)).toBeFocused();
+  await expect(cell(page, "R01", A)).toHaveText("11");
+  await expect(page.getByText("R01 edited.")).toBeVisible();
+  const kept = (await sheetOf(bench)).sheet.runs.find((run) => run.label === "R01");
+  expect(kept?.concentrations.a?.molar).toBeCloseTo(0.011, 12);
+
+  // Ctrl+Z in the grid undoes the step in the sheet, Ctrl+Shift+Z does it again.
+  await page.keyboard.press("Control+z");
+  await expect(cell(page, "R01", A)).toHaveText("1");
+  await page.keyboard.press("Control+Shift+z");
+  await expect(cell(page, "R01", A)).toHaveText("11");
+  await page.keyboard.press("Control+z");
+  await expect(cell(page, "R01", A)).toHaveText("1");
+
+  // Shift extends, Ctrl+D fills down, Delete empties.
+  await cell(page, "R01", C).click();
+  await page.keyboard.press("Shift+ArrowDown");
+  await page.keyboard.press("Shift+ArrowDown");
+  await expect(grid.locator('[aria-selected="true"]')).toHaveCount(3);
+  await page.keyboard.press("Control+d");
+  await expect(cell(page, "R03", C)).toHaveText("10");
+  await expect(page.getByText("R02 and R03 edited.")).toBeVisible();
+  await cell(page, "R05", RATE).click();
+  await page.keyboard.press("Delete");
+  await expect(cell(page, "R05", RATE)).toHaveText("");
+  await expect(page.getByText("R05 edited.")).toBeVisible();
+  const emptied = (await sheetOf(bench)).sheet.runs.find((run) => run.label === "R05");
+  expect(emptied?.enteredRate).toBeNull();
+});
+
+test("a bad cell keeps its text and says so, and the row keeps its last good values", async ({ page }) => {
+  const bench = await makeBench();
+  await signIn(page, `analyst@${bench.domain}`, `/studies/${bench.studyId}/runs?edit`);
+  await cell(page, "R04", A).click();
+  await pasteText(page, "two");
+  await expect(cell(page, "R04", A)).toHaveText("two");
+  await expect(cell(page, "R04", A)).toHaveAttribute("aria-invalid", "true");
+  await expect(page.getByText("R04 keeps its last good values in the law")).toBeVisible();
+  const { revision, sheet } = await sheetOf(bench);
+  expect(revision).toBe(2);
+  expect(sheet.runs.find((run) => run.label === "R04")?.concentrations.a?.molar).toBe(0.002);
+  await page.getByRole("button", { name: "Return to the kept values" }).click();
+  await expect(cell(page, "R04", A)).toHaveText("2");
+});
+
+test("a block from a spreadsheet becomes runs in one step, with decimal commas and headers skipped", async ({
+  page,
+}) => {
+  const bench = await makeBench();
+  await signIn(page, `analyst@${bench.domain}`, `/studies/${bench.studyId}/runs?edit`);
+  await cell(page, "New run", LABEL).click();
+  await pasteText(
+    page,
+    "Run\t[A]\t[C]\tT\tblock\trate\r\n\tmmol/L\tmmol/L\t°C\t\t\r\nR08\t2,5\t10,0\t25,1\tday 2\t0,0503\r\nR09\t5,0\t10,0\t25,0\tday 2\t0,0997\r\n",
+  );
+  await expect(page.getByText("R08 and R09 added.")).toBeVisible();
+  await expect(cell(page, "R09", A)).toHaveText("5");
+  await expect(page.getByText("2 lines of headings skipped")).toBeVisible();
+  const { sheet, revision } = await sheetOf(bench);
+  expect(revision).toBe(3);
+  const added = sheet.runs.find((run) => run.label === "R08");
+  expect(added).toMatchObject({ temperatureKelvin: 298.25, block: "day 2" });
+  expect(added?.concentrations.a?.molar).toBeCloseTo(0.0025, 12);
+  expect(added?.enteredRate?.molarPerSecond).toBeCloseTo(5.03e-5, 12);
+
+  // Copying gives the block back, tab-separated.
+  await cell(page, "R08", LABEL).click();
+  await page.keyboard.press("Shift+ArrowRight");
+  await page.keyboard.press("Shift+ArrowDown");
+  const copied = await page.evaluate(() => {
+    const data = new DataTransfer();
+    document.activeElement?.dispatchEvent(
+      new ClipboardEvent("copy", { clipboardData: data, bubbles: true, cancelable: true }),
+    );
+    return data.getData("text/plain");
+  });
+  expect(copied).toBe("R08\t2.5\nR09\t5");
+
+  // One paste is one step.
+  await page.keyboard.press("Control+z");
+  await expect(page.getByRole("gridcell", { name: "R08" })).toHaveCount(0);
+  expect((await sheetOf(bench)).sheet.runs.filter((run) => run.removedIn !== null)).toHaveLength(2);
+
+  // Too wide a block is refused whole.
+  await cell(page, "R01", RATE).click();
+  await pasteText(page, "1\t2\t3");
+  await expect(page.getByText("3 columns wide and 2 columns are left from Entered rate on")).toBeVisible();
+});
+
+test("two people change one run: both values are shown, and mine can be put over theirs", async ({
+  page,
+}) => {
+  const bench = await makeBench();
+  await signIn(page, `analyst@${bench.domain}`, `/studies/${bench.studyId}/runs?edit`);
+  await expect(cell(page, "R02", A)).toHaveText("1");
+  const db = connect(browserRun().databaseFile);
+  const theirs = await editRun(
+    db,
+    bench.group.lead,
+    { studyId: bench.studyId, base: 2 },
+    `${bench.domain}-R02`,
+    {
+      concentrations: {
+        a: { molar: 0.003, relativeUncertainty: 0 },
+        c: { molar: 0.02, relativeUncertainty: 0 },
+      },
+    },
+  );
+  await db.destroy();
+  expect(theirs.status).toBe("changed");
+
+  await cell(page, "R02", A).click();
+  await page.keyboard.type("1.5");
+  await page.keyboard.press("Enter");
+  const dialog = page.getByRole("dialog", { name: "Somebody else changed the same run" });
+  await expect(dialog.getByRole("row", { name: /R02/ })).toContainText("3");
+  await expect(dialog.getByRole("row", { name: /R02/ })).toContainText("1.5");
+  await dialog.getByRole("button", { name: "Put mine over theirs" }).click();
+  await expect(page.getByText("R02 edited.")).toBeVisible();
+  const { sheet } = await sheetOf(bench);
+  expect(sheet.runs.find((run) => run.label === "R02")?.concentrations.a?.molar).toBeCloseTo(0.0015, 12);
+});
+
+test("a reader sees the sheet and cannot change it", async ({ page }) => {
+  const bench = await makeBench();
+  await signIn(page, `reader@${bench.domain}`, `/studies/${bench.studyId}/runs`);
+  await expect(page.getByRole("heading", { level: 1 })).toHaveText("Seven runs, all standing");
+  await expect(page.getByRole("checkbox")).toHaveCount(0);
+  await expect(page.getByRole("link", { name: "Add traces" })).toHaveCount(0);
+  await page.goto(`/studies/${bench.studyId}/runs?edit`);
+  await cell(page, "R01", A).click();
+  await page.keyboard.type("5");
+  await expect(page.getByRole("textbox")).toHaveCount(0);
+  await page.goto(`/studies/${bench.studyId}/set-up`);
+  await expect(page.getByLabel("Reaction")).toHaveAttribute("readonly", "");
+  await expect(page.getByRole("button", { name: "Add a species" })).toHaveCount(0);
+});
+
+test("a study is made from a name and a reaction, and its set-up changes with the effect seen first", async ({
+  page,
+}) => {
+  const bench = await makeBench();
+  await signIn(page, `analyst@${bench.domain}`, "/studies/new");
+  await page.getByLabel("Name", { exact: true }).fill("Ester and hydroxide");
+  await page.getByLabel("Reaction").fill("CH3CO2C6H4NO2 [A] + 2 OH- [B] -> CH3CO2- + NO2C6H4O- [P] + H2O");
+  await expect(page.getByText("Atoms balance: C 8, H 9, N 1, O 6")).toBeVisible();
+  await expect(page.getByText("Charge balances: −2 on each side")).toBeVisible();
+  await expect(page.getByText("Strong alkali, corrosive")).toBeVisible();
+  await page.getByLabel(/^ε·l/).fill("17930 ± 55");
+  await page.getByRole("button", { name: "Make the study" }).click();
+  await page.waitForURL(/\/studies\/[\w-]+\/runs$/);
+  await expect(page.getByRole("heading", { level: 1 })).toHaveText("No runs yet");
+
+  await page
+    .getByRole("navigation", { name: "Stations of this study" })
+    .getByRole("link", { name: /Set-up/ })
+    .click();
+  await page.getByLabel(/^Temperature/).fill("warm");
+  await page.getByRole("button", { name: "See the effect and keep" }).click();
+  await expect(page.getByText("“warm” is not read.")).toBeVisible();
+  await page.getByLabel(/^Temperature/).fill("30,0 +- 0,2");
+  await page.getByRole("button", { name: "See the effect and keep" }).click();
+  await page.getByRole("button", { name: "Keep the set-up" }).click();
+  await expect(page.getByText("Changed the temperature.")).toBeVisible();
+  await expect(page.getByLabel(/^Temperature/)).toHaveValue("30.0 ± 0.2");
+  await expect(standing(page)).toContainText("30.0 °C");
+  await page.goto("/studies?find=hydroxide");
+  await expect(page.getByRole("link", { name: "Ester and hydroxide" })).toBeVisible();
+  await expect(page.getByRole("link", { name: "Rates typed by hand" })).toHaveCount(0);
+});
