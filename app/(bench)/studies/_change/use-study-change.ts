@@ -17,7 +17,7 @@ export function useStudyChange(studyId: string) {
 
   const refuse = useCallback((message: string) => toast({ text: message, severity: "blocks" }), [toast]);
 
-  /** Undoes one revision; the revision that did it, or null where it was refused. Undoing that one is the redo. */
+  /** Undoes one revision; the revision that did it, or null where it was refused. */
   const undo = useCallback(
     async (revision: number): Promise<number | null> => {
       made.current = made.current.filter((other) => other !== revision);
@@ -72,11 +72,20 @@ export function useStudyChange(studyId: string) {
     if (by !== null) undone.current.push(by);
   }, [undo]);
 
+  /** Does again what was undone, by undoing the revision that undid it. */
+  const redo = useCallback(
+    async (revision: number): Promise<number | null> => {
+      const by = await undo(revision);
+      if (by !== null) made.current.push(by);
+      return by;
+    },
+    [undo],
+  );
+
   const redoLast = useCallback(async () => {
     const revision = undone.current.pop();
-    const by = revision === undefined ? null : await undo(revision);
-    if (by !== null) made.current.push(by);
-  }, [undo]);
+    if (revision !== undefined) await redo(revision);
+  }, [redo]);
 
   useEffect(() => {
     function onKeyDown(event: KeyboardEvent) {
@@ -94,8 +103,8 @@ export function useStudyChange(studyId: string) {
   }, [undoLast, redoLast]);
 
   return useMemo(
-    () => ({ announce, report, refuse, undo, isOpen }),
-    [announce, report, refuse, undo, isOpen],
+    () => ({ announce, report, refuse, undo, redo, isOpen }),
+    [announce, report, refuse, undo, redo, isOpen],
   );
 }
 

@@ -44,7 +44,7 @@ export function useRunDraft({
   view: RunGridView;
 }) {
   const router = useRouter();
-  const { announce, refuse, undo, isOpen } = useStudyChange(studyId);
+  const { announce, refuse, undo, redo, isOpen } = useStudyChange(studyId);
   const [draft, setDraft] = useState<Draft>(emptyDraft);
   const [said, say] = useState("");
   const [conflict, setConflict] = useState<RowConflict | null>(null);
@@ -142,7 +142,7 @@ export function useRunDraft({
     const step = undone.current.pop();
     if (step === undefined) return say("Nothing to redo here.");
     setDraft((now) => restoreCells(now, step.after));
-    const by = step.revision === null ? null : await undo(step.revision);
+    const by = step.revision === null ? null : await redo(step.revision);
     made.current.push({ ...step, revision: by });
     say("Done again.");
   }

@@ -23,6 +23,7 @@ import { SignalFields } from "../../../_set-up/signal-fields";
 import { SpeciesTable } from "../../../_set-up/species-table";
 import { keepSetUp, previewSetUp } from "../actions";
 import { contestedBoxes, mineOverTheirs, sameForm } from "../three-way";
+import "./set-up-sheet.css";
 
 interface Conflict {
   readonly revision: number;
