@@ -1,7 +1,7 @@
 "use client";
 
 import { useRouter } from "next/navigation";
-import { useCallback, useMemo, useState, useTransition } from "react";
+import { useCallback, useEffect, useMemo, useState, useTransition } from "react";
 import type { SpeciesContext, StudyContext } from "@/app/_import/reading";
 import { Button } from "@/app/_ui/button";
 import { Notice } from "@/app/_ui/notice";
@@ -61,6 +61,16 @@ export function ImportWorkbench({
     [studyId],
   );
 
+  // What cannot be read at all does not wait either: its sentence stays, its bytes go.
+  const unreadable =
+    state.status === "shown" && state.answer.reading.status === "refused" ? state.answer : null;
+  useEffect(() => {
+    if (unreadable === null || unreadable.reading.status !== "refused") return;
+    setRefusal(unreadable.reading.message);
+    void drop(unreadable.file.uploadId);
+    forget();
+  }, [unreadable, drop, forget]);
+
   async function send(content: Blob, fileName: string) {
     setRefusal(null);
     setStoreRefusal(null);
@@ -79,6 +89,7 @@ export function ImportWorkbench({
   }
 
   async function discard() {
+    setStoreRefusal(null);
     if (uploadId !== null) await drop(uploadId);
     forget();
   }
@@ -118,8 +129,7 @@ export function ImportWorkbench({
     .filter((row) => Object.keys(row.faults).length > 0)
     .map((row) => row.trace.label);
 
-  const unreadable = answer?.reading.status === "refused" ? answer.reading.message : null;
-  const failure = refusal ?? unreadable ?? (state.status === "failed" ? state.message : null);
+  const failure = refusal ?? (state.status === "failed" ? state.message : null);
   const choosing = reading === null && upload.sending === null && state.status !== "reading";
 
   return (
