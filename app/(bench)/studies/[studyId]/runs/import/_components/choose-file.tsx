@@ -21,6 +21,8 @@ export function ChooseFile({
 
   function drop(event: DragEvent) {
     event.preventDefault();
+    // The page around takes what misses this area; this one was meant for it.
+    event.stopPropagation();
     setOver(false);
     const file = event.dataTransfer.files[0];
     if (file) onFile(file);

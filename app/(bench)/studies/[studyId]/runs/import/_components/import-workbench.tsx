@@ -16,6 +16,7 @@ import { IssueList } from "./issue-list";
 import { LayoutBar } from "./layout-bar";
 import { RecipeGrid } from "./recipe-grid";
 import { StoreMargin } from "./store-margin";
+import { useDroppedFile } from "./use-dropped-file";
 import { usePreview } from "./use-preview";
 import { useRecipes } from "./use-recipes";
 import { useUpload } from "./use-upload";
@@ -61,15 +62,18 @@ export function ImportWorkbench({
     [studyId],
   );
 
+  const refusedReading =
+    state.status === "shown" && state.answer.reading.status === "refused" ? state.answer.reading : null;
+  const isCorrected = Object.keys(preview.corrections).length > 0;
   // What cannot be read at all does not wait either: its sentence stays, its bytes go.
-  const unreadable =
-    state.status === "shown" && state.answer.reading.status === "refused" ? state.answer : null;
   useEffect(() => {
-    if (unreadable === null || unreadable.reading.status !== "refused") return;
-    setRefusal(unreadable.reading.message);
-    void drop(unreadable.file.uploadId);
+    if (refusedReading === null || isCorrected || uploadId === null) return;
+    setRefusal(refusedReading.message);
+    void drop(uploadId);
     forget();
-  }, [unreadable, drop, forget]);
+  }, [refusedReading, isCorrected, uploadId, drop, forget]);
+  /** A correction made the file unreadable; the file is kept and the correction can be taken back. */
+  const misled = refusedReading !== null && isCorrected ? refusedReading.message : null;
 
   async function send(content: Blob, fileName: string) {
     setRefusal(null);
@@ -87,6 +91,10 @@ export function ImportWorkbench({
     // A reload finds the waiting file again.
     window.history.replaceState(null, "", `?upload=${file.uploadId}`);
   }
+
+  useDroppedFile((file) => {
+    if (upload.sending === null && !storing) void send(file, file.name);
+  });
 
   async function discard() {
     setStoreRefusal(null);
@@ -129,8 +137,9 @@ export function ImportWorkbench({
     .filter((row) => Object.keys(row.faults).length > 0)
     .map((row) => row.trace.label);
 
-  const failure = refusal ?? (state.status === "failed" ? state.message : null);
-  const choosing = reading === null && upload.sending === null && state.status !== "reading";
+  const failure = refusal ?? misled ?? (state.status === "failed" ? state.message : null);
+  const choosing =
+    reading === null && misled === null && upload.sending === null && state.status !== "reading";
 
   return (
     <Sheet
@@ -155,7 +164,15 @@ export function ImportWorkbench({
     >
       {failure !== null && (
         <div className="mb-5">
-          <Notice severity="blocks" title="Not read">
+          <Notice
+            severity="blocks"
+            title="Not read"
+            actions={
+              misled === null ? undefined : (
+                <Button onClick={preview.forget}>Read the file without corrections</Button>
+              )
+            }
+          >
             {failure}
           </Notice>
         </div>
