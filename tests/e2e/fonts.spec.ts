@@ -1,4 +1,5 @@
 import { type CDPSession, expect, type Page, test } from "@playwright/test";
+import { signInToDemoStudy } from "./demo-study";
 
 /** A font that drew some glyphs of an element; `isCustomFont` is false for fonts of the machine. */
 interface PlatformFont {
@@ -85,6 +86,15 @@ test.describe("the fonts that ship with the application", () => {
     await page.evaluate(() => document.fonts.ready);
     expect(await machineFontsOn(page)).toEqual([]);
   });
+});
+
+test("every text of every station is drawn by the fonts that ship with the application", async ({ page }) => {
+  const study = await signInToDemoStudy(page);
+  for (const station of ["set-up", "runs", "rates", "rate-law"]) {
+    await page.goto(`${study}/${station}`);
+    await page.evaluate(() => document.fonts.ready);
+    expect(await machineFontsOn(page), station).toEqual([]);
+  }
 });
 
 async function devTools(page: Page): Promise<CDPSession> {
