@@ -40,6 +40,7 @@ export function useGrid(input: GridInput) {
   const open = useRef<EditedCell | null>(null);
   const table = useRef<HTMLTableElement>(null);
   const wantsFocus = useRef(false);
+  const tappedAgain = useRef(false);
   // Rows come and go from outside; a position past the end rests on the last row.
   const row = Math.min(active.row, Math.max(0, rows.length - 1));
   const at: GridPosition = { row, column: active.column };
@@ -159,8 +160,15 @@ export function useGrid(input: GridInput) {
     const position = positionOf(event.target);
     if (position === null || event.target instanceof HTMLInputElement) return;
     event.preventDefault();
+    tappedAgain.current = position.row === at.row && position.column === at.column;
     keep();
     goTo(position, event.shiftKey);
+  }
+
+  /** Without a keyboard: a second tap on the active cell opens it. */
+  function onClick(event: MouseEvent): void {
+    const touched = event.nativeEvent instanceof PointerEvent && event.nativeEvent.pointerType === "touch";
+    if (touched && tappedAgain.current) onDoubleClick(event);
   }
 
   function onMouseOver(event: MouseEvent): void {
@@ -193,6 +201,7 @@ export function useGrid(input: GridInput) {
       onPaste,
       onMouseDown,
       onMouseOver,
+      onClick,
       onDoubleClick,
     },
   };

@@ -111,7 +111,7 @@ function keptRows(view: RunGridView, sheet: Sheet, faults: Faults): GridRow[] {
 function newRows(sheet: Sheet, faults: Faults): GridRow[] {
   return sheet.draft.newKeys.map((key): GridRow => {
     const cells = sheet.draft.texts[key] ?? {};
-    const label = cells.label?.trim() || "new run";
+    const label = cells.label?.trim() || "New run";
     return {
       id: key,
       label,

@@ -85,7 +85,7 @@ export function RunTable({
                   <td>
                     <input
                       type="checkbox"
-                      className="checkbox phone:size-6"
+                      className="checkbox"
                       aria-label={`Select ${row.label}`}
                       checked={ticked.has(row.runId)}
                       onChange={(event) => {
