@@ -1,3 +1,14 @@
+import {
+  estimateInitialRate,
+  type InitialRate,
+  type InitialRateOptions,
+  type SlopeAtEnd,
+  type StudyTrace,
+  slopeAgainstWindowEnd,
+  surveyTrace,
+  type Trace,
+  type TraceSurvey,
+} from "kinetics-core/initial-rate";
 import type { Corrections } from "@/app/_import/corrections";
 import { type ImportPreview, previewOf } from "@/app/_import/preview";
 import { readFile } from "@/app/_import/read-file";
@@ -18,4 +29,27 @@ export function readUpload({ bytes, context, corrections }: ReadTask): Reading {
 /** As `readUpload`, thinned for the page here, so that millions of readings need not cross between threads. */
 export function previewUpload({ bytes, context, corrections }: ReadTask): ImportPreview {
   return previewOf(readFile(bytes, context, corrections));
+}
+
+/** What one trace allows; of many readings this takes seconds. */
+export function surveyLongTrace(trace: StudyTrace): TraceSurvey {
+  return surveyTrace(trace);
+}
+
+export interface EstimateTask {
+  readonly trace: Trace;
+  readonly options: InitialRateOptions;
+}
+
+export function estimateLongTrace({ trace, options }: EstimateTask): InitialRate {
+  return estimateInitialRate(trace, options);
+}
+
+export interface SweepTask {
+  readonly trace: Trace;
+  readonly options: Parameters<typeof slopeAgainstWindowEnd>[1];
+}
+
+export function sweepLongTrace({ trace, options }: SweepTask): SlopeAtEnd[] {
+  return slopeAgainstWindowEnd(trace, options);
 }

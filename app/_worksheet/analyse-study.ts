@@ -1,10 +1,4 @@
-import {
-  chooseFromSurveys,
-  estimateInitialRate,
-  type InitialRateOptions,
-  type StudyRuleChoice,
-  surveyTrace,
-} from "kinetics-core/initial-rate";
+import { chooseFromSurveys, type InitialRateOptions, type StudyRuleChoice } from "kinetics-core/initial-rate";
 import { fitRateLaw } from "kinetics-core/rate-law";
 import type { Kysely } from "kysely";
 import { canonicalJson, sha256Of } from "@/db/canonical-json";
@@ -15,6 +9,7 @@ import { signalSpan } from "./assemble";
 import { findChecks } from "./checks/find-checks";
 import { CORE_VERSION } from "./core-version";
 import { type CarryingRun, lawInput } from "./law-input";
+import { estimated, surveyed } from "./measure-trace";
 import { missingForLaw } from "./missing-law";
 import { lawSpecies, presentRuns } from "./present-runs";
 import { RecentResults } from "./recent-results";
@@ -110,7 +105,7 @@ async function findRule(
       : [{ sha256: run.trace.sha256, timeZero: run.timeZeroSeconds, signalSpan: signalSpan(sheet, run) }],
   );
   const surveys = await keepStage(db, surveyStage, standing, async ({ sha256, ...rest }) =>
-    surveyTrace({ label: sha256, trace: await readTrace(sha256), ...rest }),
+    surveyed({ label: sha256, trace: await readTrace(sha256), ...rest }),
   );
   return chooseFromSurveys(surveys);
 }
@@ -136,7 +131,7 @@ async function findRates(
     ({ run, sha256 }): RateInput => ({ sha256, options: rateOptions(sheet, run, rule?.rule ?? null) }),
   );
   const estimates = await keepStage(db, rateStage, inputs, async ({ sha256, options }) =>
-    estimateInitialRate(await readTrace(sha256), options),
+    estimated(await readTrace(sha256), options),
   );
   // A measured trace goes before a rate typed in by hand.
   for (const [index, { run }] of traced.entries()) {

@@ -1,4 +1,4 @@
-import type { InitialRate, TraceSurvey } from "kinetics-core/initial-rate";
+import type { InitialRate, SlopeAtEnd, TraceSurvey } from "kinetics-core/initial-rate";
 import { z } from "zod";
 
 /**
@@ -84,3 +84,7 @@ export const traceSurveySchema = z.object({
     }),
   ),
 }) satisfies z.ZodType<TraceSurvey>;
+
+export const slopesAtEndSchema = z.array(
+  z.object({ end: z.number(), slope: z.number(), standardError: z.number() }),
+) satisfies z.ZodType<readonly SlopeAtEnd[]>;

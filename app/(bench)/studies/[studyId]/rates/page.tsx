@@ -1,4 +1,3 @@
-import { slopeAgainstWindowEnd } from "kinetics-core/initial-rate";
 import type { Metadata } from "next";
 import { database } from "@/app/_server/database";
 import { openStudy } from "@/app/_server/study";
@@ -6,10 +5,10 @@ import { ButtonLink } from "@/app/_ui/button";
 import { EmptyState } from "@/app/_ui/empty-state";
 import { Sheet as Paper } from "@/app/_ui/sheet";
 import { analyseStudy } from "@/app/_worksheet/analyse-study";
-import type { RunAnalysis } from "@/app/_worksheet/analysis";
+import { sweepWindowEnd } from "@/app/_worksheet/sweep-window-end";
 import { readTrace } from "@/db/trace/read-trace";
 import { RatesBench } from "./_components/rates-bench";
-import { ratesView, runRateView, type StoredTrace, selectRun } from "./view";
+import { ratesView, runRateView, selectRun } from "./view";
 
 export const metadata: Metadata = { title: "Rates" };
 
@@ -43,8 +42,12 @@ export default async function RatesPage({
         </EmptyState>
       </Paper>
     );
-  const sha256 = sheet.runs.find((run) => run.id === selected.runId)?.trace?.sha256;
-  const stored = sha256 === undefined ? null : await readTrace(db, sha256);
+  const row = sheet.runs.find((run) => run.id === selected.runId);
+  const stored = row === undefined || row.trace === null ? null : await readTrace(db, row.trace.sha256);
+  const sweep =
+    row !== undefined && selected.rate.kind === "estimated"
+      ? await sweepWindowEnd(db, row, selected.rate.initialRate)
+      : [];
   return (
     <RatesBench
       key={selected.runId}
@@ -52,17 +55,7 @@ export default async function RatesPage({
       revision={revision}
       canEdit={canEdit}
       rates={ratesView(sheet, analysis)}
-      run={runRateView(sheet, analysis, selected, stored, stored === null ? [] : sweep(selected, stored))}
+      run={runRateView(sheet, analysis, selected, stored, sweep)}
     />
   );
-}
-
-/** The same estimator on windows that end elsewhere; a fit of a whole trace is not swept. */
-function sweep({ rate }: RunAnalysis, { timeSeconds, signal }: StoredTrace) {
-  if (rate.kind !== "estimated") return [];
-  const { estimator, degree, window } = rate.initialRate;
-  const trace = { time: timeSeconds, signal };
-  if (estimator === "straight") return slopeAgainstWindowEnd(trace, { estimator, from: window[0] });
-  if (estimator !== "tangent" || (degree !== 2 && degree !== 3 && degree !== 4)) return [];
-  return slopeAgainstWindowEnd(trace, { estimator, degree, from: window[0] });
 }
