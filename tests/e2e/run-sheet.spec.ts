@@ -1,7 +1,8 @@
 import { randomBytes } from "node:crypto";
 import { expect, type Locator, type Page, test } from "@playwright/test";
 import { connect } from "@/db/connect";
-import { addRuns, editRun } from "@/db/run/run.commands";
+import { addRuns } from "@/db/run/run.commands";
+import { changeStudy } from "@/db/study/change-study";
 import { readStudy } from "@/db/study/study.queries";
 import { makeGroup, TEST_PASSWORD, type TestGroup } from "@/db/testing/make-group";
 import { exampleSetUp, makeStudy } from "@/db/testing/make-study";
@@ -286,17 +287,25 @@ test("two people change one run: both values are shown, and mine can be put over
   await signIn(page, `analyst@${bench.domain}`, `/studies/${bench.studyId}/runs?edit`);
   await expect(cell(page, "R02", A)).toHaveText("1");
   const db = connect(browserRun().databaseFile);
-  const theirs = await editRun(
+  const theirs = await changeStudy(
     db,
     bench.group.lead,
     { studyId: bench.studyId, base: 2 },
-    `${bench.domain}-R02`,
-    {
-      concentrations: {
-        a: { molar: 0.003, relativeUncertainty: 0 },
-        c: { molar: 0.02, relativeUncertainty: 0 },
-      },
-    },
+    { verb: "run edited", summary: "R02 edited." },
+    (sheet) => ({
+      ...sheet,
+      runs: sheet.runs.map((run) =>
+        run.id === `${bench.domain}-R02`
+          ? {
+              ...run,
+              concentrations: {
+                a: { molar: 0.003, relativeUncertainty: 0 },
+                c: { molar: 0.02, relativeUncertainty: 0 },
+              },
+            }
+          : run,
+      ),
+    }),
   );
   await db.destroy();
   expect(theirs.status).toBe("changed");
