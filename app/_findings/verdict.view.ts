@@ -2,6 +2,7 @@ import type { StudyAnalysis } from "@/app/_worksheet/analysis";
 import { list } from "@/app/_worksheet/missing-law";
 import { printExponent, printHeldOrder } from "@/app/_worksheet/print-order";
 import { type NamedOrder, standingOrders } from "@/app/_worksheet/standing-constant";
+import { countInWords } from "@/app/_worksheet/words";
 import type { Sheet } from "@/db/sheet/sheet.schema";
 
 /** The finding as a sentence: a claim that the highlighter marks, then the numbers that support it. */
@@ -45,24 +46,8 @@ function isSharp(fit: Fit, name: string): boolean {
 /** As wide as the interval of an order may be to settle it. */
 const SHARP_HALF_WIDTH = 0.25;
 
-const NUMBERS = [
-  "No",
-  "One",
-  "Two",
-  "Three",
-  "Four",
-  "Five",
-  "Six",
-  "Seven",
-  "Eight",
-  "Nine",
-  "Ten",
-  "Eleven",
-  "Twelve",
-];
-
 function counted(runs: number): string {
-  return `${NUMBERS[runs] ?? runs} runs`;
+  return `${countInWords(runs)} runs`;
 }
 
 interface Sorted {

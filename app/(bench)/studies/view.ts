@@ -3,6 +3,7 @@ import type { CheckSeverity } from "@/app/_ui/check";
 import type { Check, RunMark, StudyAnalysis } from "@/app/_worksheet/analysis";
 import { type LawSnapshot, lawSnapshot } from "@/app/_worksheet/law-effect";
 import { presentRuns } from "@/app/_worksheet/present-runs";
+import { countInWords } from "@/app/_worksheet/words";
 import type { Sheet } from "@/db/sheet/sheet.schema";
 import type { LastEntry } from "@/db/study/last-entries";
 import type { OpenStudy } from "@/db/study/study.queries";
@@ -69,9 +70,9 @@ export function studyRow({ study, analysis, traces, lastEntry, now }: StudyData)
 /** Six studies, four with a standing law. */
 export function listLead(rows: readonly StudyRow[]): string {
   const withLaw = rows.filter((row) => row.law.status === "law").length;
-  const all = `${inWords(rows.length)} ${rows.length === 1 ? "study" : "studies"}`;
+  const all = `${countInWords(rows.length)} ${rows.length === 1 ? "study" : "studies"}`;
   if (withLaw === 0) return `${all}, none with a standing law yet.`;
-  return `${all}, ${withLaw === rows.length ? (rows.length === 1 ? "with a standing law" : "all with a standing law") : `${inWords(withLaw).toLowerCase()} with a standing law`}.`;
+  return `${all}, ${withLaw === rows.length ? (rows.length === 1 ? "with a standing law" : "all with a standing law") : `${countInWords(withLaw).toLowerCase()} with a standing law`}.`;
 }
 
 /** Every word of the question must occur in the name, a species, the reaction or the conditions. */
@@ -81,26 +82,6 @@ export function matches(row: StudyRow, question: string): boolean {
     .split(/\s+/)
     .filter((word) => word !== "");
   return words.every((word) => row.searched.includes(word));
-}
-
-const NUMBER_WORDS = [
-  "No",
-  "One",
-  "Two",
-  "Three",
-  "Four",
-  "Five",
-  "Six",
-  "Seven",
-  "Eight",
-  "Nine",
-  "Ten",
-  "Eleven",
-  "Twelve",
-];
-
-function inWords(count: number): string {
-  return NUMBER_WORDS[count] ?? String(count);
 }
 
 function conditionsOf({ conditions, signal }: Sheet): string {

@@ -7,6 +7,7 @@ import { concentrationDisplay, rateDisplay } from "@/app/_worksheet/display-unit
 import { lawName } from "@/app/_worksheet/law-input";
 import { lawSpecies, presentRuns } from "@/app/_worksheet/present-runs";
 import { type ColumnText, columnOf, type PrintedColumn } from "@/app/_worksheet/printed-column";
+import { dayInWords } from "@/app/_worksheet/words";
 import type { SharedStudy } from "@/db/share-link/share-link.queries";
 import type { Sheet } from "@/db/sheet/sheet.schema";
 
@@ -48,7 +49,7 @@ export interface SharedRunRow {
 export function sharedPageView(shared: SharedStudy, analysis: StudyAnalysis): SharedPageView {
   return {
     overline: `Study ${shared.number}, shared by ${shared.groupName}`,
-    asOf: `Read-only sheet, as of ${day(shared.updatedAt)}`,
+    asOf: `Read-only sheet, as of ${dayInWords(shared.updatedAt)}`,
     link: linkInWords(shared),
     evidence: evidenceInWords(analysis),
     method: methodInWords(shared.sheet, analysis),
@@ -62,7 +63,7 @@ function linkInWords({ frozenRevision, revision, expiresAt }: SharedStudy): stri
       ? `It follows the study, now at revision ${revision}`
       : `It shows revision ${frozenRevision} of the study, whatever was changed later`;
   const closes =
-    expiresAt === null ? "It works until the group revokes it" : `It closes on ${day(expiresAt)}`;
+    expiresAt === null ? "It works until the group revokes it" : `It closes on ${dayInWords(expiresAt)}`;
   return `Anyone with it can read, nobody can edit. ${shows}. ${closes}.`;
 }
 
@@ -154,14 +155,4 @@ function residualsOf({ law }: StudyAnalysis): ReadonlyMap<string, string> {
 function signedPercent(percent: number): string {
   const text = Math.abs(percent).toFixed(1);
   return text === "0.0" ? "0.0" : `${percent < 0 ? "−" : "+"}${text}`;
-}
-
-/** In UTC, so that server and reader agree. */
-function day(moment: string): string {
-  return new Intl.DateTimeFormat("en-GB", {
-    day: "numeric",
-    month: "long",
-    year: "numeric",
-    timeZone: "UTC",
-  }).format(new Date(moment));
 }

@@ -4,6 +4,7 @@ import type { RunAnalysis, RunMark, StudyAnalysis } from "@/app/_worksheet/analy
 import { concentrationDisplay, rateDisplay } from "@/app/_worksheet/display-units";
 import { lawSpecies, presentRuns } from "@/app/_worksheet/present-runs";
 import { variedSpecies } from "@/app/_worksheet/run-marks";
+import { countInWords } from "@/app/_worksheet/words";
 import type { Sheet, SheetRun, SheetSpecies } from "@/db/sheet/sheet.schema";
 
 /** The run sheet as it is drawn: groups of rows by series, every text ready. */
@@ -135,33 +136,13 @@ function remarkOf(run: SheetRun, rate: RunAnalysis["rate"]): string {
   return [run.remark, why].filter((part) => part !== "").join(" ");
 }
 
-const NUMBER_WORDS = [
-  "No",
-  "One",
-  "Two",
-  "Three",
-  "Four",
-  "Five",
-  "Six",
-  "Seven",
-  "Eight",
-  "Nine",
-  "Ten",
-  "Eleven",
-  "Twelve",
-];
-
 function titleOf(runs: readonly RunAnalysis[]): string {
   const standing = runs.filter((run) => run.state === "standing").length;
   if (runs.length === 0) return "No runs yet";
-  const all = `${inWords(runs.length)} ${runs.length === 1 ? "run" : "runs"}`;
+  const all = `${countInWords(runs.length)} ${runs.length === 1 ? "run" : "runs"}`;
   return standing === runs.length && runs.length > 1
     ? `${all}, all standing`
-    : `${all}, ${inWords(standing).toLowerCase()} standing`;
-}
-
-function inWords(count: number): string {
-  return NUMBER_WORDS[count] ?? String(count);
+    : `${all}, ${countInWords(standing).toLowerCase()} standing`;
 }
 
 const FILLS: Readonly<Record<string, string>> = { first: "solid", second: "open", third: "open with a dot" };

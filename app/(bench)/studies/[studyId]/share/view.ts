@@ -1,3 +1,4 @@
+import { dayInWords } from "@/app/_worksheet/words";
 import type { ShareLinkLine } from "@/db/share-link/share-link.queries";
 
 /** A link as the list shows it. Times are days in UTC; a link's minute is nobody's business. */
@@ -17,9 +18,9 @@ export function linkViews(lines: readonly ShareLinkLine[], now: Date): LinkView[
     id: line.id,
     label: line.label === "" ? "No note" : line.label,
     shows: line.frozenRevision === null ? "Live" : `Frozen at revision ${line.frozenRevision}`,
-    made: `${day(line.createdAt)}, ${line.madeBy}`,
+    made: `${dayInWords(line.createdAt)}, ${line.madeBy}`,
     closes: closing(line),
-    lastRequested: line.lastRequestedAt === null ? "never" : day(line.lastRequestedAt),
+    lastRequested: line.lastRequestedAt === null ? "never" : dayInWords(line.lastRequestedAt),
     state: stateOf(line, now),
   }));
 }
@@ -30,16 +31,6 @@ function stateOf(line: ShareLinkLine, now: Date): LinkView["state"] {
 }
 
 function closing(line: ShareLinkLine): string {
-  if (line.revokedAt !== null) return `revoked ${day(line.revokedAt)}`;
-  return line.expiresAt === null ? "when revoked" : day(line.expiresAt);
-}
-
-/** "14 March 2026", in UTC so that server and reader agree. */
-export function day(moment: string): string {
-  return new Intl.DateTimeFormat("en-GB", {
-    day: "numeric",
-    month: "long",
-    year: "numeric",
-    timeZone: "UTC",
-  }).format(new Date(moment));
+  if (line.revokedAt !== null) return `revoked ${dayInWords(line.revokedAt)}`;
+  return line.expiresAt === null ? "when revoked" : dayInWords(line.expiresAt);
 }

@@ -4,6 +4,7 @@ import type { ImportPreview, TracePreview } from "@/app/_import/preview";
 import type { SignalUnit, SpeciesContext, StudyContext } from "@/app/_import/reading";
 import type { RunMark } from "@/app/_worksheet/analysis";
 import { typedNumber } from "@/app/_worksheet/typed-number/print-typed";
+import { countInWords } from "@/app/_worksheet/words";
 
 /** The preview in words and plain props. */
 
@@ -15,35 +16,17 @@ export function megabytes(bytes: number): string {
   return `${(bytes / 1_000_000).toFixed(1)}\u202fMB`;
 }
 
-const NUMBER_WORDS = [
-  "No",
-  "One",
-  "Two",
-  "Three",
-  "Four",
-  "Five",
-  "Six",
-  "Seven",
-  "Eight",
-  "Nine",
-  "Ten",
-  "Eleven",
-  "Twelve",
-];
-
 /** The finding: "Five traces read, two questions to settle". */
 export function headline(reading: ReadPreview): string {
   const traces = reading.traces.length;
   const open = reading.issues.filter((issue) => issue.severity === "blocks").length;
   const weak = reading.issues.filter((issue) => issue.severity === "weakens").length;
-  const read = `${NUMBER_WORDS[traces] ?? traces} ${traces === 1 ? "trace" : "traces"} read`;
-  if (open > 0) return `${read}, ${inWords(open)} ${open === 1 ? "question" : "questions"} to settle`;
-  if (weak > 0) return `${read}, ${inWords(weak)} ${weak === 1 ? "thing" : "things"} to know`;
+  const read = `${countInWords(traces)} ${traces === 1 ? "trace" : "traces"} read`;
+  if (open > 0)
+    return `${read}, ${countInWords(open).toLowerCase()} ${open === 1 ? "question" : "questions"} to settle`;
+  if (weak > 0)
+    return `${read}, ${countInWords(weak).toLowerCase()} ${weak === 1 ? "thing" : "things"} to know`;
   return `${read}, nothing to settle`;
-}
-
-function inWords(count: number): string {
-  return (NUMBER_WORDS[count] ?? String(count)).toLowerCase();
 }
 
 /** "Store 5 traces" */
