@@ -13,6 +13,7 @@ const repository = path.resolve(import.meta.dirname, "../..");
 const ADDRESS = env.publicOrigin ?? `http://localhost:${env.port}`;
 /** Without PUBLIC_URL nobody but this machine is answered. */
 const HOST = env.publicOrigin === null ? "127.0.0.1" : "0.0.0.0";
+const FIRST_GROUP = 'A first group is made by: pnpm seed --group "Name of the group" --lead name@example.org';
 const READY_WITHIN_MS = 60_000;
 
 async function serve(): Promise<number> {
@@ -21,6 +22,11 @@ async function serve(): Promise<number> {
     demo: env.isLoopback,
     demoPassword: env.demoPassword,
   });
+  if (prepared.demo !== null && !env.isLoopback) {
+    throw new Error(
+      `${env.databaseFile} holds the demo group, whose accounts are for one machine only. With PUBLIC_URL set, name another file in DATABASE_FILE.`,
+    );
+  }
   const server = spawn(
     process.execPath,
     ["node_modules/next/dist/bin/next", "start", "--hostname", HOST, "--port", String(env.port)],
@@ -55,7 +61,7 @@ function greeting(prepared: Prepared): string {
   return [
     "",
     `Ratewright answers at ${ADDRESS}`,
-    ...(prepared.demo === null ? [] : [demoInWords(prepared)]),
+    prepared.demo === null ? FIRST_GROUP : demoInWords(prepared),
     `Database:     ${env.databaseFile}`,
     "Stop with Ctrl+C.",
     "",
