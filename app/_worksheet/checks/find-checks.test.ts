@@ -111,7 +111,7 @@ test("a calibration without uncertainty is a note, a missing temperature weakens
 test("two levels of a species weaken, and a run that lacks a species of the law carries nothing", async () => {
   const amount = (molar: number) => ({ molar, relativeUncertainty: 0.01 });
   const checks = await checksOf(
-    sheetWith((index) => {
+    sheetWith((index): Partial<SheetRun> => {
       if (index === 0) return { concentrations: {} };
       if (index !== 2 && index !== 5) return {};
       return {
