@@ -1,6 +1,9 @@
 /** Large enough for 2,000 runs as numbers; files go through uploads, which stream. */
 const JSON_LIMIT_BYTES = 8 * 1024 * 1024;
 
+/** What is read beyond the limit and thrown away: most clients hear the answer only once they have sent all. */
+const DRAINED_BYTES = 64 * 1024 * 1024;
+
 export type JsonBody =
   | { readonly ok: true; readonly value: unknown }
   | { readonly ok: false; readonly status: 400 | 413 | 415; readonly detail: string };
@@ -16,17 +19,19 @@ export async function readJsonBody(request: Request, limitBytes = JSON_LIMIT_BYT
     status: 413,
     detail: `The body is over the limit of ${Math.floor(limitBytes / (1024 * 1024))} MB. Send less in one call.`,
   } as const;
-  if (Number(request.headers.get("content-length") ?? 0) > limitBytes) {
-    return tooLarge;
-  }
   const chunks: Uint8Array[] = [];
   let received = 0;
   for await (const chunk of request.body ?? []) {
     received += chunk.byteLength;
-    if (received > limitBytes) {
+    if (received > limitBytes + DRAINED_BYTES) {
       return tooLarge;
     }
-    chunks.push(chunk);
+    if (received <= limitBytes) {
+      chunks.push(chunk);
+    }
+  }
+  if (received > limitBytes) {
+    return tooLarge;
   }
   try {
     const text = new TextDecoder("utf-8", { fatal: true }).decode(Buffer.concat(chunks));

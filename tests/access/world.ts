@@ -7,6 +7,7 @@ import { changeStudy } from "@/db/study/change-study";
 import { readStudy } from "@/db/study/study.queries";
 import { makeGroup, TEST_PASSWORD } from "@/db/testing/make-group";
 import { exampleRun, exampleSetUp, makeStudy } from "@/db/testing/make-study";
+import { writeTrace } from "@/db/trace/write-trace";
 import { receiveUpload } from "@/db/upload/receive-upload";
 import { browserRun } from "../browser-run";
 import { Visitor } from "./visitor";
@@ -49,7 +50,14 @@ export async function makeWorld(file: string): Promise<World> {
   await makeGroup(db, outside);
   const studyId = await makeStudy(db, theirs.lead, exampleSetUp(`Study ${marker}`));
   const study = await readStudy(db, theirs.lead, studyId);
-  const run = exampleRun(`R ${marker}`, { id: `run-${name}`, remark: `Remark ${marker}` });
+  const trace = { timeSeconds: Float64Array.of(0, 1, 2, 3), signal: Float64Array.of(0.1, 0.2, 0.3, 0.4) };
+  const sha256 = await db.transaction().execute((trx) => writeTrace(trx, trace));
+  const run = exampleRun(`R ${marker}`, {
+    id: `run-${name}`,
+    remark: `Remark ${marker}`,
+    enteredRate: null,
+    trace: { sha256, points: trace.signal.length, uploadId: null, column: `Column ${marker}` },
+  });
   const changed = await changeStudy(
     db,
     theirs.lead,
