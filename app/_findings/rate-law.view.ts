@@ -225,14 +225,23 @@ function budgetView(sheet: Sheet, fit: RateLawFit): BudgetView | null {
         share: ((100 * one.relative ** 2) / total).toFixed(0),
       })),
     total: print(half),
-    note: constant.budget.some((one) => one.source === TEMPERATURE_LINE && one.relative > 0)
-      ? `Temperature counts at ${ASSUMED_ACTIVATION_ENERGY / 1000} kJ mol^-1, assumed until the study has its own activation energy.`
-      : "",
+    note: [
+      ...(constant.budget.some((one) => one.source === TEMPERATURE_LINE && one.relative > 0)
+        ? [
+            `Temperature counts at ${ASSUMED_ACTIVATION_ENERGY / 1000} kJ mol^-1, assumed until the study has its own activation energy.`,
+          ]
+        : []),
+      STOCKS_NOT_COUNTED,
+    ].join(" "),
   };
 }
 
 /** As the library names the line. */
 const TEMPERATURE_LINE = "Temperature";
+
+/** The sheet holds concentrations run by run: what is wrong with a stock is wrong with all of them, and moves k unseen. */
+const STOCKS_NOT_COUNTED =
+  "An error that the runs share through a stock is not on the sheet and not counted here.";
 
 function pairRows(analysis: StudyAnalysis, fit: RateLawFit): readonly PairRow[] {
   return fit.pairs.flatMap((pair) => {
