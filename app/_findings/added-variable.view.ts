@@ -178,5 +178,6 @@ function captionOf(species: SheetSpecies, others: readonly SheetSpecies[], brack
   const removed =
     others.length === 0 ? "" : `, effect of ${list(others.map((one) => `[${lawName(one)}]`))} removed`;
   const bracket = bracketed ? ` Bracketed marks share one [${lawName(species)}].` : "";
-  return `${species.name.charAt(0).toUpperCase()}${species.name.slice(1)}${removed}. Band: 95 %.${bracket}`;
+  const name = species.name || lawName(species);
+  return `${name.charAt(0).toUpperCase()}${name.slice(1)}${removed}. Band: 95 %.${bracket}`;
 }

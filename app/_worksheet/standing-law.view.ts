@@ -100,7 +100,7 @@ function conditionsOf(sheet: Sheet, fit: RateLawFit | null): string {
     conditions.push(`*I* = ${printUncertain(ionicStrengthMolar.value, null).value} mol L^-1`);
   if (solvent !== "") conditions.push(solvent);
   const names = lawSpecies(sheet)
-    .filter((species) => species.symbol !== "" && species.symbol !== species.name)
+    .filter((species) => species.symbol !== "" && species.name !== "" && species.symbol !== species.name)
     .map((species) => `${lawName(species)} is ${species.name}`);
   const centre =
     fit !== null && standingConstant(sheet, fit).kind === "rate-at-centre" ? centreInWords(sheet, fit) : "";
