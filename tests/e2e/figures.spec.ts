@@ -1,21 +1,6 @@
 import { expect, type Page, test } from "@playwright/test";
 import { signInToDemoStudy } from "./demo-study";
 
-/** Scripts of a page that hold the plot library, by a name that only it uses: the chunk may have any. */
-function plotChunks(page: Page): { readonly addresses: string[]; readonly settled: () => Promise<unknown> } {
-  const addresses: string[] = [];
-  const reading: Promise<void>[] = [];
-  page.on("response", (response) => {
-    if (response.request().resourceType() !== "script") return;
-    reading.push(
-      response.text().then((source) => {
-        if (source.includes("scatterlayer")) addresses.push(response.url());
-      }),
-    );
-  });
-  return { addresses, settled: () => Promise.all(reading) };
-}
-
 function policyViolations(page: Page): string[] {
   const violations: string[] = [];
   page.on("console", (message) => {
@@ -23,29 +8,6 @@ function policyViolations(page: Page): string[] {
   });
   return violations;
 }
-
-test("a figure is a drawing until somebody explores it; the plot is then fetched once for all figures", async ({
-  page,
-}) => {
-  const study = await signInToDemoStudy(page);
-  const chunks = plotChunks(page);
-  const violations = policyViolations(page);
-  for (const station of ["set-up", "runs", "rates", "rate-law"]) {
-    await page.goto(`${study}/${station}`, { waitUntil: "networkidle" });
-  }
-  await chunks.settled();
-  expect(chunks.addresses).toEqual([]);
-
-  const explore = page.getByRole("button", { name: "Explore figure" });
-  await expect(explore).toHaveCount(2);
-  await explore.first().click();
-  await expect(page.locator(".js-plotly-plot .main-svg").first()).toBeVisible();
-  await explore.first().click();
-  await expect(page.locator(".js-plotly-plot")).toHaveCount(2);
-  await chunks.settled();
-  expect(chunks.addresses).toHaveLength(1);
-  expect(violations).toEqual([]);
-});
 
 test("the plot zooms, goes back, hovers and downloads inside the content security policy", async ({
   page,
