@@ -4,8 +4,12 @@ export function numbersIn(text: string): number[] {
   return [...plain.matchAll(/-?\d+(?:\.\d+)?/g)].map(([number]) => Number(number));
 }
 
-/** The power of ten that a column's head gives with its unit, "10⁻⁷ mol L⁻¹ s⁻¹" as set text; one where it gives none. */
-export function factorInHead(head: string): number {
-  const power = /10([\u2212-]?\d+)/.exec(head)?.[1];
-  return power === undefined ? 1 : 10 ** Number(power.replace("\u2212", "-"));
+const MOLAR: Readonly<Record<string, number>> = { mol: 1, mmol: 1e-3, µmol: 1e-6 };
+
+/** What turns a column's numbers into mol/L(/s): its head names unit and power of ten, "10⁻³ mmol L⁻¹ s⁻¹". */
+export function molarFactorInHead(head: string): number {
+  const [, power = "0", unit = ""] = /(?:10([\u2212-]?\d+)\s)?([mµ]?mol)\sL/.exec(head) ?? [];
+  const molar = MOLAR[unit];
+  if (molar === undefined) throw new Error(`“${head}” names no unit of concentration.`);
+  return molar * 10 ** Number(power.replace("\u2212", "-"));
 }
