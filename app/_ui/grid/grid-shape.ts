@@ -9,6 +9,8 @@ export interface GridColumn {
   readonly kind: "number" | "text";
   /** Worked out, not typed: shaded, skipped by paste. */
   readonly readOnly?: boolean;
+  /** Why values under such a heading may not be pasted into this column, another unit; null where they may. */
+  readonly headingFault?: (heading: string) => string | null;
   /** Smallest width, any CSS length. */
   readonly width?: string;
 }

@@ -151,6 +151,21 @@ describe("planPaste", () => {
     expect(plan).toMatchObject({ status: "planned", skippedHeadLines: 2, newRows: 0 });
   });
 
+  it("pastes nothing under a heading that the column refuses", () => {
+    const choosy = columns.map((column) =>
+      column.id === "a"
+        ? { ...column, headingFault: (heading: string) => (heading.includes("mol/L") ? "Says mol/L." : null) }
+        : column,
+    );
+    const block = [
+      ["Run", "[A]0 / mol/L"],
+      ["R02", "1"],
+    ];
+    const plan = planPaste(block, { ...target, columns: choosy });
+    expect(plan.status === "refused" && plan.message).toMatch(/^Says mol\/L\. Nothing was pasted;/);
+    expect(planPaste(block, target).status).toBe("planned");
+  });
+
   it("does not take a column of words for headers: bad cells land as typed", () => {
     expect(
       planPaste(

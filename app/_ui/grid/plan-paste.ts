@@ -34,6 +34,13 @@ export function planPaste(block: Block, { columns, rowCount, from, roomForNewRow
     };
   }
   const skippedHeadLines = headLines(block, columns, from.column);
+  const fault = headingFault(block.slice(0, skippedHeadLines), columns, from.column);
+  if (fault !== null) {
+    return {
+      status: "refused",
+      message: `${fault} Nothing was pasted; convert the values and their heading, or change the unit in Set-up.`,
+    };
+  }
   const body = block.slice(skippedHeadLines);
   const newRows = Math.max(0, from.row + body.length - rowCount);
   if (newRows > roomForNewRows) {
@@ -69,6 +76,16 @@ function headLines(block: Block, columns: readonly GridColumn[], firstColumn: nu
   while (lines < MOST_HEAD_LINES && lines < block.length - 1 && isWords(block[lines] ?? []) === true)
     lines += 1;
   return block.slice(lines).some((row) => isWords(row) === false) ? lines : 0;
+}
+
+function headingFault(heads: Block, columns: readonly GridColumn[], firstColumn: number): string | null {
+  for (const texts of heads) {
+    for (const [offset, text] of texts.entries()) {
+      const fault = columns[firstColumn + offset]?.headingFault?.(text) ?? null;
+      if (fault !== null) return fault;
+    }
+  }
+  return null;
 }
 
 function startsAsNumber(text: string): boolean {

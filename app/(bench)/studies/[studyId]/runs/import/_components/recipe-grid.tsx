@@ -2,6 +2,7 @@
 
 import { useMemo, useState } from "react";
 import type { Change } from "@/app/_import/change";
+import { headingFault } from "@/app/_import/heading-unit";
 import type { SpeciesContext } from "@/app/_import/reading";
 import { Grid } from "@/app/_ui/grid/grid";
 import type { GridColumn, GridRow, GridStep } from "@/app/_ui/grid/grid-shape";
@@ -79,6 +80,7 @@ function gridColumns(species: readonly SpeciesContext[]): GridColumn[] {
           </>
         ),
         kind: "number",
+        headingFault: (heading) => headingFault(heading, one.unit),
         width: "96px",
       }),
     ),
