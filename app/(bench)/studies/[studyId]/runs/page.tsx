@@ -1,4 +1,5 @@
 import type { Metadata } from "next";
+import { redirect } from "next/navigation";
 import type { ReactNode } from "react";
 import { RunMapFigure } from "@/app/_figures/run-map-figure";
 import { SparkLine } from "@/app/_figures/spark-line";
@@ -39,11 +40,14 @@ export default async function RunsPage({ params, searchParams }: Props) {
   const here = `/studies/${studyId}/runs`;
   const view = runSheetView(sheet, analysis);
   const empty = view.groups.length === 0;
-  const edits = (await searchParams).edit !== undefined || (empty && canEdit);
+  const edits = (await searchParams).edit !== undefined;
+  // The first row that is kept must not close the grid over the rows that are still being typed.
+  if (empty && canEdit && !edits) redirect(`${here}?edit`);
   const margin = (
     <RunMargin
       checks={analysis.checks.filter((check) => check.station === "runs")}
       recipe={recipeLines(sheet, traces)}
+      measured={analysis.runs.some((run) => run.rate.kind !== "none")}
       showsKeys={edits && canEdit}
     />
   );

@@ -1,5 +1,6 @@
 "use client";
 
+import { headingFault } from "@/app/_import/heading-unit";
 import { Button } from "@/app/_ui/button";
 import { Dialog } from "@/app/_ui/dialog";
 import { Grid } from "@/app/_ui/grid/grid";
@@ -77,6 +78,7 @@ function gridColumn(column: RunGridColumn): GridColumn {
     id: column.id,
     label: column.label,
     kind: column.kind,
+    headingFault: (heading) => headingFault(heading, column.unit),
     width: column.id === "remark" ? "180px" : column.kind === "number" ? "92px" : "84px",
     head: (
       <>

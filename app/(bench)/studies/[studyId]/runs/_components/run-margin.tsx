@@ -6,16 +6,24 @@ import type { Check } from "@/app/_worksheet/analysis";
 export function RunMargin({
   checks,
   recipe,
+  measured,
   showsKeys,
 }: {
   checks: readonly Check[];
+  /** Some run has a rate, so that there was something to check. */
+  measured: boolean;
   recipe: readonly { readonly name: string; readonly value: string }[];
   showsKeys: boolean;
 }) {
   return (
     <Margin label="Checks">
       <MarginSection title="Checks on the runs">
-        {checks.length === 0 && <p className="text-ink-2">None yet: they come with the first rates.</p>}
+        {checks.length === 0 && !measured && (
+          <p className="text-ink-2">None yet: they come with the first rates.</p>
+        )}
+        {checks.length === 0 && measured && (
+          <CheckNote severity="holds" message="Nothing speaks against these runs." />
+        )}
         {checks.map((check) => (
           <CheckNote
             key={`${check.code} ${check.runId} ${check.message}`}
