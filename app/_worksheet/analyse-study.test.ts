@@ -68,6 +68,27 @@ describe("analysis of a study", () => {
     }
   });
 
+  test("a sheet whose traces give no usable rate says why, and where it is mended", async () => {
+    const { analyseStudy } = await freshly();
+    const missing = async (changed: Sheet) => {
+      const { law } = await analyseStudy(temporary.db, changed);
+      return law.status === "no-law" ? law.missing : "";
+    };
+    // The signal rises with the product; said to follow a reactant, every rate comes out negative.
+    expect(await missing({ ...sheet, followedSpeciesId: "A" })).toMatch(
+      /^No rate is above zero: the signals rise or stand still, while .+ is used up\. In Set-up, /,
+    );
+    const unnamed = sheet.runs.map((run) => ({
+      ...run,
+      concentrations: Object.fromEntries(Object.entries(run.concentrations).filter(([id]) => id !== "B")),
+    }));
+    expect(await missing({ ...sheet, runs: unnamed })).toContain("starting concentration of every species");
+    const bare = sheet.runs.map((run) => ({ ...run, trace: null }));
+    expect(await missing({ ...sheet, runs: bare })).toBe(
+      "No standing run has a rate: traces or entered rates are needed.",
+    );
+  });
+
   test("orders and k come back from the traces, and the strip words them", async () => {
     const { analyseStudy } = await freshly();
     const analysis = await analyseStudy(temporary.db, sheet);

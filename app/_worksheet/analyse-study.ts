@@ -60,7 +60,7 @@ async function analyse(db: Kysely<Database>, sheet: Sheet, hash: string): Promis
     const one = analysed[index];
     return one?.state === "standing" && one.rate.kind !== "none" ? [{ run, rate: one.rate }] : [];
   });
-  const law = findLaw(sheet, carrying);
+  const law = findLaw(sheet, analysed, carrying);
   return {
     hash,
     rule,
@@ -84,10 +84,14 @@ function canCarry(sheet: Sheet, run: SheetRun, rate: RunRate): boolean {
   );
 }
 
-function findLaw(sheet: Sheet, carrying: readonly CarryingRun[]): LawAnalysis {
+function findLaw(
+  sheet: Sheet,
+  analysed: readonly RunAnalysis[],
+  carrying: readonly CarryingRun[],
+): LawAnalysis {
   const fittable = lawSpecies(sheet).length > 0 && carrying.length > 0;
   const result = fittable ? fitRateLaw(lawInput(sheet, carrying)) : null;
-  const missing = missingForLaw(sheet, carrying, result);
+  const missing = missingForLaw(sheet, analysed, carrying, result);
   const fit = result?.status === "fitted" ? result : null;
   if (missing === null && fit !== null) return { status: "law", fit };
   return { status: "no-law", missing: missing ?? "Runs with a rate are needed.", fit };

@@ -25,6 +25,22 @@ describe("lawEffect", () => {
     expect(lawEffect(law("11.8"), law("11.8"))).toBe("*k* stays at 11.8 ± 0.3 L mol^-1 s^-1.");
   });
 
+  it("tells a value that stays, printed to other digits, from one that moves", () => {
+    expect(lawEffect(law("0.85", "0.03"), law("0.847", "0.019"))).toBe(
+      "*k* keeps its value and its interval narrows: 0.85 ± 0.03 before, now 0.847 ± 0.019 L mol^-1 s^-1.",
+    );
+    expect(lawEffect(law("11.8"), law("11.8", "0.4"))).toContain("keeps its value and its interval widens");
+    expect(lawEffect(law("1.9", null), law("1.9", "0.2"))).toContain("gains an interval");
+    expect(lawEffect(law("0.85", "0.03"), law("0.836", "0.019"))).toContain("moves from");
+  });
+
+  it("says that an order counts as exact rather than that it moves from 1.00 to 1", () => {
+    expect(lawEffect(law("11.8", "0.3", "1.00"), law("11.8"))).toMatch(
+      /^The order in B now counts as 1 exactly\. /,
+    );
+    expect(lawEffect(law("11.8"), law("11.8", "0.3", "1.0"))).toMatch(/^The order in B is free, 1\.0\. /);
+  });
+
   it("repeats the power of ten on both sides", () => {
     expect(lawEffect(law("2.86", "0.07", "1", -5), law("2.90", null, "1", -5))).toBe(
       "*k* moves from (2.86 ± 0.07) × 10^-5 L mol^-1 s^-1 to 2.90 × 10^-5 L mol^-1 s^-1.",

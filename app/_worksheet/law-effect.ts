@@ -33,6 +33,9 @@ function constantMoved(before: ConstantView, after: ConstantView): string {
   if (numberInWords(before) === numberInWords(after)) {
     return `${sentenceStart(after.symbol)} stays at ${numberInWords(after)}.`;
   }
+  if (before.number.power === after.number.power && sameValue(before.number.value, after.number.value)) {
+    return `${sentenceStart(after.symbol)} keeps its value and ${intervalMoved(before, after)}: ${bare(before)} before, now ${numberInWords(after)}.`;
+  }
   const from =
     before.number.power === after.number.power && after.number.power === 0
       ? bare(before)
@@ -40,11 +43,37 @@ function constantMoved(before: ConstantView, after: ConstantView): string {
   return `${sentenceStart(after.symbol)} moves from ${from} to ${numberInWords(after)}.`;
 }
 
+/** Whether two printed values are one value to the digits that both show: 0.85 and 0.847. */
+function sameValue(one: string, other: string): boolean {
+  const [a, b] = [one, other].map((text) => Number(text.replace("\u2212", "-").replaceAll("\u202f", "")));
+  const digits = Math.min(decimalsOf(one), decimalsOf(other));
+  return a !== undefined && b !== undefined && a.toFixed(digits) === b.toFixed(digits);
+}
+
+function decimalsOf(text: string): number {
+  return text.split(".")[1]?.length ?? 0;
+}
+
+function intervalMoved({ number: before }: ConstantView, { number: after }: ConstantView): string {
+  if (after.uncertainty === null) return "loses its interval";
+  if (before.uncertainty === null) return "gains an interval";
+  return Number(after.uncertainty) < Number(before.uncertainty)
+    ? "its interval narrows"
+    : "its interval widens";
+}
+
 function ordersMoved(before: LawView, after: LawView): string {
   const earlier = new Map(before.factors.map((factor) => [factor.symbol, factor.order]));
   const moved = after.factors.flatMap(({ symbol, order }) => {
     const was = earlier.get(symbol);
-    return was === undefined || was === order ? [] : [`the order in ${symbol} moves from ${was} to ${order}`];
+    if (was === undefined || was === order) return [];
+    // A free 1.02 and a settled 1 are two statements; a free 1.00 and a settled 1 differ in the statement alone.
+    if (Number(was) === Number(order)) {
+      return order.length < was.length
+        ? [`the order in ${symbol} now counts as ${order} exactly`]
+        : [`the order in ${symbol} is free, ${order}`];
+    }
+    return [`the order in ${symbol} moves from ${was} to ${order}`];
   });
   return moved.length === 0 ? "" : `${sentenceStart(moved.join(", "))}.`;
 }
