@@ -72,7 +72,7 @@ function viewOf(
     speciesId: species.id,
     figure: {
       x: { quantity: `[${name}]`, unit: concentration.unit },
-      y: { quantity: atCentre(fit, others), unit: rate.unit },
+      y: { quantity: quantityOf(others), unit: rate.unit },
       points,
       line: drawable ? { slope, through } : null,
       band: drawable
@@ -91,7 +91,7 @@ function viewOf(
     },
     caption: captionOf(
       species,
-      others,
+      heldAt(fit, others),
       points.some((point) => point.held),
     ),
     label: `Rate against [${name}], order ${order}`,
@@ -113,13 +113,20 @@ function heldRuns(sheet: Sheet, species: SheetSpecies): ReadonlySet<string> {
   return new Set(same.length > 2 ? same.map((run) => run.label) : []);
 }
 
-function atCentre(fit: RateLawFit, others: readonly SheetSpecies[]): string {
-  const at = others.flatMap((one) => {
+function quantityOf(others: readonly SheetSpecies[]): string {
+  const [only, second] = others;
+  if (only === undefined) return "rate";
+  return second === undefined ? `rate, [${lawName(only)}] at the centre` : "rate, others at the centre";
+}
+
+/** "[B] = 5.13 mmol L^-1": where the other species are held in the figure, each with its unit. */
+function heldAt(fit: RateLawFit, others: readonly SheetSpecies[]): readonly string[] {
+  return others.flatMap((one) => {
     const molar = fit.centre.concentrations[lawName(one)];
     if (molar === undefined) return [];
-    return [`[${lawName(one)}] = ${Number((molar * concentrationDisplay(one.unit).factor).toPrecision(3))}`];
+    const { factor, unit } = concentrationDisplay(one.unit);
+    return [`[${lawName(one)}] = ${Number((molar * factor).toPrecision(3))} ${unit}`];
   });
-  return at.length === 0 ? "rate" : `rate at ${at.join(", ")}`;
 }
 
 /** Confidence band of ln v along one concentration, the others at the centre: gᵀ C g with g = (1, ln c). */
@@ -174,9 +181,8 @@ function guidesAbout(slope: number) {
   );
 }
 
-function captionOf(species: SheetSpecies, others: readonly SheetSpecies[], bracketed: boolean): string {
-  const removed =
-    others.length === 0 ? "" : `, effect of ${list(others.map((one) => `[${lawName(one)}]`))} removed`;
+function captionOf(species: SheetSpecies, held: readonly string[], bracketed: boolean): string {
+  const removed = held.length === 0 ? "" : `, rates brought to ${list(held)}`;
   const bracket = bracketed ? ` Bracketed marks share one [${lawName(species)}].` : "";
   const name = species.name || lawName(species);
   return `${name.charAt(0).toUpperCase()}${name.slice(1)}${removed}. Band: 95 %.${bracket}`;

@@ -278,12 +278,22 @@ function residualView(analysis: StudyAnalysis, fit: RateLawFit): ResidualView | 
   };
 }
 
+/** Relative; less is the rounding of the arithmetic and no scatter of runs. */
+const LEAST_SCATTER = 1e-9;
+
 function residualNote(fit: RateLawFit): string {
   const { scatter } = fit.simpleOrders;
   const about = "Each run's departure from the law with free orders.";
   return scatter === null
     ? about
-    : `${about} About the law with simple orders the runs scatter by ${(scatter * 100).toPrecision(2)} %.`;
+    : `${about} About the law with simple orders the runs ${scatter < LEAST_SCATTER ? "do not scatter" : `scatter by ${(scatter * 100).toPrecision(2)} %`}.`;
+}
+
+/** "+0.4 %"; a shift that rounds to nothing has no sign. */
+function signedPercent(percent: number): string {
+  const size = Math.abs(percent).toFixed(1);
+  const sign = Number(size) === 0 ? "" : percent < 0 ? "\u2212" : "+";
+  return `${sign}${size} %`;
 }
 
 function influenceView(sheet: Sheet, analysis: StudyAnalysis, fit: RateLawFit): InfluenceView | null {
@@ -303,7 +313,7 @@ function influenceView(sheet: Sheet, analysis: StudyAnalysis, fit: RateLawFit): 
       {
         run: markedRun(analysis, label),
         value: printUncertain(rateConstant * display.factor, half, { power }).value,
-        shift: `${shift < 0 ? "\u2212" : "+"}${Math.abs(shift).toFixed(1)} %`,
+        shift: signedPercent(shift),
         size: Math.abs(shift),
       },
     ];

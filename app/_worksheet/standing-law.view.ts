@@ -87,8 +87,9 @@ export function spokenLaw(law: LawView, constant: ConstantView): string {
 /** "11.8 ± 0.3 L mol^-1 s^-1" in one line of plain text. */
 export function plainNumber({ number, unit }: { number: PrintedNumber; unit: string }): string {
   const pair = number.uncertainty === null ? number.value : `${number.value} ± ${number.uncertainty}`;
-  const raised = number.power === 0 ? pair : `(${pair}) × 10^${number.power}`;
-  return `${raised} ${unit}`;
+  const bracketed = number.uncertainty === null ? pair : `(${pair})`;
+  const raised = number.power === 0 ? pair : `${bracketed} × 10^${number.power}`;
+  return `${raised} ${unit}`.trim();
 }
 
 function conditionsOf(sheet: Sheet, fit: RateLawFit | null): string {

@@ -4,6 +4,7 @@ import type { RunAnalysis, RunMark, StudyAnalysis } from "@/app/_worksheet/analy
 import { concentrationDisplay, rateDisplay } from "@/app/_worksheet/display-units";
 import { lawSpecies, presentRuns } from "@/app/_worksheet/present-runs";
 import { variedSpecies } from "@/app/_worksheet/run-marks";
+import { plainNumber } from "@/app/_worksheet/standing-law.view";
 import { countInWords } from "@/app/_worksheet/words";
 import type { Sheet, SheetRun, SheetSpecies } from "@/db/sheet/sheet.schema";
 
@@ -124,9 +125,7 @@ function enteredRate(
     standardError === null ? null : standardError * factor,
     { digits: 2 },
   );
-  const pair = number.uncertainty === null ? number.value : `${number.value} ± ${number.uncertainty}`;
-  const raised = number.power === 0 ? pair : `(${pair}) × 10^${number.power}`;
-  return `entered, ${raised} ${unit}`;
+  return `entered, ${plainNumber({ number, unit })}`;
 }
 
 function remarkOf(run: SheetRun, rate: RunAnalysis["rate"]): string {

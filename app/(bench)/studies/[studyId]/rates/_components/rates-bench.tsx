@@ -6,7 +6,6 @@ import { typeset } from "@/app/_ui/prose";
 import { Sheet } from "@/app/_ui/sheet";
 import { Value } from "@/app/_ui/value";
 import { useStudyChange } from "../../../_change/use-study-change";
-import { inWords } from "../estimate-view";
 import type { RatesView, RunRateView } from "../view";
 import { DependencePart, EstimatorTable, SourceTable } from "./how-it-came-about";
 import { RateList } from "./rate-list";
@@ -73,7 +72,10 @@ export function RatesBench({
             <TraceWindow run={run} trace={run.trace} window={window} canEdit={canEdit} />
           )}
           {run.trace === null && run.entered !== null && (
-            <p>This rate was entered by hand, {inWords(run.entered)}, and has no trace to look at.</p>
+            <p>
+              This rate was entered by hand, <Value number={run.entered} unit={rates.rateUnit} />, and has no
+              trace to look at.
+            </p>
           )}
           {run.trace === null && run.entered === null && <p>{run.reason}</p>}
           <div className="mt-4.5 grid grid-cols-2 gap-x-7 gap-y-5 phone:grid-cols-1">
