@@ -80,6 +80,7 @@ export const traceSurveySchema = z.object({
       lowerSlope: z.number(),
       lowerStandardError: z.number(),
       upperSlope: z.number(),
+      upperStandardError: z.number(),
       lackOfFit: lackOfFit.nullable(),
     }),
   ),

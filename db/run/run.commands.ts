@@ -169,7 +169,10 @@ export function setTimeZero(
     db,
     actor,
     target,
-    { verb: "time zero", summary: about(runIds, `time zero at ${timeZeroSeconds} s`) },
+    {
+      verb: "time zero",
+      summary: about(runIds, `time zero at ${String(timeZeroSeconds).replace("-", "\u2212")} s`),
+    },
     onRuns(runIds, (run) => ({ ...run, timeZeroSeconds })),
   );
 }

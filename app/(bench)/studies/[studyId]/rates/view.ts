@@ -63,7 +63,9 @@ export interface RunRateView {
   readonly checks: readonly Check[];
   readonly previous: string | null;
   readonly next: string | null;
-  readonly timeZero: string;
+  /** In the shown unit of time; null for a run without a trace, which has no clock. */
+  readonly timeZero: string | null;
+  readonly timeScale: Pick<TraceScale, "timeUnit" | "secondsPerTime">;
 }
 
 /** What the browser needs to draw the record, and to preview another window with the same function. */
@@ -187,7 +189,11 @@ export function runRateView(
     checks: analysis.checks.filter((check) => check.runId === selected.runId),
     previous: analysis.runs[at - 1]?.label ?? null,
     next: analysis.runs[at + 1]?.label ?? null,
-    timeZero: String(Number(((row?.timeZeroSeconds ?? 0) / scale.secondsPerTime).toPrecision(6))),
+    timeZero:
+      row === undefined || row.trace === null
+        ? null
+        : String(Number((row.timeZeroSeconds / scale.secondsPerTime).toPrecision(6))),
+    timeScale: { timeUnit: scale.timeUnit, secondsPerTime: scale.secondsPerTime },
   };
 }
 

@@ -23,7 +23,15 @@ export function WindowSection({
   canEdit: boolean;
 }) {
   const { shown } = window;
-  if (shown === null) return null;
+  // A time zero behind the last reading leaves no window, and is still there to be mended.
+  const timeZero = canEdit && run.timeZero !== null && (
+    <TimeZeroForm change={change} target={target} saved={run.timeZero} scale={run.timeScale} />
+  );
+  if (shown === null) {
+    return timeZero === false ? null : (
+      <MarginSection title={`Clock of ${run.label}`}>{timeZero}</MarginSection>
+    );
+  }
   return (
     <MarginSection title={`Window of ${run.label}`}>
       <dl className="fact-list">
@@ -38,20 +46,14 @@ export function WindowSection({
         {statusOf(run, window)}
       </p>
       {window.problem !== null && <p className="field-error mt-1">{window.problem}</p>}
-      {canEdit && (
-        <>
-          {(run.byHand || window.isPreview) && (
-            <p className="mt-2">
-              <Button size="small" onClick={window.reset} disabled={window.saving}>
-                Use the study’s rule
-              </Button>
-            </p>
-          )}
-          {run.trace !== null && (
-            <TimeZeroForm change={change} target={target} saved={run.timeZero} scale={run.trace.scale} />
-          )}
-        </>
+      {canEdit && (run.byHand || window.isPreview) && (
+        <p className="mt-2">
+          <Button size="small" onClick={window.reset} disabled={window.saving}>
+            Use the study’s rule
+          </Button>
+        </p>
       )}
+      {timeZero}
     </MarginSection>
   );
 }

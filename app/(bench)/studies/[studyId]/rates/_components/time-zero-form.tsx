@@ -17,7 +17,7 @@ export function TimeZeroForm({
   target: RunTarget;
   /** In the shown unit of time. */
   saved: string;
-  scale: TraceScale;
+  scale: Pick<TraceScale, "timeUnit" | "secondsPerTime">;
   change: StudyChange;
 }) {
   const [error, act, saving] = useActionState(async (_before: string | null, form: FormData) => {
