@@ -97,6 +97,19 @@ describe("the rule of a study", () => {
     expect(choice?.compared.length).toBeGreaterThan(0);
   });
 
+  it("is the same with a run that stands still, which can follow no exponential and carries no weight", () => {
+    const short = studyOf([0.5, 0.6, 0.7, 0.75, 0.8], 1, 0.004, 20);
+    const [still] = studyOf([1e-9], 1, 0.004, 20);
+    if (!still) throw new Error("a run was simulated");
+    const without = chooseStudyRule(short);
+    expect(without?.compared.some(({ pair }) => pair === "exponential-general")).toBe(true);
+    const withStill = chooseStudyRule([...short, { ...still, label: "still" }]);
+    expect(withStill?.rule).toEqual(without?.rule);
+    expect(withStill?.compared.every(({ runs }) => runs === short.length)).toBe(true);
+    const alone = chooseStudyRule([still]);
+    expect(alone === null || alone.compared[0]?.runs === 1).toBe(true);
+  });
+
   it("leaves out runs without a span and runs too short to choose on", () => {
     const [first, second, third] = studyOf([0.3, 0.4, 0.5], 1, 0.002);
     if (!first || !second || !third) throw new Error("three runs were simulated");

@@ -1,5 +1,5 @@
 import { fSurvival } from "kinetics-core/distributions";
-import { BIAS_WEIGHT, LACK_OF_FIT_LEVEL } from "./constants";
+import { BIAS_WEIGHT, LACK_OF_FIT_LEVEL, MOVES } from "./constants";
 import type { EstimatorPair, StudyRule, StudyRuleChoice, StudyTrace } from "./initial-rate";
 import { type RuleOnRun, surveyTrace, type TraceSurvey } from "./survey-trace";
 
@@ -19,11 +19,11 @@ export function chooseStudyRule(traces: readonly StudyTrace[]): StudyRuleChoice 
  *
  * over the runs j: the variance of the mean logarithm of the rates plus the bias they share. An error that all
  * runs share leaves the orders alone and one that differs shows in their scatter, which is why runs are summed
- * before squaring. Rules that some runs cannot follow are not compared, nor is a general order that the traces
+ * before squaring. Rules that some runs cannot follow are not compared (runs that stand still are not asked), nor is a general order that the traces
  * together contradict (mean F, with the degrees of freedom of all runs, p ≤ 0.05). Of equal rules the shorter wins.
  */
 export function chooseFromSurveys(surveys: readonly TraceSurvey[]): StudyRuleChoice | null {
-  const taking = surveys.filter(({ rules }) => rules.length > 0);
+  const taking = askedRuns(surveys.filter(({ rules }) => rules.length > 0));
   const compared = (taking[0]?.rules ?? [])
     .flatMap(({ conversionEnd, pair }) => {
       const runs = taking.flatMap(
@@ -41,6 +41,18 @@ export function chooseFromSurveys(surveys: readonly TraceSurvey[]): StudyRuleCho
     compared,
     reason: reasonOf(best, next),
   };
+}
+
+/**
+ * The runs that the choice is made for. A run without any reaction (a forgotten reagent) fixes neither an exponential
+ * nor a general order, and would bar both from all the others, although it carries no weight; it is not asked,
+ * unless no run moves.
+ */
+function askedRuns(taking: readonly TraceSurvey[]): readonly TraceSurvey[] {
+  const moving = taking.filter(({ rules }) =>
+    rules.some(({ lowerSlope, lowerStandardError }) => Math.abs(lowerSlope) > MOVES * lowerStandardError),
+  );
+  return moving.length > 0 ? moving : taking;
 }
 
 function criterionOf(runs: readonly RuleOnRun[]): number {

@@ -47,6 +47,9 @@ export const AVERAGED_WITHIN = 2;
 /** Conversion ends that a study chooses from. */
 export const STUDY_CONVERSION_ENDS = [0.03, 0.05, 0.08, 0.12, 0.2, 0.3, 0.45, 0.7, 1] as const;
 
+/** Standard errors of a slope beyond which a run moves at all. Among its two dozen windows noise alone reaches 3. */
+export const MOVES = 4;
+
 /** Above this autocorrelation the standard error rests on few independent readings. Simulation. */
 export const HIGH_AUTOCORRELATION = 0.9;
 

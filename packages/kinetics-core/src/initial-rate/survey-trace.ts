@@ -15,6 +15,7 @@ export interface RuleOnRun extends StudyRule {
   readonly lowerSlope: number;
   readonly lowerStandardError: number;
   readonly upperSlope: number;
+  readonly upperStandardError: number;
   /** F of the general order against degree six; null for polynomials. */
   readonly lackOfFit: { readonly ratio: number; readonly above: number; readonly below: number } | null;
 }
@@ -67,6 +68,7 @@ function ruleOnRun(conversionEnd: number, { pair, lower, upper, lackOfFit }: Pai
     lowerSlope: lower.slope,
     lowerStandardError: lower.standardError,
     upperSlope: upper.slope,
+    upperStandardError: upper.standardError,
     lackOfFit: lackOfFit && { ratio: lackOfFit.ratio, above: lackOfFit.above, below: lackOfFit.below },
   };
 }
