@@ -14,6 +14,7 @@ import { Prose } from "@/app/_ui/prose";
 import { Sheet } from "@/app/_ui/sheet";
 import { analyseStudy } from "@/app/_worksheet/analyse-study";
 import { presentRuns } from "@/app/_worksheet/present-runs";
+import { listMembers } from "@/db/member/member.queries";
 import { RunGrid } from "./_components/run-grid";
 import { RunMargin } from "./_components/run-margin";
 import { RunTable } from "./_components/run-table";
@@ -33,12 +34,17 @@ export async function generateMetadata({ params }: Props): Promise<Metadata> {
 
 export default async function RunsPage({ params, searchParams }: Props) {
   const { studyId } = await params;
-  const { sheet, revision, canEdit } = await openStudy(studyId);
+  const { actor, sheet, revision, canEdit } = await openStudy(studyId);
   const db = database();
   const hashes = presentRuns(sheet).flatMap((run) => (run.trace === null ? [] : [run.trace.sha256]));
-  const [analysis, traces] = await Promise.all([analyseStudy(db, sheet), drawnTraces(db, hashes)]);
+  const [analysis, traces, members] = await Promise.all([
+    analyseStudy(db, sheet),
+    drawnTraces(db, hashes),
+    listMembers(db, actor),
+  ]);
+  const initials = new Map([...members].map(([id, member]) => [id, member.initials]));
   const here = `/studies/${studyId}/runs`;
-  const view = runSheetView(sheet, analysis);
+  const view = runSheetView(sheet, analysis, initials);
   const empty = view.groups.length === 0;
   const edits = (await searchParams).edit !== undefined;
   // The first row that is kept must not close the grid over the rows that are still being typed.

@@ -46,12 +46,14 @@ function analysed(of: Sheet): StudyAnalysis {
 
 const traces = new Map([[trace.sha256, { timeSeconds: [1, 2, 3], signal: [0, 18, 36] }]]);
 
+const INITIALS = new Map([["m", "AN"]]);
+
 describe("runSheetView", () => {
-  const view = runSheetView(sheet, analysed(sheet));
+  const view = runSheetView(sheet, analysed(sheet), INITIALS);
 
   it("titles the sheet with its finding", () => {
     expect(view.title).toBe("Five runs, two standing");
-    expect(runSheetView(exampleSheet(), analysed(exampleSheet())).title).toBe("No runs yet");
+    expect(runSheetView(exampleSheet(), analysed(exampleSheet()), INITIALS).title).toBe("No runs yet");
   });
 
   it("groups runs by series and keeps planned ones apart", () => {
@@ -67,7 +69,7 @@ describe("runSheetView", () => {
 
   it("says why a run is set aside or has no rate, and lists the bin", () => {
     const rows = view.groups.flatMap((group) => group.rows);
-    expect(rows.find(({ label }) => label === "R03")?.remark).toBe("Set aside: bubble");
+    expect(rows.find(({ label }) => label === "R03")?.remark).toBe("Set aside: bubble (AN, 14 March 2026)");
     expect(rows.find(({ label }) => label === "R01")?.remark).toBe("Too few points.");
     expect(rows.find(({ label }) => label === "R02")?.entered).toBe(
       "entered, (1.200 ± 0.020) × 10^-3 mmol L^-1 s^-1",
@@ -117,7 +119,7 @@ describe("figures", () => {
   });
 
   it("puts sparks on common axes and names the recipe", () => {
-    const sparks = sparkView(sheet, runSheetView(sheet, analysed(sheet)), traces);
+    const sparks = sparkView(sheet, runSheetView(sheet, analysed(sheet), INITIALS), traces);
     expect(sparks.domain).toEqual({ x: [0, 2], y: [0, 2] });
     expect(sparks.note).toBe("2 s, window marked");
     expect(recipeLines(sheet, traces)).toEqual([

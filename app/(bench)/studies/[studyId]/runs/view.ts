@@ -5,7 +5,7 @@ import { concentrationDisplay, rateDisplay } from "@/app/_worksheet/display-unit
 import { lawSpecies, presentRuns } from "@/app/_worksheet/present-runs";
 import { variedSpecies } from "@/app/_worksheet/run-marks";
 import { plainNumber } from "@/app/_worksheet/standing-law.view";
-import { countInWords } from "@/app/_worksheet/words";
+import { countInWords, dayInWords } from "@/app/_worksheet/words";
 import type { Sheet, SheetRun, SheetSpecies } from "@/db/sheet/sheet.schema";
 
 /** The run sheet as it is drawn: groups of rows by series, every text ready. */
@@ -64,14 +64,19 @@ export interface BinnedRun {
   readonly note: string;
 }
 
-export function runSheetView(sheet: Sheet, analysis: StudyAnalysis): RunSheetView {
+/** @param initials of the group's members by id, for who set a run aside. */
+export function runSheetView(
+  sheet: Sheet,
+  analysis: StudyAnalysis,
+  initials: ReadonlyMap<string, string>,
+): RunSheetView {
   const runs = presentRuns(sheet);
   const species = lawSpecies(sheet);
   const printed = species.map((one) => printConcentrations(one, runs));
   const analysed = new Map(analysis.runs.map((run) => [run.runId, run]));
   const rows = runs.flatMap((run, index) => {
     const found = analysed.get(run.id);
-    return found ? [{ run, analysed: found, row: rowOf(sheet, run, found, printed, index) }] : [];
+    return found ? [{ run, analysed: found, row: rowOf(sheet, run, found, printed, index, initials) }] : [];
   });
   const binned = sheet.runs.filter((run) => run.removedIn !== null);
   return {
@@ -98,6 +103,7 @@ function rowOf(
   { mark, state, rate }: RunAnalysis,
   printed: readonly PrintedConcentrations[],
   index: number,
+  initials: ReadonlyMap<string, string>,
 ): RunRow {
   return {
     runId: run.id,
@@ -111,7 +117,7 @@ function rowOf(
     traceSha256: run.trace?.sha256 ?? null,
     windowSeconds: rate.kind === "estimated" ? rate.initialRate.window : null,
     entered: run.enteredRate === null ? null : enteredRate(sheet, run.enteredRate),
-    remark: remarkOf(run, rate),
+    remark: remarkOf(run, rate, initials),
   };
 }
 
@@ -128,8 +134,11 @@ function enteredRate(
   return `entered, ${plainNumber({ number, unit })}`;
 }
 
-function remarkOf(run: SheetRun, rate: RunAnalysis["rate"]): string {
-  if (run.setAside !== null) return `Set aside: ${run.setAside.reason}`;
+function remarkOf(run: SheetRun, rate: RunAnalysis["rate"], initials: ReadonlyMap<string, string>): string {
+  if (run.setAside !== null) {
+    const who = initials.get(run.setAside.memberId);
+    return `Set aside: ${run.setAside.reason}${who === undefined ? "" : ` (${who}, ${dayInWords(run.setAside.at)})`}`;
+  }
   const measured = run.trace !== null || run.enteredRate !== null;
   const why = measured && rate.kind === "none" ? rate.reason : "";
   return [run.remark, why].filter((part) => part !== "").join(" ");
