@@ -11,6 +11,8 @@ export interface ToastMessage {
   /** Takes the act back; the toast closes once it has resolved. */
   readonly undo?: (() => Promise<void> | void) | undefined;
   readonly severity?: "holds" | "blocks";
+  /** A later message on the same topic takes the place of this one, so that a row of changes leaves one toast. */
+  readonly topic?: string;
 }
 
 const ToastContext = createContext<((message: ToastMessage) => void) | null>(null);
@@ -29,7 +31,9 @@ export function ToastRegion({ children }: { children: ReactNode }) {
   const [toasts, setToasts] = useState<readonly (ToastMessage & { readonly number: number })[]>([]);
   const show = useCallback((message: ToastMessage) => {
     setToasts((earlier) => [
-      ...earlier.slice(1 - KEPT),
+      ...earlier
+        .filter((toast) => toast.topic === undefined || toast.topic !== message.topic)
+        .slice(1 - KEPT),
       { ...message, number: (earlier.at(-1)?.number ?? 0) + 1 },
     ]);
   }, []);

@@ -104,7 +104,7 @@ async function pasteText(page: Page, text: string) {
   }, text);
 }
 
-test("a run is set aside with its effect seen first, taken back, and undone by key and by toast", async ({
+test("a run is set aside with its effect seen first, taken back, and undone and done again by keys", async ({
   page,
 }) => {
   const bench = await makeBench();
@@ -135,7 +135,7 @@ test("a run is set aside with its effect seen first, taken back, and undone by k
   await page.getByRole("button", { name: "Take back" }).click();
   await expect(page.getByRole("heading", { level: 1 })).toHaveText("Seven runs, all standing");
 
-  // Ctrl+Z takes back the taking back; the first toast's Undo then belongs to a row that changed since.
+  // Ctrl+Z takes back the taking back, and Ctrl+Shift+Z does it again.
   await page.getByRole("heading", { level: 1 }).click();
   await page.keyboard.press("Control+z");
   await expect(page.getByRole("heading", { level: 1 })).toHaveText("Seven runs, six standing");

@@ -3,15 +3,20 @@
 import { useCallback, useEffect, useMemo, useRef } from "react";
 import type { ActionResult } from "@/app/_server/action-result";
 import type { ChangedLaw } from "@/app/_server/study-change";
-import { useToast } from "@/app/_ui/toast";
+import { type ToastMessage, useToast } from "@/app/_ui/toast";
 import { undoChange } from "./actions";
 
 /**
  * Says what each change of a study did to the law and offers to take it back: in the toast, and by Ctrl+Z and
- * Ctrl+Shift+Z on the page. Only changes made from this page are taken back by keys, latest first.
+ * Ctrl+Shift+Z on the page. Only changes made from this page are taken back by keys, latest first. With `latestOnly`
+ * one toast stands at a time: where changes follow each other quickly, more would cover what is being changed.
  */
-export function useStudyChange(studyId: string) {
-  const toast = useToast();
+export function useStudyChange(studyId: string, { latestOnly = false }: { latestOnly?: boolean } = {}) {
+  const show = useToast();
+  const toast = useCallback(
+    (message: ToastMessage) => show(latestOnly ? { ...message, topic: TOPIC } : message),
+    [show, latestOnly],
+  );
   const made = useRef<number[]>([]);
   const undone = useRef<number[]>([]);
 
@@ -107,6 +112,8 @@ export function useStudyChange(studyId: string) {
     [announce, report, refuse, undo, redo, isOpen],
   );
 }
+
+const TOPIC = "change of the study";
 
 function sentence({ summary, effect }: ChangedLaw): string {
   return effect === "" ? summary : `${summary} ${effect}`;

@@ -44,7 +44,7 @@ export function useRunDraft({
   view: RunGridView;
 }) {
   const router = useRouter();
-  const { announce, refuse, undo, redo, isOpen } = useStudyChange(studyId);
+  const { announce, refuse, undo, redo, isOpen } = useStudyChange(studyId, { latestOnly: true });
   const [draft, setDraft] = useState<Draft>(emptyDraft);
   const [said, say] = useState("");
   const [conflict, setConflict] = useState<RowConflict | null>(null);
