@@ -3,10 +3,16 @@ import { chooseFromSurveys, chooseStudyRule } from "./choose-study-rule";
 import { estimateInitialRate } from "./estimate-initial-rate";
 import type { StudyTrace } from "./initial-rate";
 import { normalDeviates, progressTo, simulateTrace } from "./simulated-trace";
-import { surveyTrace } from "./survey-trace";
+import { surveyTrace, type TraceSurvey } from "./survey-trace";
 
-function studyOf(conversions: number[], order: number, noise: number, readings = 120): StudyTrace[] {
-  const deviate = normalDeviates(17);
+function studyOf(
+  conversions: number[],
+  order: number,
+  noise: number,
+  readings = 120,
+  seed = 17,
+): StudyTrace[] {
+  const deviate = normalDeviates(seed);
   return conversions.map((conversion, j) => ({
     label: `run ${j + 1}`,
     trace: simulateTrace(
@@ -51,8 +57,9 @@ describe("the rule of a study", () => {
   });
 
   it("follows its formula", () => {
-    // 1/Σu⁻² + 4(Σu⁻²δ/Σu⁻²)² from the estimates that runs give under the rule, line→quadratic to 12 %.
+    // 1/ΣU⁻² + 4(Σu⁻²δ/Σu⁻²)² from the estimates that runs give under the rule, line→quadratic to 12 %.
     const rule = { conversionEnd: 0.12, pair: "line-quadratic" } as const;
+    let reported = 0;
     let weights = 0;
     let biases = 0;
     for (const { trace } of traces) {
@@ -60,10 +67,11 @@ describe("the rule of a study", () => {
       const lower = estimateInitialRate(trace, { signalSpan: 1, rule, estimator: "straight" });
       if (upper.status !== "found" || lower.status !== "found") throw new Error("no estimate");
       const weight = (upper.slope / lower.standardError) ** 2;
+      reported += (upper.slope / upper.standardError) ** 2;
       weights += weight;
       biases += (weight * (lower.slope - upper.slope)) / upper.slope;
     }
-    const expected = 1 / weights + 4 * (biases / weights) ** 2;
+    const expected = 1 / reported + 4 * (biases / weights) ** 2;
     const compared = choice?.compared.find(
       ({ conversionEnd, pair }) => conversionEnd === rule.conversionEnd && pair === rule.pair,
     );
@@ -95,6 +103,33 @@ describe("the rule of a study", () => {
     const choice = chooseStudyRule(lagging);
     expect(choice?.compared.some(({ pair }) => pair === "exponential-general")).toBe(false);
     expect(choice?.compared.length).toBeGreaterThan(0);
+  });
+
+  it("judges a rule by what the reported member knows, not by a lower one that happens to agree with it", () => {
+    const lucky = { conversionEnd: 0.3, pair: "cubic-quartic" } as const;
+    const solid = { conversionEnd: 0.7, pair: "exponential-general" } as const;
+    const survey = (label: string): TraceSurvey => ({
+      label,
+      rules: [
+        {
+          ...lucky,
+          lowerSlope: 1,
+          lowerStandardError: 0.02,
+          upperSlope: 1.001,
+          upperStandardError: 0.3,
+          lackOfFit: null,
+        },
+        {
+          ...solid,
+          lowerSlope: 1,
+          lowerStandardError: 0.03,
+          upperSlope: 1.02,
+          upperStandardError: 0.04,
+          lackOfFit: null,
+        },
+      ],
+    });
+    expect(chooseFromSurveys(["a", "b", "c"].map(survey))?.rule).toEqual(solid);
   });
 
   it("is the same with a run that stands still, which can follow no exponential and carries no weight", () => {
