@@ -76,6 +76,7 @@ export default async function SharedStudyPage({ params }: Props) {
             ) : (
               <p className="law">No law yet. {typeset(law.missing)}</p>
             )}
+            {page.reaction !== "" && <p className="conditions">{page.reaction}</p>}
             <p className="conditions">{typeset(standing.conditions)}</p>
           </section>
           <p className="verdict">

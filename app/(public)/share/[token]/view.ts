@@ -10,6 +10,7 @@ import { type ColumnText, columnOf, type PrintedColumn } from "@/app/_worksheet/
 import { dayInWords } from "@/app/_worksheet/words";
 import type { SharedStudy } from "@/db/share-link/share-link.queries";
 import type { Sheet } from "@/db/sheet/sheet.schema";
+import { reactionInWords } from "./reaction-in-words";
 
 /** Plain props of the shared page, beyond what it has in common with the stations. */
 export interface SharedPageView {
@@ -19,6 +20,8 @@ export interface SharedPageView {
   readonly asOf: string;
   /** What the link shows and when it closes. */
   readonly link: string;
+  /** Both sides and the followed species with its ν; "" where the set-up does not say. */
+  readonly reaction: string;
   readonly evidence: string;
   readonly method: readonly string[];
   readonly runs: SharedRunsView;
@@ -51,6 +54,7 @@ export function sharedPageView(shared: SharedStudy, analysis: StudyAnalysis): Sh
     overline: `Study ${shared.number}, shared by ${shared.groupName}`,
     asOf: `Read-only sheet, as of ${dayInWords(shared.updatedAt)}`,
     link: linkInWords(shared),
+    reaction: reactionInWords(shared.sheet),
     evidence: evidenceInWords(analysis),
     method: methodInWords(shared.sheet, analysis),
     runs: sharedRunsView(shared.sheet, analysis),

@@ -40,7 +40,11 @@ export function RatesBench({
         ) : (
           <>
             {run.label}: initial rate{" "}
-            <data value={window.shown?.exactRate ?? undefined} data-preview={window.isPreview}>
+            <data
+              className="phone:[&_span]:whitespace-normal"
+              value={window.shown?.exactRate ?? undefined}
+              data-preview={window.isPreview}
+            >
               <Value number={shown} unit={rates.rateUnit} />
             </data>
           </>
