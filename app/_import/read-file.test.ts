@@ -403,3 +403,23 @@ describe("runs of the study", () => {
     expect(issue(reading, "run-taken-twice").message).toContain("has a trace already");
   });
 });
+
+describe("a cell far longer than any name", () => {
+  const long = `A${" ".repeat(40_000)}0x`;
+  const rows = Array.from({ length: 20 }, (_, i) => `${i},${i / 10}`).join("\n");
+
+  it.each([
+    ["a name", `"t / s","${long}"\n${rows}`],
+    ["a unit", `t,c\ns,"${long}"\n${rows}`],
+    ["a line of its own", `t,c\n"${long}",1\n${rows}`],
+  ])("where %s stands is read in time that grows with its length", (_, text) => {
+    const context: StudyContext = {
+      ...EMPTY_STUDY,
+      species: [{ id: "a", symbol: "A", name: "ester", unit: "mol/L" }],
+    };
+    const start = process.cpuUsage();
+    expect(readFile(new TextEncoder().encode(text), context, {}).status).toBe("read");
+    // With the square of its length it takes ten seconds and more.
+    expect(process.cpuUsage(start).user / 1e6).toBeLessThan(2);
+  });
+});

@@ -1,7 +1,7 @@
 import { looksNumeric, type NumberFormat, readCell } from "./number";
 import type { ConcentrationUnitName, SpeciesContext } from "./reading";
 import type { Row } from "./rows";
-import { concentrationUnitOf, importedConcentrationToMolar, splitUnit } from "./units";
+import { concentrationUnitOf, importedConcentrationToMolar, LONGEST_HEAD, splitUnit } from "./units";
 
 /**
  * Starting concentrations that a file carries above its data: "[A] / mmol/L;0.5;1.0;2.0", a value over each trace, or
@@ -19,6 +19,7 @@ export interface SpeciesKey {
 
 /** The species that a label names, or null. */
 export function speciesKey(label: string, species: readonly SpeciesContext[]): SpeciesKey | null {
+  if (label.length > LONGEST_HEAD) return null;
   const { name, unit } = splitUnit(label.replace(/[:=]\s*$/, ""));
   const withoutZero = name
     .trim()

@@ -32,9 +32,13 @@ export function concentrationUnitOf(text: string): ConcentrationUnitName | null 
   return match[1] ? "umol/L" : "mol/L";
 }
 
+/** Longer heads carry no unit: looking for one takes time that grows with the square of the length. */
+export const LONGEST_HEAD = 300;
+
 /** "t / s", "Time (min)", "[A] / mmol/L": the name and the unit in it, either of which may be empty. */
 export function splitUnit(cell: string): { readonly name: string; readonly unit: string } {
   const text = cell.trim();
+  if (text.length > LONGEST_HEAD) return { name: text, unit: "" };
   const bracketed = /^(.+?)\s*[([]([^()[\]]*(?:\([^()]*\)[^()[\]]*)?)[)\]]$/.exec(text);
   // "c(A)" is the concentration of A and no quantity c in ampere.
   const isConcentration = /^c(onc)?\.?$/i.test(bracketed?.[1] ?? "");
