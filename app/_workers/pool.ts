@@ -33,3 +33,23 @@ export async function runInPool<Name extends keyof Tasks>(
 ): Promise<ReturnType<Tasks[Name]>> {
   return pool().run(task, { name, transferList: [...moved] });
 }
+
+/** What a computation may take, waiting for a thread included: far above any study of a bench. */
+export const LONGEST_COMPUTATION_MS = 30_000;
+
+/** As `runInPool`, for work whose length its input decides: at the deadline its thread is ended and the work lost. */
+export async function runInPoolWithin<Name extends keyof Tasks>(
+  name: Name,
+  task: Parameters<Tasks[Name]>[0],
+  milliseconds: number,
+): Promise<
+  { readonly status: "done"; readonly value: ReturnType<Tasks[Name]> } | { readonly status: "too-long" }
+> {
+  const signal = AbortSignal.timeout(milliseconds);
+  try {
+    return { status: "done", value: await pool().run(task, { name, signal }) };
+  } catch (error) {
+    if (signal.aborted) return { status: "too-long" };
+    throw error;
+  }
+}

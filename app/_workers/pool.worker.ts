@@ -9,6 +9,7 @@ import {
   type Trace,
   type TraceSurvey,
 } from "kinetics-core/initial-rate";
+import { fitRateLaw, type RateLawInput, type RateLawResult } from "kinetics-core/rate-law";
 import type { Corrections } from "@/app/_import/corrections";
 import { type ImportPreview, previewOf } from "@/app/_import/preview";
 import { readFile } from "@/app/_import/read-file";
@@ -52,4 +53,8 @@ export interface SweepTask {
 
 export function sweepLongTrace({ trace, options }: SweepTask): SlopeAtEnd[] {
   return slopeAgainstWindowEnd(trace, options);
+}
+
+export function fitLargeLaw(input: RateLawInput): RateLawResult {
+  return fitRateLaw(input);
 }

@@ -1,5 +1,4 @@
 import { chooseFromSurveys, type InitialRateOptions, type StudyRuleChoice } from "kinetics-core/initial-rate";
-import { fitRateLaw } from "kinetics-core/rate-law";
 import type { Kysely } from "kysely";
 import { canonicalJson, sha256Of } from "@/db/canonical-json";
 import type { Database } from "@/db/database";
@@ -8,6 +7,7 @@ import type { LawAnalysis, RunAnalysis, RunRate, StudyAnalysis } from "./analysi
 import { signalSpan } from "./assemble";
 import { findChecks } from "./checks/find-checks";
 import { CORE_VERSION } from "./core-version";
+import { fittedLaw } from "./fit-law";
 import { type CarryingRun, lawInput } from "./law-input";
 import { estimated, surveyed } from "./measure-trace";
 import { missingForLaw } from "./missing-law";
@@ -60,7 +60,7 @@ async function analyse(db: Kysely<Database>, sheet: Sheet, hash: string): Promis
     const one = analysed[index];
     return one?.state === "standing" && one.rate.kind !== "none" ? [{ run, rate: one.rate }] : [];
   });
-  const law = findLaw(sheet, analysed, carrying);
+  const law = await findLaw(sheet, analysed, carrying);
   return {
     hash,
     rule,
@@ -84,13 +84,13 @@ function canCarry(sheet: Sheet, run: SheetRun, rate: RunRate): boolean {
   );
 }
 
-function findLaw(
+async function findLaw(
   sheet: Sheet,
   analysed: readonly RunAnalysis[],
   carrying: readonly CarryingRun[],
-): LawAnalysis {
+): Promise<LawAnalysis> {
   const fittable = lawSpecies(sheet).length > 0 && carrying.length > 0;
-  const result = fittable ? fitRateLaw(lawInput(sheet, carrying)) : null;
+  const result = fittable ? await fittedLaw(lawInput(sheet, carrying)) : null;
   const missing = missingForLaw(sheet, analysed, carrying, result);
   const fit = result?.status === "fitted" ? result : null;
   if (missing === null && fit !== null) return { status: "law", fit };

@@ -1,7 +1,7 @@
-import type { RateLawResult } from "kinetics-core/rate-law";
 import type { Sheet } from "@/db/sheet/sheet.schema";
 import type { RunAnalysis } from "./analysis";
 import { rateScale } from "./assemble";
+import type { LawInTime } from "./fit-law";
 import { type CarryingRun, lawName } from "./law-input";
 import { followedSpecies, lawSpecies, presentRuns } from "./present-runs";
 import { distinctLevels } from "./run-marks";
@@ -11,7 +11,7 @@ export function missingForLaw(
   sheet: Sheet,
   analysed: readonly RunAnalysis[],
   carrying: readonly CarryingRun[],
-  result: RateLawResult | null,
+  result: LawInTime | null,
 ): string | null {
   const species = lawSpecies(sheet);
   if (species.length === 0) return "The set-up names no species whose order is wanted.";

@@ -1,5 +1,6 @@
 import type { z } from "zod";
 import { fieldMessages } from "@/app/_server/problem";
+import { isQuickFit } from "@/app/_worksheet/quick-fit";
 import type { Computed } from "./estimate.schema";
 import { computeInitialRate } from "./initial-rate/compute";
 import { initialRateRequest, initialRateResponse } from "./initial-rate/schema";
@@ -13,7 +14,11 @@ export interface Computation<Request extends z.ZodType = z.ZodType, Response ext
   readonly request: Request;
   readonly response: Response;
   readonly compute: (request: z.output<Request>) => Computed<z.input<Response>>;
+  /** Done in some hundredths of a second; the rest goes to the pool. */
+  readonly isQuick: (request: z.output<Request>) => boolean;
 }
+
+const QUICK_READINGS = 5000;
 
 function computation<Request extends z.ZodType, Response extends z.ZodType>(
   entry: Computation<Request, Response>,
@@ -27,6 +32,7 @@ export const initialRateComputation = computation({
   request: initialRateRequest,
   response: initialRateResponse,
   compute: computeInitialRate,
+  isQuick: ({ time, signal }) => Math.max(time.length, signal.length) <= QUICK_READINGS,
 });
 
 export const rateLawComputation = computation({
@@ -35,6 +41,7 @@ export const rateLawComputation = computation({
   request: rateLawRequest,
   response: rateLawResponse,
   compute: computeRateLaw,
+  isQuick: isQuickFit,
 });
 
 /** A request checked against the schema of its computation, then computed; faults carry the path of their place. */

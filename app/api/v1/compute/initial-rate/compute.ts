@@ -1,5 +1,10 @@
 import { studentTQuantile } from "kinetics-core/distributions";
-import { estimateInitialRate } from "kinetics-core/initial-rate";
+import {
+  estimateInitialRate,
+  type InitialRate,
+  type InitialRateOptions,
+  type Trace,
+} from "kinetics-core/initial-rate";
 import type { Estimate } from "kinetics-core/quantities";
 import type { Computed } from "../estimate.schema";
 import type { InitialRateRequest, InitialRateResponse } from "./schema";
@@ -13,25 +18,46 @@ interface Scale {
 
 /** The public face of `estimateInitialRate`: names of the API in, names of the API out, nothing stored. */
 export function computeInitialRate(request: InitialRateRequest): Computed<InitialRateResponse> {
+  const { trace, options } = estimateOf(request);
+  return initialRateFault(request) ?? initialRateAnswer(request, estimateInitialRate(trace, options));
+}
+
+/** What the schema cannot see: a degree for an estimator that has none. */
+export function initialRateFault(request: InitialRateRequest): Computed<InitialRateResponse> | null {
   if (request.degree !== undefined && request.estimator !== "tangent") {
     return fault(
       "degree",
       "A degree goes with the estimator “tangent” only; leave it out or ask for that one.",
     );
   }
-  const level = request.level ?? 0.95;
+  return null;
+}
+
+/** The same request in the names of the library. */
+export function estimateOf(request: InitialRateRequest): { trace: Trace; options: InitialRateOptions } {
   const span = signalSpan(request);
-  const result = estimateInitialRate(
-    { time: request.time, signal: request.signal },
-    {
+  return {
+    trace: { time: request.time, signal: request.signal },
+    options: {
       timeZero: request.timeZero,
       estimator: request.estimator,
-      level,
+      level: levelOf(request),
       ...(span === undefined ? {} : { signalSpan: span }),
       ...(request.window === undefined ? {} : { window: request.window }),
       ...(request.degree === undefined ? {} : { degree: request.degree }),
     },
-  );
+  };
+}
+
+function levelOf(request: InitialRateRequest): number {
+  return request.level ?? 0.95;
+}
+
+export function initialRateAnswer(
+  request: InitialRateRequest,
+  result: InitialRate,
+): Computed<InitialRateResponse> {
+  const level = levelOf(request);
   if (result.status === "too-few-points") return fault(request.window ? "window" : "time", result.message);
   if (result.status === "unusable") return fault(FAULT_PLACES[result.code], result.message);
 

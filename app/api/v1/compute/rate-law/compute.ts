@@ -1,5 +1,5 @@
 import type { Estimate } from "kinetics-core/quantities";
-import { fitRateLaw, type RateConstant, type RateLawFit } from "kinetics-core/rate-law";
+import { fitRateLaw, type RateConstant, type RateLawFit, type RateLawResult } from "kinetics-core/rate-law";
 import type { Computed } from "../estimate.schema";
 import type { RateLawRequest, RateLawResponse } from "./schema";
 
@@ -8,8 +8,10 @@ type Fault = { readonly path: string; readonly message: string };
 /** The public face of `fitRateLaw`: places at fault are named before anything is computed. */
 export function computeRateLaw(request: RateLawRequest): Computed<RateLawResponse> {
   const faults = faultsOf(request);
-  if (faults.length > 0) return { ok: false, errors: faults };
-  const result = fitRateLaw(request);
+  return faults.length > 0 ? { ok: false, errors: faults } : rateLawAnswer(fitRateLaw(request));
+}
+
+export function rateLawAnswer(result: RateLawResult): Computed<RateLawResponse> {
   if (result.status === "fitted") return { ok: true, answer: answerOf(result) };
   return {
     ok: false,
@@ -17,7 +19,8 @@ export function computeRateLaw(request: RateLawRequest): Computed<RateLawRespons
   };
 }
 
-function faultsOf(request: RateLawRequest): Fault[] {
+/** What the schema cannot see: names that do not agree. */
+export function faultsOf(request: RateLawRequest): Fault[] {
   const faults: Fault[] = [];
   const known = new Set(request.species);
   if (known.size < request.species.length) {
