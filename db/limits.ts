@@ -6,6 +6,17 @@ export const POINTS_PER_STUDY = 5_000_000;
 export const BYTES_PER_GROUP = 5 * 1024 ** 3;
 export const BYTES_PER_FILE = 50 * 1024 ** 2;
 
+/**
+ * Sizes between which measured numbers lie in whatever unit, zero aside: far beyond any bench on both sides, and
+ * their squares, powers and quotients stay far from where a double overflows or vanishes.
+ */
+export const MEASURED = { least: 1e-20, most: 1e20 } as const;
+
+export function isMeasurable(value: number): boolean {
+  const size = Math.abs(value);
+  return size === 0 || (size >= MEASURED.least && size <= MEASURED.most);
+}
+
 export const limitSentences = {
   runs: (got: number) =>
     `A study holds at most ${grouped(RUNS_PER_STUDY)} runs and would have ${grouped(got)}. Put the rest into a second study.`,
@@ -17,6 +28,8 @@ export const limitSentences = {
     `A study holds at most ${grouped(POINTS_PER_STUDY)} points and would have ${grouped(got)}. Import every second or tenth reading, or put the rest into a second study.`,
   group: (got: number) =>
     `Your group keeps at most ${inMegabytes(BYTES_PER_GROUP)} and would have ${inMegabytes(got)}. Ask whoever runs this installation for more room.`,
+  measured: (what: string, got: number) =>
+    `${what} would be ${got}, which no measurement gives. Check the power of ten and the unit.`,
   /** \`got\` is null where the file was cut off at the limit and its length is not known. */
   file: (got: number | null) =>
     `The file has ${got === null ? "more" : inMegabytes(got)}; at most ${inMegabytes(BYTES_PER_FILE)} can be read. Split it, or leave out readings that are not needed.`,

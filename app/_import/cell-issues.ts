@@ -69,7 +69,7 @@ function single(cell: CellFinding, isTime: boolean, places: CellPlaces): Issue {
   if (cell.reading.kind === "out-of-range") {
     return {
       ...base,
-      message: `${quoted(cell.text)} is beyond what a number can hold here (about 10⁻³⁰⁸ to 10³⁰⁸).`,
+      message: `${quoted(cell.text)} is beyond what a reading can be here (10⁻³⁰⁸ to 10²⁰ in size); instruments write such numbers for an overflow.`,
       repairs: [leaveOut],
     };
   }

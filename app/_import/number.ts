@@ -1,3 +1,5 @@
+import { MEASURED } from "@/db/limits";
+
 /**
  * Numbers as people and instruments write them, read to exactly the double of the literal: decimal point or comma,
  * grouped thousands, scientific notation, the true minus U+2212. A cell is never half read: "12abc" is no number.
@@ -14,7 +16,7 @@ export type CellReading =
   | { readonly kind: "no-reading" }
   /** One mark and three digits where the mark is not the decimal mark: 1 234 or 1.234. */
   | { readonly kind: "ambiguous"; readonly asDecimal: number; readonly asGrouped: number }
-  /** Too large or too small for a double. */
+  /** Larger than any reading, or too small for a double. */
   | { readonly kind: "out-of-range" }
   | { readonly kind: "text" };
 
@@ -87,7 +89,7 @@ export function plainNumber(cell: string, format: NumberFormat): number {
   const literal = comma ? cell.replace(",", ".") : cell;
   if (format.decimalMark === "either" || !isPlain(literal)) return Number.NaN;
   const value = Number(literal);
-  return value === 0 || !Number.isFinite(value) ? Number.NaN : value;
+  return value === 0 || Math.abs(value) > MEASURED.most ? Number.NaN : value;
 }
 
 function isPlain(text: string): boolean {
@@ -96,7 +98,7 @@ function isPlain(text: string): boolean {
 
 function fromLiteral(literal: string): CellReading {
   const value = Number(literal);
-  if (!Number.isFinite(value)) return { kind: "out-of-range" };
+  if (Math.abs(value) > MEASURED.most) return { kind: "out-of-range" };
   if (value === 0 && /[1-9]/.test(literal.split(/[eE]/)[0] ?? "")) return { kind: "out-of-range" };
   return { kind: "number", value };
 }

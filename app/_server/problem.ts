@@ -2,6 +2,9 @@ import { STATUS_CODES } from "node:http";
 import type { z } from "zod";
 import type { FieldMessage } from "./action-result";
 
+/** Of 400,000 bad numbers the first hundred say enough; all of them would make an answer of 33 MB. */
+const MOST_ERRORS = 100;
+
 /** A refusal of the HTTP API as RFC 9457 problem details. `detail` is a sentence with the way out. */
 export function problem(
   status: number,
@@ -13,7 +16,7 @@ export function problem(
     title: STATUS_CODES[status] ?? "Error",
     status,
     detail,
-    ...(more.errors === undefined ? {} : { errors: more.errors }),
+    ...(more.errors === undefined ? {} : { errors: more.errors.slice(0, MOST_ERRORS) }),
   };
   return new Response(JSON.stringify(body), {
     status,

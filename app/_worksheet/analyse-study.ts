@@ -2,6 +2,7 @@ import { chooseFromSurveys, type InitialRateOptions, type StudyRuleChoice } from
 import type { Kysely } from "kysely";
 import { canonicalJson, sha256Of } from "@/db/canonical-json";
 import type { Database } from "@/db/database";
+import { isMeasurable } from "@/db/limits";
 import type { Sheet, SheetRun } from "@/db/sheet/sheet.schema";
 import type { LawAnalysis, RunAnalysis, RunRate, StudyAnalysis } from "./analysis";
 import { signalSpan } from "./assemble";
@@ -75,11 +76,12 @@ const NOT_MEASURED: RunRate = {
   reason: "It has neither a trace nor an entered rate. Import its trace or enter its rate on Runs.",
 };
 
-/** Whether a run's logarithms exist: a positive rate and a positive concentration of every species of the law. */
+/** Whether a run's logarithms exist: a positive rate that a measurement can give and a positive concentration of every species of the law. */
 function canCarry(sheet: Sheet, run: SheetRun, rate: RunRate): boolean {
   return (
     rate.kind !== "none" &&
     rate.molarPerSecond > 0 &&
+    isMeasurable(rate.molarPerSecond) &&
     lawSpecies(sheet).every((species) => (run.concentrations[species.id]?.molar ?? 0) > 0)
   );
 }

@@ -1,4 +1,4 @@
-import { limitSentences, POINTS_PER_STUDY, RUNS_PER_STUDY, SPECIES_PER_STUDY } from "../limits";
+import { isMeasurable, limitSentences, POINTS_PER_STUDY, RUNS_PER_STUDY, SPECIES_PER_STUDY } from "../limits";
 import type { Sheet } from "./sheet.schema";
 import type { SheetRows } from "./sheet-rows";
 
@@ -7,7 +7,7 @@ import type { SheetRows } from "./sheet-rows";
  * says what a sheet can be, this says what its rows must be to each other.
  */
 export function sheetProblem(sheet: Sheet): string | undefined {
-  return speciesProblem(sheet) ?? runProblem(sheet);
+  return speciesProblem(sheet) ?? runProblem(sheet) ?? numberProblem(sheet);
 }
 
 /** The same for numbers of rows, which the schema would only throw at. The bin counts: its runs are kept. */
@@ -58,4 +58,55 @@ function runProblem({ runs }: Sheet): string | undefined {
   }
   if (points > POINTS_PER_STUDY) return limitSentences.points(points);
   return undefined;
+}
+
+/** A number that overflows on its way through the analysis would leave every page of the study without one. */
+function numberProblem(sheet: Sheet): string | undefined {
+  for (const { what, value } of measuredNumbers(sheet)) {
+    if (!isMeasurable(value)) return limitSentences.measured(what, value);
+  }
+  return undefined;
+}
+
+interface MeasuredNumber {
+  readonly what: string;
+  readonly value: number;
+}
+
+function* measuredNumbers({ conditions, signal, species, runs }: Sheet): Generator<MeasuredNumber> {
+  yield* uncertainNumbers("The temperature in K", conditions.temperatureKelvin);
+  yield* uncertainNumbers("The ionic strength in mol/L", conditions.ionicStrengthMolar);
+  yield* uncertainNumbers("The path length in cm", conditions.pathLengthCentimetre);
+  if (conditions.wavelengthNanometre !== null)
+    yield { what: "The wavelength in nm", value: conditions.wavelengthNanometre };
+  if (signal?.kind === "calibrated") yield* uncertainNumbers("The signal per mol/L", signal.perMolar);
+  const symbols = new Map(species.map((one) => [one.id, one.symbol]));
+  for (const run of runs) {
+    for (const [id, { molar }] of Object.entries(run.concentrations))
+      yield {
+        what: `The concentration of ${symbols.get(id) ?? "a species"} in ${run.label}, in mol/L,`,
+        value: molar,
+      };
+    yield { what: `The time zero of ${run.label} in s`, value: run.timeZeroSeconds };
+    if (run.temperatureKelvin !== null)
+      yield { what: `The temperature of ${run.label} in K`, value: run.temperatureKelvin };
+    if (run.enteredRate !== null) {
+      const { molarPerSecond, standardError } = run.enteredRate;
+      yield { what: `The rate of ${run.label} in mol/L/s`, value: molarPerSecond };
+      yield { what: `The standard error of the rate of ${run.label} in mol/L/s`, value: standardError ?? 0 };
+    }
+    if (run.window !== null) {
+      yield { what: `The start of the window of ${run.label} in s`, value: run.window.fromSeconds };
+      yield { what: `The end of the window of ${run.label} in s`, value: run.window.toSeconds };
+    }
+  }
+}
+
+function* uncertainNumbers(
+  what: string,
+  quantity: { readonly value: number; readonly standardUncertainty: number } | null,
+): Generator<MeasuredNumber> {
+  if (quantity === null) return;
+  yield { what, value: quantity.value };
+  yield { what: `${what} has an uncertainty that`, value: quantity.standardUncertainty };
 }

@@ -151,6 +151,20 @@ describe("one change", () => {
     expect(await present()).toEqual(before);
   });
 
+  test("to a number that no measurement gives is refused by name, in whatever place of the sheet", async () => {
+    const target = { studyId, base };
+    const concentration = await editRun(temporary.db, group.lead, target, "run-R02", {
+      concentrations: { a: { molar: 1e308, relativeUncertainty: 0 } },
+    });
+    expect(concentration).toMatchObject({ status: "refused", message: expect.stringContaining("R02") });
+    const rate = await editRun(temporary.db, group.lead, target, "run-R02", {
+      enteredRate: { molarPerSecond: 1e-300, standardError: null },
+    });
+    expect(rate).toMatchObject({ status: "refused", message: expect.stringContaining("1e-300") });
+    const start = await setTimeZero(temporary.db, group.lead, target, ["run-R02"], -1e21);
+    expect(start).toMatchObject({ status: "refused", message: expect.stringContaining("time zero") });
+  });
+
   test("that fails in the middle leaves nothing", async () => {
     const before = await present();
     const failing = changeStudy(

@@ -127,4 +127,41 @@ test.describe("bad input", () => {
     };
     await expectProblem(await fetch(origin + PATH, init), 413);
   });
+
+  test("with a number that would overflow is answered 422 and names it", async () => {
+    const request = { species: ["A"], runs: [{ label: "R1", concentrations: { A: 1e308 }, rate: 1 }] };
+    const body = await expectProblem(await call(ours(), JSON.stringify(request)), 422);
+    expect(body.errors).toEqual([
+      { path: "runs.0.concentrations.A", message: expect.stringMatching(/power of ten/) },
+    ]);
+  });
+
+  test("with a species named like what every object has is answered 422", async () => {
+    for (const name of ["constructor", "__proto__", "toString"]) {
+      const runs = `[{"label":"R1","concentrations":{"${name}":1},"rate":1}]`;
+      await expectProblem(await call(ours(), `{"species":["${name}"],"runs":${runs}}`), 422);
+    }
+  });
+
+  test("with a hundred thousand faults is answered with the first hundred", async () => {
+    const numbers = Array.from({ length: 100_000 }, () => "x");
+    const response = await fetch(`${origin}/api/v1/compute/initial-rate`, {
+      method: "POST",
+      headers: { "Content-Type": "application/json", ...ours() },
+      body: JSON.stringify({ time: numbers, signal: numbers }),
+    });
+    expect((await expectProblem(response, 422)).errors).toHaveLength(100);
+  });
+});
+
+test("a large call is computed in the pool and answered like any other", async () => {
+  const { token } = await createToken(db, actor, { name: "large", scope: "read", expiresAt: null });
+  const runs = Array.from({ length: 500 }, (_, i) => {
+    const level = 1 + (i % 7);
+    return { label: `R${i}`, concentrations: { A: level / 1000 }, rate: (0.02 * level) / 1000 };
+  });
+  const response = await call(bearer(token), JSON.stringify({ species: ["A"], runs }));
+  expect(response.status).toBe(200);
+  const answer: { rateConstant: { estimate: number } } = await response.json();
+  expect(answer.rateConstant.estimate).toBeCloseTo(0.02, 10);
 });

@@ -1,4 +1,13 @@
 import { z } from "zod";
+import { isMeasurable, MEASURED } from "@/db/limits";
+
+/** A number that went into the computation: zero, or of a size that some measurement in some unit has. */
+export const measured = z.number().refine(isMeasurable, {
+  error: `must be 0 or between ${MEASURED.least} and ${MEASURED.most} in size; check the power of ten and the unit`,
+});
+
+/** A time or a signal: small ones do no harm, large ones overflow when they are squared. */
+export const reading = z.number().min(-MEASURED.most).max(MEASURED.most);
 
 /** The shapes that every compute answer is made of. Absent is `null`: never NaN, never a made-up zero. */
 export const estimate = z

@@ -35,7 +35,8 @@ import { heldOrders, type UsableRun, usableRuns } from "./usable-runs";
  * freedom there is none. Shared errors that touch every run move k and never an order.
  *
  * `too-few-runs`: one usable run while an order is free. `no-positive-rates`: no run with a usable rate.
- * `no-species`: a law needs at least one concentration.
+ * `no-species`: a law needs at least one concentration. `beyond-precision`: sizes that no double can weigh against
+ * each other.
  */
 export function fitRateLaw(input: RateLawInput): RateLawResult {
   if (input.species.length === 0)
@@ -62,7 +63,18 @@ export function fitRateLaw(input: RateLawInput): RateLawResult {
       message: `${usable.runs[0]?.label ?? "One run"} alone gives one rate and no order. At least ${free + 1} runs are needed for ${free === 1 ? "one order" : `${free} orders`}, one more for an interval; or hold the orders.`,
       flags: usable.flags,
     };
-  return fitUsable(input, usable.runs, usable.scale, held, usable.flags);
+  try {
+    return fitUsable(input, usable.runs, usable.scale, held, usable.flags);
+  } catch (error) {
+    // Weights that differ by more than a double holds end in a singular matrix or a probability of NaN.
+    if (!(error instanceof RangeError)) throw error;
+    return {
+      status: "beyond-precision",
+      message:
+        "The concentrations, rates or uncertainties of these runs differ by so many powers of ten that no law can be computed from them. Look for a wrong power of ten or a wrong unit.",
+      flags: usable.flags,
+    };
+  }
 }
 
 /** Settings every part of one analysis shares. */

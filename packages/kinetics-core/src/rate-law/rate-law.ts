@@ -184,7 +184,7 @@ export interface RateLawFit {
 export type RateLawResult =
   | RateLawFit
   | {
-      readonly status: "too-few-runs" | "no-positive-rates" | "no-species";
+      readonly status: "too-few-runs" | "no-positive-rates" | "no-species" | "beyond-precision";
       readonly message: string;
       readonly flags: readonly Flag[];
     };

@@ -150,3 +150,18 @@ describe("rates too uncertain for a logarithm", () => {
     );
   });
 });
+
+describe("runs whose sizes no double can weigh against each other", () => {
+  it("give a sentence and never an exception", () => {
+    // ln v of the first run is known to 1 part in 10³⁰⁰, that of the others is not known at all.
+    const runs = [
+      { label: "R01", concentrations: { A: 0.2 }, rate: 1e300, rateStandardError: 1 },
+      { label: "R02", concentrations: { A: 3 }, rate: 0.2, rateStandardError: 3 },
+      { label: "R03", concentrations: { A: 1 }, rate: 1, rateStandardError: 0.1 },
+    ];
+    expect(fitRateLaw({ species: ["A"], runs })).toMatchObject({
+      status: "beyond-precision",
+      message: expect.stringMatching(/power of ten/),
+    });
+  });
+});

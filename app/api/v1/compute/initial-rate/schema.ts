@@ -1,5 +1,5 @@
 import { z } from "zod";
-import { estimate, flag, level } from "../estimate.schema";
+import { estimate, flag, level, measured, reading } from "../estimate.schema";
 
 const estimator = z.enum(["straight", "tangent", "exponential", "integrated"]);
 
@@ -8,35 +8,34 @@ const MAX_POINTS = 200_000;
 
 export const initialRateRequest = z
   .object({
-    time: z.array(z.number()).max(MAX_POINTS).meta({ description: "Strictly increasing, in any one unit." }),
-    signal: z.array(z.number()).max(MAX_POINTS).meta({ description: "Same length as `time`." }),
+    time: z.array(reading).max(MAX_POINTS).meta({ description: "Strictly increasing, in any one unit." }),
+    signal: z.array(reading).max(MAX_POINTS).meta({ description: "Same length as `time`." }),
     estimator: estimator
       .or(z.literal("auto"))
       .default("auto")
       .meta({ description: "`auto` chooses window and estimator by their expected error." }),
-    window: z.tuple([z.number(), z.number()]).optional().meta({
+    window: z.tuple([reading, reading]).optional().meta({
       description: "First and last time to use, in the unit of `time`. Without it the window is chosen.",
     }),
-    timeZero: z.number().default(0).meta({
+    timeZero: reading.default(0).meta({
       description: "Time of mixing, in the unit of `time`; the slope is taken there.",
     }),
     degree: z
       .union([z.literal(2), z.literal(3), z.literal(4)])
       .optional()
       .meta({ description: "Degree of the polynomial when `estimator` is `tangent`; 2 by default." }),
-    initialConcentration: z.number().positive().optional().meta({
+    initialConcentration: measured.positive().optional().meta({
       description:
         "Starting concentration that complete conversion uses up: of the followed reactant or, when a product is followed (positive `stoichiometricNumber`), of the limiting reactant with stoichiometric number −1. Conversions rest on it.",
     }),
     signalPerConcentration: z
-      .object({ value: z.number(), standardUncertainty: z.number().nonnegative() })
+      .object({ value: measured, standardUncertainty: measured.nonnegative() })
       .refine((factor) => factor.value !== 0, { message: "must not be zero", path: ["value"] })
       .optional()
       .meta({
         description: "Signal per concentration, for absorbance ε·l. Without it the signal is its own unit.",
       }),
-    stoichiometricNumber: z
-      .number()
+    stoichiometricNumber: measured
       .refine((number) => number !== 0, { message: "must not be zero" })
       .optional()
       .meta({

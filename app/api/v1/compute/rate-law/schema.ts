@@ -1,7 +1,12 @@
 import { z } from "zod";
-import { estimate, flag, level, rateConstant } from "../estimate.schema";
+import { estimate, flag, level, measured, rateConstant } from "../estimate.schema";
 
-const speciesName = z.string().min(1).max(80);
+/** The names that every object of the language carries, such as "constructor", would be found where nothing was given. */
+const speciesName = z
+  .string()
+  .min(1)
+  .max(80)
+  .refine((name) => !(name in Object.prototype), { error: "cannot be used as a name; write another" });
 const label = z.string().min(1).max(80);
 const relative = z.number().min(0).max(1);
 
@@ -14,9 +19,9 @@ export const rateLawRequest = z
       .array(
         z.object({
           label,
-          concentrations: z.record(speciesName, z.number().nonnegative()),
-          rate: z.number().meta({ description: "Rate of reaction at the start, in concentration per time." }),
-          rateStandardError: z.number().nonnegative().optional(),
+          concentrations: z.record(speciesName, measured.nonnegative()),
+          rate: measured.meta({ description: "Rate of reaction at the start, in concentration per time." }),
+          rateStandardError: measured.nonnegative().optional(),
           relativeUncertainty: z.record(speciesName, relative).optional().meta({
             description: "Private (pipetting) part of each concentration's relative standard uncertainty.",
           }),
@@ -31,10 +36,10 @@ export const rateLawRequest = z
     shared: z
       .array(
         z.object({
-          species: z.array(speciesName),
+          species: z.array(speciesName).max(12),
           onRate: z.boolean().optional(),
           relative,
-          runs: z.array(label).optional(),
+          runs: z.array(label).max(2000).optional(),
         }),
       )
       .max(200)
