@@ -83,11 +83,14 @@ function exact(value: number): number {
   return Number(value.toPrecision(12));
 }
 
+/** The library's own pattern ends at a line break, so that "=1+1" and a second line would pass. */
+const FORMULA = /^\s*[=+\-@\uff1d\uff0b\uff0d\uff20]|^[\t\r\n]/;
+
 /** A line a row. A cell that a spreadsheet would run as a formula gets an apostrophe; labels come from people. */
 export function commaSeparated(rows: readonly (readonly (string | number | null)[])[]): string {
   if (rows.length === 0) return "";
   return `${Papa.unparse(
     rows.map((row) => [...row]),
-    { escapeFormulae: true, newline: "\n" },
+    { escapeFormulae: FORMULA, newline: "\n" },
   )}\n`;
 }

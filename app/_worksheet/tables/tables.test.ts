@@ -47,6 +47,24 @@ describe("the table of traces", () => {
   });
 });
 
+describe("the table of a long trace", () => {
+  it("comes in parts of some thousand readings and misses none between them", async () => {
+    const timeSeconds = Float64Array.from({ length: 12_001 }, (_, i) => i / 10);
+    const long = await temporary.db
+      .transaction()
+      .execute((trx) => writeTrace(trx, { timeSeconds, signal: timeSeconds }));
+    const trace = { sha256: long, points: timeSeconds.length, uploadId: null, column: "c" };
+    const sheet = exampleSheet({ runs: [exampleRun(0, { A: 1e-3, B: 1e-3 }, { trace })] });
+    const times: number[] = [];
+    for await (const part of tracesTable(temporary.db, sheet)) {
+      const rows = cells(part.trimEnd());
+      expect(rows.length).toBeLessThanOrEqual(5000);
+      times.push(...rows.map(([, time]) => Number(time)));
+    }
+    expect(times.slice(1)).toEqual([...timeSeconds]);
+  });
+});
+
 describe("the table of runs and rates", () => {
   it("says units in its heads, the reason of a run set aside, and nothing where nothing is known", async () => {
     const entered = (molarPerSecond: number) => ({ molarPerSecond, standardError: null });
@@ -79,5 +97,8 @@ describe("the table of runs and rates", () => {
 
   it("lets no label run as a formula in a spreadsheet, and leaves negative numbers alone", () => {
     expect(commaSeparated([["=1+1", "@x", -0.5, null]])).toBe(`"'=1+1","'@x",-0.5,\n`);
+    expect(commaSeparated([["=1+1\nover two lines", "\n=1+1", " =1+1", "\uff1d1+1"]])).toBe(
+      `"'=1+1\nover two lines","'\n=1+1","' =1+1","'\uff1d1+1"\n`,
+    );
   });
 });

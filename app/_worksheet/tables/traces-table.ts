@@ -5,8 +5,11 @@ import { presentRuns } from "../present-runs";
 import { traceReader } from "../trace-reader";
 import { commaSeparated } from "./runs-and-rates";
 
+/** Some milliseconds of work, after which other requests have their turn: one trace may hold millions. */
+const READINGS_AT_ONCE = 5000;
+
 /**
- * All readings of a study in long layout, a run at a time, so that a study of millions of points is never held as one
+ * All readings of a study in long layout, some thousands at a time, so that a study of millions of points is never held as one
  * text. Times in seconds on each trace's own clock, signals as they were imported.
  */
 export async function* tracesTable(db: Kysely<Database>, sheet: Sheet): AsyncGenerator<string> {
@@ -15,11 +18,15 @@ export async function* tracesTable(db: Kysely<Database>, sheet: Sheet): AsyncGen
   for (const run of presentRuns(sheet)) {
     if (run.trace === null) continue;
     const { time, signal } = await traceReader(db)(run.trace.sha256);
-    const rows = Array.from({ length: time.length }, (_, index) => [
-      run.label,
-      time[index] ?? null,
-      signal[index] ?? null,
-    ]);
-    yield commaSeparated(rows);
+    for (let start = 0; start < time.length; start += READINGS_AT_ONCE) {
+      const length = Math.min(READINGS_AT_ONCE, time.length - start);
+      yield commaSeparated(
+        Array.from({ length }, (_, index) => [
+          run.label,
+          time[start + index] ?? null,
+          signal[start + index] ?? null,
+        ]),
+      );
+    }
   }
 }
