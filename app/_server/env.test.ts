@@ -26,6 +26,15 @@ describe("readEnvironment", () => {
     }
   });
 
+  it("listens beyond this machine only where the demo is refused", () => {
+    expect(readEnvironment({}).host).toBe("127.0.0.1");
+    expect(readEnvironment({ PUBLIC_URL: "http://localhost:3000" }).host).toBe("127.0.0.1");
+    expect(readEnvironment({ PUBLIC_URL: "https://kinetics.example" })).toMatchObject({
+      isLoopback: false,
+      host: "0.0.0.0",
+    });
+  });
+
   it.each([
     ["PUBLIC_URL", "kinetics.example"],
     ["PUBLIC_URL", "ftp://kinetics.example"],

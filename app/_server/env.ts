@@ -28,6 +28,8 @@ export interface Environment {
   readonly publicOrigin: string | null;
   /** Nobody but this machine is meant to reach the server, so that the demo's accounts may exist. */
   readonly isLoopback: boolean;
+  /** What the server listens on: this machine alone, unless PUBLIC_URL names another. */
+  readonly host: "127.0.0.1" | "0.0.0.0";
   readonly port: number;
   /** Absolute path of the SQLite file; uploads and the session secret live beside it. */
   readonly databaseFile: string;
@@ -45,9 +47,11 @@ export function readEnvironment(variables: Record<string, string | undefined>): 
   }
   const { PUBLIC_URL, PORT, AUTH_SECRET, DEMO_PASSWORD } = parsed.data;
   const publicUrl = PUBLIC_URL === undefined ? null : new URL(PUBLIC_URL);
+  const isLoopback = publicUrl === null || LOOPBACK_NAMES.has(publicUrl.hostname);
   return {
     publicOrigin: publicUrl?.origin ?? null,
-    isLoopback: publicUrl === null || LOOPBACK_NAMES.has(publicUrl.hostname),
+    isLoopback,
+    host: isLoopback ? "127.0.0.1" : "0.0.0.0",
     port: PORT,
     databaseFile: path.resolve(/* turbopackIgnore: true */ databaseFile()),
     authSecret: AUTH_SECRET ?? null,

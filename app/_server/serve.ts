@@ -11,8 +11,6 @@ import { env } from "./env";
  */
 const repository = path.resolve(import.meta.dirname, "../..");
 const ADDRESS = env.publicOrigin ?? `http://localhost:${env.port}`;
-/** Without PUBLIC_URL nobody but this machine is answered. */
-const HOST = env.publicOrigin === null ? "127.0.0.1" : "0.0.0.0";
 const FIRST_GROUP = 'A first group is made by: pnpm seed --group "Name of the group" --lead name@example.org';
 const READY_WITHIN_MS = 60_000;
 
@@ -29,7 +27,7 @@ async function serve(): Promise<number> {
   }
   const server = spawn(
     process.execPath,
-    ["node_modules/next/dist/bin/next", "start", "--hostname", HOST, "--port", String(env.port)],
+    ["node_modules/next/dist/bin/next", "start", "--hostname", env.host, "--port", String(env.port)],
     {
       cwd: repository,
       stdio: ["ignore", "inherit", "inherit"],
