@@ -44,7 +44,6 @@ export async function receiveUpload(
   if (file.declaredBytes !== null && file.declaredBytes > BYTES_PER_FILE) {
     return { status: "refused", code: "too-large", message: limitSentences.file(file.declaredBytes) };
   }
-  const kept = await bytesKeptByGroup(db, actor.groupId);
 
   const { uploadId, blobId } = await begin(db, actor, file);
   let received: Received;
@@ -54,16 +53,23 @@ export async function receiveUpload(
     await drop(db, uploadId, blobId);
     throw error;
   }
-  const refusal = refusalOf(received, kept, file.declaredBytes);
+  const refusal = await db.transaction().execute(async (trx) => {
+    // Asked once the file is whole: files that arrive beside each other count against each other.
+    const kept = await bytesKeptByGroup(trx, actor.groupId);
+    const found = refusalOf(received, kept, file.declaredBytes);
+    if (found === undefined) {
+      await trx
+        .updateTable("incoming_upload")
+        .set({ state: "received", size: received.size, sha256: received.sha256 })
+        .where("id", "=", uploadId)
+        .execute();
+    }
+    return found;
+  });
   if (refusal !== undefined) {
     await drop(db, uploadId, blobId);
     return refusal;
   }
-  await db
-    .updateTable("incoming_upload")
-    .set({ state: "received", size: received.size, sha256: received.sha256 })
-    .where("id", "=", uploadId)
-    .execute();
   return { status: "received", uploadId, sha256: received.sha256, size: received.size };
 }
 

@@ -2,7 +2,7 @@ import { createHash, randomBytes } from "node:crypto";
 import { sql } from "kysely";
 import { afterEach, beforeEach, expect, test } from "vitest";
 import { PART_BYTES } from "../blob/blob.commands";
-import { BYTES_PER_FILE } from "../limits";
+import { BYTES_PER_FILE, BYTES_PER_GROUP } from "../limits";
 import { addTraces } from "../run/add-traces";
 import { addRuns } from "../run/run.commands";
 import { readStudy } from "../study/study.queries";
@@ -157,6 +157,27 @@ test("an empty file and one that broke off are refused by a sentence, and nothin
   expect(short).toMatchObject({ status: "refused", code: "incomplete" });
   if (short.status === "refused") expect(short.message).toContain("100000 of 200000 bytes");
   expect(await leftInBlobs()).toBe(0);
+});
+
+test("files that arrive beside each other count against the group's room together", async () => {
+  const { db } = temporary;
+  const first = await receive(Buffer.from("t,c\n0,1\n"));
+  if (first.status !== "received") throw new Error(first.status);
+  async function* besideAnother(): AsyncGenerator<Uint8Array> {
+    yield Buffer.from("t,c\n");
+    // The other one is whole, and fills the room, while this one is still arriving.
+    await db
+      .updateTable("incoming_upload")
+      .set({ size: BYTES_PER_GROUP })
+      .where("id", "=", first.status === "received" ? first.uploadId : "")
+      .execute();
+    yield Buffer.from("0,1\n");
+  }
+  const file = { studyId, fileName: "late.csv", declaredBytes: null };
+  expect(await receiveUpload(db, group.analyst, file, besideAnother())).toMatchObject({
+    status: "refused",
+    code: "group-full",
+  });
 });
 
 test("a connection that fails midway leaves nothing", async () => {
