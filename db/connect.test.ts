@@ -1,5 +1,8 @@
 import { execFile, spawn } from "node:child_process";
 import { once } from "node:events";
+import { mkdtempSync, rmSync, statSync } from "node:fs";
+import { tmpdir } from "node:os";
+import path from "node:path";
 import { promisify } from "node:util";
 import { sql } from "kysely";
 import { afterEach, beforeEach, expect, test } from "vitest";
@@ -29,6 +32,21 @@ test("a connection writes with full synchronisation to a log of bounded size, wi
   expect(await pragma("foreign_keys")).toBe(1);
   expect(await pragma("busy_timeout")).toBe(5000);
   expect(await pragma("journal_size_limit")).toBe(64 * 1024 * 1024);
+});
+
+test("a database is made for its owner's eyes alone, with all that SQLite puts beside it", async () => {
+  const folder = path.join(mkdtempSync(path.join(tmpdir(), "ratewright-mode-")), "data");
+  const file = path.join(folder, "new.sqlite");
+  const db = connect(file);
+  try {
+    await sql`create table held (value text)`.execute(db);
+    const mode = (one: string) => statSync(one).mode & 0o777;
+    expect(mode(folder)).toBe(0o700);
+    expect([file, `${file}-wal`, `${file}-shm`].map(mode)).toEqual([0o600, 0o600, 0o600]);
+  } finally {
+    await db.destroy();
+    rmSync(path.dirname(folder), { recursive: true });
+  }
 });
 
 test("transactions that read first and write later take turns between processes", async () => {

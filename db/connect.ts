@@ -1,4 +1,4 @@
-import { mkdirSync } from "node:fs";
+import { closeSync, mkdirSync, openSync } from "node:fs";
 import path from "node:path";
 import SqliteFile from "better-sqlite3";
 import {
@@ -24,7 +24,9 @@ export function connect(file: string): Kysely<Database> {
 
 /** The bare connection with the same settings, for a library that brings its own statements. */
 export function openFile(file: string): SqliteFile.Database {
-  mkdirSync(path.dirname(path.resolve(/* turbopackIgnore: true */ file)), { recursive: true });
+  mkdirSync(path.dirname(path.resolve(/* turbopackIgnore: true */ file)), { recursive: true, mode: 0o700 });
+  // Made for the server's user alone where it is missing; SQLite gives its side files the same mode.
+  closeSync(openSync(file, "a", 0o600));
   const sqlite = new SqliteFile(file);
   sqlite.pragma("journal_mode = WAL");
   // In WAL the library's default is NORMAL, which may lose acknowledged commits when power fails.

@@ -16,7 +16,7 @@ export function authSecret(): string {
 }
 
 function readOrMake(file: string): string {
-  mkdirSync(path.dirname(file), { recursive: true });
+  mkdirSync(path.dirname(file), { recursive: true, mode: 0o700 });
   try {
     // "wx" makes it only where it is missing, so that two starts at once agree on the first one's.
     writeFileSync(file, randomBytes(32).toString("base64url"), { mode: 0o600, flag: "wx" });
