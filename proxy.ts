@@ -34,7 +34,9 @@ export function proxy(request: NextRequest): NextResponse {
   return response;
 }
 
-export const config = { matcher: ["/((?!api/|_next/static/|_next/image|fonts/|icon|favicon).*)"] };
+export const config = {
+  matcher: ["/((?!api/|_next/static/|_next/image|fonts/|icon\\.svg$|favicon\\.ico$).*)"],
+};
 
 function contentSecurityPolicy(nonce: string): string {
   const development = process.env.NODE_ENV === "development";
