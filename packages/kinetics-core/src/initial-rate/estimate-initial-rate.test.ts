@@ -24,6 +24,22 @@ function codes({ flags }: InitialRateFound): string[] {
   return flags.map((flag) => flag.code);
 }
 
+describe("a detector that stands still", () => {
+  it.each([5, 3.0001, 0.1])(
+    "has a slope of exactly 0 at a signal of %d, and no rate comes of rounding",
+    (value) => {
+      const time = Array.from({ length: 12 }, (_, i) => i);
+      for (const options of [{}, { signalSpan: 2 }]) {
+        const still = estimateInitialRate({ time, signal: time.map(() => value) }, options);
+        if (still.status !== "found") throw new Error(still.message);
+        expect(still.slope).toBe(0);
+        expect(still.standardError).toBeLessThan(1e-15);
+        expect(still.alternatives.every(({ slope }) => slope === 0)).toBe(true);
+      }
+    },
+  );
+});
+
 describe("a noiseless trace gives its slope at mixing", () => {
   it("of a straight line, rising or falling", () => {
     for (const sign of [1, -1]) {

@@ -4,7 +4,13 @@ import type { InitialRate, Trace } from "./initial-rate";
 export interface Readings {
   /** Time since mixing, strictly increasing, all ≥ 0. */
   readonly time: Float64Array;
+  /** Above `offset`. */
   readonly signal: Float64Array;
+  /**
+   * First signal at or after mixing. Slopes do not depend on it, and without it a detector that stands still gives a
+   * slope of exactly 0 rather than a rounding error that a logarithm would take for a rate.
+   */
+  readonly offset: number;
   /** Readings before mixing, which were left out. */
   readonly before: number;
   readonly timeZero: number;
@@ -37,11 +43,12 @@ export function readingsOf(
   const count = time.length - before;
   const shifted = new Float64Array(count);
   const values = new Float64Array(count);
+  const offset = signal[before] ?? 0;
   for (let i = 0; i < count; i++) {
     shifted[i] = (time[before + i] ?? Number.NaN) - timeZero;
-    values[i] = signal[before + i] ?? Number.NaN;
+    values[i] = (signal[before + i] ?? Number.NaN) - offset;
   }
-  return { status: "usable", time: shifted, signal: values, before, timeZero };
+  return { status: "usable", time: shifted, signal: values, offset, before, timeZero };
 }
 
 function faultOf(time: ArrayLike<number>, signal: ArrayLike<number>): RefusedTrace | null {

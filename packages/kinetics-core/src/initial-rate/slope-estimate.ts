@@ -1,5 +1,5 @@
 import { evaluateCurve } from "./evaluate-curve";
-import type { SlopeEstimate } from "./initial-rate";
+import type { FittedCurve, SlopeEstimate } from "./initial-rate";
 import type { PreparedTrace } from "./prepared-trace";
 import type { WindowFit } from "./window-fit";
 
@@ -17,6 +17,12 @@ export function slopeEstimate({ readings, progress }: PreparedTrace, fit: Window
     window: [first + readings.timeZero, last + readings.timeZero],
     points: fit.to - fit.from,
     conversion: progress ? change / progress.span : null,
-    curve,
+    curve: raised(curve, readings.offset),
   };
+}
+
+function raised(curve: FittedCurve, offset: number): FittedCurve {
+  if (curve.kind !== "polynomial") return { ...curve, start: curve.start + offset };
+  const [constant = 0, ...rest] = curve.coefficients;
+  return { ...curve, coefficients: [constant + offset, ...rest] };
 }
