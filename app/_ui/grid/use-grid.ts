@@ -40,17 +40,23 @@ export function useGrid(input: GridInput) {
   const open = useRef<EditedCell | null>(null);
   const table = useRef<HTMLTableElement>(null);
   const wantsFocus = useRef(false);
+  // The cell that has focus. A new row is drawn anew once it was kept; what is typed next must still land in it.
+  const focused = useRef<Element | null>(null);
   const tappedAgain = useRef(false);
   // Rows come and go from outside; a position past the end rests on the last row.
   const row = Math.min(active.row, Math.max(0, rows.length - 1));
   const at: GridPosition = { row, column: active.column };
 
   useEffect(() => {
-    if (!wantsFocus.current || edited !== null) return;
-    wantsFocus.current = false;
-    table.current
-      ?.querySelector<HTMLElement>(`[data-row="${row}"][data-column="${active.column}"]`)
-      ?.focus({ preventScroll: false });
+    const lost = focused.current?.isConnected === false && document.activeElement === document.body;
+    if ((wantsFocus.current || lost) && edited === null) {
+      wantsFocus.current = false;
+      table.current
+        ?.querySelector<HTMLElement>(`[data-row="${row}"][data-column="${active.column}"]`)
+        ?.focus({ preventScroll: false });
+    }
+    const now = document.activeElement;
+    focused.current = table.current?.contains(now) ? now : null;
   });
 
   const goTo = useCallback((position: GridPosition, extend = false) => {
