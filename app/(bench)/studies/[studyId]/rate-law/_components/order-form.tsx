@@ -45,7 +45,7 @@ export function OrderForm({
     return null;
   }, null);
   return (
-    <form action={act} className="mt-3">
+    <form action={act} className="mt-3 print:hidden">
       <div className="flex flex-wrap items-end gap-3">
         {orders.map(({ speciesId, name }) => (
           <div key={speciesId} className="w-32">
