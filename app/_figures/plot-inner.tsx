@@ -2,6 +2,7 @@
 
 import Plotly from "plotly.js-dist-min";
 import createPlot from "react-plotly.js/factory";
+import { literal, markedUp } from "./plot-text";
 import { resolveColour, usePlotTemplate } from "./plot-theme";
 import type { PlotSeries, PlotView } from "./plot-view";
 import { spreadApart } from "./spread";
@@ -77,7 +78,7 @@ function tracesOf(series: PlotSeries): object[] {
     line: { color: colour, dash: series.dash, width: silent ? 1 : 1.9 },
     ...(silent
       ? { hoverinfo: "skip" }
-      : { hovertemplate: `<b>${series.name}</b> %{x:.4~g}, %{y:.4~g}<extra></extra>` }),
+      : { hovertemplate: `<b>${literal(series.name)}</b> %{x:.4~g}, %{y:.4~g}<extra></extra>` }),
   };
   if (series.drawing !== "line") return [drawn];
   return [
@@ -96,7 +97,7 @@ function namesAtEnds(view: PlotView, plotHeight: number): object[] {
   const wishes = ends.map(pixels);
   const parted = spreadApart(wishes, NAME_HEIGHT, -NAME_HEIGHT, plotHeight + NAME_HEIGHT);
   return named.map((series, index) => ({
-    text: series.name,
+    text: literal(series.name),
     // Annotations on a logarithmic axis are placed by the logarithm.
     x: view.x.kind === "log" ? Math.log10(series.x.at(-1) ?? 1) : series.x.at(-1),
     y: ends[index],
@@ -106,12 +107,4 @@ function namesAtEnds(view: PlotView, plotHeight: number): object[] {
     showarrow: false,
     font: { size: 11.5 },
   }));
-}
-
-/** Prose as the library's own little HTML. */
-function markedUp(prose: string): string {
-  return prose
-    .replaceAll(/\*([^*\s][^*]*)\*/g, "<i>$1</i>")
-    .replaceAll(/(?<=[>\])])_\{?([A-Za-z0-9]+)\}?/g, "<sub>$1</sub>")
-    .replaceAll(/\^\{?([-−]?[\w.]+)\}?/g, (_, power: string) => `<sup>${power.replace("-", "−")}</sup>`);
 }
