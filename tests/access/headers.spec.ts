@@ -15,7 +15,7 @@ function nonceOf(policy: string | null): string | undefined {
 }
 
 test.describe("the content security policy", () => {
-  for (const path of ["/sign-in", "/no-such-page", "/share/unknown", "/studies"]) {
+  for (const path of ["/sign-in", "/no-such-page", "/icons", "/share/unknown", "/studies"]) {
     test(`stands on ${path} with a nonce of its own for each response`, async () => {
       const [first, second] = [await visitor.send(path), await visitor.send(path)];
       const policy = first.headers.get("content-security-policy");

@@ -6,8 +6,11 @@ import { concentrationUnit, speciesRole, timeUnit } from "@/db/sheet/sheet.schem
  * Set-up share it. Limits of length are those of the sheet; what the texts mean is decided by `readSetUpForm`.
  */
 export const speciesForm = z.object({
-  /** Empty for a row that is new. */
-  id: z.string().max(64),
+  /** Empty for a row that is new. Never a name that every object carries: what runs hold is found by this id. */
+  id: z
+    .string()
+    .max(64)
+    .refine((id) => !(id in Object.prototype), "This row is not one of the study. Load the page again."),
   symbol: z.string().max(12, "A symbol has at most 12 characters."),
   name: z.string().max(120, "A name has at most 120 characters."),
   formula: z.string().max(120, "A formula has at most 120 characters."),

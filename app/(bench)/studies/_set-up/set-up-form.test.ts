@@ -4,7 +4,7 @@ import { speciesOfReaction } from "@/app/_worksheet/reaction/reaction-species";
 import { sheet as sheetSchema } from "@/db/sheet/sheet.schema";
 import { readSetUpForm } from "./read-set-up-form";
 import { emptySetUpForm, setUpFormOf, speciesAfterReaction } from "./set-up-form";
-import type { SetUpForm, SpeciesForm } from "./set-up-form.schema";
+import { type SetUpForm, type SpeciesForm, setUpForm } from "./set-up-form.schema";
 
 const hydrolysis = "CH3CO2C6H4NO2 [A] + 2 OH- [B] -> CH3CO2- + NO2C6H4O- [P] + H2O";
 
@@ -133,5 +133,15 @@ describe("readSetUpForm", () => {
     const species = rowsFor(hydrolysis).map((row) => (row.symbol === "B" ? { ...row, symbol: "A" } : row));
     const reading = readSetUpForm(form({ species }), counter());
     expect(reading).toMatchObject({ status: "faults", faults: [{ path: "species.1.symbol" }] });
+  });
+});
+
+describe("the form as it comes from a page", () => {
+  it("takes no species under a name that every object carries", () => {
+    const named = (id: string) => form({ species: rowsFor(hydrolysis).map((row) => ({ ...row, id })) });
+    for (const id of ["constructor", "__proto__", "toString"]) {
+      expect(setUpForm.safeParse(named(id)).success).toBe(false);
+    }
+    expect(setUpForm.safeParse(named("s1")).success).toBe(true);
   });
 });
