@@ -1,8 +1,11 @@
 import "server-only";
 import { revalidatePath } from "next/cache";
 import { notFound } from "next/navigation";
+import type { StandingLawView } from "@/app/_ui/law-view";
 import { analyseStudy } from "@/app/_worksheet/analyse-study";
 import { type LawSnapshot, lawEffect, lawSnapshot } from "@/app/_worksheet/law-effect";
+import { standingLawView } from "@/app/_worksheet/standing-law.view";
+import { stationAddress } from "@/app/_worksheet/station";
 import type { Handle } from "@/db/database";
 import type { Actor } from "@/db/member/actor";
 import type { Sheet } from "@/db/sheet/sheet.schema";
@@ -14,6 +17,8 @@ import { type Changed, changeOutcome } from "./change-outcome";
 /** A change that went through, with what it did to the law: prose for the toast, "" where there is no law to move. */
 export interface ChangedLaw extends Changed {
   readonly effect: string;
+  /** The law after it for the strip, which need not wait for the rest of the page; null where nothing changed. */
+  readonly standing: { readonly revision: number; readonly view: StandingLawView } | null;
 }
 
 /**
@@ -26,13 +31,18 @@ export async function changeWithEffect(
   studyId: string,
   change: () => Promise<ChangeResult>,
 ): Promise<ActionResult<ChangedLaw>> {
-  const before = await snapshotOf(db, actor, studyId);
+  const before = await lawOf(db, actor, studyId);
   const outcome = changeOutcome(await change());
   if (!outcome.ok) return outcome;
-  if (outcome.value.revision === null) return done({ ...outcome.value, effect: "" });
-  const after = await snapshotOf(db, actor, studyId);
+  if (outcome.value.revision === null) return done({ ...outcome.value, effect: "", standing: null });
+  const after = await lawOf(db, actor, studyId);
   revalidatePath(`/studies/${studyId}`, "layout");
-  return done({ ...outcome.value, effect: lawEffect(before, after) });
+  const view = standingLawView(after.sheet, after.analysis, stationAddress(studyId));
+  return done({
+    ...outcome.value,
+    effect: lawEffect(lawSnapshot(before.sheet, before.analysis), lawSnapshot(after.sheet, after.analysis)),
+    standing: { revision: after.revision, view },
+  });
 }
 
 /** The law before and after a change that is only asked about; nothing is written. */
@@ -55,7 +65,7 @@ export async function previewEffect(
   return { before, after, effect: lawEffect(before, after) };
 }
 
-async function snapshotOf(db: Handle, actor: Actor, studyId: string): Promise<LawSnapshot> {
-  const study = (await readStudy(db, actor, studyId)) ?? notFound();
-  return lawSnapshot(study.sheet, await analyseStudy(db, study.sheet));
+async function lawOf(db: Handle, actor: Actor, studyId: string) {
+  const { sheet, revision } = (await readStudy(db, actor, studyId)) ?? notFound();
+  return { sheet, revision, analysis: await analyseStudy(db, sheet) };
 }

@@ -9,3 +9,8 @@ export const STATION_NAMES: Readonly<Record<Station, string>> = {
   rates: "Rates",
   "rate-law": "Rate law",
 };
+
+/** Where a member finds a station of a study. */
+export function stationAddress(studyId: string): (station: Station) => string {
+  return (station) => `/studies/${studyId}/${station}`;
+}

@@ -3,15 +3,15 @@ import { database } from "@/app/_server/database";
 import { openStudy } from "@/app/_server/study";
 import { ButtonLink } from "@/app/_ui/button";
 import { InventedBanner } from "@/app/_ui/invented-banner";
-import { StandingLaw } from "@/app/_ui/standing-law";
 import { StationRail } from "@/app/_ui/station-rail";
 import { ToastRegion } from "@/app/_ui/toast";
 import { analyseStudy } from "@/app/_worksheet/analyse-study";
 import { standingLawView } from "@/app/_worksheet/standing-law.view";
+import { stationAddress } from "@/app/_worksheet/station";
 import { stationRailView } from "@/app/_worksheet/station-rail.view";
 import { BenchHead } from "@/app/(bench)/bench-head";
+import { LatestLawRegion, LatestStandingLaw } from "../_change/latest-law";
 import { StudyWatch } from "./_components/study-watch";
-import { stationAddress } from "./station-address";
 
 /** The frame of every station: where you are, the standing law, the rail. Access is decided here and in each page. */
 export default async function StudyLayout({
@@ -26,21 +26,23 @@ export default async function StudyLayout({
   const analysis = await analyseStudy(database(), sheet);
   const hrefOf = stationAddress(studyId);
   return (
-    <ToastRegion>
-      <BenchHead
-        trail={[{ name: "Studies", href: "/studies" }, { name: sheet.study.name }]}
-        actions={
-          <ButtonLink size="small" href={`/studies/${studyId}/share`}>
-            Share
-          </ButtonLink>
-        }
-        aside={`Revision ${revision}, saved ${study.updatedAt.slice(0, 16).replace("T", " ")} UTC`}
-      />
-      {sheet.study.invented && <InventedBanner />}
-      <StandingLaw view={standingLawView(sheet, analysis, hrefOf)} />
-      <StationRail stations={stationRailView(sheet, analysis, hrefOf)} />
-      {children}
-      <StudyWatch studyId={studyId} revision={revision} />
-    </ToastRegion>
+    <LatestLawRegion>
+      <ToastRegion>
+        <BenchHead
+          trail={[{ name: "Studies", href: "/studies" }, { name: sheet.study.name }]}
+          actions={
+            <ButtonLink size="small" href={`/studies/${studyId}/share`}>
+              Share
+            </ButtonLink>
+          }
+          aside={`Revision ${revision}, saved ${study.updatedAt.slice(0, 16).replace("T", " ")} UTC`}
+        />
+        {sheet.study.invented && <InventedBanner />}
+        <LatestStandingLaw revision={revision} view={standingLawView(sheet, analysis, hrefOf)} />
+        <StationRail stations={stationRailView(sheet, analysis, hrefOf)} />
+        {children}
+        <StudyWatch studyId={studyId} revision={revision} />
+      </ToastRegion>
+    </LatestLawRegion>
   );
 }

@@ -5,6 +5,7 @@ import type { ActionResult } from "@/app/_server/action-result";
 import type { ChangedLaw } from "@/app/_server/study-change";
 import { type ToastMessage, useToast } from "@/app/_ui/toast";
 import { undoChange } from "./actions";
+import { useShowLaw } from "./latest-law";
 
 /**
  * Says what each change of a study did to the law and offers to take it back: in the toast, and by Ctrl+Z and
@@ -13,6 +14,7 @@ import { undoChange } from "./actions";
  */
 export function useStudyChange(studyId: string, { latestOnly = false }: { latestOnly?: boolean } = {}) {
   const show = useToast();
+  const showLaw = useShowLaw();
   const toast = useCallback(
     (message: ToastMessage) => show(latestOnly ? { ...message, topic: TOPIC } : message),
     [show, latestOnly],
@@ -31,16 +33,18 @@ export function useStudyChange(studyId: string, { latestOnly = false }: { latest
         refuse(result.message);
         return null;
       }
+      if (result.value.standing !== null) showLaw(result.value.standing);
       toast({ text: sentence(result.value) });
       return result.value.revision;
     },
-    [studyId, toast, refuse],
+    [studyId, toast, showLaw, refuse],
   );
 
   /** After a change went through. */
   const announce = useCallback(
     (value: ChangedLaw) => {
-      const { revision } = value;
+      const { revision, standing } = value;
+      if (standing !== null) showLaw(standing);
       if (revision === null) {
         toast({ text: value.summary });
         return;
@@ -55,7 +59,7 @@ export function useStudyChange(studyId: string, { latestOnly = false }: { latest
         },
       });
     },
-    [toast, undo],
+    [toast, showLaw, undo],
   );
 
   /** Announces a change, or says why it was refused. True where it went through. */
