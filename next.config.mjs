@@ -27,6 +27,8 @@ const config = {
   poweredByHeader: false,
   reactStrictMode: true,
   env: { KINETICS_CORE_HASH: coreHash() },
+  // What a browser asks for while the head that names the icon is still on its way.
+  rewrites: async () => [{ source: "/favicon.ico", destination: "/icon.svg" }],
 };
 
 export default config;

@@ -1,11 +1,31 @@
 import { readFileSync } from "node:fs";
 import path from "node:path";
 import { expect, type Page, test } from "@playwright/test";
+import { connect } from "@/db/connect";
+import { createShareLink } from "@/db/share-link/share-link.commands";
+import { browserRun } from "../browser-run";
 import { signInToDemoStudy } from "./demo-study";
+import { makeNineRunStudy, NINE_RUNS_FILE } from "./nine-runs";
 
 const AXE = readFileSync(path.resolve(import.meta.dirname, "../../node_modules/axe-core/axe.min.js"), "utf8");
 
-const STATIONS = ["set-up", "runs", "runs/import", "rates", "rate-law", "share"];
+const STATIONS = ["set-up", "runs", "runs?edit", "runs/import", "rates", "rate-law", "share"];
+
+let sharedPage: string;
+
+test.beforeAll(async () => {
+  const study = await makeNineRunStudy("accessibility");
+  const db = connect(browserRun().databaseFile);
+  const link = await createShareLink(db, study.lead, {
+    studyId: study.studyId,
+    label: "For axe",
+    expiresAt: null,
+    frozenRevision: null,
+  });
+  await db.destroy();
+  if (link.status !== "created") throw new Error(`No link was made: ${link.status}.`);
+  sharedPage = `/share/${link.token}`;
+});
 
 /** Rules of axe-core that the page breaks, with the elements; contrast among them. */
 async function violationsOf(page: Page): Promise<readonly string[]> {
@@ -23,6 +43,14 @@ async function violationsOf(page: Page): Promise<readonly string[]> {
   return result.value;
 }
 
+async function expectAccessible(page: Page, what: string): Promise<void> {
+  // An open dialog hides what lies behind it from the tree, headings too.
+  await expect(page.locator("h1")).toBeAttached();
+  expect(await violationsOf(page), what).toEqual([]);
+  const overflow = await page.evaluate(() => document.documentElement.scrollWidth - window.innerWidth);
+  expect(overflow, `${what} scrolls sideways`).toBeLessThanOrEqual(0);
+}
+
 for (const { colorScheme, width } of [
   { colorScheme: "light", width: 1440 },
   { colorScheme: "dark", width: 1440 },
@@ -35,13 +63,31 @@ for (const { colorScheme, width } of [
     test("every station passes axe and fits the screen", async ({ page }) => {
       test.setTimeout(240_000);
       const study = await signInToDemoStudy(page);
-      const addresses = ["/studies", "/studies/new", ...STATIONS.map((station) => `${study}/${station}`)];
-      for (const address of addresses) {
+      for (const address of [
+        "/studies",
+        "/studies/new",
+        ...STATIONS.map((station) => `${study}/${station}`),
+      ]) {
         await page.goto(address);
-        await expect(page.getByRole("heading", { level: 1 })).toBeAttached();
-        expect(await violationsOf(page), address).toEqual([]);
-        const overflow = await page.evaluate(() => document.documentElement.scrollWidth - window.innerWidth);
-        expect(overflow, `${address} scrolls sideways`).toBeLessThanOrEqual(0);
+        await expectAccessible(page, address);
+      }
+      // Where the import page and the run sheet ask something back.
+      await page.goto(`${study}/runs/import`);
+      await page.getByLabel("File of traces").setInputFiles(NINE_RUNS_FILE);
+      await expect(page.getByRole("button", { name: "Store 9 traces" })).toBeVisible();
+      await expectAccessible(page, "the preview of a file");
+      await page.getByRole("button", { name: "Discard" }).click();
+      await page.goto(`${study}/runs`);
+      await page.getByRole("checkbox", { name: "Select R03" }).check();
+      await page.getByRole("button", { name: "Set aside…" }).click();
+      await expect(page.getByRole("dialog").getByText("Then", { exact: true })).toBeVisible();
+      await expectAccessible(page, "the question before a run is set aside");
+    });
+
+    test("what is seen without an account passes axe and fits the screen", async ({ page }) => {
+      for (const address of ["/sign-in", sharedPage, "/share/closed"]) {
+        await page.goto(address);
+        await expectAccessible(page, address);
       }
     });
   });
