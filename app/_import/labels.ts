@@ -70,7 +70,10 @@ export function labelTraces(
     if (wanted !== null && !used.has(wanted.toLowerCase())) {
       return {
         label: claim(wanted, used),
-        reason: number !== null ? `number ${number} in “${name}”` : `the name in the file`,
+        reason:
+          number !== null && wanted !== name.trim()
+            ? `number ${number} in “${name}”`
+            : "the name in the file",
         runId: null,
         repeats: null,
       };
@@ -86,9 +89,9 @@ export function labelTraces(
   });
 }
 
-/** "R01" stays as written, "A_14" becomes R14. */
+/** A name of the series kind stays as written, "R01" and "K01"; A is the absorbance: "A1" becomes R1, "A_14" R14. */
 function runLabel(name: string, number: number): string {
-  return /^r\d+$/i.test(name) ? name : `R${number}`;
+  return /^[b-z]\d+$/i.test(name.trim()) ? name.trim() : `R${number}`;
 }
 
 function trailingNumber(name: string): number | null {

@@ -379,9 +379,18 @@ describe("what is wrong within a table", () => {
 
 describe("runs of the study", () => {
   it("keeps a label as the file writes it", () => {
-    const bytes = new TextEncoder().encode("t / s,R01,A_2\n0,1.5,2.5\n1,1.6,2.6\n2,1.7,2.7\n");
-    const reading = readFile(bytes, EMPTY_STUDY, {});
-    expect(reading.status === "read" && reading.traces.map((trace) => trace.label)).toEqual(["R01", "R2"]);
+    const bytes = new TextEncoder().encode(
+      "t / s,R01,A_2,K01,ch 4\n0,1.5,2.5,3.5,4.5\n1,1.6,2.6,3.6,4.6\n2,1.7,2.7,3.7,4.7\n",
+    );
+    const labels = (context: StudyContext) => {
+      const reading = readFile(bytes, context, {});
+      return reading.status === "read" && reading.traces.map((trace) => trace.label);
+    };
+    expect(labels(EMPTY_STUDY)).toEqual(["R01", "R2", "K01", "R4"]);
+    // A run with a trace, or none planned under that number, leaves the name as it is.
+    expect(labels({ ...EMPTY_STUDY, runs: [{ id: "r9", label: "R09", hasTrace: true, molar: {} }] })).toEqual(
+      ["R01", "R2", "K01", "R4"],
+    );
   });
 
   const planned: StudyContext = {
