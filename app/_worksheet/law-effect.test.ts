@@ -12,6 +12,7 @@ function law(value: string, uncertainty: string | null = "0.3", order = "1", pow
       ],
     },
     constant: { symbol: "*k*", number: { value, uncertainty, power }, unit: "L mol^-1 s^-1" },
+    internal: Number(value) * 10 ** power,
   };
 }
 
@@ -50,6 +51,27 @@ describe("lawEffect", () => {
   it("names an order that moved before the constant", () => {
     expect(lawEffect(law("11.8"), law("9", "2", "0.93"))).toBe(
       "The order in B moves from 1 to 0.93. *k* moves from 11.8 ± 0.3 to 9 ± 2 L mol^-1 s^-1.",
+    );
+  });
+
+  it("says that the constant is the same where its unit of time alone changed", () => {
+    const seconds = law("2.00", "0.03");
+    if (seconds.status !== "law") throw new Error("a law");
+    const minutes = (value: string, internal: number): LawSnapshot => ({
+      ...seconds,
+      constant: {
+        symbol: "*k*",
+        number: { value, uncertainty: "1.8", power: 0 },
+        unit: "L mol^-1 min^-1",
+      },
+      internal,
+    });
+    expect(lawEffect(seconds, minutes("120.0", 2 * (1 + 1e-13)))).toBe(
+      "*k* is the same in another unit: 2.00 ± 0.03 L mol^-1 s^-1 is 120.0 ± 1.8 L mol^-1 min^-1.",
+    );
+    // Another value in another unit has moved.
+    expect(lawEffect(seconds, minutes("126.0", 2.1))).toBe(
+      "*k* was 2.00 ± 0.03 L mol^-1 s^-1; now *k* = 126.0 ± 1.8 L mol^-1 min^-1.",
     );
   });
 

@@ -1,18 +1,30 @@
 import type { ConstantView, LawView } from "@/app/_ui/law-view";
 import type { Sheet } from "@/db/sheet/sheet.schema";
 import type { StudyAnalysis } from "./analysis";
+import { standingConstant } from "./standing-constant";
 import { constantView, lawExpression } from "./standing-law.view";
 
 /** The law at one moment, as much as is needed to say how a change moved it. */
 export type LawSnapshot =
-  | { readonly status: "law"; readonly expression: LawView; readonly constant: ConstantView }
+  | {
+      readonly status: "law";
+      readonly expression: LawView;
+      readonly constant: ConstantView;
+      /** The constant in mol L⁻¹ and s, by which a change of its unit is told from a change of its value. */
+      readonly internal: number | null;
+    }
   /** `missing` is a sentence, "Two more levels of B are needed." */
   | { readonly status: "no-law"; readonly missing: string };
 
 export function lawSnapshot(sheet: Sheet, { law }: StudyAnalysis): LawSnapshot {
   return law.status === "no-law"
     ? { status: "no-law", missing: law.missing }
-    : { status: "law", expression: lawExpression(sheet, law.fit), constant: constantView(sheet, law.fit, 1) };
+    : {
+        status: "law",
+        expression: lawExpression(sheet, law.fit),
+        constant: constantView(sheet, law.fit, 1),
+        internal: standingConstant(sheet, law.fit).estimate.estimate,
+      };
 }
 
 /** What a change did to the law, in prose for a toast: "*k* moves from 11.8 ± 0.3 to 11.7 ± 0.3 L mol^-1 s^-1." */
@@ -21,9 +33,28 @@ export function lawEffect(before: LawSnapshot, after: LawSnapshot): string {
     return before.status === "law" ? `No law stands any more. ${after.missing}` : "";
   }
   if (before.status === "no-law") return `A law stands now: ${constantInWords(after.constant)}.`;
-  return [ordersMoved(before.expression, after.expression), constantMoved(before.constant, after.constant)]
+  const constant = isRestated(before, after)
+    ? `${sentenceStart(after.constant.symbol)} is the same in another unit: ${numberInWords(before.constant)} is ${numberInWords(after.constant)}.`
+    : constantMoved(before.constant, after.constant);
+  return [ordersMoved(before.expression, after.expression), constant]
     .filter((sentence) => sentence !== "")
     .join(" ");
+}
+
+type Law = Extract<LawSnapshot, { status: "law" }>;
+
+/** Rounding in a refit of the same numbers stays far below. */
+const SAME_PART = 1e-9;
+
+/** Whether one constant is written in two units, as after a change from seconds to minutes. */
+function isRestated(before: Law, after: Law): boolean {
+  return (
+    before.constant.symbol === after.constant.symbol &&
+    before.constant.unit !== after.constant.unit &&
+    before.internal !== null &&
+    after.internal !== null &&
+    Math.abs(after.internal - before.internal) <= SAME_PART * Math.abs(before.internal)
+  );
 }
 
 function constantMoved(before: ConstantView, after: ConstantView): string {

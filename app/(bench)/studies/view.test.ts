@@ -77,6 +77,7 @@ describe("the list", () => {
         status: "law",
         expression: { constant: "*k*", factors: [] },
         constant: { symbol: "*k*", number, unit: "L mol^-1 s^-1" },
+        internal: 11.8,
       },
     };
     expect(listLead([lawful, one])).toBe("Two studies, one with a standing law.");
