@@ -66,4 +66,6 @@ export interface Check {
   readonly message: string;
   /** Somebody answered it (a run set aside): drawn grey, says who and why. */
   readonly settled: string | null;
+  /** Of a run's note, how it goes on after the labels of several runs: pages on the whole study say it once. */
+  readonly ofSeveral?: string;
 }

@@ -3,6 +3,7 @@ import type { RateLawFit } from "kinetics-core/rate-law";
 import type { ConstantView, FactView, LawView, PrintedNumber, StandingLawView } from "@/app/_ui/law-view";
 import type { Sheet } from "@/db/sheet/sheet.schema";
 import type { Check, StudyAnalysis } from "./analysis";
+import { gatherNotes } from "./checks/gather-notes";
 import { concentrationDisplay, type DisplayScale, rateConstantDisplay, rateDisplay } from "./display-units";
 import { lawName } from "./law-input";
 import { list } from "./missing-law";
@@ -172,7 +173,11 @@ function factsOf(
       href: hrefOf("rate-law"),
     },
     { label: "Weakest link", ...weakestLink(sheet, analysis), href: hrefOf("rate-law") },
-    { label: "Checks", ...checksInWords(analysis.checks), href: hrefOf(stationOfWorst(analysis.checks)) },
+    {
+      label: "Checks",
+      ...checksInWords(gatherNotes(analysis.checks, analysis.runs)),
+      href: hrefOf(stationOfWorst(analysis.checks)),
+    },
   ];
 }
 

@@ -1,6 +1,7 @@
 import { decimate } from "@/app/_figures/decimate";
 import type { CheckSeverity } from "@/app/_ui/check";
 import type { Check, RunMark, StudyAnalysis } from "@/app/_worksheet/analysis";
+import { gatherNotes } from "@/app/_worksheet/checks/gather-notes";
 import { type LawSnapshot, lawSnapshot } from "@/app/_worksheet/law-effect";
 import { presentRuns } from "@/app/_worksheet/present-runs";
 import { countInWords } from "@/app/_worksheet/words";
@@ -123,9 +124,9 @@ const NOUNS: Readonly<Record<"blocks" | "weakens" | "note", readonly [string, st
   note: ["note", "notes"],
 };
 
-function checksOf({ checks, law }: StudyAnalysis): StudyRow["checks"] {
+function checksOf({ checks, runs, law }: StudyAnalysis): StudyRow["checks"] {
   if (law.status === "no-law") return null;
-  const open = checks.filter((check: Check) => check.settled === null);
+  const open = gatherNotes(checks, runs).filter((check: Check) => check.settled === null);
   for (const severity of ["blocks", "weakens", "note"] as const) {
     const count = open.filter((check) => check.severity === severity).length;
     if (count > 0) return { severity, words: `${count} ${NOUNS[severity][count === 1 ? 0 : 1]}` };

@@ -1,6 +1,7 @@
 import { afterAll, beforeAll, expect, test } from "vitest";
 import type { Sheet, SheetRun } from "@/db/sheet/sheet.schema";
 import { type TemporaryDatabase, temporaryDatabase } from "@/db/testing/temporary-database";
+import { writeTrace } from "@/db/trace/write-trace";
 import { exampleRun, exampleSheet } from "@/tests/example-sheet";
 import { analyseStudy } from "../analyse-study";
 
@@ -61,6 +62,21 @@ test("a rate that is negative blocks its run, and the way out is named", async (
     settled: null,
   });
   expect(checks[0]?.message).toMatch(/^R01: the initial rate is negative.*or set the run aside\.$/);
+});
+
+test("a rate entered for a run that has a trace does not count, and the run says so", async () => {
+  const timeSeconds = Float64Array.from({ length: 20 }, (_, index) => index);
+  const sha256 = await temporary.db
+    .transaction()
+    .execute((trx) => writeTrace(trx, { timeSeconds, signal: timeSeconds.map((t) => 1e-3 * t) }));
+  const checks = await checksOf(
+    sheetWith((index) =>
+      index === 0 ? { trace: { sha256, points: 20, uploadId: null, column: "column 2" } } : {},
+    ),
+  );
+  const notes = checks.filter((check) => check.code === "entered-rate-unused");
+  expect(notes).toMatchObject([{ severity: "note", runId: "run-0", station: "rates" }]);
+  expect(notes[0]?.message).toContain("the rate entered by hand is kept and does not count");
 });
 
 test("setting that run aside settles its check, which then stands last", async () => {

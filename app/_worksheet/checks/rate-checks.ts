@@ -6,6 +6,11 @@ import type { Checked } from "./find-checks";
 /** A run that ends at less than this part of the rule's conversion is named. */
 const REACHED_PART = 0.9;
 
+/** The library's notes that many runs of one instrument share. */
+const FLAGS_OF_SEVERAL: Readonly<Record<string, string>> = {
+  "before-mixing": "their readings before mixing are not used.",
+};
+
 /**
  * Checks of each run's rate: whether there is one, whether it has a logarithm, what the library says about its
  * estimate. Those of a run set aside are settled by its reason.
@@ -21,13 +26,36 @@ export function rateChecks({ sheet, rule, runs }: Checked): readonly Check[] {
       severity: Check["severity"],
       code: string,
       message: string,
-      station: Check["station"] = "rates",
+      { station = "rates", ofSeveral }: { station?: Check["station"]; ofSeveral?: string | undefined } = {},
     ) =>
-      checks.push({ code, severity, station, runId: run.id, message: `${run.label}: ${message}`, settled });
+      checks.push({
+        code,
+        severity,
+        station,
+        runId: run.id,
+        message: `${run.label}: ${message}`,
+        settled,
+        ...(ofSeveral === undefined ? {} : { ofSeveral }),
+      });
 
     const { rate } = analysed;
+    if (run.trace !== null && run.enteredRate !== null)
+      add(
+        "note",
+        "entered-rate-unused",
+        "its rate is read from its trace; the rate entered by hand is kept and does not count.",
+        {
+          ofSeveral:
+            "their rates are read from their traces; the rates entered by hand are kept and do not count.",
+        },
+      );
     if (rate.kind === "none") {
-      if (run.trace === null) add("note", "no-rate", lowered(rate.reason), "runs");
+      if (run.trace === null)
+        add("note", "no-rate", lowered(rate.reason), {
+          station: "runs",
+          ofSeveral:
+            "they have neither traces nor entered rates. Import their traces or enter their rates on Runs.",
+        });
       else add("blocks", "no-rate", lowered(rate.reason));
       continue;
     }
@@ -43,10 +71,15 @@ export function rateChecks({ sheet, rule, runs }: Checked): readonly Check[] {
         "note",
         "species-absent",
         `it holds no ${absent.map((one) => one.symbol || one.name).join(" and no ")}, so that it cannot carry a law of powers. It may serve as a blank.`,
-        "runs",
+        {
+          station: "runs",
+          ofSeveral:
+            "they lack a species of the law, so that they cannot carry a law of powers. They may serve as blanks.",
+        },
       );
     if (rate.kind === "entered") continue;
-    for (const flag of rate.initialRate.flags) add(flag.severity, flag.code, lowered(flag.message));
+    for (const flag of rate.initialRate.flags)
+      add(flag.severity, flag.code, lowered(flag.message), { ofSeveral: FLAGS_OF_SEVERAL[flag.code] });
     const { conversion } = rate.initialRate;
     if (
       rule !== null &&
@@ -58,9 +91,14 @@ export function rateChecks({ sheet, rule, runs }: Checked): readonly Check[] {
         "note",
         "conversion-short",
         `its window ends at ${percent(conversion)} conversion, before the ${percent(rule.rule.conversionEnd)} of the study's rule.`,
+        {
+          ofSeveral: `their windows end before the ${percent(rule.rule.conversionEnd)} conversion of the study's rule.`,
+        },
       );
     if (rate.byHand)
-      add("note", "window-by-hand", "its window was set by hand and does not follow the study's rule.");
+      add("note", "window-by-hand", "its window was set by hand and does not follow the study's rule.", {
+        ofSeveral: "their windows were set by hand and do not follow the study's rule.",
+      });
   }
   if (rule !== null && runs.some((run) => run.rate.kind === "estimated") && !checks.some(concernsConversion))
     checks.push(

@@ -19,6 +19,7 @@ import { SectionTitle } from "@/app/_ui/sheet";
 import { THEME_COOKIE, themeOf } from "@/app/_ui/theme";
 import { ThemeToggle } from "@/app/_ui/theme-toggle";
 import { analyseStudy } from "@/app/_worksheet/analyse-study";
+import { gatherNotes } from "@/app/_worksheet/checks/gather-notes";
 import { presentRuns } from "@/app/_worksheet/present-runs";
 import { standingLawView } from "@/app/_worksheet/standing-law.view";
 import { PrintButton } from "./_components/print-button";
@@ -53,7 +54,9 @@ export default async function SharedStudyPage({ params }: Props) {
   const standing = standingLawView(sheet, analysis, (station) => `#${station}`);
   const findings = rateLawView(sheet, analysis);
   const figure = traceFigureView(sheet, analysis, traces);
-  const open = analysis.checks.filter((check) => check.settled === null && check.severity !== "holds");
+  const open = gatherNotes(analysis.checks, analysis.runs).filter(
+    (check) => check.settled === null && check.severity !== "holds",
+  );
   const law = standing.law;
   return (
     <>

@@ -13,6 +13,7 @@ import { EmptyState } from "@/app/_ui/empty-state";
 import { Prose } from "@/app/_ui/prose";
 import { Sheet } from "@/app/_ui/sheet";
 import { analyseStudy } from "@/app/_worksheet/analyse-study";
+import { gatherNotes } from "@/app/_worksheet/checks/gather-notes";
 import { presentRuns } from "@/app/_worksheet/present-runs";
 import { listMembers } from "@/db/member/member.queries";
 import { RunGrid } from "./_components/run-grid";
@@ -51,7 +52,7 @@ export default async function RunsPage({ params, searchParams }: Props) {
   if (empty && canEdit && !edits) redirect(`${here}?edit`);
   const margin = (
     <RunMargin
-      checks={analysis.checks.filter((check) => check.station === "runs")}
+      checks={gatherNotes(analysis.checks, analysis.runs).filter((check) => check.station === "runs")}
       recipe={recipeLines(sheet, traces)}
       measured={analysis.runs.some((run) => run.rate.kind !== "none")}
       showsKeys={edits && canEdit}
