@@ -26,6 +26,8 @@ const config = {
   outputFileTracingRoot: repository,
   poweredByHeader: false,
   reactStrictMode: true,
+  // Browsers ask for this name wherever no page has told them another: while a page is exchanged, beside a table.
+  rewrites: async () => [{ source: "/favicon.ico", destination: "/icon.svg" }],
   env: { KINETICS_CORE_HASH: coreHash() },
   // What a browser asks for while the head that names the icon is still on its way.
   rewrites: async () => [{ source: "/favicon.ico", destination: "/icon.svg" }],

@@ -53,6 +53,12 @@ test("a shared page sends no Referer and wants not to be found", async () => {
   expect(headers.get("x-robots-tag")).toBe("noindex, nofollow");
 });
 
+test("the icon is also where browsers look for it by themselves", async () => {
+  const icon = await visitor.send("/favicon.ico");
+  expect(icon.status).toBe(200);
+  expect(icon.headers.get("content-type")).toBe("image/svg+xml");
+});
+
 test("no answer says what the server is made with", async () => {
   const { headers } = await visitor.send("/sign-in");
   expect(headers.get("x-powered-by")).toBeNull();
