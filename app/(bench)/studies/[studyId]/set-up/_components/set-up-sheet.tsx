@@ -14,6 +14,7 @@ import { LawBeforeAfter } from "../../../_change/law-preview";
 import { useStudyChange } from "../../../_change/use-study-change";
 import { Cautions } from "../../../_set-up/cautions";
 import { ConditionFields } from "../../../_set-up/condition-fields";
+import { LeaveGuard } from "../../../_set-up/leave-guard";
 import { rateDefinition } from "../../../_set-up/rate-definition";
 import { RateOfReaction } from "../../../_set-up/rate-of-reaction";
 import { ReactionField } from "../../../_set-up/reaction-field";
@@ -204,6 +205,7 @@ export function SetUpSheet({
           </Select>
         </div>
       </section>
+      {canEdit && changed && <LeaveGuard onKeep={ask} />}
       {canEdit && changed && (
         <div className="keep-bar" role="status">
           <span>These changes are not kept yet.</span>
