@@ -23,6 +23,7 @@ export function runsAndRatesTable(sheet: Sheet, analysis: StudyAnalysis): string
       return [`[${lawName(one)}]0 / ${unit}`, `u([${lawName(one)}]0) / ${unit}`];
     }),
     "temperature / degC",
+    "temperature of",
     "block",
     `rate / ${rate.unit}`,
     `u(rate) / ${rate.unit}`,
@@ -48,13 +49,20 @@ export function runsAndRatesTable(sheet: Sheet, analysis: StudyAnalysis): string
           const shown = amount.molar * concentrationDisplay(unit).factor;
           return [exact(shown), exact(shown * amount.relativeUncertainty)];
         }),
-        run.temperatureKelvin === null ? null : exact(run.temperatureKelvin - 273.15),
+        ...temperatureCells(sheet, run),
         run.block,
         ...rateCells(run, one, rate.factor, time.factor),
       ],
     ];
   });
   return commaSeparated([heads, ...rows]);
+}
+
+/** The run's own temperature, else the study's, which stands in for it in the analysis too; and which it is. */
+function temperatureCells(sheet: Sheet, run: SheetRun) {
+  const own = run.temperatureKelvin;
+  const kelvin = own ?? sheet.conditions.temperatureKelvin?.value ?? null;
+  return kelvin === null ? [null, null] : [exact(kelvin - 273.15), own === null ? "study" : "run"];
 }
 
 function rateCells(run: SheetRun, { rate }: RunAnalysis, rateFactor: number, timeFactor: number) {

@@ -70,7 +70,7 @@ describe("the table of runs and rates", () => {
     const entered = (molarPerSecond: number) => ({ molarPerSecond, standardError: null });
     const sheet = exampleSheet({
       runs: [
-        exampleRun(0, { A: 1e-3, B: 2e-3 }, { enteredRate: entered(4e-6) }),
+        exampleRun(0, { A: 1e-3, B: 2e-3 }, { enteredRate: entered(4e-6), temperatureKelvin: 298.65 }),
         exampleRun(
           1,
           { A: 1e-3, B: 4e-3 },
@@ -89,6 +89,8 @@ describe("the table of runs and rates", () => {
     expect(cell(first, "u([A]0) / mmol L^-1")).toBe("0.01");
     expect(cell(first, "rate / mmol L^-1 s^-1")).toBe("0.004");
     expect(cell(first, "u(rate) / mmol L^-1 s^-1")).toBe("");
+    expect([cell(first, "temperature / degC"), cell(first, "temperature of")]).toEqual(["25.5", "run"]);
+    expect([cell(second, "temperature / degC"), cell(second, "temperature of")]).toEqual(["25", "study"]);
     expect(cell(second, "state")).toBe("set-aside");
     expect(cell(second, "reason")).toBe("bubble at 6 s");
     expect(cell(third, "[B]0 / mmol L^-1")).toBe("");
