@@ -79,6 +79,22 @@ test("a rate entered for a run that has a trace does not count, and the run says
   expect(notes[0]?.message).toContain("the rate entered by hand is kept and does not count");
 });
 
+test("a trace with fewer than two independent readings says so once, and no figure of its noise", async () => {
+  const timeSeconds = Float64Array.from({ length: 12 }, (_, index) => 10 * index);
+  const signal = timeSeconds.map((t) => 0.9 * (1 - Math.exp(-0.02 * t)));
+  const sha256 = await temporary.db.transaction().execute((trx) => writeTrace(trx, { timeSeconds, signal }));
+  const checks = await checksOf(
+    sheetWith((index) =>
+      index === 0
+        ? { trace: { sha256, points: 12, uploadId: null, column: "column 2" }, enteredRate: null }
+        : {},
+    ),
+  );
+  const onNoise = checks.filter((check) => /noise|independent|correlate/i.test(check.message));
+  expect(onNoise).toMatchObject([{ code: "few-effective-points", severity: "weakens", runId: "run-0" }]);
+  expect(onNoise[0]?.message).toMatch(/^R01: it has too few readings to judge its noise/);
+});
+
 test("setting that run aside settles its check, which then stands last", async () => {
   const checks = await checksOf(
     sheetWith((index) =>

@@ -1,4 +1,5 @@
 import type { Check } from "../analysis";
+import { judgesNoise } from "../judges-noise";
 import { lawSpecies, presentRuns } from "../present-runs";
 import { percent, studyCheck } from "./check";
 import type { Checked } from "./find-checks";
@@ -10,6 +11,9 @@ const REACHED_PART = 0.9;
 const FLAGS_OF_SEVERAL: Readonly<Record<string, string>> = {
   "before-mixing": "their readings before mixing are not used.",
 };
+
+/** Findings that take the noise as judged. */
+const ON_NOISE: ReadonlySet<string> = new Set(["autocorrelated", "few-effective-points"]);
 
 /**
  * Checks of each run's rate: whether there is one, whether it has a logarithm, what the library says about its
@@ -78,8 +82,16 @@ export function rateChecks({ sheet, rule, runs }: Checked): readonly Check[] {
         },
       );
     if (rate.kind === "entered") continue;
+    const noiseJudged = judgesNoise(rate.initialRate);
+    if (!noiseJudged)
+      add(
+        "weakens",
+        "few-effective-points",
+        "it has too few readings to judge its noise, so that its uncertainty is a rule of thumb. Read the run more densely, or for longer.",
+      );
     for (const flag of rate.initialRate.flags)
-      add(flag.severity, flag.code, lowered(flag.message), { ofSeveral: FLAGS_OF_SEVERAL[flag.code] });
+      if (noiseJudged || !ON_NOISE.has(flag.code))
+        add(flag.severity, flag.code, lowered(flag.message), { ofSeveral: FLAGS_OF_SEVERAL[flag.code] });
     const { conversion } = rate.initialRate;
     if (
       rule !== null &&

@@ -56,6 +56,17 @@ describe("an estimate on its trace", () => {
     expect(combined).toMatch(/^\d\.\d %$/);
   });
 
+  test("does not count the independent readings of a trace that is too sparse to hold two", () => {
+    // Twelve readings without noise over three half-lives: what is left of them beside a polynomial is all curve.
+    const time = Array.from({ length: 12 }, (_, index) => 10 * index);
+    const signal = time.map((at) => 0.9 * (1 - Math.exp(-0.02 * at)));
+    const sparse = estimateInitialRate({ time, signal }, { signalSpan: 0.9 });
+    const view = estimateView({ ...trace, seconds: time, signal }, traceScale(sheetIn("s")), sparse);
+    expect(view.facts.find((fact) => fact.name === "Noise")?.text).toBe("too few readings to judge it");
+    const dense = estimateView(trace, traceScale(sheetIn("s")), estimate);
+    expect(dense.facts.find((fact) => fact.name === "Noise")?.text).toMatch(/\d+ independent readings$/);
+  });
+
   test("says why there is none, and draws the bare trace", () => {
     const none = estimateInitialRate({ time: [0, 1, 2], signal: [0, 1, 2] }, {});
     const view = estimateView(
@@ -104,6 +115,7 @@ describe("the list of rates", () => {
     expect(view.rates).toEqual({ integerDigits: 1, fractionDigits: 3 });
     expect(selectRun(analysis, undefined)?.label).toBe("R02");
     expect(selectRun(analysis, "R01")?.label).toBe("R01");
+    expect(selectRun(analysis, "R99")).toBeNull();
   });
 
   test("says of an entered rate what it is, with its neighbours and its recipe", () => {

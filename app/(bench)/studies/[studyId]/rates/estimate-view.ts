@@ -2,6 +2,7 @@ import { evaluateCurve, type InitialRate, type InitialRateFound } from "kinetics
 import { printUncertain } from "kinetics-core/quantities";
 import type { MarkedRun, WindowFigureView } from "@/app/_figures/figure-view";
 import type { PrintedNumber } from "@/app/_ui/law-view";
+import { judgesNoise } from "@/app/_worksheet/judges-noise";
 import type { TraceScale } from "./trace-scale";
 
 /** A trace as it is drawn, thinned where it is long. Seconds are those of the stored readings, to the last bit. */
@@ -126,7 +127,9 @@ function factsOf(scale: TraceScale, estimate: InitialRateFound) {
     { name: "Scatter", text: `${inWords({ ...noise, uncertainty: null })} ${scale.signal.unit}`.trim() },
     {
       name: "Noise",
-      text: `*ρ* ${estimate.autocorrelation.toFixed(2)}, ${Math.round(estimate.effectivePoints)} independent readings`,
+      text: judgesNoise(estimate)
+        ? `*ρ* ${estimate.autocorrelation.toFixed(2)}, ${Math.round(estimate.effectivePoints)} independent readings`
+        : "too few readings to judge it",
     },
   ];
 }
