@@ -25,7 +25,26 @@ export default async function RatesPage({
   const db = database();
   const analysis = await analyseStudy(db, sheet);
   const { run: asked } = await searchParams;
-  const selected = selectRun(analysis, typeof asked === "string" ? asked : undefined);
+  const label = typeof asked === "string" ? asked : undefined;
+  const selected = selectRun(analysis, label);
+  if (selected === null && label !== undefined && analysis.runs.length > 0)
+    return (
+      <Paper title={`No run is called ${label}`}>
+        <EmptyState
+          title="It is not on the run sheet"
+          actions={
+            <>
+              <ButtonLink kind="primary" href={`/studies/${studyId}/rates`}>
+                See all rates
+              </ButtonLink>
+              <ButtonLink href={`/studies/${studyId}/runs`}>Open the run sheet</ButtonLink>
+            </>
+          }
+        >
+          It may have another label by now, or lie in the bin below the run sheet.
+        </EmptyState>
+      </Paper>
+    );
   if (selected === null)
     return (
       <Paper title="No run has a rate yet">

@@ -136,14 +136,13 @@ const PAIR_WORDS = {
   "exponential-general": ["single exponential", "general-order integrated law"],
 } as const;
 
-/** The run that the address names by its label, else the first standing one, else the first. */
+/**
+ * The run that the address names by its label; where it names none, the first standing one, else the first. Null
+ * where there is no such run: another one in its place would be taken for it.
+ */
 export function selectRun(analysis: StudyAnalysis, label: string | undefined): RunAnalysis | null {
-  return (
-    analysis.runs.find((run) => run.label === label) ??
-    analysis.runs.find((run) => run.state === "standing") ??
-    analysis.runs[0] ??
-    null
-  );
+  if (label !== undefined) return analysis.runs.find((run) => run.label === label) ?? null;
+  return analysis.runs.find((run) => run.state === "standing") ?? analysis.runs[0] ?? null;
 }
 
 export function runRateView(
