@@ -2,12 +2,15 @@ import { describe, expect, it } from "vitest";
 import type { GridChange } from "@/app/_ui/grid/grid-shape";
 import { exampleRun, exampleSheet } from "@/tests/example-sheet";
 import {
+  adoptRows,
   applyStep,
   type Draft,
   draftFaults,
   emptyDraft,
   keepableRows,
   restoreCells,
+  rowOrder,
+  withoutKept,
   withoutRows,
 } from "./draft-rows";
 import { type RunGridView, runGridView } from "./run-grid.view";
@@ -89,5 +92,37 @@ describe("the draft of the run grid", () => {
     expect(left.newKeys).toEqual(["new-1"]);
     expect(left.texts).toEqual({});
     expect(draftFaults(left, view)).toEqual({});
+  });
+});
+
+describe("a new row that is kept while the next cell is typed", () => {
+  const typed = step(emptyDraft, edit("new-0", "label", "R03"), edit("new-0", "c:A", "1")).draft;
+  const further = step(typed, edit("new-0", "c:A", "1,5"), edit("new-0", "c:B", "10")).draft;
+
+  it("loses the cells that were kept, and none that was typed since", () => {
+    const kept = typed.texts["new-0"] ?? {};
+    expect(withoutKept(further, "new-0", kept).texts["new-0"]).toEqual({ "c:A": "1,5", "c:B": "10" });
+    expect(withoutKept(typed, "new-0", kept)).toEqual(withoutRows(typed, ["new-0"]));
+  });
+
+  it("goes on as an edit of the run that it became", () => {
+    const adopted = adoptRows(further, { "new-0": "run-9" });
+    expect(adopted.newKeys).toEqual(["new-1"]);
+    expect(adopted.texts).toEqual({ "run-9": { label: "R03", "c:A": "1,5", "c:B": "10" } });
+  });
+
+  it("stays in its place, also behind an earlier row that is not read", () => {
+    const two = step(typed, edit("new-1", "label", "R04")).draft;
+    const ids = { "new-1": "run-9" };
+    const [first] = view.rows;
+    if (first === undefined) throw new Error("the view has rows");
+    const later = { ...view, rows: [...view.rows, { ...first, runId: "run-9" }] };
+    expect(rowOrder(adoptRows(two, ids), later, ids)).toEqual([
+      { key: "run-0", runId: "run-0" },
+      { key: "run-1", runId: "run-1" },
+      { key: "new-0", runId: null },
+      { key: "new-1", runId: "run-9" },
+      { key: "new-2", runId: null },
+    ]);
   });
 });

@@ -16,7 +16,9 @@ export interface Draft {
   readonly nextKey: number;
 }
 
-export const emptyDraft: Draft = { texts: {}, newKeys: ["new-0"], nextKey: 1 };
+const NEW = "new-";
+
+export const emptyDraft: Draft = { texts: {}, newKeys: [`${NEW}0`], nextKey: 1 };
 
 export interface CellBefore {
   readonly key: string;
@@ -50,7 +52,7 @@ export function applyStep(draft: Draft, step: GridStep, view: RunGridView): Appl
   for (const change of step.changes) {
     const place = shownNew + change.newRow;
     while (change.rowId === null && newKeys.length <= place) {
-      newKeys.push(`new-${nextKey}`);
+      newKeys.push(`${NEW}${nextKey}`);
       nextKey += 1;
     }
     const key = change.rowId ?? newKeys[place];
@@ -63,7 +65,7 @@ export function applyStep(draft: Draft, step: GridStep, view: RunGridView): Appl
   }
   const last = newKeys.at(-1);
   if (last === undefined || !isBlank(texts[last] ?? {})) {
-    newKeys.push(`new-${nextKey}`);
+    newKeys.push(`${NEW}${nextKey}`);
     nextKey += 1;
   }
   return { draft: { texts, newKeys, nextKey }, touched: [...touched], before };
@@ -91,6 +93,45 @@ export function withoutRows(draft: Draft, keys: Iterable<string>): Draft {
     texts: Object.fromEntries(Object.entries(draft.texts).filter(([key]) => !gone.has(key))),
     newKeys: draft.newKeys.filter((key) => !gone.has(key)),
   };
+}
+
+/** Drops the cells that still hold what was kept; what was typed over them meanwhile stays. */
+export function withoutKept(draft: Draft, key: string, kept: Readonly<Record<string, string>>): Draft {
+  const left = Object.entries(draft.texts[key] ?? {}).filter(([column, text]) => kept[column] !== text);
+  if (left.length === 0) return withoutRows(draft, [key]);
+  return { ...draft, texts: { ...draft.texts, [key]: Object.fromEntries(left) } };
+}
+
+/** New rows that are runs of the sheet by now: what is still typed in them goes on as an edit of the run. */
+export function adoptRows(draft: Draft, runIds: Readonly<Record<string, string>>): Draft {
+  return {
+    ...draft,
+    texts: Object.fromEntries(Object.entries(draft.texts).map(([key, cells]) => [runIds[key] ?? key, cells])),
+    newKeys: draft.newKeys.filter((key) => runIds[key] === undefined),
+  };
+}
+
+/**
+ * Keys of the rows in the order in which they are drawn: runs that were there, then all that this page added, by
+ * when they were begun. A row stays in its place when it is kept, or what is typed next would land in another one.
+ * `runIds` tells what new rows became.
+ */
+export function rowOrder(
+  draft: Draft,
+  view: Pick<RunGridView, "rows">,
+  runIds: Readonly<Record<string, string>>,
+): readonly { readonly key: string; readonly runId: string | null }[] {
+  const begun = new Map(Object.entries(runIds).map(([key, runId]) => [runId, key]));
+  const rows = view.rows.map(({ runId }) => ({ key: begun.get(runId) ?? runId, runId }));
+  const added = [
+    ...rows.filter(({ runId }) => begun.has(runId)),
+    ...draft.newKeys.map((key) => ({ key, runId: null })),
+  ];
+  const place = ({ key }: { key: string }) => Number(key.slice(NEW.length));
+  return [
+    ...rows.filter(({ runId }) => !begun.has(runId)),
+    ...added.sort((one, other) => place(one) - place(other)),
+  ];
 }
 
 export function isBlank(cells: Readonly<Record<string, string>>): boolean {

@@ -9,7 +9,7 @@ import { Prose } from "@/app/_ui/prose";
 import { RunMark } from "@/app/_ui/run-mark";
 import { Unit } from "@/app/_ui/unit";
 import { draftFaults, isBlank } from "../draft-rows";
-import type { RunGridColumn, RunGridView } from "../run-grid.view";
+import type { RunGridColumn, RunGridRow, RunGridView } from "../run-grid.view";
 import { readCells } from "../run-row";
 import { type RowConflict, useRunDraft } from "./use-run-draft";
 
@@ -29,7 +29,12 @@ export function RunGrid({
 }) {
   const sheet = useRunDraft({ studyId, revision, view });
   const faults = draftFaults(sheet.draft, view);
-  const rows = [...keptRows(view, sheet, faults), ...(canEdit ? newRows(sheet, faults) : [])];
+  const keptById = new Map(view.rows.map((row) => [row.runId, row]));
+  const rows = sheet.order.flatMap(({ key, runId }) => {
+    const kept = runId === null ? undefined : keptById.get(runId);
+    if (kept !== undefined) return [keptRow(key, kept, view, sheet, faults)];
+    return canEdit ? [newRow(key, sheet, faults)] : [];
+  });
   const columnOf = new Map(view.columns.map((column) => [column.id, column]));
   return (
     <>
@@ -92,37 +97,33 @@ function gridColumn(column: RunGridColumn): GridColumn {
 type Sheet = ReturnType<typeof useRunDraft>;
 type Faults = ReturnType<typeof draftFaults>;
 
-function keptRows(view: RunGridView, sheet: Sheet, faults: Faults): GridRow[] {
-  return view.rows.map((row): GridRow => {
-    const cells = { ...row.cells, ...sheet.draft.texts[row.runId] };
-    const label = cells.label || row.cells.label || "run";
-    return {
-      id: row.runId,
-      label,
-      cells,
-      drawn: { label: <RunMark mark={row.mark} label={label} state={row.state} /> },
-      ...(row.state === "set-aside" ? { tone: "set-aside" as const } : {}),
-      ...faultsOf(faults[row.runId], view, label, {
-        label: "Return to the kept values",
-        act: () => sheet.discard(row.runId),
-      }),
-    };
-  });
+function keptRow(id: string, row: RunGridRow, view: RunGridView, sheet: Sheet, faults: Faults): GridRow {
+  const cells = { ...row.cells, ...sheet.draft.texts[row.runId] };
+  const label = cells.label || row.cells.label || "run";
+  return {
+    id,
+    label,
+    cells,
+    drawn: { label: <RunMark mark={row.mark} label={label} state={row.state} /> },
+    ...(row.state === "set-aside" ? { tone: "set-aside" as const } : {}),
+    ...faultsOf(faults[row.runId], view, label, {
+      label: "Return to the kept values",
+      act: () => sheet.discard(row.runId),
+    }),
+  };
 }
 
-function newRows(sheet: Sheet, faults: Faults): GridRow[] {
-  return sheet.draft.newKeys.map((key): GridRow => {
-    const cells = sheet.draft.texts[key] ?? {};
-    const label = cells.label?.trim() || "New run";
-    return {
-      id: key,
-      label,
-      cells,
-      tone: "new",
-      ...(isBlank(cells) ? { drawn: { label: <span className="text-ink-3">New run</span> } } : {}),
-      ...faultsOf(faults[key], null, label, { label: "Leave this row out", act: () => sheet.discard(key) }),
-    };
-  });
+function newRow(key: string, sheet: Sheet, faults: Faults): GridRow {
+  const cells = sheet.draft.texts[key] ?? {};
+  const label = cells.label?.trim() || "New run";
+  return {
+    id: key,
+    label,
+    cells,
+    tone: "new",
+    ...(isBlank(cells) ? { drawn: { label: <span className="text-ink-3">New run</span> } } : {}),
+    ...faultsOf(faults[key], null, label, { label: "Leave this row out", act: () => sheet.discard(key) }),
+  };
 }
 
 function faultsOf(

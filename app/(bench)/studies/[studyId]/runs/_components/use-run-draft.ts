@@ -6,12 +6,15 @@ import type { GridStep } from "@/app/_ui/grid/grid-shape";
 import { useStudyChange } from "../../../_change/use-study-change";
 import { keepRows } from "../actions";
 import {
+  adoptRows,
   applyStep,
   type CellBefore,
   type Draft,
   emptyDraft,
   keepableRows,
   restoreCells,
+  rowOrder,
+  withoutKept,
   withoutRows,
 } from "../draft-rows";
 import type { RunGridView } from "../run-grid.view";
@@ -21,7 +24,13 @@ import type { RowEdit } from "../schema";
 interface MadeStep {
   readonly cells: readonly CellBefore[];
   readonly after: readonly CellBefore[];
-  readonly revision: number | null;
+  readonly revision: Promise<number | null>;
+}
+
+/** Rows that were kept in a revision which the page has not received yet: they leave the draft when it arrives. */
+interface Arriving {
+  readonly rows: readonly RowEdit[];
+  readonly revision: number;
 }
 
 export interface RowConflict {
@@ -49,31 +58,50 @@ export function useRunDraft({
   const [said, say] = useState("");
   const [conflict, setConflict] = useState<RowConflict | null>(null);
   const [waiting, setWaiting] = useState(0);
-  // Rows that were kept in a revision which the page has not received yet: they leave the draft when it arrives.
-  const [arriving, setArriving] = useState<
-    readonly { readonly keys: readonly string[]; readonly revision: number }[]
-  >([]);
+  const [arriving, setArriving] = useState<readonly Arriving[]>([]);
+  // What the new rows of this page became, by their keys.
+  const [runIds, setRunIds] = useState<Readonly<Record<string, string>>>({});
+  const knownIds = useRef(runIds);
+  // One change at a time: the next may be about a row that the last one makes, and starts from its revision.
+  const queue = useRef<Promise<unknown>>(Promise.resolve());
   const latest = useRef(revision);
   latest.current = Math.max(latest.current, revision);
   const made = useRef<MadeStep[]>([]);
   const undone = useRef<MadeStep[]>([]);
 
+  const onSheet = new Set(view.rows.map((row) => row.runId));
+  const landed = Object.fromEntries(
+    Object.entries(runIds).filter(([key, id]) => onSheet.has(id) && draft.newKeys.includes(key)),
+  );
+  if (Object.keys(landed).length > 0) setDraft((now) => adoptRows(now, landed));
   const arrived = arriving.filter((group) => group.revision <= revision);
   if (arrived.length > 0) {
     setArriving(arriving.filter((group) => group.revision > revision));
     setDraft((now) =>
-      withoutRows(
-        now,
-        arrived.flatMap(({ keys }) => keys),
-      ),
+      arrived
+        .flatMap(({ rows }) => rows)
+        .reduce((left, { key, cells }) => withoutKept(left, keyIn(left, key), cells), now),
     );
   }
 
+  /** Under which key a row's texts lie: a new row's own until it came back as a run. */
+  function keyIn(now: Draft, key: string): string {
+    return now.newKeys.includes(key) ? key : (knownIds.current[key] ?? key);
+  }
+
   /** The revision that the rows became; null where none did. */
-  async function send(rows: readonly RowEdit[], base: number): Promise<number | null> {
+  function send(rows: readonly RowEdit[]): Promise<number | null> {
+    const sent = queue.current.then(() => sendNow(rows));
+    // A change that failed was told of by its own promise; the next one is not held up by it.
+    queue.current = sent.catch(() => null);
+    return sent;
+  }
+
+  async function sendNow(wanted: readonly RowEdit[]): Promise<number | null> {
+    const rows = wanted.map((row) => ({ ...row, runId: row.runId ?? knownIds.current[row.key] ?? null }));
     setWaiting((count) => count + 1);
     try {
-      const result = await keepRows({ studyId, base, rows });
+      const result = await keepRows({ studyId, base: latest.current, rows });
       if (!result.ok) {
         refuse(result.message);
         return null;
@@ -89,29 +117,33 @@ export function useRunDraft({
         setConflict({ revision: value.revision, rows, theirs: value.theirs });
         return null;
       }
+      const made = rows.flatMap(({ key, runId }): [string, string][] => {
+        const id = value.runIds[key];
+        return runId === null && id !== undefined ? [[key, id]] : [];
+      });
+      knownIds.current = { ...knownIds.current, ...Object.fromEntries(made) };
+      setRunIds(knownIds.current);
       const at = value.revision;
       if (at !== null) {
         latest.current = Math.max(latest.current, at);
         announce(value);
       }
-      setArriving((groups) => [
-        ...groups,
-        { keys: rows.map(({ key }) => key), revision: at ?? latest.current },
-      ]);
+      setArriving((groups) => [...groups, { rows, revision: at ?? latest.current }]);
       return at;
     } finally {
       setWaiting((count) => count - 1);
     }
   }
 
-  async function onStep(step: GridStep) {
+  async function onStep(drawn: GridStep) {
+    // A run that began as a row of this page is drawn under its first key.
+    const changes = drawn.changes.map((change) =>
+      change.rowId === null ? change : { ...change, rowId: keyIn(draft, change.rowId) },
+    );
+    const step = { ...drawn, changes };
     const applied = applyStep(draft, step, view);
     setDraft(applied.draft);
     say(step.said);
-    // A row that is typed into again is no longer the one that was kept.
-    setArriving((groups) =>
-      groups.map((group) => ({ ...group, keys: group.keys.filter((key) => !applied.touched.includes(key)) })),
-    );
     const after = applied.before.map(({ key, column }) => ({
       key,
       column,
@@ -122,33 +154,38 @@ export function useRunDraft({
     const onPage = (cells: readonly CellBefore[]) => cells.filter(({ key }) => !sent.has(key));
     const entry = { cells: onPage(applied.before), after: onPage(after) };
     undone.current = [];
-    if (rows.length === 0) {
-      made.current.push({ ...entry, revision: null });
-      return;
-    }
-    made.current.push({ ...entry, revision: await send(rows, latest.current) });
+    const revision = rows.length === 0 ? Promise.resolve(null) : send(rows);
+    made.current.push({ ...entry, revision });
+    await revision;
   }
 
   async function onUndo() {
     const step = made.current.pop();
     if (step === undefined) return say("Nothing to undo here.");
-    setDraft((now) => restoreCells(now, step.cells));
-    const by = step.revision !== null && isOpen(step.revision) ? await undo(step.revision) : null;
-    undone.current.push({ ...step, revision: by });
+    setDraft((now) => restoreCells(now, heldNow(now, step.cells)));
+    const at = await step.revision;
+    const by = at !== null && isOpen(at) ? await undo(at) : null;
+    undone.current.push({ ...step, revision: Promise.resolve(by) });
     say("Undone.");
   }
 
   async function onRedo() {
     const step = undone.current.pop();
     if (step === undefined) return say("Nothing to redo here.");
-    setDraft((now) => restoreCells(now, step.after));
-    const by = step.revision === null ? null : await redo(step.revision);
-    made.current.push({ ...step, revision: by });
+    setDraft((now) => restoreCells(now, heldNow(now, step.after)));
+    const at = await step.revision;
+    const by = at === null ? null : await redo(at);
+    made.current.push({ ...step, revision: Promise.resolve(by) });
     say("Done again.");
+  }
+
+  function heldNow(now: Draft, cells: readonly CellBefore[]): readonly CellBefore[] {
+    return cells.map((cell) => ({ ...cell, key: keyIn(now, cell.key) }));
   }
 
   return {
     draft,
+    order: rowOrder(draft, view, runIds),
     said,
     say,
     conflict,
@@ -163,7 +200,7 @@ export function useRunDraft({
         setDraft((now) =>
           withoutRows(
             now,
-            conflict.rows.map(({ key }) => key),
+            conflict.rows.map(({ key }) => keyIn(now, key)),
           ),
         );
       setConflict(null);
@@ -173,7 +210,9 @@ export function useRunDraft({
       if (conflict === null) return;
       setConflict(null);
       latest.current = Math.max(latest.current, conflict.revision);
-      made.current.push({ cells: [], after: [], revision: await send(conflict.rows, conflict.revision) });
+      const revision = send(conflict.rows);
+      made.current.push({ cells: [], after: [], revision });
+      await revision;
     },
   };
 }
