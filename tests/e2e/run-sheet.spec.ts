@@ -55,6 +55,18 @@ async function makeBench(): Promise<Bench> {
   }
 }
 
+/** The same set-up without a run, so that the sheet opens on its grid. */
+async function makeEmptyBench(): Promise<Bench> {
+  const db = connect(browserRun().databaseFile);
+  try {
+    const domain = `empty-${randomBytes(4).toString("hex")}.example`;
+    const group = await makeGroup(db, domain);
+    return { group, domain, studyId: await makeStudy(db, group.lead, exampleSetUp("Nothing measured yet")) };
+  } finally {
+    await db.destroy();
+  }
+}
+
 async function sheetOf({ group, studyId }: Bench) {
   const db = connect(browserRun().databaseFile);
   const study = await readStudy(db, group.lead, studyId);
@@ -280,6 +292,63 @@ test("a block from a spreadsheet becomes runs in one step, with decimal commas a
   await expect(page.getByText("3 columns wide and 2 columns are left from Entered rate on")).toBeVisible();
 });
 
+test("runs are typed by hand into an empty study, from cell to cell and on into the next row", async ({
+  page,
+}) => {
+  const bench = await makeEmptyBench();
+  await signIn(page, `analyst@${bench.domain}`, `/studies/${bench.studyId}/runs`);
+  await page.waitForURL(/\?edit$/);
+  await cell(page, "New run", LABEL).click();
+  // Without a pause between the keys: a row is kept while the next cell is being typed.
+  for (const text of ["R01", "1,5", "10", "25,1", "day 1", "0.031", "first"]) {
+    await page.keyboard.type(text);
+    await page.keyboard.press("Tab");
+  }
+  await expect(cell(page, "New run", LABEL)).toBeFocused();
+  for (const text of ["R02", "3", "10"]) {
+    await page.keyboard.type(text);
+    await page.keyboard.press("Tab");
+  }
+  await expect(cell(page, "R01", /6/)).toHaveText("first");
+  await expect(page.getByText("Refitting.")).toHaveCount(0);
+  await expect(page.getByRole("heading", { level: 1 })).toContainText("Two runs");
+  await expect(page.getByRole("grid").locator('[aria-invalid="true"]')).toHaveCount(0);
+  const { sheet } = await sheetOf(bench);
+  expect(sheet.runs.map((run) => run.label)).toEqual(["R01", "R02"]);
+  const [first, second] = sheet.runs;
+  expect(first).toMatchObject({ temperatureKelvin: 298.25, block: "day 1", remark: "first" });
+  expect(first?.concentrations.a?.molar).toBeCloseTo(0.0015, 12);
+  expect(first?.concentrations.c?.molar).toBeCloseTo(0.01, 12);
+  // Rates are shown in mmol/L a second.
+  expect(first?.enteredRate?.molarPerSecond).toBeCloseTo(3.1e-5, 12);
+  expect(second?.concentrations.a?.molar).toBeCloseTo(0.003, 12);
+  expect(second?.concentrations.c?.molar).toBeCloseTo(0.01, 12);
+});
+
+test("a block with one bad cell pasted into an empty study keeps the good rows and marks the cell", async ({
+  page,
+}) => {
+  const bench = await makeEmptyBench();
+  await signIn(page, `analyst@${bench.domain}`, `/studies/${bench.studyId}/runs`);
+  await page.waitForURL(/\?edit$/);
+  await cell(page, "New run", LABEL).click();
+  await pasteText(page, "R01\t1\t10\nR02\ttwo\t10\nR03\t4\t10\n");
+  await expect(page.getByRole("heading", { level: 1 })).toContainText("Two runs");
+  await expect(cell(page, "R02", A)).toHaveText("two");
+  await expect(cell(page, "R02", A)).toHaveAttribute("aria-invalid", "true");
+  await expect(page.getByText("R02 is not kept yet")).toBeVisible();
+  expect((await sheetOf(bench)).sheet.runs.map((run) => run.label)).toEqual(["R01", "R03"]);
+
+  // The repaired cell is enough: the row is kept with what else was pasted.
+  await cell(page, "R02", A).click();
+  await page.keyboard.type("2");
+  await page.keyboard.press("Enter");
+  await expect(page.getByRole("heading", { level: 1 })).toContainText("Three runs");
+  const repaired = (await sheetOf(bench)).sheet.runs.find((run) => run.label === "R02");
+  expect(repaired?.concentrations.a?.molar).toBeCloseTo(0.002, 12);
+  expect(repaired?.concentrations.c?.molar).toBeCloseTo(0.01, 12);
+});
+
 test("two people change one run: both values are shown, and mine can be put over theirs", async ({
   page,
 }) => {
@@ -376,4 +445,30 @@ test("a study is made from a name and a reaction, and its set-up changes with th
   await page.goto("/studies?find=hydroxide");
   await expect(page.getByRole("link", { name: "Ester and hydroxide" })).toBeVisible();
   await expect(page.getByRole("link", { name: "Rates typed by hand" })).toHaveCount(0);
+});
+
+test("changed boxes of the set-up are not left without a question", async ({ page }) => {
+  const bench = await makeEmptyBench();
+  await signIn(page, `analyst@${bench.domain}`, `/studies/${bench.studyId}/set-up`);
+  const runs = page
+    .getByRole("navigation", { name: "Stations of this study" })
+    .getByRole("link", { name: /Runs/ });
+  await page.getByLabel(/^Temperature/).fill("31.0");
+  await runs.click();
+  const dialog = page.getByRole("dialog", { name: "Leave without keeping the changes?" });
+  await dialog.getByRole("button", { name: "Go on editing" }).click();
+  await expect(page.getByLabel(/^Temperature/)).toHaveValue("31.0");
+  await runs.click();
+  await dialog.getByRole("button", { name: "See the effect and keep" }).click();
+  await page.getByRole("button", { name: "Keep the set-up" }).click();
+  await expect(toast(page, "Changed the temperature.")).toBeVisible();
+
+  // Kept boxes are left without a question; changed ones only when that is said.
+  await page.getByLabel("Name", { exact: true }).fill("Another name");
+  await runs.click();
+  await dialog.getByRole("button", { name: "Leave without keeping" }).click();
+  await page.waitForURL(/\/runs\?edit$/);
+  const { sheet } = await sheetOf(bench);
+  expect(sheet.study.name).toBe("Nothing measured yet");
+  expect(sheet.conditions.temperatureKelvin?.value).toBeCloseTo(304.15, 9);
 });
