@@ -68,6 +68,22 @@ describe("a law that stands", () => {
     ]);
   });
 
+  test("prints a constant with a lopsided interval without a half width beside it", async () => {
+    const scattered = RECIPES.map(([a, b, scatter]) => [a, b, 10 * scatter] as const);
+    const { law } = await look(sheetOf(scattered));
+    for (const { name, number, interval } of law.constants) {
+      const ends = /^\(?([\d.\u202f\u2212]+) to ([\d.\u202f\u2212]+)/.exec(interval ?? "");
+      const [low, high, value] = [ends?.[1], ends?.[2], number.value].map((text) =>
+        Number((text ?? "").replaceAll("\u202f", "").replace("\u2212", "-")),
+      );
+      const arms = ((high ?? 0) - (value ?? 0)) / ((value ?? 0) - (low ?? 0));
+      expect([name, number.uncertainty === null]).toEqual([name, arms > 1.5]);
+    }
+    // Free orders carry k far outside the runs' concentrations, to 1 mol/L; the centre lies among them.
+    expect(law.constants.find((row) => row.name === "*k*, free orders")?.number.uncertainty).toBeNull();
+    expect(law.constants.find((row) => row.name === "rate at the centre")?.number.uncertainty).not.toBeNull();
+  });
+
   test("has a budget whose lines make the interval in squares", async () => {
     const { law } = await look(sheetOf(RECIPES));
     const rows = law.budget?.rows ?? [];

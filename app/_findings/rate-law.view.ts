@@ -184,13 +184,22 @@ function constantRow(
   display: DisplayScale,
   standing: boolean,
 ): ConstantRow {
+  const number = printEstimate(estimate, display, 2);
   return {
     name,
-    number: printEstimate(estimate, display, 2),
+    number: isLopsided(estimate) ? { ...number, uncertainty: null } : number,
     unit: display.unit,
     interval: intervalText(estimate, display),
     standing,
   };
+}
+
+/** Upper arm over lower arm beyond which half the width beside the value would name ends that the interval has not. */
+const LOPSIDED = 1.5;
+
+function isLopsided({ estimate, interval }: Estimate): boolean {
+  if (estimate === null || interval === null) return false;
+  return interval[1] - estimate > LOPSIDED * (estimate - interval[0]);
 }
 
 function intervalText({ estimate, interval }: Estimate, display: DisplayScale): string | null {
