@@ -13,7 +13,7 @@ export function Cautions({
 }) {
   const cautions = cautionsOf(form);
   return (
-    <div className="rounded-[3px] border border-warn border-l-[3px] px-3.5 py-3">
+    <div className="mb-5 break-inside-avoid rounded-[3px] border border-warn border-l-[3px] px-3.5 py-3">
       <h2>
         <SeverityMark severity="weakens">Cautions for this study</SeverityMark>
       </h2>

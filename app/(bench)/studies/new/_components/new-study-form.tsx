@@ -50,7 +50,6 @@ export function NewStudyForm({ next }: { next: string }) {
       margin={
         <Margin label="Cautions">
           <Cautions form={form} />
-          <div className="h-5" />
           <MarginSection title="How a reaction is written">
             <dl className="fact-list">
               <dt>Symbol</dt>

@@ -119,7 +119,6 @@ export function SetUpSheet({
               </p>
             )}
           </Cautions>
-          <div className="h-5" />
           {margin}
         </Margin>
       }
