@@ -4,7 +4,7 @@ import { Figure, PHONE_WIDTH } from "./figure";
 import type { AddedVariableView } from "./figure-view";
 import { InteractiveFigure } from "./interactive-figure";
 import { MarkShape } from "./mark-shape";
-import { type Box, box, boxesAlong, placeNames } from "./name-places";
+import { type Box, box, boxesAlong, leastCovering, placeNames } from "./name-places";
 import { plotOfAddedVariable } from "./plot-view";
 import { RunName } from "./run-name";
 import { SvgProse } from "./svg-prose";
@@ -56,10 +56,11 @@ function AddedVariable({ view, size, label }: { view: AddedVariableView; size: C
   const lines = linesOf(view, area);
   const named = view.points.filter((point) => !point.held);
   const marks = named.map((point) => ({ x: area.x(point.x), y: area.y(point.y) }));
+  const note = placeNote(view.note, lines.flatMap(obstacles), area);
   const names = placeNames(
     marks,
     named.map((point) => point.label),
-    { spots: spread.places, boxes: [...lines.flatMap(obstacles), noteBox(view.note, area)] },
+    { spots: spread.places, boxes: [...lines.flatMap(obstacles), note.frame] },
     area,
   );
   return (
@@ -87,7 +88,7 @@ function AddedVariable({ view, size, label }: { view: AddedVariableView; size: C
           name={names[index]}
         />
       ))}
-      <text className="in-law" x={area.left + 12} y={area.top + 18}>
+      <text className="in-law" x={note.frame.left} y={note.frame.bottom - 4}>
         <SvgProse text={view.note} />
       </text>
     </Chart>
@@ -123,8 +124,16 @@ function obstacles({ from, to, guide }: PlacedLine): Box[] {
   return [box(guide.x - width, guide.y - 11, width, 14)];
 }
 
-function noteBox(note: string, area: ChartArea): Box {
-  return box(area.left + 12, area.top + 4, note.length * 7.2, 18);
+/** The note on the fit stands at the upper left, or where a steep line leaves by the top, in the corner below it. */
+function placeNote(note: string, taken: readonly Box[], area: ChartArea): { readonly frame: Box } {
+  const width = note.length * 7.2;
+  const first = box(area.left + 12, area.top + 4, width, 18);
+  const corners = [
+    first,
+    box(area.right - 12 - width, area.bottom - 26, width, 18),
+    box(area.left + 12, area.bottom - 26, width, 18),
+  ];
+  return { frame: corners[leastCovering(corners, taken).index] ?? first };
 }
 
 /** Band, fitted line and the guides of neighbouring simple orders, each named where it leaves the plot. */

@@ -129,6 +129,41 @@ describe.each(Object.entries(drawings))("the drawing of %s", (_, draw) => {
   });
 });
 
+describe("a figure of a steep dependence", () => {
+  const placed = (markup: string, text: string) => {
+    const at = new RegExp(`<text[^>]*?x="([-\\d.]+)" y="([-\\d.]+)"[^>]*>(?:<tspan>)?${text}`).exec(markup);
+    return { x: Number(at?.[1]), y: Number(at?.[2]) };
+  };
+
+  it("keeps the note on the fit off the name of a guide that leaves by the top", () => {
+    const points = [0.5, 1, 2, 5].map((x, i) => ({
+      label: `R${i}`,
+      mark,
+      setAside: false,
+      x,
+      y: 0.02 * x ** 3,
+      held: false,
+    }));
+    const markup = renderToStaticMarkup(
+      <AddedVariableFigure
+        view={{
+          ...added,
+          points,
+          line: { slope: 3, through: { x: 0.5, y: 0.8 } },
+          guides: [{ label: "order 4", slope: 4 }],
+          band: [],
+        }}
+        label="Order in B"
+      />,
+    );
+    const guide = placed(markup, "order 4");
+    const note = placed(markup, "order in B");
+    expect([guide.x, guide.y, note.x, note.y].every(Number.isFinite)).toBe(true);
+    // 15 px of note, 11 px of guide name: apart by a line they share nothing.
+    expect(Math.abs(guide.y - note.y)).toBeGreaterThan(18);
+  });
+});
+
 describe("a trace figure", () => {
   it("names every run at its trace and strikes the one set aside", () => {
     const markup = renderToStaticMarkup(<TraceFigure view={traces(5)} label="Traces" />);
@@ -139,6 +174,19 @@ describe("a trace figure", () => {
 });
 
 describe("a window figure", () => {
+  it("says the rate where the readings leave room, beside the window or in a corner", () => {
+    const time = windowView.time;
+    const beside = renderToStaticMarkup(<WindowFigure view={windowView} label="Window" />);
+    expect(beside).toContain("slope at");
+    // Readings all along the top leave the lower right corner alone.
+    const high = time.map((_, i) => (i < 3 ? 10 * i : 30));
+    const below = renderToStaticMarkup(
+      <WindowFigure view={{ ...windowView, signal: high, curve: null, slope: null }} label="Window" />,
+    );
+    const y = Number(/class="in-law" x="[\d.]+" y="([\d.]+)"/.exec(below)?.[1]);
+    expect(y).toBeGreaterThan(200);
+  });
+
   it("has two sliders that speak time and points, and none where nothing may be changed", () => {
     const markup = renderToStaticMarkup(
       <WindowFigure view={windowView} label="Window" onCommit={() => {}} />,

@@ -1,5 +1,5 @@
 import { describe, expect, it } from "vitest";
-import { boxesAlong, placeNames } from "./name-places";
+import { box, boxesAlong, leastCovering, placeNames } from "./name-places";
 
 const area = { left: 40, right: 400, top: 20, bottom: 300 };
 
@@ -32,5 +32,19 @@ describe("placeNames", () => {
     expect(placeNames(marks, names, { spots: [] }, area)).toEqual(
       placeNames(marks, names, { spots: [] }, area),
     );
+  });
+});
+
+describe("leastCovering", () => {
+  const frames = [box(50, 30, 100, 20), box(290, 30, 100, 20), box(290, 270, 100, 20)];
+
+  it("takes the first free frame, and says that it is free", () => {
+    expect(leastCovering(frames, [])).toEqual({ index: 0, covered: 0 });
+    expect(leastCovering(frames, [box(60, 35, 10, 10)])).toEqual({ index: 1, covered: 0 });
+  });
+
+  it("says how much the best one covers where none is free", () => {
+    const everywhere = [box(50, 30, 100, 20), box(290, 30, 50, 20), box(290, 270, 100, 10)];
+    expect(leastCovering(frames, [...everywhere, box(290, 270, 10, 5)])).toEqual({ index: 1, covered: 1000 });
   });
 });

@@ -81,6 +81,16 @@ function overlap(a: Box, b: Box): number {
   return across > 0 && down > 0 ? across * down : 0;
 }
 
+/** Which of the frames covers least of what is there, the first of equals, and how much that is in square pixels. */
+export function leastCovering(
+  frames: readonly Box[],
+  taken: readonly Box[],
+): { readonly index: number; readonly covered: number } {
+  const costs = frames.map((frame) => taken.reduce((sum, other) => sum + overlap(frame, other), 0));
+  const covered = Math.min(...costs);
+  return { index: costs.indexOf(covered), covered };
+}
+
 /** A straight line as a row of small boxes, so that names keep off it. */
 export function boxesAlong(from: Spot, to: Spot): Box[] {
   const steps = Math.max(1, Math.round(Math.hypot(to.x - from.x, to.y - from.y) / 6));

@@ -4,6 +4,7 @@ import { type ReactNode, useRef } from "react";
 import { Axes, type ChartArea, layOut, Paper, pointsOf } from "./chart";
 import { decimate } from "./decimate";
 import type { WindowChoice, WindowFigureView } from "./figure-view";
+import { box, leastCovering } from "./name-places";
 import { SvgProse } from "./svg-prose";
 import { extent, linearDomain } from "./ticks";
 import { useWidth } from "./use-width";
@@ -174,21 +175,41 @@ function Tangent({
   );
 }
 
-/** The rate in words, right of the window where there is room, else in the corner that the trace leaves free. */
+/** Narrower plots have no room for a second place for what the page's title says already. */
+const ROOMY = 480;
+
+/**
+ * The rate in words, right of the window where there is room, else in the corner that the trace leaves free. A
+ * narrow plot without a free place goes without it rather than having it over the readings.
+ */
 function Note({ view, area, choice }: { view: WindowFigureView; area: ChartArea; choice: WindowChoice }) {
   if (view.note === "") return null;
-  const size = area.right - area.left > 480 ? 18 : 15;
-  const room = area.right - area.x(choice.to) > view.note.length * size * 0.41 + 30;
-  const rising = (view.signal.at(-1) ?? 0) >= (view.signal[0] ?? 0);
-  const x = room ? area.x(choice.to) + 26 : area.right - 12;
-  const y = room || !rising ? area.top + 30 : area.bottom - 34;
-  const anchor = room ? "start" : "end";
+  const roomy = area.right - area.left > ROOMY;
+  const size = roomy ? 18 : 15;
+  const width = Math.max(view.note.length * size * 0.41, view.noteDetail.length * 6);
+  const beside = area.x(choice.to) + 26;
+  const [top, bottom] = [area.top + 30, area.bottom - 34];
+  const corners = [
+    { x: area.right - 12, y: bottom, anchor: "end" },
+    { x: area.right - 12, y: top, anchor: "end" },
+    { x: area.left + 12, y: top, anchor: "start" },
+  ] as const;
+  const room = area.right - beside > width + 4;
+  const places = room ? ([{ x: beside, y: top, anchor: "start" }, ...corners] as const) : corners;
+  const frames = places.map(({ x, y, anchor }) =>
+    box(anchor === "start" ? x : x - width, y - size, width, size + 24),
+  );
+  const thin = decimate([...view.time], [...view.signal], Math.round((area.right - area.left) / 4));
+  const readings = thin.x.map((time, i) => box(area.x(time) - 2, area.y(thin.y[i] ?? 0) - 2, 4, 4));
+  const { index, covered } = leastCovering(frames, readings);
+  const place = places[index];
+  if (place === undefined || (covered > 0 && !roomy)) return null;
   return (
     <>
-      <text className="in-law" x={x} y={y} textAnchor={anchor} style={{ fontSize: size }}>
+      <text className="in-law" x={place.x} y={place.y} textAnchor={place.anchor} style={{ fontSize: size }}>
         <SvgProse text={view.note} />
       </text>
-      <text x={x} y={y + 19} textAnchor={anchor}>
+      <text x={place.x} y={place.y + 19} textAnchor={place.anchor}>
         <SvgProse text={view.noteDetail} />
       </text>
     </>
