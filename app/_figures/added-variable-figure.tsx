@@ -56,7 +56,8 @@ function AddedVariable({ view, size, label }: { view: AddedVariableView; size: C
   const lines = linesOf(view, area);
   const named = view.points.filter((point) => !point.held);
   const marks = named.map((point) => ({ x: area.x(point.x), y: area.y(point.y) }));
-  const note = placeNote(view.note, lines.flatMap(obstacles), area);
+  const drawn = lines.flatMap((line) => [...obstacles(line), ...boxesAlong(line.from, line.to)]);
+  const note = placeNote(view.note, drawn, area);
   const names = placeNames(
     marks,
     named.map((point) => point.label),
@@ -124,9 +125,12 @@ function obstacles({ from, to, guide }: PlacedLine): Box[] {
   return [box(guide.x - width, guide.y - 11, width, 14)];
 }
 
+/** Mean advance of the note's serif at 15 px. */
+const NOTE_LETTER = 6;
+
 /** The note on the fit stands at the upper left, or where a steep line leaves by the top, in the corner below it. */
 function placeNote(note: string, taken: readonly Box[], area: ChartArea): { readonly frame: Box } {
-  const width = note.length * 7.2;
+  const width = note.length * NOTE_LETTER;
   const first = box(area.left + 12, area.top + 4, width, 18);
   const corners = [
     first,
