@@ -29,8 +29,6 @@ const config = {
   // Browsers ask for this name wherever no page has told them another: while a page is exchanged, beside a table.
   rewrites: async () => [{ source: "/favicon.ico", destination: "/icon.svg" }],
   env: { KINETICS_CORE_HASH: coreHash() },
-  // What a browser asks for while the head that names the icon is still on its way.
-  rewrites: async () => [{ source: "/favicon.ico", destination: "/icon.svg" }],
 };
 
 export default config;

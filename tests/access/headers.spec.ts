@@ -65,12 +65,6 @@ test("no answer says what the server is made with", async () => {
   expect(headers.get("server")).toBeNull();
 });
 
-test("the address at which browsers look for an icon has it", async () => {
-  const { status, headers } = await visitor.send("/favicon.ico");
-  expect(status).toBe(200);
-  expect(headers.get("content-type")).toBe("image/svg+xml");
-});
-
 test("no answer to bad input carries a stack trace, a file name or an error's class", async () => {
   const json = { "Content-Type": "application/json" };
   const requests: [string, Parameters<Visitor["send"]>[1]][] = [
