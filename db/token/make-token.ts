@@ -8,7 +8,7 @@ import { migrateToLatest } from "../migrate-to-latest";
 import { createToken } from "./token.commands";
 import { tokenScope } from "./token.table";
 
-/** `pnpm token name@example.org [--scope read|write] [--days 90]`; without an e-mail it lists the accounts. */
+/** `pnpm run token name@example.org [--scope read|write] [--days 90]`; without an e-mail it lists the accounts. */
 const { values, positionals } = parseArgs({
   allowPositionals: true,
   options: {
@@ -33,7 +33,7 @@ async function main(email: string | undefined): Promise<number> {
     const known = accounts.map((one) => `  ${one.email}  (${one.role}, ${one.groupName})`);
     const head =
       email === undefined
-        ? "Say whose token it is: pnpm token <e-mail>"
+        ? "Say whose token it is: pnpm run token <e-mail>"
         : `No account has the e-mail ${email}.`;
     console.error(
       [head, known.length === 0 ? "There are no accounts yet." : "Accounts:", ...known].join("\n"),

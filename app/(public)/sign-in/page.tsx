@@ -40,7 +40,7 @@ export default async function SignInPage({
             </sup>
           </p>
           <p className="mt-1 max-w-[34ch] text-[20px] text-ink-2 leading-[1.4]">
-            From traces to a rate law, with its uncertainty and its rivals in plain sight.
+            From traces to a rate law, with its uncertainty and its checks in plain sight.
           </p>
         </div>
       </section>
