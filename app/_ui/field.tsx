@@ -11,9 +11,27 @@ interface Frame {
   error?: ReactNode;
 }
 
-function describedBy(id: string, frame: Frame): string | undefined {
-  const ids = [frame.error ? `${id}-error` : "", frame.hint ? `${id}-hint` : ""].filter(Boolean);
-  return ids.length === 0 ? undefined : ids.join(" ");
+/** What every control shares: its id, what describes it, and how it looks when something is wrong. */
+function useFrame({
+  id,
+  className,
+  frame,
+  look,
+}: {
+  id: string | undefined;
+  className: string | undefined;
+  frame: Frame;
+  look: string;
+}) {
+  const made = useId();
+  const own = id ?? made;
+  const describing = [frame.error ? `${own}-error` : "", frame.hint ? `${own}-hint` : ""].filter(Boolean);
+  return {
+    id: own,
+    "aria-invalid": frame.error ? (true as const) : undefined,
+    "aria-describedby": describing.length === 0 ? undefined : describing.join(" "),
+    className: className === undefined ? look : `${look} ${className}`,
+  };
 }
 
 function FieldFrame({ id, frame, children }: { id: string; frame: Frame; children: ReactNode }) {
@@ -44,27 +62,12 @@ function FieldFrame({ id, frame, children }: { id: string; frame: Frame; childre
 }
 
 /** A one-line field. Value and uncertainty share one box, "25.0 ± 0.1"; no ± means exact. */
-export function Field({
-  label,
-  unit,
-  hint,
-  error,
-  className = "",
-  id,
-  ...rest
-}: ComponentProps<"input"> & Frame) {
-  const made = useId();
+export function Field({ label, unit, hint, error, className, id, ...rest }: ComponentProps<"input"> & Frame) {
   const frame = { label, unit, hint, error };
+  const control = useFrame({ id, className, frame, look: "input" });
   return (
-    <FieldFrame id={id ?? made} frame={frame}>
-      <input
-        id={id ?? made}
-        autoComplete="off"
-        aria-invalid={error ? true : undefined}
-        aria-describedby={describedBy(id ?? made, frame)}
-        className={`input ${className}`.trim()}
-        {...rest}
-      />
+    <FieldFrame id={control.id} frame={frame}>
+      <input autoComplete="off" {...control} {...rest} />
     </FieldFrame>
   );
 }
@@ -75,21 +78,15 @@ export function Select({
   unit,
   hint,
   error,
-  className = "",
+  className,
   id,
   ...rest
 }: ComponentProps<"select"> & Frame) {
-  const made = useId();
   const frame = { label, unit, hint, error };
+  const control = useFrame({ id, className, frame, look: "select" });
   return (
-    <FieldFrame id={id ?? made} frame={frame}>
-      <select
-        id={id ?? made}
-        aria-invalid={error ? true : undefined}
-        aria-describedby={describedBy(id ?? made, frame)}
-        className={`select ${className}`.trim()}
-        {...rest}
-      />
+    <FieldFrame id={control.id} frame={frame}>
+      <select {...control} {...rest} />
     </FieldFrame>
   );
 }
@@ -100,22 +97,15 @@ export function TextArea({
   unit,
   hint,
   error,
-  className = "",
+  className,
   id,
   ...rest
 }: ComponentProps<"textarea"> & Frame) {
-  const made = useId();
   const frame = { label, unit, hint, error };
+  const control = useFrame({ id, className, frame, look: "input" });
   return (
-    <FieldFrame id={id ?? made} frame={frame}>
-      <textarea
-        id={id ?? made}
-        rows={2}
-        aria-invalid={error ? true : undefined}
-        aria-describedby={describedBy(id ?? made, frame)}
-        className={`input ${className}`.trim()}
-        {...rest}
-      />
+    <FieldFrame id={control.id} frame={frame}>
+      <textarea rows={2} {...control} {...rest} />
     </FieldFrame>
   );
 }
