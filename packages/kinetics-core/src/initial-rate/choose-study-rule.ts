@@ -23,7 +23,8 @@ export function chooseStudyRule(traces: readonly StudyTrace[]): StudyRuleChoice 
  * before squaring. With the lower's variance in the first term a pair whose members happen to agree wins however
  * little its upper member knows, a quartic through eight readings for one. In 24 simulated designs of nine runs (16,
  * 24 or 120 readings, noise of 0.2 or 1 %, orders 1 and 2, 40 or 80 % conversion; 60 studies each) the upper's lowers
- * the root-mean-square error of orders and ln k by 12 %; their intervals cover 94.0 % where they covered 94.5 %.
+ * the root-mean-square error of orders and ln k by 12 %; their intervals cover 94.0 % where they covered 94.5 %,
+ * and 88.3 % where they covered 92.8 % in the hardest (16 readings, 1 % noise, order 2, 40 % conversion).
  *
  * Rules that some runs cannot follow are not compared (runs that stand still are not asked), nor is a general order
  * that the traces together contradict (mean F, with the degrees of freedom of all runs, p ≤ 0.05). Of equal rules the
