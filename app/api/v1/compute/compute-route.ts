@@ -12,14 +12,14 @@ const waiting = new Set<string>();
 /**
  * The handler of one computation: signed in or with a token, stateless, nothing stored.
  *
- * @param inPool computes what is not quick on another thread; null where it did not end in time.
+ * @param inPool computes what is not quick on another thread; null where it did not end in time. Absent where all is.
  */
 export function computeRoute<Request extends z.ZodType, Answer extends z.ZodType>(
   entry: Computation<Request, Answer>,
-  inPool: (request: z.output<Request>, milliseconds: number) => Promise<Computed<unknown> | null>,
+  inPool?: (request: z.output<Request>, milliseconds: number) => Promise<Computed<unknown> | null>,
 ) {
   return route({ schema: entry.request, scope: "read", role: "reader" }, async ({ input, actor }) =>
-    entry.isQuick(input)
+    inPool === undefined || entry.isQuick === undefined || entry.isQuick(input)
       ? answer(entry.compute(input))
       : longCall(actor.memberId, () => inPool(input, LONGEST_COMPUTATION_MS)),
   );

@@ -14,8 +14,8 @@ export interface Computation<Request extends z.ZodType = z.ZodType, Response ext
   readonly request: Request;
   readonly response: Response;
   readonly compute: (request: z.output<Request>) => Computed<z.input<Response>>;
-  /** Done in some hundredths of a second; the rest goes to the pool. */
-  readonly isQuick: (request: z.output<Request>) => boolean;
+  /** Done in some hundredths of a second; the rest goes to the pool. Absent: whatever the schema lets through is quick. */
+  readonly isQuick?: (request: z.output<Request>) => boolean;
 }
 
 const QUICK_READINGS = 5000;

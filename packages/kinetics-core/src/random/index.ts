@@ -1,0 +1,1 @@
+export { type RandomDraws, randomDraws } from "./random-draws";

@@ -1,0 +1,6 @@
+export {
+  type EquationParameter,
+  type EquationValue,
+  equationValue,
+  type RateEquation,
+} from "./rate-equation";
