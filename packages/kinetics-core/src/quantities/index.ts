@@ -1,3 +1,12 @@
+export {
+  AVOGADRO_CONSTANT,
+  BOLTZMANN_CONSTANT,
+  ELECTRIC_CONSTANT,
+  ELEMENTARY_CHARGE,
+  GAS_CONSTANT,
+  PLANCK_CONSTANT,
+  ZERO_CELSIUS,
+} from "./constants";
 export type { Estimate, Flag, Severity, Uncertain } from "./estimate";
 export { estimateOf, exponentialOf, noEstimate } from "./estimate-of";
 export {
