@@ -1,8 +1,9 @@
+import { randomDraws } from "kinetics-core/random";
+import { progressTo, simulateTrace } from "kinetics-core/simulation";
 import { describe, expect, it } from "vitest";
 import { chooseFromSurveys, chooseStudyRule } from "./choose-study-rule";
 import { estimateInitialRate } from "./estimate-initial-rate";
 import type { StudyTrace } from "./initial-rate";
-import { normalDeviates, progressTo, simulateTrace } from "./simulated-trace";
 import { surveyTrace, type TraceSurvey } from "./survey-trace";
 
 function studyOf(
@@ -12,7 +13,7 @@ function studyOf(
   readings = 120,
   seed = 17,
 ): StudyTrace[] {
-  const deviate = normalDeviates(seed);
+  const deviate = randomDraws(seed).normal;
   return conversions.map((conversion, j) => ({
     label: `run ${j + 1}`,
     trace: simulateTrace(

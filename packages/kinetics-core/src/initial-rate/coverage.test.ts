@@ -1,13 +1,8 @@
 import { studentTFactor } from "kinetics-core/distributions";
+import { randomDraws } from "kinetics-core/random";
+import { progressTo, type SimulatedCourse, simulateTrace, trueSlope } from "kinetics-core/simulation";
 import { describe, expect, it } from "vitest";
 import { estimateInitialRate } from "./estimate-initial-rate";
-import {
-  normalDeviates,
-  progressTo,
-  type SimulatedCourse,
-  simulateTrace,
-  trueSlope,
-} from "./simulated-trace";
 
 /**
  * How often the 95 % interval of a single trace covers the true slope, over orders, conversions, lengths and
@@ -41,7 +36,7 @@ interface Outcome {
 }
 
 function simulate(): Outcome[] {
-  const deviate = normalDeviates(2026);
+  const deviate = randomDraws(2026).normal;
   return courses.flatMap((course) =>
     Array.from({ length: REPLICATES }, () => {
       const trace = simulateTrace(course, deviate);

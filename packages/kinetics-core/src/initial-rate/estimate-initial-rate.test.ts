@@ -1,10 +1,11 @@
+import { randomDraws } from "kinetics-core/random";
+import { progressTo, simulateTrace, trueSlope } from "kinetics-core/simulation";
 import { describe, expect, it } from "vitest";
 import { estimateInitialRate } from "./estimate-initial-rate";
 import { evaluateCurve } from "./evaluate-curve";
 import { partConsumed } from "./general-order";
 import type { InitialRateFound, InitialRateOptions, Trace } from "./initial-rate";
 import published from "./published-tables.fixture.json" with { type: "json" };
-import { normalDeviates, progressTo, simulateTrace, trueSlope } from "./simulated-trace";
 
 function found(trace: Trace, options?: InitialRateOptions): InitialRateFound {
   const result = estimateInitialRate(trace, options);
@@ -123,7 +124,7 @@ const noisy = simulateTrace(
     noise: 0.004,
     autocorrelation: 0.3,
   },
-  normalDeviates(21),
+  randomDraws(21).normal,
 );
 
 describe("an estimate", () => {
@@ -291,7 +292,7 @@ describe("what weakens an estimate is flagged", () => {
   });
 
   it("a rate lost in noise", () => {
-    const deviate = normalDeviates(5);
+    const deviate = randomDraws(5).normal;
     const result = found(
       traceOf(evenly(60, 59), () => 0.4 + 0.01 * deviate()),
       { signalSpan: 1 },
@@ -301,7 +302,7 @@ describe("what weakens an estimate is flagged", () => {
 
   it("strongly correlated noise", () => {
     const course = { order: 1, progress: 0.5, readings: 400, duration: 60, start: 0, span: 1, noise: 0.01 };
-    const result = found(simulateTrace({ ...course, autocorrelation: 0.97 }, normalDeviates(8)), {
+    const result = found(simulateTrace({ ...course, autocorrelation: 0.97 }, randomDraws(8).normal), {
       signalSpan: 1,
     });
     expect(result.autocorrelation).toBeGreaterThan(0.9);
@@ -310,7 +311,7 @@ describe("what weakens an estimate is flagged", () => {
 
   it("an order that a barely curved, noisy trace does not settle, which the rule then leaves out", () => {
     const course = { order: 0, progress: 0.1, readings: 120, duration: 60, start: 0, span: 1, noise: 0.02 };
-    const deviate = normalDeviates(6);
+    const deviate = randomDraws(6).normal;
     const results = Array.from({ length: 20 }, () => {
       const trace = simulateTrace({ ...course, autocorrelation: 0 }, deviate);
       const byName = found(trace, { signalSpan: 1, estimator: "integrated", window: [0, 60] });
@@ -461,7 +462,7 @@ describe("long traces", () => {
       autocorrelation: 0.2,
     };
     const took = [5_000, 50_000].map((readings) => {
-      const trace = simulateTrace({ ...course, readings }, normalDeviates(2));
+      const trace = simulateTrace({ ...course, readings }, randomDraws(2).normal);
       const result = found(trace, { signalSpan: 1 });
       expect(Math.abs(result.slope - trueSlope({ ...course, readings }))).toBeLessThan(
         4 * result.standardError,

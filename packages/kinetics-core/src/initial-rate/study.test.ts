@@ -1,9 +1,10 @@
+import { randomDraws } from "kinetics-core/random";
 import { fitRateLaw } from "kinetics-core/rate-law";
+import { progressTo, simulateTrace } from "kinetics-core/simulation";
 import { describe, expect, it } from "vitest";
 import { chooseStudyRule } from "./choose-study-rule";
 import { estimateInitialRate } from "./estimate-initial-rate";
 import type { InitialRate, StudyTrace } from "./initial-rate";
-import { normalDeviates, progressTo, simulateTrace } from "./simulated-trace";
 
 /**
  * From traces to orders with known truth, v = k·aⁿ·b with b a catalyst: the study's rule against a line over one
@@ -65,7 +66,7 @@ describe.each([
   { order: 2, fastest: 0.4, clockOrderAtMost: 0.9 },
   { order: 2, fastest: 0.8, clockOrderAtMost: 0.6 },
 ])("a study of order $order up to conversion $fastest", ({ order, fastest, clockOrderAtMost }) => {
-  const deviate = normalDeviates(100 * order + 10 * fastest);
+  const deviate = randomDraws(100 * order + 10 * fastest).normal;
   const studies = Array.from({ length: STUDIES }, () => {
     const { runs, rateConstant } = simulateStudy(order, fastest, deviate);
     const rule = chooseStudyRule(runs)?.rule;

@@ -1,6 +1,7 @@
 import { leastSquares, matrixFromColumns } from "kinetics-core/linear-algebra";
+import { randomDraws } from "kinetics-core/random";
+import { simulateTrace } from "kinetics-core/simulation";
 import { describe, expect, it } from "vitest";
-import { normalDeviates, simulateTrace } from "./simulated-trace";
 import { type TraceNoise, traceNoise } from "./trace-noise";
 
 function noiseOf(time: ArrayLike<number>, signal: ArrayLike<number>): TraceNoise {
@@ -15,7 +16,7 @@ function meanOf(values: number[]): number {
 
 describe("the noise of a trace", () => {
   it("follows its formulas, computed with whole matrices", () => {
-    const deviate = normalDeviates(11);
+    const deviate = randomDraws(11).normal;
     // Uneven on purpose: R takes each gap in units of the median gap.
     const time = Array.from({ length: 26 }, (_, i) => i + 0.3 * Math.sin(3 * i));
     // A ripple of five periods is too fast for the polynomial and correlates neighbours by cos 1.2.
@@ -64,7 +65,7 @@ describe("the noise of a trace", () => {
     [200, 0.5, 0.04],
     [1000, 0.8, 0.02],
   ])("recovers σ and ρ: %i readings, ρ = %s", (readings, autocorrelation, tolerance) => {
-    const deviate = normalDeviates(3);
+    const deviate = randomDraws(3).normal;
     const noises = Array.from({ length: 60 }, () => {
       const course = { order: 1, progress: 1, readings, duration: 60, start: 0.2, span: 1, noise: 0.01 };
       const { time, signal } = simulateTrace({ ...course, autocorrelation }, deviate);
@@ -79,7 +80,7 @@ describe("the noise of a trace", () => {
   });
 
   it("underestimates ρ in short traces, which the floor of three degrees of freedom stands for", () => {
-    const deviate = normalDeviates(4);
+    const deviate = randomDraws(4).normal;
     const noises = Array.from({ length: 200 }, () => {
       const course = { order: 0, progress: 0.5, readings: 20, duration: 60, start: 0, span: 1, noise: 0.01 };
       const { time, signal } = simulateTrace({ ...course, autocorrelation: 0.9 }, deviate);

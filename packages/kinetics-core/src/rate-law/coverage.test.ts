@@ -1,7 +1,8 @@
 import { incompleteBeta } from "kinetics-core/distributions";
+import { randomDraws } from "kinetics-core/random";
+import { labelOf, type Scenario, simulateRuns } from "kinetics-core/simulation";
 import { describe, expect, it } from "vitest";
 import { fitRateLaw } from "./fit-rate-law";
-import { labelOf, normalDeviates, type Scenario, simulateRuns } from "./simulated-runs";
 
 /**
  * Coverage of 95 % intervals with known truth, fixed seeds. Two limits:
@@ -108,7 +109,7 @@ describe("the limits", () => {
 
 describe.each(cells.map((cell, index) => ({ ...cell, index })))("$name", ({ scenario, exact, index }) => {
   it("covers orders and ln k as it says", () => {
-    const deviate = normalDeviates(20_001 + index);
+    const deviate = randomDraws(20_001 + index).normal;
     const covered = { A: 0, B: 0, "ln k": 0 };
     for (let replicate = 0; replicate < REPLICATES; replicate++) {
       const law = fitRateLaw(simulateRuns(scenario, deviate));

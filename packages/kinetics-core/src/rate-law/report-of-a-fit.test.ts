@@ -1,15 +1,15 @@
-import { describe, expect, it } from "vitest";
-import { fitRateLaw } from "./fit-rate-law";
-import type { RateLawFit, RateLawInput } from "./rate-law";
+import { randomDraws } from "kinetics-core/random";
 import {
   labelOf,
-  normalDeviates,
   nineRecipes as recipes,
   nineRuns as scenario,
   simulateRuns,
-} from "./simulated-runs";
+} from "kinetics-core/simulation";
+import { describe, expect, it } from "vitest";
+import { fitRateLaw } from "./fit-rate-law";
+import type { RateLawFit, RateLawInput } from "./rate-law";
 
-const study = simulateRuns(scenario, normalDeviates(8));
+const study = simulateRuns(scenario, randomDraws(8).normal);
 
 function law(input: RateLawInput): RateLawFit {
   const result = fitRateLaw(input);
@@ -111,7 +111,7 @@ describe("the parts of a report", () => {
     const thrice = [...recipes, ...recipes, ...recipes];
     const large = simulateRuns(
       { ...scenario, recipes: thrice, rateErrors: thrice.map(() => 0.005) },
-      normalDeviates(12),
+      randomDraws(12).normal,
     );
     const spoilt = law({
       ...large,
@@ -181,7 +181,7 @@ describe("re-readings and blocks", () => {
         blocks: days.map((_, j) => `day ${Math.floor(j / recipes.length) + 1}`),
         blockScatter: 0.15,
       },
-      normalDeviates(5),
+      randomDraws(5).normal,
     );
     const blocked = law(input);
     const ignored = law({ ...input, runs: input.runs.map(({ block: _, ...run }) => run) });

@@ -1,14 +1,14 @@
 import { correlatedLeastSquares, leastSquares, matrixFromColumns } from "kinetics-core/linear-algebra";
+import { randomDraws } from "kinetics-core/random";
 import { describe, expect, it } from "vitest";
 import { varianceComponents } from "./restricted-likelihood";
-import { normalDeviates } from "./simulated-runs";
 
 const logarithms = [-1.5, -1, -0.5, 0, 0.5, 1, 1.5, -1.5, 0, 1.5];
 const terms = matrixFromColumns([logarithms.map(() => 1), logarithms]);
 const stated = [1e-4, 4e-4, 1e-2, 1e-4, 9e-4, 1e-4, 2.5e-3, 1e-4, 1e-4, 4e-4];
 
 function response(seed: number, scatter: number): readonly number[] {
-  const deviate = normalDeviates(seed);
+  const deviate = randomDraws(seed).normal;
   return logarithms.map((x, j) => 0.3 + x + Math.sqrt((stated[j] ?? 0) + scatter ** 2) * deviate());
 }
 
@@ -93,7 +93,7 @@ describe("variance between blocks", () => {
   ];
 
   it("finds the least of the restricted deviance over both variances, as a grid over both shows", () => {
-    const deviate = normalDeviates(31);
+    const deviate = randomDraws(31).normal;
     const own = [0.15, -0.1, 0.12, -0.2];
     const y = logarithms.map(
       (x, j) => x + (own[blocks.findIndex((members) => members.includes(j))] ?? 0) + 0.02 * deviate(),
@@ -116,7 +116,7 @@ describe("variance between blocks", () => {
   });
 
   it("stays under the scatter of the runs where blocks differ by no more than runs do", () => {
-    const deviate = normalDeviates(33);
+    const deviate = randomDraws(33).normal;
     const y = logarithms.map((x) => x + 0.05 * deviate());
     const { betweenBlocks } = varianceComponents({ terms, response: y, stated, shared: [], blocks });
     expect(betweenBlocks).toBeLessThan(1e-3);

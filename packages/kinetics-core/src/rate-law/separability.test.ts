@@ -1,7 +1,7 @@
+import { labelOf } from "kinetics-core/simulation";
 import { describe, expect, it } from "vitest";
 import { fitRateLaw } from "./fit-rate-law";
 import type { RateLawFit, RateLawInput } from "./rate-law";
-import { labelOf } from "./simulated-runs";
 
 function law(input: RateLawInput): RateLawFit {
   const result = fitRateLaw(input);

@@ -1,18 +1,6 @@
-import { uniformFloat64 } from "pure-rand/distribution/uniformFloat64";
-import { xoroshiro128plus } from "pure-rand/generator/xoroshiro128plus";
-import { partConsumed } from "./general-order";
-import type { Trace } from "./initial-rate";
+import type { Trace } from "kinetics-core/initial-rate";
 
 /** Traces of known truth, for tests and for measuring how often an interval covers it. */
-
-/** Standard normal deviates, the same for the same seed (Box and Muller, Ann. Math. Statist. 29 (1958) 610). */
-export function normalDeviates(seed: number): () => number {
-  const generator = xoroshiro128plus(seed);
-  return () => {
-    const radius = Math.sqrt(-2 * Math.log1p(-uniformFloat64(generator)));
-    return radius * Math.cos(2 * Math.PI * uniformFloat64(generator));
-  };
-}
 
 export interface SimulatedCourse {
   readonly order: number;
@@ -27,7 +15,7 @@ export interface SimulatedCourse {
   readonly autocorrelation: number;
 }
 
-/** Evenly spaced readings of a reaction of one order, with first-order autoregressive noise. */
+/** Evenly spaced readings of a reaction of one order, with first-order autoregressive noise. `deviate`: standard normal. */
 export function simulateTrace(course: SimulatedCourse, deviate: () => number): Trace {
   const time = new Float64Array(course.readings);
   const signal = new Float64Array(course.readings);
@@ -46,6 +34,16 @@ export function simulateTrace(course: SimulatedCourse, deviate: () => number): T
 /** dS/dt at mixing: span·k, because the part consumed starts with slope k whatever the order. */
 export function trueSlope({ span, progress, duration }: SimulatedCourse): number {
   return (span * progress) / duration;
+}
+
+/**
+ * Part consumed 1 − c of dc/dτ = −cⁿ from c = 1, in closed form and so independent of what is tested with it; an
+ * order below one is exhausted at τ = 1/(1 − n).
+ */
+function partConsumed(progress: number, order: number): number {
+  if (order === 1) return -Math.expm1(-progress);
+  const left = Math.max(1 - (1 - order) * progress, 0);
+  return 1 - left ** (1 / (1 - order));
 }
 
 /** k·t_end that brings a reaction of this order to a conversion: ∫ dc/cⁿ from 1 − X to 1. */

@@ -1,6 +1,4 @@
-import { uniformFloat64 } from "pure-rand/distribution/uniformFloat64";
-import { xoroshiro128plus } from "pure-rand/generator/xoroshiro128plus";
-import type { RateLawInput, RateLawRun, SharedUncertainty } from "./rate-law";
+import type { RateLawInput, RateLawRun, SharedUncertainty } from "kinetics-core/rate-law";
 
 /** Runs with a known law and known errors, to test coverage with. Same seed, same runs. */
 export interface Scenario {
@@ -20,15 +18,7 @@ export interface Scenario {
   readonly blockScatter?: number;
 }
 
-/** Normal deviates by Box and Muller. */
-export function normalDeviates(seed: number): () => number {
-  const generator = xoroshiro128plus(seed);
-  return () => {
-    const radius = Math.sqrt(-2 * Math.log(1 - uniformFloat64(generator)));
-    return radius * Math.cos(2 * Math.PI * uniformFloat64(generator));
-  };
-}
-
+/** `deviate`: standard normal. */
 export function simulateRuns(scenario: Scenario, deviate: () => number): RateLawInput {
   const { species, orders, pipetting = 0, shared = [] } = scenario;
   const blockErrors = new Map<string, number>();
