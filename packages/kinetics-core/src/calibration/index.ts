@@ -1,0 +1,1 @@
+export { estimateOfRatio, fieller, type Ratio, type RatioOfEstimates, type RatioSet } from "./fieller";
