@@ -29,6 +29,11 @@ export interface SharedUncertainty {
   readonly relative: number;
   /** Labels of the runs that share it; all runs where absent. */
   readonly runs?: readonly string[];
+  /**
+   * Where it does not move all by the same factor (a pipette that gives half of one volume and all of another): by run
+   * label, then species, how many times `relative` it moves that concentration, with its sign. 1 where absent.
+   */
+  readonly factors?: Readonly<Record<string, Readonly<Record<string, number>>>>;
   /** How the budget names it; default is made from the species. */
   readonly source?: string;
 }

@@ -13,8 +13,10 @@ export interface SharedError {
   readonly species: readonly number[];
   readonly onRate: boolean;
   readonly relative: number;
-  /** Indices of the runs that share it; null where all do, so that it moves k and never the orders. */
+  /** Indices of the runs that share it; null where all do alike, so that it moves k and never the orders. */
   readonly runs: readonly number[] | null;
+  /** For each of `runs`: how many times `relative` it moves each of `species`. Null where all are 1. */
+  readonly factors: readonly (readonly number[])[] | null;
 }
 
 export function sharedErrors(
@@ -31,35 +33,54 @@ export function sharedErrors(
         message: `The shared error ${sourceOf(shared)} names ${inARow(unknown)}, which the law does not contain; that part was not counted. Correct the name, or add the species to the law.`,
       });
     if (!(shared.relative > 0) || !Number.isFinite(shared.relative)) return [];
-    const members = membersOf(shared, runs);
+    const common = membersOf(shared, runs);
+    const members = shared.factors === undefined ? common : (common ?? runs.map((_, j) => j));
     if (members !== null && members.length === 0) return [];
+    const species = [...new Set(shared.species)]
+      .map((name) => input.species.indexOf(name))
+      .filter((i) => i >= 0);
     return [
       {
         source: sourceOf(shared),
-        species: [...new Set(shared.species)]
-          .map((name) => input.species.indexOf(name))
-          .filter((i) => i >= 0),
+        species,
         onRate: shared.onRate ?? false,
         relative: shared.relative,
         runs: members,
+        factors:
+          shared.factors === undefined || members === null
+            ? null
+            : members.map((j) => species.map((i) => factorOf(shared, runs[j], input.species[i]))),
       },
     ];
   });
   return { errors, flags };
 }
 
-/** Change of ln v per unit of the relative error. */
-export function effectOf(error: SharedError, orders: readonly number[]): number {
-  return error.species.reduce((sum, i) => sum - (orders[i] ?? 0), error.onRate ? 1 : 0);
+/** Change of ln v per unit of the relative error; in the `member`-th of its runs where its factors differ. */
+export function effectOf(error: SharedError, orders: readonly number[], member?: number): number {
+  const factors = member === undefined ? undefined : error.factors?.[member];
+  return error.species.reduce(
+    (sum, i, place) => sum - (orders[i] ?? 0) * (factors?.[place] ?? 1),
+    error.onRate ? 1 : 0,
+  );
 }
 
 /** Standard deviation that the error brings to each run's ln v, with its sign. */
 export function loadingOf(error: SharedError, orders: readonly number[], rows: number): Float64Array {
-  const size = error.relative * effectOf(error, orders);
   const column = new Float64Array(rows);
-  if (error.runs === null) column.fill(size);
-  else for (const j of error.runs) column[j] = size;
+  if (error.runs === null) column.fill(error.relative * effectOf(error, orders));
+  else
+    error.runs.forEach((j, member) => {
+      column[j] = error.relative * effectOf(error, orders, member);
+    });
   return column;
+}
+
+/** Readings of one mixture have one recipe, so the first that is named speaks for all. */
+function factorOf(shared: SharedUncertainty, run: UsableRun | undefined, species = ""): number {
+  const label = run?.readings.find((reading) => shared.factors?.[reading] !== undefined);
+  const factor = label === undefined ? undefined : shared.factors?.[label]?.[species];
+  return factor !== undefined && Number.isFinite(factor) ? factor : 1;
 }
 
 /** An averaged run shares an error if any of its readings does: it is one mixture. */
