@@ -1,4 +1,5 @@
 import type { Shape } from "kinetics-core/least-squares";
+import { decayRatio, decayRatioSlope, logRatio, logRatioSlope } from "kinetics-core/smooth-ratios";
 
 /**
  * Course of a reaction of order n in one reactant. With x = k·t (k the initial rate over the starting amount) the
@@ -70,9 +71,8 @@ export function exponentialShape(time: Float64Array): Shape {
       for (let i = 0; i < time.length; i++) {
         const t = time[i] ?? Number.NaN;
         const x = progress * t;
-        const h = x === 0 ? 1 : -Math.expm1(-x) / x;
-        value[i] = t * h;
-        byProgress[i] = t * t * (Math.abs(x) < SERIES_BELOW ? exponentialSeries(x) : (1 - x * h - h) / x);
+        value[i] = t * decayRatio(x);
+        byProgress[i] = t * t * decayRatioSlope(x);
       }
     },
   };
@@ -83,31 +83,3 @@ const LEAST_PROGRESS = 1e-3;
 /** Over by a millionth of the window. */
 const LARGEST_PROGRESS = 1e6;
 const LARGEST_ACCELERATION = 5;
-
-/** Where the closed forms of the derivatives lose digits to cancellation, their series has them all. */
-const SERIES_BELOW = 0.05;
-const SERIES_TERMS = 12;
-
-/** log1p(z)/z = 1 − z/2 + z²/3 − … */
-function logRatio(z: number): number {
-  return z === 0 ? 1 : Math.log1p(z) / z;
-}
-
-/** g(z) = (z/(1 + z) − log1p(z))/z² = −1/2 + 2z/3 − 3z²/4 + … */
-function logRatioSlope(z: number, logarithm: number): number {
-  if (Math.abs(z) >= SERIES_BELOW) return (z / (1 + z) - logarithm) / (z * z);
-  let sum = 0;
-  for (let j = SERIES_TERMS; j >= 1; j--) sum = -j / (j + 1) - z * sum;
-  return sum;
-}
-
-/** h′(x) = ((1 + x)e^(−x) − 1)/x² = −1/2 + x/3 − x²/8 + … = Σ (−1)^j j x^(j−1)/(j + 1)! */
-function exponentialSeries(x: number): number {
-  let sum = 0;
-  let factor = -0.5;
-  for (let j = 1; j <= SERIES_TERMS; j++) {
-    sum += factor;
-    factor *= (-x * (j + 1)) / (j * (j + 2));
-  }
-  return sum;
-}

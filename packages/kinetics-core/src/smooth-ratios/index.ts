@@ -1,0 +1,1 @@
+export { decayRatio, decayRatioSlope, logRatio, logRatioSlope } from "./smooth-ratios";
