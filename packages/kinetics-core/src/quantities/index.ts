@@ -26,3 +26,4 @@ export {
   type TimeUnit,
   timeToSeconds,
 } from "./units";
+export { concentrationInWords, inARow, numberInWords, percent, verb } from "./wording";

@@ -1,8 +1,7 @@
-import type { Estimate, Flag } from "kinetics-core/quantities";
+import { type Estimate, type Flag, inARow } from "kinetics-core/quantities";
 import type { OrdersFit } from "./fit-orders";
 import type { RateLawFit } from "./rate-law";
 import { nearestSimpleOrder } from "./simple-orders";
-import { inARow } from "./wording";
 
 /** What a reader should know about the law as a whole. */
 

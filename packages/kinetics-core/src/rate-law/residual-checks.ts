@@ -1,10 +1,9 @@
 import { fSurvival, normalQuantile, studentTSurvival } from "kinetics-core/distributions";
-import type { Flag } from "kinetics-core/quantities";
+import { type Flag, inARow, percent } from "kinetics-core/quantities";
 import type { OrdersFit } from "./fit-orders";
 import { groupsByRecipe } from "./pairs";
 import type { LackOfFit, RateLawFit } from "./rate-law";
 import type { UsableRun } from "./usable-runs";
-import { inARow, percent } from "./wording";
 
 /** What the residuals say: runs that depart, runs that cannot be checked, replicates that disagree, lack of fit. */
 

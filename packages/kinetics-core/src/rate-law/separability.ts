@@ -1,12 +1,18 @@
 import { columnOf } from "kinetics-core/linear-algebra";
-import { type ConcentrationUnit, type Flag, printUncertain } from "kinetics-core/quantities";
+import {
+  type ConcentrationUnit,
+  concentrationInWords,
+  type Flag,
+  inARow,
+  numberInWords,
+  printUncertain,
+} from "kinetics-core/quantities";
 import { centredLogarithms, type Design, regressOnOthers, rootMeanSquare } from "./design";
 import type { OrdersFit } from "./fit-orders";
 import type { OrderCombination, RateLawFit, Separability } from "./rate-law";
 import { reducedRows } from "./reduced-rows";
 import { combinationFunctional, estimateOfFunctional, uncertaintyOf } from "./uncertainty";
 import type { UsableRun } from "./usable-runs";
-import { concentrationInWords, inARow, numberInWords } from "./wording";
 
 /**
  * Can the design tell the orders apart? The standard error of an order is the residual scatter over

@@ -1,7 +1,6 @@
-import type { Flag } from "kinetics-core/quantities";
+import { type Flag, inARow } from "kinetics-core/quantities";
 import type { RateLawInput, SharedUncertainty } from "./rate-law";
 import type { UsableRun } from "./usable-runs";
-import { inARow } from "./wording";
 
 /**
  * Errors that runs share. A common relative error e of a stock moves ln v by Σ n_i e over the species made from it; on

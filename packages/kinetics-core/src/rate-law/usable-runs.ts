@@ -1,6 +1,5 @@
-import type { Flag } from "kinetics-core/quantities";
+import { type Flag, inARow, percent, verb } from "kinetics-core/quantities";
 import type { RateLawInput, RateLawRun } from "./rate-law";
-import { inARow, percent, verb } from "./wording";
 
 /**
  * From the runs as given to the runs that a law can be fitted to: re-readings of one mixture averaged, runs without a

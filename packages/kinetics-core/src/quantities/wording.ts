@@ -1,9 +1,6 @@
-import {
-  type ConcentrationUnit,
-  concentrationUnitText,
-  printNumber,
-  superscript,
-} from "kinetics-core/quantities";
+import { printNumber, superscript } from "./printed-number";
+import { concentrationUnitText } from "./rate-constant-unit";
+import type { ConcentrationUnit } from "./units";
 
 /** How findings speak: names in a row, concentrations with their unit, percentages. */
 
