@@ -1,2 +1,3 @@
+export { informationOf, type LinearRun, type LinearStudy, simulateLinearRuns } from "./linear-runs";
 export { labelOf, nineRecipes, nineRuns, type Scenario, simulateRuns } from "./simulated-runs";
 export { progressTo, type SimulatedCourse, simulateTrace, trueSlope } from "./simulated-trace";
