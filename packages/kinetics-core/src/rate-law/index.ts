@@ -13,4 +13,5 @@ export type {
   SharedUncertainty,
   SimpleOrderReading,
 } from "./rate-law";
+export { type VarianceComponents, type VarianceProblem, varianceComponents } from "./restricted-likelihood";
 export { nearestSimpleOrder, SIMPLE_ORDERS } from "./simple-orders";
