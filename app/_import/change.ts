@@ -13,10 +13,12 @@ export type Change =
   | { readonly kind: "leave-lines-out"; readonly lines: readonly number[] }
   | { readonly kind: "take-line-in"; readonly line: number };
 
-/** The corrections after one change. Another separator makes other columns, so what was said of columns and cells goes. */
+/** The corrections after one change. Another sheet is read afresh; another separator makes other columns, so what was said of columns and cells goes. */
 export function applyChange(current: Corrections, change: Change): Corrections {
   switch (change.kind) {
     case "set": {
+      // Another sheet is another table.
+      if ("sheet" in change.values) return change.values;
       const { columns, labels, cells, ...rest } = current;
       const kept = "separator" in change.values || "quotes" in change.values ? rest : current;
       return { ...kept, ...change.values };

@@ -43,30 +43,20 @@ export function decodeText(bytes: Uint8Array, stated?: Encoding): DecodedText {
       message: "The file holds nothing but blank lines. Export it again and choose the new file.",
     };
   }
-  if (/^\s*##TITLE\s*=/i.test(text)) {
-    return {
-      status: "refused",
-      message:
-        "This is a JCAMP-DX file, which is not read here. Export the traces from the instrument as CSV, or save the sheet as CSV, and choose that file.",
-    };
-  }
   return { status: "text", text, encoding };
 }
 
 const NOT_TEXT =
-  "This is a binary file, not a table of text. Export the readings as CSV, or open the file in a spreadsheet and save the sheet as CSV.";
+  "This is a binary file, not a table of text. Export the readings as CSV, or open the file in a spreadsheet and save it as XLSX or CSV.";
 
 /** First bytes of what people drop by mistake, most often the workbook itself. */
 function binaryKind(bytes: Uint8Array): string | null {
   const starts = (...magic: number[]) => magic.every((byte, i) => bytes[i] === byte);
   if (starts(0x50, 0x4b, 0x03, 0x04)) {
-    const head = new TextDecoder("windows-1252").decode(bytes.subarray(0, 4096));
-    return /xl\/|\[Content_Types\]|workbook/.test(head)
-      ? "This is an Excel workbook (XLSX), which is not read here. Save the sheet as CSV and choose that file, or copy its cells and paste them."
-      : "This is a ZIP archive or a packed document. Take the table out of it; if it is a spreadsheet, save the sheet as CSV.";
+    return "This is a ZIP archive or a packed document. Take the table out of it; if it is a spreadsheet, save it as XLSX or CSV.";
   }
   if (starts(0xd0, 0xcf, 0x11, 0xe0)) {
-    return "This is an old Excel workbook (XLS), which is not read here. Save the sheet as CSV and choose that file, or copy its cells and paste them.";
+    return "This is a workbook of the old format (XLS), or one locked by a password; neither is read here. Save it as XLSX without a password, or the sheet as CSV, and choose that file.";
   }
   if (starts(0x25, 0x50, 0x44, 0x46)) {
     return "This is a PDF. A table cannot be read from it reliably: export the readings from the instrument as CSV.";

@@ -3,8 +3,9 @@ import path from "node:path";
 import { describe, expect, it } from "vitest";
 import { applyChange } from "./change";
 import type { Corrections } from "./corrections";
-import { readFile } from "./read-file";
+import { readTable } from "./read-file";
 import type { FileReading, Issue, StudyContext } from "./reading";
+import { textTable } from "./table-text";
 import { EMPTY_STUDY } from "./testing-context";
 
 /** Every file of corpus/, written by hand for these tests: what must be read from it, or what must be said. */
@@ -14,13 +15,13 @@ function bytesOf(file: string): Uint8Array {
 }
 
 function read(file: string, corrections: Corrections = {}, context: StudyContext = EMPTY_STUDY): FileReading {
-  const reading = readFile(bytesOf(file), context, corrections);
+  const reading = readTable(textTable(bytesOf(file), corrections), context, corrections);
   if (reading.status !== "read") throw new Error(`${file} was refused: ${reading.message}`);
   return reading;
 }
 
 function refusal(file: string): string {
-  const reading = readFile(bytesOf(file), EMPTY_STUDY, {});
+  const reading = readTable(textTable(bytesOf(file), {}), EMPTY_STUDY, {});
   return reading.status === "refused" ? reading.message : "not refused";
 }
 
@@ -272,11 +273,10 @@ describe("what cannot be a table", () => {
   it.each([
     ["empty.csv", /empty: it holds 0 bytes/],
     ["blank-lines.csv", /nothing but blank lines/],
-    ["workbook.xlsx", /Excel workbook \(XLSX\).*Save the sheet as CSV/],
-    ["old-workbook.xls", /old Excel workbook.*Save the sheet as CSV/],
-    ["noise.bin", /binary file.*save the sheet as CSV/],
+    ["old-workbook.xls", /old format \(XLS\).*Save it as XLSX/],
+    ["noise.bin", /binary file.*save it as XLSX or CSV/],
     ["picture.png", /picture/],
-    ["spectrum.jdx", /JCAMP-DX.*as CSV/],
+    ["spectrum.jdx", /JCAMP-DX.*an axis without a unit, not along time/],
     ["only-text.csv", /No line of numbers.*“name colour”/],
     ["spaces.txt", /separated by spaces/],
   ])("%s is refused with the way out", (file, message) => {
@@ -383,7 +383,7 @@ describe("runs of the study", () => {
       "t / s,R01,A_2,K01,ch 4\n0,1.5,2.5,3.5,4.5\n1,1.6,2.6,3.6,4.6\n2,1.7,2.7,3.7,4.7\n",
     );
     const labels = (context: StudyContext) => {
-      const reading = readFile(bytes, context, {});
+      const reading = readTable(textTable(bytes, {}), context, {});
       return reading.status === "read" && reading.traces.map((trace) => trace.label);
     };
     expect(labels(EMPTY_STUDY)).toEqual(["R01", "R2", "K01", "R4"]);
@@ -427,7 +427,7 @@ describe("a cell far longer than any name", () => {
       species: [{ id: "a", symbol: "A", name: "ester", unit: "mol/L" }],
     };
     const start = process.cpuUsage();
-    expect(readFile(new TextEncoder().encode(text), context, {}).status).toBe("read");
+    expect(readTable(textTable(new TextEncoder().encode(text), {}), context, {}).status).toBe("read");
     // With the square of its length it takes ten seconds and more.
     expect(process.cpuUsage(start).user / 1e6).toBeLessThan(2);
   });

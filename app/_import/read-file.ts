@@ -1,9 +1,9 @@
 import { POINTS_PER_STUDY } from "@/db/limits";
 import { cellIssues } from "./cell-issues";
 import { type ColumnGuess, guessColumns } from "./columns";
+import type { TableText, TableTextReading } from "./container";
 import type { Corrections } from "./corrections";
 import { guessDecimalMark } from "./decimal-mark";
-import { decodeText } from "./decode";
 import { type Frame, findFrame } from "./frame";
 import { type Gathered, gather } from "./gather";
 import { brokenQuotes, lineIssues } from "./line-issues";
@@ -13,6 +13,7 @@ import { type RecipeLine, readRecipeRow, speciesKey } from "./recipes";
 import { firstRows, type Row, type RowFormat, SEPARATOR_NAMES, type Separator } from "./rows";
 import { guessSeparator } from "./separator";
 import { shownLines } from "./shown-lines";
+import { tableText } from "./table-text";
 import { signalUnitOfTable, timeUnitOfTable } from "./table-units";
 import { traceChecks } from "./trace-checks";
 import { buildTraces } from "./traces";
@@ -26,19 +27,27 @@ import { columnName, joined, lines, quoted } from "./words";
 const SAMPLE_ROWS = 2000;
 const MOST_COLUMNS = 2002;
 
-export function readFile(bytes: Uint8Array, context: StudyContext, corrections: Corrections): Reading {
-  const decoded = decodeText(bytes, corrections.encoding);
-  if (decoded.status === "refused") return decoded;
-  const { text } = decoded;
+export async function readFile(
+  bytes: Uint8Array,
+  context: StudyContext,
+  corrections: Corrections,
+): Promise<Reading> {
+  return readTable(await tableText(bytes, corrections), context, corrections);
+}
 
-  const quotes = quotesOf(text, corrections);
-  const { separator, issues: separatorIssues } = separatorOf(text, quotes.value, corrections);
+/** The reading of a table, whatever it came in. */
+export function readTable(table: TableTextReading, context: StudyContext, corrections: Corrections): Reading {
+  if (table.status === "refused") return table;
+  const { text } = table;
+  const stated = statedFormat(table, corrections);
+  const quotes = quotesOf(text, stated);
+  const { separator, issues: separatorIssues } = separatorOf(text, quotes.value, stated);
   const rowFormat: RowFormat = { separator: separator.value, quotes: quotes.value };
   const sample = firstRows(text, rowFormat, SAMPLE_ROWS);
-  const mark = decimalMarkOf(sample, separator.value, corrections);
+  const mark = decimalMarkOf(sample, separator.value, stated);
   const numberFormat: NumberFormat = {
     decimalMark: mark.guess.value ?? "either",
-    stated: corrections.decimalMark !== undefined,
+    stated: stated.decimalMark !== undefined,
   };
   const frame = findFrame(sample, numberFormat, context.species, corrections);
   if (frame === null) return refused(text, sample);
@@ -79,6 +88,7 @@ export function readFile(bytes: Uint8Array, context: StudyContext, corrections: 
     labelOf.get(`c${column}`) ?? columnName(column, guessed.columns[column]?.name ?? "");
   const total = countLines(text);
   const issues = [
+    ...table.issues,
     ...quotes.issues,
     ...separatorIssues,
     ...mark.issues,
@@ -95,7 +105,9 @@ export function readFile(bytes: Uint8Array, context: StudyContext, corrections: 
   return {
     status: "read",
     lines: total,
-    encoding: decoded.encoding,
+    container: table.container,
+    sheet: table.sheet,
+    encoding: table.encoding,
     separator,
     quotes: rowFormat.quotes,
     decimalMark: mark.guess,
@@ -110,6 +122,16 @@ export function readFile(bytes: Uint8Array, context: StudyContext, corrections: 
     issues,
     shownLines: shownLines({ text, rowFormat, frame, recipes, found, total, issues }),
     corrections,
+  };
+}
+
+/** A container's own format stands before anything that could be said or guessed of it, but for the decimal mark of texts. */
+function statedFormat(table: TableText, corrections: Corrections): Corrections {
+  if (table.format === null) return corrections;
+  return {
+    ...corrections,
+    ...table.format,
+    decimalMark: corrections.decimalMark ?? table.format.decimalMark,
   };
 }
 

@@ -151,7 +151,7 @@ test("a corpus file that must be refused stores nothing", async () => {
   const before = await sheetOf(studyId);
   const upload = await received(
     studyId,
-    readFileSync(path.join(import.meta.dirname, "corpus/workbook.xlsx")),
+    readFileSync(path.join(import.meta.dirname, "corpus/cut-off-workbook.xlsx")),
   );
   expect(await readUpload(upload, before.sheet, {})).toMatchObject({ status: "refused" });
   expect((await sheetOf(studyId)).revision).toBe(before.revision);

@@ -30,7 +30,7 @@ export async function previewUpload(
 ): Promise<ImportPreview> {
   const task = { bytes: await wholeFile(upload), context: studyContext(sheet), corrections };
   return upload.size <= READ_AT_ONCE_BYTES
-    ? previewOf(readFile(task.bytes, task.context, task.corrections))
+    ? previewOf(await readFile(task.bytes, task.context, task.corrections))
     : runInPool("previewUpload", task, [task.bytes.buffer]);
 }
 

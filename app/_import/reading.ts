@@ -1,5 +1,6 @@
 import type { TimeUnit } from "@/db/sheet/sheet.schema";
 import type { Change } from "./change";
+import type { Container, SheetChoice } from "./container";
 import type { ColumnRole, Corrections } from "./corrections";
 import type { Encoding } from "./decode";
 import type { DecimalMark } from "./number";
@@ -118,6 +119,9 @@ export interface ShownLine {
 export interface FileReading {
   readonly status: "read";
   readonly lines: number;
+  readonly container: Container;
+  /** The sheet that was read, of a workbook. */
+  readonly sheet: SheetChoice | null;
   readonly encoding: Guess<Encoding>;
   readonly separator: Guess<Separator>;
   readonly quotes: "quoting" | "plain";

@@ -1,6 +1,7 @@
 import { describe, expect, it } from "vitest";
-import { readFile } from "./read-file";
+import { readTable } from "./read-file";
 import type { Separator } from "./rows";
+import { textTable } from "./table-text";
 import { EMPTY_STUDY } from "./testing-context";
 
 /**
@@ -62,7 +63,7 @@ describe("a table that goes out and comes in", () => {
       ];
       const text = lines.join(random() < 0.5 ? "\r\n" : "\n");
 
-      const reading = readFile(encode(text, encoding), EMPTY_STUDY, {});
+      const reading = readTable(textTable(encode(text, encoding), {}), EMPTY_STUDY, {});
       if (reading.status !== "read") throw new Error(`table ${table}: ${reading.message}`);
       expect(
         reading.issues.filter((issue) => issue.severity === "blocks"),

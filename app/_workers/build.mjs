@@ -14,9 +14,10 @@ await build({
   target: "node20",
   format: "esm",
   alias: { "@": repository },
-  // CommonJS packages ask for Node's own modules by require, which an ES module does not have.
+  // CommonJS packages ask for Node's own modules by require, which an ES module does not have. The
+  // name is our own, since packages declare the usual one themselves.
   banner: {
-    js: 'import { createRequire } from "node:module"; const require = createRequire(import.meta.url);',
+    js: 'import { createRequire as makeRequire } from "node:module"; const require = makeRequire(import.meta.url);',
   },
   legalComments: "none",
   logLevel: "warning",

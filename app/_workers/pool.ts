@@ -30,7 +30,7 @@ export async function runInPool<Name extends keyof Tasks>(
   name: Name,
   task: Parameters<Tasks[Name]>[0],
   moved: readonly ArrayBuffer[] = [],
-): Promise<ReturnType<Tasks[Name]>> {
+): Promise<Awaited<ReturnType<Tasks[Name]>>> {
   return pool().run(task, { name, transferList: [...moved] });
 }
 
@@ -43,7 +43,8 @@ export async function runInPoolWithin<Name extends keyof Tasks>(
   task: Parameters<Tasks[Name]>[0],
   milliseconds: number,
 ): Promise<
-  { readonly status: "done"; readonly value: ReturnType<Tasks[Name]> } | { readonly status: "too-long" }
+  | { readonly status: "done"; readonly value: Awaited<ReturnType<Tasks[Name]>> }
+  | { readonly status: "too-long" }
 > {
   const signal = AbortSignal.timeout(milliseconds);
   try {

@@ -23,13 +23,13 @@ export interface ReadTask {
   readonly corrections: Corrections;
 }
 
-export function readUpload({ bytes, context, corrections }: ReadTask): Reading {
+export function readUpload({ bytes, context, corrections }: ReadTask): Promise<Reading> {
   return readFile(bytes, context, corrections);
 }
 
 /** As `readUpload`, thinned for the page here, so that millions of readings need not cross between threads. */
-export function previewUpload({ bytes, context, corrections }: ReadTask): ImportPreview {
-  return previewOf(readFile(bytes, context, corrections));
+export async function previewUpload({ bytes, context, corrections }: ReadTask): Promise<ImportPreview> {
+  return previewOf(await readFile(bytes, context, corrections));
 }
 
 /** What one trace allows; of many readings this takes seconds. */

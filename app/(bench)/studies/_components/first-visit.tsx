@@ -9,9 +9,9 @@ export function FirstVisit() {
         <WaitingPaper />
         <h2 className="mt-4 font-serif text-[25px] leading-[1.25]">Bring a file of traces</h2>
         <p className="mt-1 mb-3 max-w-[52ch] text-ink-2">
-          One time column and one column a run, or time and signal in pairs. CSV, TSV or a block copied from a
-          spreadsheet. A name and a reaction come first; you see how the file was read before anything is
-          stored.
+          One time column and one column a run, or time and signal in pairs. CSV, TSV, a workbook, JCAMP-DX or
+          a block copied from a spreadsheet. A name and a reaction come first; you see how the file was read
+          before anything is stored.
         </p>
         <div className="flex flex-wrap gap-2">
           <ButtonLink kind="primary" href="/studies/new?then=import">

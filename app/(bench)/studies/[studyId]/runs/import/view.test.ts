@@ -1,6 +1,7 @@
 import { describe, expect, it } from "vitest";
 import { previewOf } from "@/app/_import/preview";
-import { readFile } from "@/app/_import/read-file";
+import { readTable } from "@/app/_import/read-file";
+import { textTable } from "@/app/_import/table-text";
 import { EMPTY_STUDY } from "@/app/_import/testing-context";
 import { recipeRow } from "./recipe-row";
 import {
@@ -14,7 +15,7 @@ import {
 } from "./view";
 
 function preview(text: string): ReadPreview {
-  const made = previewOf(readFile(new TextEncoder().encode(text), EMPTY_STUDY, {}));
+  const made = previewOf(readTable(textTable(new TextEncoder().encode(text), {}), EMPTY_STUDY, {}));
   if (made.status !== "read") throw new Error(made.message);
   return made;
 }

@@ -44,9 +44,8 @@ export function ChooseFile({
         <BlankPaper width={300} height={120} />
         <h2>{over ? "Let go to read the file" : "Drop a file of traces here"}</h2>
         <p>
-          CSV or text from an instrument or a spreadsheet, up to 50 MB: one time column and a column for each
-          run, a time column beside each signal, or the run named on every line. Of a workbook, save the sheet
-          as CSV.
+          CSV or text, a workbook (XLSX) or JCAMP-DX, up to 50 MB: one time column and a column for each run,
+          a time column beside each signal, or the run named on every line.
         </p>
         <Button kind="primary" onClick={() => input.current?.click()}>
           Choose a file
@@ -57,7 +56,7 @@ export function ChooseFile({
           className="sr-only"
           aria-label="File of traces"
           tabIndex={-1}
-          accept=".csv,.tsv,.txt,.dat,.asc,.prn,text/*"
+          accept=".csv,.tsv,.txt,.dat,.asc,.prn,.xlsx,.xlsm,.jdx,.dx,.jcm,text/*"
           onChange={(event) => {
             const file = event.target.files?.[0];
             // The same file chosen again is a new choice.

@@ -18,35 +18,53 @@ export function LayoutBar({
 }) {
   const set = (values: Set) => change({ kind: "set", values });
   const { from, to } = reading.dataLines.value;
+  // A workbook and a JCAMP-DX file say for themselves how their cells are divided.
+  const isText = reading.container === "text";
   return (
     <div className="import-layout">
       <Guess name="Layout" reason={reading.layout.reason}>
         {() => <b>{LAYOUT_NAMES[reading.layout.value]}</b>}
       </Guess>
-      <Guess name="Separator" reason={reading.separator.reason}>
-        {(id) => (
-          <Choice
-            id={id}
-            value={reading.separator.value}
-            onChange={(separator) => set({ separator })}
-            options={SEPARATORS}
-          />
-        )}
-      </Guess>
-      <Guess
-        name="Decimal mark"
-        reason={reading.decimalMark.reason}
-        open={reading.decimalMark.value === null}
-      >
-        {(id) => (
-          <Choice
-            id={id}
-            value={reading.decimalMark.value ?? ""}
-            onChange={(mark) => mark !== "" && set({ decimalMark: mark })}
-            options={reading.decimalMark.value === null ? [["", "choose"], ...MARKS] : MARKS}
-          />
-        )}
-      </Guess>
+      {reading.sheet !== null && reading.sheet.names.length > 1 && (
+        <Guess name="Sheet" reason={reading.sheet.reason}>
+          {(id) => (
+            <Choice
+              id={id}
+              value={reading.sheet?.value ?? ""}
+              onChange={(sheet) => set({ sheet })}
+              options={(reading.sheet?.names ?? []).map((name) => [name, name] as const)}
+            />
+          )}
+        </Guess>
+      )}
+      {isText && (
+        <>
+          <Guess name="Separator" reason={reading.separator.reason}>
+            {(id) => (
+              <Choice
+                id={id}
+                value={reading.separator.value}
+                onChange={(separator) => set({ separator })}
+                options={SEPARATORS}
+              />
+            )}
+          </Guess>
+          <Guess
+            name="Decimal mark"
+            reason={reading.decimalMark.reason}
+            open={reading.decimalMark.value === null}
+          >
+            {(id) => (
+              <Choice
+                id={id}
+                value={reading.decimalMark.value ?? ""}
+                onChange={(mark) => mark !== "" && set({ decimalMark: mark })}
+                options={reading.decimalMark.value === null ? [["", "choose"], ...MARKS] : MARKS}
+              />
+            )}
+          </Guess>
+        </>
+      )}
       <Guess name="Names on line" reason={reading.headerLine.reason}>
         {(id) => (
           <LineNumber
@@ -76,7 +94,7 @@ export function LayoutBar({
           />
         )}
       </Guess>
-      <Guess name="Data to line" reason={`${reading.lines} lines in the file`}>
+      <Guess name="Data to line" reason={`${reading.lines} ${LINES_OF[reading.container]}`}>
         {(id) => (
           <LineNumber id={id} value={to} onChange={(line) => line !== null && set({ lastDataLine: line })} />
         )}
@@ -101,20 +119,27 @@ export function LayoutBar({
           />
         )}
       </Guess>
-      <Guess name="Characters" reason={reading.encoding.reason}>
-        {(id) => (
-          <Choice
-            id={id}
-            value={reading.encoding.value}
-            onChange={(encoding) => set({ encoding })}
-            options={ENCODINGS}
-          />
-        )}
-      </Guess>
+      {isText && (
+        <Guess name="Characters" reason={reading.encoding.reason}>
+          {(id) => (
+            <Choice
+              id={id}
+              value={reading.encoding.value}
+              onChange={(encoding) => set({ encoding })}
+              options={ENCODINGS}
+            />
+          )}
+        </Guess>
+      )}
     </div>
   );
 }
 
+const LINES_OF = {
+  text: "lines in the file",
+  workbook: "rows in the sheet",
+  "jcamp-dx": "lines in the table",
+} as const;
 const LAYOUT_NAMES = {
   wide: "One time column, many signals",
   paired: "A time column for each signal",
