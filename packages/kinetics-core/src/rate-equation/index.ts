@@ -1,3 +1,8 @@
+export { type AutocatalyticOptions, autocatalyticEquation } from "./autocatalytic-equation";
+export { type BackgroundOptions, backgroundEquation } from "./background-equation";
+export { type CatalystOptions, catalystEquation } from "./catalyst-equation";
+export type { TypicalConcentration } from "./constant-parameter";
+export { type InhibitedOptions, inhibitedEquation } from "./inhibited-equation";
 export type { PowerTerm } from "./law-of-powers";
 export { powerEquation } from "./power-equation";
 export {
@@ -7,3 +12,5 @@ export {
   type RateEquation,
   type SimplerLaw,
 } from "./rate-equation";
+export { type ReversibleOptions, reversibleEquation } from "./reversible-equation";
+export { type SaturatingOptions, saturatingEquation } from "./saturating-equation";

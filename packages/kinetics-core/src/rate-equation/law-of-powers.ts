@@ -1,4 +1,4 @@
-import { type PowerProduct, powerProduct } from "./power-product";
+import { type PowerFactor, type PowerProduct, powerProduct } from "./power-product";
 import type { EquationParameter } from "./rate-equation";
 
 /** Orders of species that multiply each other, Π c_i^{n_i}: what makers of equations are given. */
@@ -14,7 +14,7 @@ export interface PowerTerm {
  * No law built of elementary steps has an order outside; a fit that ends at such a bound has found no order, and is told
  * so by the bound.
  */
-export const ORDER_BOUNDS: readonly [number, number] = [-3, 5];
+const ORDER_BOUNDS: readonly [number, number] = [-3, 5];
 
 const START_OF_AN_ORDER = 1;
 
@@ -26,44 +26,52 @@ export interface EquationLayout {
 
 /** A product with its text. Adds to the layout what it needs and the layout does not have yet. */
 export interface LaidOutPowers {
+  readonly factors: readonly PowerFactor[];
   readonly product: PowerProduct;
   /** "[A]^n_A [B]^2"; empty where every order is held at zero. */
   readonly text: string;
 }
 
-/** `path` distinguishes the orders of a second path, "n_A (background)". */
+/** `symbol` tells the orders of a second path from those of the first, n′_A from n_A. */
 export function layOutPowers(
   terms: readonly PowerTerm[],
   layout: EquationLayout,
-  path: string | null = null,
+  symbol: "n" | "n′" = "n",
 ): LaidOutPowers {
   refuseRepeated(terms.map(({ species }) => species));
-  const texts: string[] = [];
-  const factors = terms.map(({ species, order, start = START_OF_AN_ORDER }) => {
-    const place = placeOf(species, layout);
-    if (order !== "free") {
-      if (!Number.isFinite(order))
-        throw new RangeError(`the order of ${species} is ${order}; give a number or "free"`);
-      if (order !== 0) texts.push(powerText(species, order));
-      return { place, order: { held: order } };
-    }
-    const name = `n_${species}${path === null ? "" : ` (${path})`}`;
-    texts.push(`[${species}]^${path === null ? name : `n′_${species}`}`);
-    return { place, order: { parameter: addParameter(layout, orderParameter(name, start)) } };
+  const factors = terms.map((term) => layOutPower(term, layout, symbol));
+  const texts = terms.flatMap(({ species, order }) => {
+    if (order === "free") return [`[${species}]^${symbol}_${species}`];
+    return order === 0 ? [] : [powerText(species, order)];
   });
-  return { product: powerProduct(factors), text: texts.join(" ") };
+  return { factors, product: powerProduct(factors), text: texts.join(" ") };
 }
 
-export function orderParameter(
-  name: string,
-  start: number,
-  nullValue: number | null = null,
-): EquationParameter {
+export function startingOrder({ order, start = START_OF_AN_ORDER }: PowerTerm): number {
+  return order === "free" ? start : order;
+}
+
+function layOutPower(term: PowerTerm, layout: EquationLayout, symbol: string): PowerFactor {
+  const { species, order, start = START_OF_AN_ORDER } = term;
+  const place = placeOf(species, layout);
+  if (order === "free") {
+    return {
+      place,
+      order: { parameter: addParameter(layout, orderParameter(`${symbol}_${species}`, start)) },
+    };
+  }
+  if (!Number.isFinite(order)) {
+    throw new RangeError(`the order of ${species} is ${order}; give a number or "free"`);
+  }
+  return { place, order: { held: order } };
+}
+
+function orderParameter(name: string, start: number): EquationParameter {
   const [low, high] = ORDER_BOUNDS;
   if (!(start >= low && start <= high)) {
     throw new RangeError(`${name} starts at ${start}; orders are sought from ${low} to ${high}`);
   }
-  return { name, kind: "order", concentrationPower: () => 0, start, bounds: ORDER_BOUNDS, nullValue };
+  return { name, kind: "order", concentrationPower: () => 0, start, bounds: ORDER_BOUNDS, nullValue: null };
 }
 
 /** Index of the parameter in θ. */
@@ -86,6 +94,6 @@ function refuseRepeated(names: readonly string[]): void {
   }
 }
 
-export function powerText(species: string, order: number): string {
+function powerText(species: string, order: number): string {
   return order === 1 ? `[${species}]` : `[${species}]^${order}`;
 }
