@@ -2,6 +2,7 @@ export { type AutocatalyticOptions, autocatalyticEquation } from "./autocatalyti
 export { type BackgroundOptions, backgroundEquation } from "./background-equation";
 export { type CatalystOptions, catalystEquation } from "./catalyst-equation";
 export type { TypicalConcentration } from "./constant-parameter";
+export { describeEquation } from "./describe-equation";
 export { type InhibitedOptions, inhibitedEquation } from "./inhibited-equation";
 export type { PowerTerm } from "./law-of-powers";
 export { powerEquation } from "./power-equation";
@@ -14,3 +15,4 @@ export {
 } from "./rate-equation";
 export { type ReversibleOptions, reversibleEquation } from "./reversible-equation";
 export { type SaturatingOptions, saturatingEquation } from "./saturating-equation";
+export { simplerLawIn } from "./simpler-law";
