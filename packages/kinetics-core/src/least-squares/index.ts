@@ -1,4 +1,11 @@
+export { fitNonlinear } from "./fit-nonlinear";
 export { fitShape, type Shape, type ShapeFit } from "./fit-shape";
+export type {
+  NonlinearFit,
+  NonlinearOptions,
+  NonlinearProblem,
+  NonlinearSolution,
+} from "./nonlinear-problem";
 export {
   orthonormalPolynomials,
   type PolynomialBasis,

@@ -28,9 +28,12 @@ export interface NonlinearSolution {
   readonly residuals: Float64Array;
   readonly residualSquares: number;
   readonly degreesOfFreedom: number;
-  /** √(RSS/(m − n)); null with no degree of freedom. */
+  /** √(RSS/(m − n)), n without fixed parameters; null with no degree of freedom. */
   readonly residualStandardDeviation: number | null;
-  /** (JᵀJ)⁻¹ at the solution, n by n in rows, without the residual variance; null where J has not full rank. */
+  /**
+   * (JᵀJ)⁻¹ at the solution, n by n in rows, without the residual variance; zeros for a parameter that its bounds fix
+   * (low = high), which is not counted as a parameter either. Null where J has not full rank.
+   */
   readonly unscaledCovariance: readonly (readonly number[])[] | null;
   /** Numerical rank of the column-scaled Jacobian. */
   readonly rank: number;

@@ -1,0 +1,89 @@
+import { fitNonlinear, type NonlinearProblem } from "kinetics-core/least-squares";
+import { describe, expect, it } from "vitest";
+import fixture from "./nist-strd.fixture.json";
+import { STRD_MODELS, type StrdModel } from "./nist-strd-models";
+
+type StrdSet = (typeof fixture.sets)[number];
+const nonlinear = fixture.sets.filter((set) => set.kind === "nonlinear");
+
+function modelOf({ name }: StrdSet): StrdModel {
+  const model = STRD_MODELS[name];
+  if (!model) throw new Error(`no model for ${name}`);
+  return model;
+}
+
+function problemOf(set: StrdSet): NonlinearProblem {
+  const model = modelOf(set);
+  const by = new Float64Array(set.certified.length);
+  const response = set.data.map(([y = 0]) => (set.transform === "log(y)" ? Math.log(y) : y));
+  return {
+    residuals: set.data.length,
+    parameters: set.certified.length,
+    evaluate(theta, residuals, jacobian) {
+      set.data.forEach(([, x = 0, z = 0], i) => {
+        residuals[i] = model(theta, x, z, by) - (response[i] ?? 0);
+        jacobian?.forEach((column, j) => {
+          column[i] = by[j] ?? 0;
+        });
+      });
+      return true;
+    },
+  };
+}
+
+/** Digits in which two lists agree, by the worst of their elements. */
+function digits(found: readonly number[], certified: readonly number[]): number {
+  const worst = certified.map((value, j) =>
+    Math.min(15, -Math.log10(Math.abs(((found[j] ?? Number.NaN) - value) / value) || 1e-15)),
+  );
+  return Math.min(...worst);
+}
+
+/** What is asked of every set and start; the certified figures have 11 digits themselves. */
+const LEAST_DIGITS = 10;
+
+describe("certified nonlinear sets (NIST StRD)", () => {
+  it("are there all: 23 sets with two starts each", () => {
+    expect(nonlinear.flatMap((set) => set.starts ?? [])).toHaveLength(46);
+  });
+
+  it.each(nonlinear)("$name: the model has the derivatives that it says", (set) => {
+    const model = modelOf(set);
+    const [by, other] = [new Float64Array(set.certified.length), new Float64Array(set.certified.length)];
+    for (const [, x = 0, z = 0] of [set.data[0], set.data[set.data.length >> 1], set.data.at(-1)].map(
+      (row) => row ?? [],
+    )) {
+      model(set.certified, x, z, by);
+      set.certified.forEach((value, j) => {
+        const step = 1e-5 * Math.abs(value);
+        const at = (shift: number) =>
+          model(
+            set.certified.map((b, i) => (i === j ? b + shift : b)),
+            x,
+            z,
+            other,
+          );
+        const difference = (8 * (at(step) - at(-step)) - (at(2 * step) - at(-2 * step))) / (12 * step);
+        const rounding = (1e-13 * Math.abs(at(0))) / step;
+        expect(Math.abs((by[j] ?? Number.NaN) - difference)).toBeLessThan(
+          1e-8 * Math.abs(difference) + rounding,
+        );
+      });
+    }
+  });
+
+  const starts = nonlinear.flatMap((set) =>
+    (set.starts ?? []).map((start, k) => ({ set, start, name: set.name, k: k + 1 })),
+  );
+  it.each(starts)("$name from start $k", ({ set, start }) => {
+    const fit = fitNonlinear(problemOf(set), start);
+    if (fit.status !== "converged") throw new Error(fit.message);
+    const scatter = fit.residualStandardDeviation ?? Number.NaN;
+    const deviations =
+      fit.unscaledCovariance?.map((row, j) => scatter * Math.sqrt(row[j] ?? Number.NaN)) ?? [];
+    expect(fit.degreesOfFreedom).toBe(set.degreesOfFreedom);
+    expect(digits([scatter], [set.residualDeviation])).toBeGreaterThan(LEAST_DIGITS);
+    expect(digits(Array.from(fit.parameters), set.certified)).toBeGreaterThan(LEAST_DIGITS);
+    expect(digits(deviations, set.certifiedDeviations)).toBeGreaterThan(LEAST_DIGITS);
+  });
+});
