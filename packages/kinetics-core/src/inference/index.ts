@@ -1,5 +1,14 @@
+export {
+  type BootstrapIntervals,
+  type BootstrapRequest,
+  type BootstrapResult,
+  bootstrapIntervals,
+  bootstrapRuns,
+} from "./bootstrap-runs";
+export { type ClusterRobust, type ClusterRobustResult, clusterRobust } from "./cluster-robust";
 export { type DevianceAt, leastDeviance } from "./least-deviance";
 export { parametersLeftToRuns } from "./parameters-left-to-runs";
+export { type ProfileInterval, type ProfileRequest, profileMarginal } from "./profile-marginal";
 export {
   type InferenceFailure,
   type InferenceOptions,

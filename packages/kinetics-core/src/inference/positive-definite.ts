@@ -16,9 +16,28 @@ export type PositiveFactors =
 
 /** `matrix`: p by p, row after row; only its lower half is read. */
 export function factorisePositive(matrix: Float64Array, p: number): PositiveFactors {
+  const factor = scaledCholesky(matrix, p);
+  if (factor.status === "deficient") return factor;
+  const { lower, scale } = factor;
+  let logDeterminant = 0;
+  for (let i = 0; i < p; i++) logDeterminant += 2 * Math.log((lower[i * p + i] ?? 1) * (scale[i] ?? 1));
+  return { status: "positive", inverse: inverseFrom(lower, scale, p), logDeterminant };
+}
+
+/** F = D L, lower triangular, with A = F Fᵀ; null where A is not positive definite. */
+export function lowerRoot(matrix: Float64Array, p: number): Float64Array | null {
+  const factor = scaledCholesky(matrix, p);
+  if (factor.status === "deficient") return null;
+  return factor.lower.map((value, place) => value * (factor.scale[Math.floor(place / p)] ?? 1));
+}
+
+type ScaledCholesky =
+  | { readonly status: "positive"; readonly lower: Float64Array; readonly scale: Float64Array }
+  | { readonly status: "deficient"; readonly parameter: number };
+
+function scaledCholesky(matrix: Float64Array, p: number): ScaledCholesky {
   const scale = Float64Array.from({ length: p }, (_, i) => Math.sqrt(Math.max(0, matrix[i * p + i] ?? 0)));
   const lower = new Float64Array(p * p);
-  let logDeterminant = 0;
   for (let i = 0; i < p; i++) {
     const size = scale[i] ?? 0;
     if (!(size > 0 && Number.isFinite(size))) return { status: "deficient", parameter: i };
@@ -29,11 +48,10 @@ export function factorisePositive(matrix: Float64Array, p: number): PositiveFact
       else {
         if (!(rest > LEAST_PIVOT)) return { status: "deficient", parameter: i };
         lower[i * p + i] = Math.sqrt(rest);
-        logDeterminant += Math.log(rest) + 2 * Math.log(size);
       }
     }
   }
-  return { status: "positive", inverse: inverseFrom(lower, scale, p), logDeterminant };
+  return { status: "positive", lower, scale };
 }
 
 /** D⁻¹ L⁻ᵀ L⁻¹ D⁻¹. */
