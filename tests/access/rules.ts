@@ -62,6 +62,7 @@ export const rules: Readonly<Record<string, Rule>> = {
   "POST /api/v1/studies/[studyId]/uploads/[uploadId]/preview": group(),
   "POST /api/v1/compute/initial-rate": member,
   "POST /api/v1/compute/rate-law": member,
+  "POST /api/v1/compute/temperature": member,
   "GET /api/v1/openapi.json": anyone,
 
   // Server actions, by file and exported name

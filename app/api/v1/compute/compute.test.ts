@@ -4,7 +4,7 @@ import { describe, expect, it } from "vitest";
 import { openApiDocument } from "../openapi.json/document";
 import { initialRateResponse } from "./initial-rate/schema";
 import { rateLawResponse } from "./rate-law/schema";
-import { initialRateComputation, rateLawComputation, runComputation } from "./registry";
+import { COMPUTATION_NAMES, initialRateComputation, rateLawComputation, runComputation } from "./registry";
 
 const repository = path.resolve(import.meta.dirname, "../../../..");
 
@@ -174,7 +174,7 @@ describe("rate-law", () => {
 describe("the description", () => {
   it("covers every computation with the schemas that check its requests", () => {
     const { paths, components } = openApiDocument();
-    expect(Object.keys(paths ?? {})).toEqual(["/api/v1/compute/initial-rate", "/api/v1/compute/rate-law"]);
+    expect(Object.keys(paths ?? {})).toEqual(COMPUTATION_NAMES.map((name) => `/api/v1/compute/${name}`));
     expect(Object.keys(components?.schemas ?? {})).toEqual(
       expect.arrayContaining([
         "InitialRateRequest",

@@ -6,6 +6,8 @@ import { computeInitialRate } from "./initial-rate/compute";
 import { initialRateRequest, initialRateResponse } from "./initial-rate/schema";
 import { computeRateLaw } from "./rate-law/compute";
 import { rateLawRequest, rateLawResponse } from "./rate-law/schema";
+import { computeTemperature } from "./temperature/compute";
+import { temperatureRequest, temperatureResponse } from "./temperature/schema";
 
 /** One computation of the public API: what comes in, what goes out, and the face over the library between them. */
 export interface Computation<Request extends z.ZodType = z.ZodType, Response extends z.ZodType = z.ZodType> {
@@ -44,6 +46,15 @@ export const rateLawComputation = computation({
   isQuick: isQuickFit,
 });
 
+export const temperatureComputation = computation({
+  name: "temperature",
+  summary:
+    "Activation energy, enthalpy and entropy of activation from rate constants at several temperatures.",
+  request: temperatureRequest,
+  response: temperatureResponse,
+  compute: computeTemperature,
+});
+
 /** A request checked against the schema of its computation, then computed; faults carry the path of their place. */
 export function runComputation<Request extends z.ZodType, Response extends z.ZodType>(
   entry: Computation<Request, Response>,
@@ -54,16 +65,17 @@ export function runComputation<Request extends z.ZodType, Response extends z.Zod
   return entry.compute(parsed.data);
 }
 
-/** By the last segment of their path. */
-export function computeByName(name: string, body: unknown): Computed<unknown> | undefined {
-  switch (name) {
-    case initialRateComputation.name:
-      return runComputation(initialRateComputation, body);
-    case rateLawComputation.name:
-      return runComputation(rateLawComputation, body);
-    default:
-      return undefined;
-  }
-}
+/** Every computation: its path in the description and its name on the command line follow from this list. */
+export const COMPUTATIONS: readonly Computation[] = [
+  initialRateComputation,
+  rateLawComputation,
+  temperatureComputation,
+];
 
-export const COMPUTATION_NAMES = [initialRateComputation.name, rateLawComputation.name];
+/** By the last segment of their path. */
+export const COMPUTATION_NAMES = COMPUTATIONS.map((entry) => entry.name);
+
+export function computeByName(name: string, body: unknown): Computed<unknown> | undefined {
+  const entry = COMPUTATIONS.find((one) => one.name === name);
+  return entry === undefined ? undefined : runComputation(entry, body);
+}

@@ -1,6 +1,6 @@
-import { createDocument, type ZodOpenApiPathsObject } from "zod-openapi";
+import { createDocument, type ZodOpenApiPathItemObject } from "zod-openapi";
 import { problem } from "../compute/estimate.schema";
-import { type Computation, initialRateComputation, rateLawComputation } from "../compute/registry";
+import { COMPUTATIONS, type Computation } from "../compute/registry";
 
 /** The description of the HTTP API, made from the schemas that check its requests. */
 export function openApiDocument() {
@@ -25,7 +25,9 @@ export function openApiDocument() {
         },
       },
     },
-    paths: { ...computePath(initialRateComputation), ...computePath(rateLawComputation) },
+    paths: Object.fromEntries(
+      COMPUTATIONS.map((entry) => [`/api/v1/compute/${entry.name}`, computePath(entry)]),
+    ),
   });
 }
 
@@ -37,7 +39,7 @@ const PROBLEMS = {
   "429": "Too many calls; Retry-After says when to try again.",
 };
 
-function computePath(entry: Computation): ZodOpenApiPathsObject {
+function computePath(entry: Computation): ZodOpenApiPathItemObject {
   const problems = Object.fromEntries(
     Object.entries(PROBLEMS).map(([status, description]) => [
       status,
@@ -45,15 +47,13 @@ function computePath(entry: Computation): ZodOpenApiPathsObject {
     ]),
   );
   return {
-    [`/api/v1/compute/${entry.name}`]: {
-      post: {
-        operationId: entry.name,
-        summary: entry.summary,
-        requestBody: { required: true, content: { "application/json": { schema: entry.request } } },
-        responses: {
-          "200": { description: "The numbers.", content: { "application/json": { schema: entry.response } } },
-          ...problems,
-        },
+    post: {
+      operationId: entry.name,
+      summary: entry.summary,
+      requestBody: { required: true, content: { "application/json": { schema: entry.request } } },
+      responses: {
+        "200": { description: "The numbers.", content: { "application/json": { schema: entry.response } } },
+        ...problems,
       },
     },
   };

@@ -1,0 +1,4 @@
+import { computeRoute } from "../compute-route";
+import { temperatureComputation } from "../registry";
+
+export const POST = computeRoute(temperatureComputation);
