@@ -18,6 +18,7 @@ export default defineConfig({
     testTimeout: 30_000,
     include: [
       "packages/*/src/**/*.test.ts",
+      "packages/*/bench/**/*.test.ts",
       "db/**/*.test.ts",
       "app/**/*.test.{ts,tsx}",
       "tests/*.test.ts",

@@ -6,7 +6,7 @@ import type { Import } from "./imports";
  *   components -> view types <- view.ts <- page -> queries -> db
  *                               actions, route handlers -> commands -> db
  *                               actions, _worksheet, workers -> kinetics-core
- *   db -> kinetics-core types only;  kinetics-core -> numeric packages only
+ *   db -> kinetics-core types only;  kinetics-core -> numeric packages only;  its bench -> kinetics-core, Node
  */
 const NUMERIC_PACKAGES = new Set(["ml-levenberg-marquardt", "ml-regression", "pure-rand"]);
 
@@ -22,6 +22,7 @@ export function objection(file: string, imported: Import): string | null {
   }
   return (
     coreObjection(file, imported) ??
+    benchObjection(file, imported) ??
     migrationObjection(file, imported) ??
     dbObjection(file, imported) ??
     componentObjection(file, imported) ??
@@ -42,6 +43,22 @@ function coreObjection(file: string, { specifier, target }: Import): string | nu
   return specifier.startsWith("kinetics-core/") || NUMERIC_PACKAGES.has(specifier.split("/")[0] ?? "")
     ? null
     : "kinetics-core imports numeric packages only";
+}
+
+const BENCH = "packages/kinetics-core/bench/";
+
+/** The bench measures the library through the doors that everybody uses, and nobody rests on the bench. */
+function benchObjection(file: string, { specifier, target }: Import): string | null {
+  if (!file.startsWith(BENCH)) {
+    return target?.startsWith(BENCH) ? "the bench measures the library and is no part of it" : null;
+  }
+  if (target !== null) {
+    return target.startsWith(BENCH) ? null : "the bench reaches kinetics-core by its concepts";
+  }
+  // Its threads start without the loader that reads TypeScript.
+  return /^(kinetics-core\/|node:)/.test(specifier) || specifier === "tsx/esm/api"
+    ? null
+    : "the bench imports kinetics-core and Node only";
 }
 
 function migrationObjection(file: string, { specifier, target }: Import): string | null {
