@@ -25,9 +25,14 @@ export interface PlottedPoints {
   readonly logarithms: readonly number[];
 }
 
-/** Whether every point states an uncertainty of its k above 0: taken as exact, the one without would carry the line. */
+/** Whether a point states an uncertainty of its k; one below rounding says that k is a computed figure. */
+export function statesUncertainty(point: TemperaturePoint): boolean {
+  return ((point.rateConstantUncertainty ?? 0) / point.rateConstant) ** 2 >= EXACT_VARIANCE;
+}
+
+/** Whether every point does: taken as exact, the one without would carry the line. */
 export function allStated(points: readonly TemperaturePoint[]): boolean {
-  return points.every((point) => (point.rateConstantUncertainty ?? 0) > 0);
+  return points.every(statesUncertainty);
 }
 
 /**

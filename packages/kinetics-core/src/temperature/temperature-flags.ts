@@ -7,6 +7,7 @@ import {
   USUAL_FEWEST,
   USUAL_RANGE_K,
 } from "./constants";
+import { statesUncertainty } from "./point-variances";
 import type { CurvatureTest, TemperatureInput, TemperaturePoint } from "./temperature";
 
 export interface TemperatureFindings {
@@ -114,7 +115,7 @@ function curvatureFlags({ curvature, temperatures }: TemperatureFindings): reado
 
 function uncertaintyFlags({ points }: TemperatureInput): readonly Flag[] {
   const flags: Flag[] = [];
-  const stated = points.filter((point) => (point.rateConstantUncertainty ?? 0) > 0).length;
+  const stated = points.filter(statesUncertainty).length;
   if (stated > 0 && stated < points.length)
     flags.push({
       code: "uncertainty-missing",
