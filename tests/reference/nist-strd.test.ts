@@ -1,4 +1,4 @@
-import { fitNonlinear, type NonlinearProblem } from "kinetics-core/least-squares";
+import { fitLinear, fitNonlinear, type NonlinearProblem, powersOf } from "kinetics-core/least-squares";
 import { describe, expect, it } from "vitest";
 import fixture from "./nist-strd.fixture.json";
 import { STRD_MODELS, type StrdModel } from "./nist-strd-models";
@@ -32,8 +32,8 @@ function problemOf(set: StrdSet): NonlinearProblem {
 }
 
 /** Digits in which two lists agree, by the worst of their elements. */
-function digits(found: readonly number[], certified: readonly number[]): number {
-  const worst = certified.map((value, j) =>
+function digits(found: readonly number[], certified: readonly (number | undefined)[]): number {
+  const worst = certified.map((value = Number.NaN, j) =>
     Math.min(15, -Math.log10(Math.abs(((found[j] ?? Number.NaN) - value) / value) || 1e-15)),
   );
   return Math.min(...worst);
@@ -41,6 +41,8 @@ function digits(found: readonly number[], certified: readonly number[]): number 
 
 /** What is asked of every set and start; the certified figures have 11 digits themselves. */
 const LEAST_DIGITS = 10;
+/** Linear sets are certified to 15. */
+const LEAST_LINEAR_DIGITS = 13;
 
 describe("certified nonlinear sets (NIST StRD)", () => {
   it("are there all: 23 sets with two starts each", () => {
@@ -85,5 +87,47 @@ describe("certified nonlinear sets (NIST StRD)", () => {
     expect(digits([scatter], [set.residualDeviation])).toBeGreaterThan(LEAST_DIGITS);
     expect(digits(Array.from(fit.parameters), set.certified)).toBeGreaterThan(LEAST_DIGITS);
     expect(digits(deviations, set.certifiedDeviations)).toBeGreaterThan(LEAST_DIGITS);
+  });
+});
+
+function designOf({ name, data, certified }: StrdSet) {
+  const column = (j: number) => data.map((row) => row[j] ?? Number.NaN);
+  const ones = data.map(() => 1);
+  if (name.startsWith("NoInt")) return [column(1)];
+  if (name === "Longley") return [ones, ...[1, 2, 3, 4, 5, 6].map(column)];
+  return powersOf(column(1), certified.length - 1);
+}
+
+describe("certified linear sets (NIST StRD)", () => {
+  const linear = fixture.sets.filter((set) => set.kind === "linear");
+  it.each(linear)("$name", (set) => {
+    const fit = fitLinear(
+      designOf(set),
+      set.data.map(([y = 0]) => y),
+    );
+    if (fit.status !== "fitted") throw new Error(fit.message);
+    expect(fit.degreesOfFreedom).toBe(set.degreesOfFreedom);
+    expect(digits(Array.from(fit.coefficients), set.certified)).toBeGreaterThan(LEAST_LINEAR_DIGITS);
+    for (const [found, certified] of [
+      [fit.standardDeviations ?? [], set.certifiedDeviations],
+      [[fit.residualStandardDeviation ?? Number.NaN], [set.residualDeviation]],
+      [[fit.rSquared ?? Number.NaN], [set.rSquared]],
+    ] as const) {
+      if (certified.every((value) => value === 0)) expect(Math.max(...found)).toBeLessThan(1e-15);
+      else expect(digits(found, certified)).toBeGreaterThan(LEAST_LINEAR_DIGITS);
+    }
+  });
+
+  it("loses digits of Filip only where the powers themselves were rounded", () => {
+    const set = linear.find(({ name }) => name === "Filip");
+    if (!set) throw new Error("no set Filip in the fixture");
+    const rounded = set.certified.map((_, k) => set.data.map(([, x = 0]) => x ** k));
+    const fit = fitLinear(
+      rounded,
+      set.data.map(([y = 0]) => y),
+    );
+    if (fit.status !== "fitted") throw new Error(fit.message);
+    expect(digits(Array.from(fit.coefficients), set.certified)).toBeGreaterThan(7);
+    expect(digits(fit.standardDeviations ?? [], set.certifiedDeviations)).toBeGreaterThan(7);
   });
 });

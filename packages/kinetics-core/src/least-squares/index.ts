@@ -1,3 +1,10 @@
+export {
+  type DesignColumn,
+  fitLinear,
+  type LinearFit,
+  type LinearOptions,
+  type LinearSolution,
+} from "./fit-linear";
 export { fitNonlinear } from "./fit-nonlinear";
 export { fitShape, type Shape, type ShapeFit } from "./fit-shape";
 export type {
@@ -14,3 +21,4 @@ export {
   polynomialsAt,
   projectOn,
 } from "./orthonormal-polynomials";
+export { powersOf, type TwicePrecise } from "./twice-precision";
