@@ -1,3 +1,4 @@
+import { type ClockKind, clockOfColumn } from "./clock";
 import type { ColumnRole, Corrections } from "./corrections";
 import type { Frame } from "./frame";
 import { type NumberFormat, readCell } from "./number";
@@ -20,6 +21,7 @@ interface ColumnSample {
   readonly empty: number;
   readonly distinct: ReadonlySet<string>;
   readonly cells: readonly string[];
+  readonly clock: ClockKind | null;
 }
 
 const TIME_NAME = /^(t|time|zeit|temps|tiempo|tempo|elapsed( time)?|reaction time|time.*|zeit.*|.*\btime)$/i;
@@ -47,7 +49,7 @@ export function guessColumns(
   const times = timeColumns(samples, long ? runByText?.index : undefined);
 
   const columns = samples.map((column): ColumnReading => {
-    const base = { index: column.index, name: column.name, unit: column.unit };
+    const base = { index: column.index, name: column.name, unit: column.unit, clock: column.clock };
     const chosen = stated?.[String(column.index)];
     if (chosen) return { ...base, role: chosen, reason: "chosen by hand", basis: "stated" };
     const [role, reason, basis] = roleOf(column, times, long ? runByText : undefined, long, species);
@@ -94,6 +96,7 @@ function roleOf(
   const time = times.get(column.index);
   if (time !== undefined) return ["time", time];
   if (column.numbers.length === 0 && column.texts === 0) return ["left-out", "empty"];
+  if (column.clock !== null) return ["left-out", `clock times, beside another column of time`];
   if (column.texts > column.numbers.length) {
     return ["left-out", `text, no numbers: “${[...column.distinct][0] ?? ""}”`];
   }
@@ -145,6 +148,11 @@ function timeColumns(
       ]),
     );
   }
+  const clocks = samples.filter((column) => column.clock !== null && column.index !== runColumn);
+  if (clocks.length > 0) {
+    const used = runColumn === undefined ? clocks : clocks.slice(0, 1);
+    return new Map(used.map((column) => [column.index, `clock times, “${column.cells[0] ?? ""}”`]));
+  }
   const rising = numeric.filter((column) => isRising(column.numbers) && !COUNTER_NAME.test(column.name));
   const first = runColumn === undefined ? (rising[0] ?? numeric[0]) : (numeric[0] ?? rising[0]);
   if (!first) return new Map();
@@ -164,12 +172,19 @@ function timeColumns(
   return new Map([[first.index, reason]]);
 }
 
-/** A column of words that repeat, beside two columns of numbers: it may name the run of each line. */
+/** A column of words that repeat, beside two columns of numbers or clocks: it may name the run of each line. */
 function runOfText(samples: readonly ColumnSample[]): ColumnSample | undefined {
-  const numbers = samples.filter((column) => column.numbers.length > column.texts).length;
+  const numbers = samples.filter(
+    (column) => column.numbers.length > column.texts || column.clock !== null,
+  ).length;
   if (numbers < 2) return undefined;
   return samples.find((column) => {
-    return column.texts > column.numbers.length && column.distinct.size > 1 && repeats(column);
+    return (
+      column.clock === null &&
+      column.texts > column.numbers.length &&
+      column.distinct.size > 1 &&
+      repeats(column)
+    );
   });
 }
 
@@ -205,6 +220,7 @@ function sampleOf(frame: Frame, format: NumberFormat, index: number): ColumnSamp
     empty,
     distinct,
     cells,
+    clock: numbers.length > texts ? null : clockOfColumn(cells),
   };
 }
 

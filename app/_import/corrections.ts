@@ -36,6 +36,9 @@ export const corrections = z.object({
   columns: z.record(z.string().regex(/^\d{1,4}$/), columnRole).optional(),
   /** By the trace's source, see TraceReading. */
   labels: z.record(z.string().max(80), z.string().trim().min(1).max(40)).optional(),
+  /** What two parts of a clock mean: 10:02. */
+  clockForm: z.enum(["hours-minutes", "minutes-seconds"]).optional(),
+  clockZero: z.enum(["first-reading", "as-written"]).optional(),
   timeUnit: z.enum(["ms", "s", "min", "h"]).optional(),
   signalUnit: z.enum(["mol/L", "mmol/L", "umol/L", "as-set-up", "thousandths"]).optional(),
   temperatureUnit: z.enum(["degC", "K"]).optional(),

@@ -1,3 +1,4 @@
+import { type ClockForm, readClock } from "./clock";
 import type { ColumnRole, Corrections } from "./corrections";
 import { lastFilled } from "./frame";
 import { GrowingArray } from "./growing-array";
@@ -13,6 +14,8 @@ export interface GatherOptions {
   readonly rowFormat: RowFormat;
   readonly numberFormat: NumberFormat;
   readonly roles: readonly ColumnRole[];
+  /** How clock times of a column are written; null or absent where it holds numbers. */
+  readonly clocks: readonly (ClockForm | null)[];
   readonly firstDataLine: number;
   readonly lastDataLine: number | undefined;
   readonly corrections: Corrections;
@@ -201,7 +204,10 @@ class Pass {
     const said = this.corrected.get(`${row.line}:${column}`);
     if (said === null) return { kind: "empty" };
     if (said !== undefined) return { kind: "number", value: said };
-    return readCell(row.cells[column] ?? "", this.options.numberFormat);
+    const cell = row.cells[column] ?? "";
+    const form = this.options.clocks[column];
+    const clock = form ? readClock(cell, form) : null;
+    return clock === null ? readCell(cell, this.options.numberFormat) : { kind: "number", value: clock };
   }
 
   private take(row: Row): void {

@@ -1,5 +1,6 @@
 import { POINTS_PER_STUDY } from "@/db/limits";
 import { cellIssues } from "./cell-issues";
+import { clockColumns } from "./clock-columns";
 import { type ColumnGuess, guessColumns } from "./columns";
 import type { TableText, TableTextReading } from "./container";
 import type { Corrections } from "./corrections";
@@ -58,12 +59,14 @@ export function readTable(table: TableTextReading, context: StudyContext, correc
     };
   }
   const guessed = guessColumns(frame, numberFormat, context.species, corrections.columns);
+  const clock = clockColumns(guessed.columns, frame, corrections);
   const timeUnit = timeUnitOfTable(guessed.columns, context.timeUnit, corrections.timeUnit);
   const signalUnit = signalUnitOfTable(guessed.columns, context.signal, corrections.signalUnit);
   const found = gather(text, {
     rowFormat,
     numberFormat,
     roles: guessed.columns.map((column) => column.role),
+    clocks: clock.forms,
     firstDataLine: frame.firstDataLine.value,
     lastDataLine: corrections.lastDataLine,
     corrections,
@@ -78,6 +81,7 @@ export function readTable(table: TableTextReading, context: StudyContext, correc
     context,
     corrections,
     timeUnit: timeUnit.value,
+    clock,
     signalUnit: signalUnit.guess.value,
     recipes,
     titles: frame.titles?.cells ?? [],
@@ -92,6 +96,7 @@ export function readTable(table: TableTextReading, context: StudyContext, correc
     ...quotes.issues,
     ...separatorIssues,
     ...mark.issues,
+    ...clock.issues,
     ...signalUnit.issues,
     ...columnIssues(guessed),
     ...cellIssues(found, { columns: guessed.columns, nameOf }, corrections),

@@ -1,5 +1,6 @@
 import type { TimeUnit } from "@/db/sheet/sheet.schema";
 import type { Change } from "./change";
+import type { ClockKind } from "./clock";
 import type { Container, SheetChoice } from "./container";
 import type { ColumnRole, Corrections } from "./corrections";
 import type { Encoding } from "./decode";
@@ -62,6 +63,8 @@ export interface ColumnReading {
   readonly name: string;
   readonly unit: string;
   readonly role: ColumnRole;
+  /** How a column of clock times is written; null where it holds numbers or words. */
+  readonly clock: ClockKind | null;
   readonly reason: string;
   readonly basis: Guess<unknown>["basis"];
 }

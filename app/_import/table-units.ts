@@ -18,6 +18,9 @@ export function timeUnitOfTable(
   studyUnit: TimeUnit,
   stated: Corrections["timeUnit"],
 ): Guess<ImportedTimeUnit> {
+  if (columns.some((column) => column.role === "time" && column.clock !== null)) {
+    return { value: "s", reason: "clock times become seconds", basis: "file" };
+  }
   if (stated) return { value: stated, reason: "chosen by hand", basis: "stated" };
   for (const column of columns) {
     const unit = column.role === "time" ? timeUnitOf(column.unit) : null;

@@ -1,3 +1,4 @@
+import { type ClockReading, clockTimes, midnightIssue } from "./clock-columns";
 import type { Corrections } from "./corrections";
 import type { GatheredTrace } from "./gather";
 import { labelTraces } from "./labels";
@@ -21,6 +22,7 @@ export interface TraceOptions {
   readonly context: StudyContext;
   readonly corrections: Corrections;
   readonly timeUnit: ImportedTimeUnit;
+  readonly clock: ClockReading;
   readonly signalUnit: SignalUnit;
   readonly recipes: readonly RecipeLine[];
   /** Row of run names above the line of names, by column. */
@@ -43,10 +45,13 @@ export function buildTraces(
   issues.push(...clashes(filled, labels, columns, context));
 
   const faultsByClock = new Map<string, { labels: string[]; issues: Issue[] }>();
+  let midnights = 0;
   const traces = filled.map((trace, i): TraceReading => {
     const label = labels[i] ?? { label: "", reason: "", runId: null, repeats: null };
+    const clock = timesOf(trace, options);
+    midnights = Math.max(midnights, clock.midnights);
     const { readings, faults } = orderTimes(
-      { time: trace.time.view(), signal: trace.signal.view(), line: trace.line.view() },
+      { time: clock.time, signal: trace.signal.view(), line: trace.line.view() },
       corrections,
     );
     const found = timeIssues(faults, {
@@ -78,8 +83,17 @@ export function buildTraces(
     };
   });
   for (const { issues: found } of faultsByClock.values()) issues.push(...found);
-  issues.push(...recipeIssues(filled, options));
+  issues.push(...midnightIssue(midnights), ...recipeIssues(filled, options));
   return { traces, issues };
+}
+
+/** Numbers as they stand, or clock times counted from the trace's zero. */
+function timesOf(trace: GatheredTrace, { columns, clock }: TraceOptions) {
+  const times = columns.filter((column) => column.role === "time");
+  const own = times.findLast((column) => column.index < trace.column) ?? times[0];
+  const form = own === undefined ? null : (clock.forms[own.index] ?? null);
+  const time = trace.time.view();
+  return form === null ? { time, midnights: 0 } : clockTimes(time, form, clock.zero);
 }
 
 /** Names by which runs are found: the column's, a title above a pair of columns, or the entry of the run column. */
