@@ -60,6 +60,7 @@ export const rules: Readonly<Record<string, Rule>> = {
   "GET /api/v1/studies/[studyId]/uploads/[uploadId]": group(),
   "DELETE /api/v1/studies/[studyId]/uploads/[uploadId]": group(),
   "POST /api/v1/studies/[studyId]/uploads/[uploadId]/preview": group(),
+  "POST /api/v1/compute/calibration": member,
   "POST /api/v1/compute/initial-rate": member,
   "POST /api/v1/compute/rate-law": member,
   "POST /api/v1/compute/temperature": member,

@@ -1,6 +1,8 @@
 import type { z } from "zod";
 import { fieldMessages } from "@/app/_server/problem";
 import { isQuickFit } from "@/app/_worksheet/quick-fit";
+import { computeCalibration } from "./calibration/compute";
+import { calibrationRequest, calibrationResponse } from "./calibration/schema";
 import type { Computed } from "./estimate.schema";
 import { computeInitialRate } from "./initial-rate/compute";
 import { initialRateRequest, initialRateResponse } from "./initial-rate/schema";
@@ -27,6 +29,14 @@ function computation<Request extends z.ZodType, Response extends z.ZodType>(
 ): Computation<Request, Response> {
   return entry;
 }
+
+export const calibrationComputation = computation({
+  name: "calibration",
+  summary: "Calibration line with its curvature, linear range and limits, and concentrations read from it.",
+  request: calibrationRequest,
+  response: calibrationResponse,
+  compute: computeCalibration,
+});
 
 export const initialRateComputation = computation({
   name: "initial-rate",
@@ -67,6 +77,7 @@ export function runComputation<Request extends z.ZodType, Response extends z.Zod
 
 /** Every computation: its path in the description and its name on the command line follow from this list. */
 export const COMPUTATIONS: readonly Computation[] = [
+  calibrationComputation,
   initialRateComputation,
   rateLawComputation,
   temperatureComputation,

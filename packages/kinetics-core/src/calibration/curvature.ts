@@ -28,12 +28,6 @@ export type Curvature =
 
 export function testCurvature(line: CalibrationLine): Curvature {
   const { standards, interceptFitted, centre, level } = line;
-  if (line.exact)
-    return {
-      status: "exact",
-      message:
-        "The standards lie on the line to the last digit, so there is no scatter to test curvature by.",
-    };
   const levels = levelsOf(standards.map((one) => one.concentration));
   const usable = interceptFitted
     ? levels
@@ -44,6 +38,13 @@ export function testCurvature(line: CalibrationLine): Curvature {
     return {
       status: "too-few-standards",
       message: `Curvature needs ${parameters} levels${interceptFitted ? "" : " other than 0"} and one standard more; here are ${usable.length} levels and ${standards.length} standards.`,
+    };
+
+  if (line.exact)
+    return {
+      status: "exact",
+      message:
+        "The standards lie on the line to the last digit, so there is no scatter to test curvature by.",
     };
 
   const scale = standards.reduce(

@@ -1,0 +1,4 @@
+import { computeRoute } from "../compute-route";
+import { calibrationComputation } from "../registry";
+
+export const POST = computeRoute(calibrationComputation);
