@@ -1,5 +1,5 @@
 import type { Corrections } from "./corrections";
-import type { CellFinding, Gathered } from "./gather";
+import type { CellFinding, Gathered } from "./gathered";
 import { isGrouped, readCell } from "./number";
 import type { ColumnReading, Issue, Repair } from "./reading";
 import { columnName, counted, grouped, joined, plain, quoted } from "./words";

@@ -24,7 +24,7 @@ export const corrections = z.object({
   /** Of a workbook. */
   sheet: z.string().max(100).optional(),
   encoding: z.enum(["utf-8", "utf-16le", "utf-16be", "windows-1252"]).optional(),
-  separator: z.enum([",", ";", "\t", "|"]).optional(),
+  separator: z.enum([",", ";", "\t", "|", " "]).optional(),
   quotes: z.enum(["quoting", "plain"]).optional(),
   decimalMark: z.enum([".", ",", "either"]).optional(),
   /** null: the file has no such line. */

@@ -1,9 +1,11 @@
 import { type ClockForm, readClock } from "./clock";
 import type { ColumnRole, Corrections } from "./corrections";
 import { lastFilled } from "./frame";
+import type { CellFinding, Gathered, GatheredTrace, LineFinding } from "./gathered";
 import { GrowingArray } from "./growing-array";
 import { type CellReading, type NumberFormat, plainNumber, readCell } from "./number";
 import { eachRow, isBlank, type Row, type RowFormat } from "./rows";
+import { isSummaryWord } from "./summary-word";
 
 /**
  * One pass over the lines of data: numbers into the traces, everything else into findings with line and column. Cells
@@ -21,63 +23,6 @@ export interface GatherOptions {
   readonly corrections: Corrections;
   /** Readings that may still be stored; one more and the pass stops. */
   readonly pointsLeft: number;
-}
-
-/** One trace as it stands in the file: may repeat times or fall back. `line` tells where each reading came from. */
-export interface GatheredTrace {
-  readonly source: string;
-  /** 0-based column of the signal. */
-  readonly column: number;
-  /** The entry of the run column, in a long table. */
-  readonly runName: string | null;
-  readonly time: GrowingArray;
-  readonly signal: GrowingArray;
-  readonly line: GrowingArray;
-  /** From the species columns of a long table; the file's unit. */
-  readonly concentrations: Map<string, { value: number; line: number; varies: number | null }>;
-  readonly temperature: { sum: number; count: number };
-  empty: number;
-}
-
-export interface CellFinding {
-  readonly line: number;
-  readonly column: number;
-  readonly text: string;
-  readonly reading: Exclude<CellReading, { kind: "number" | "empty" }>;
-  readonly before: number | null;
-  after: number | null;
-}
-
-export interface LineFinding {
-  readonly line: number;
-  readonly text: string;
-  readonly cells: number;
-}
-
-export interface Gathered {
-  readonly traces: readonly GatheredTrace[];
-  readonly cells: readonly CellFinding[];
-  /** How many cells of a column are no number, by column and kind; `cells` holds the first of them only. */
-  readonly counts: ReadonlyMap<string, number>;
-  /** Numbers read, by column. */
-  readonly numbers: readonly (number | undefined)[];
-  readonly longLines: readonly LineFinding[];
-  readonly longLineCount: number;
-  readonly shortLines: readonly LineFinding[];
-  readonly shortLineCount: number;
-  readonly timeless: readonly LineFinding[];
-  readonly timelessCount: number;
-  /** Blank lines and lines of words within the data. */
-  readonly wordLines: readonly LineFinding[];
-  readonly wordLineCount: number;
-  readonly blankLineCount: number;
-  /** What stands below the last line of data. */
-  readonly tail: readonly LineFinding[];
-  readonly tailCount: number;
-  readonly brokenQuotes: number | null;
-  readonly lastDataLine: number;
-  readonly lines: number;
-  readonly tooManyPoints: boolean;
 }
 
 const KEPT = 60;
@@ -102,8 +47,9 @@ class Pass {
     short: [] as LineFinding[],
     timeless: [] as LineFinding[],
     words: [] as LineFinding[],
+    summary: [] as LineFinding[],
   };
-  private readonly count = { long: 0, short: 0, timeless: 0, words: 0, blank: 0 };
+  private readonly count = { long: 0, short: 0, timeless: 0, words: 0, summary: 0, blank: 0 };
   private pending: LineFinding[] = [];
   private pendingCount = { words: 0, blank: 0 };
   private brokenQuotes: number | null = null;
@@ -166,6 +112,10 @@ class Pass {
       this.pend(row);
       return true;
     }
+    if (this.isSummary(row)) {
+      this.keep("summary", row);
+      return true;
+    }
     this.flushPending();
     this.lastDataLine = row.line;
     this.checkWidth(row);
@@ -198,6 +148,12 @@ class Pass {
       isData ||= reading.kind === "number" || reading.kind === "ambiguous" || reading.kind === "no-reading";
     }
     return isData;
+  }
+
+  /** Read already. Statistics stand where a time would, and no line of data has a word there. */
+  private isSummary(row: Row): boolean {
+    const timed = this.signals.some(({ time }) => this.oddities[time] === undefined);
+    return !timed && isSummaryWord(row.cells.find((cell) => cell !== "") ?? "");
   }
 
   private read(row: Row, column: number): CellReading {
@@ -340,6 +296,8 @@ class Pass {
       blankLineCount: this.count.blank,
       tail: this.pending,
       tailCount: this.pendingCount.words,
+      summaries: this.kept.summary,
+      summaryCount: this.count.summary,
       brokenQuotes: this.brokenQuotes,
       lastDataLine: this.lastDataLine,
       lines: this.lines,

@@ -1,6 +1,7 @@
 import type { Corrections } from "./corrections";
-import type { Gathered } from "./gather";
+import type { Gathered } from "./gathered";
 import type { Issue } from "./reading";
+import type { Separator } from "./rows";
 import { counted, lineList, lines, quoted } from "./words";
 
 /** Lines that are unlike the others: longer, shorter, without a time, words, blanks, and what stands below the data. */
@@ -9,6 +10,7 @@ export function lineIssues(
   width: number,
   totalLines: number,
   corrections: Corrections,
+  separator: Separator,
 ): Issue[] {
   const issues: Issue[] = [];
   const add = (issue: Partial<Issue> & Pick<Issue, "code" | "severity" | "place" | "message">) =>
@@ -41,13 +43,23 @@ export function lineIssues(
   if (short) {
     add({
       code: "short-line",
-      severity: "weakens",
+      // Between blanks nothing shows which cell is missing, and the ones after it move to its place.
+      severity: separator === " " ? "blocks" : "weakens",
       line: short.line,
       place: lineList(
         found.shortLines.map(({ line }) => line),
         found.shortLineCount,
       ),
-      message: `${found.shortLineCount === 1 ? "This line has" : "These lines have"} ${found.shortLineCount === 1 ? short.cells : "fewer"} cells${found.shortLineCount === 1 ? ` where ${width} are expected` : ` than the ${width} expected`}; the missing ones count as no reading.`,
+      message: `${found.shortLineCount === 1 ? "This line has" : "These lines have"} ${found.shortLineCount === 1 ? short.cells : "fewer"} cells${found.shortLineCount === 1 ? ` where ${width} are expected` : ` than the ${width} expected`}; ${separator === " " ? "which of them is missing cannot be seen. Leave the line out, or export again with a separator" : "the missing ones count as no reading"}.`,
+      repairs:
+        separator === " " && found.shortLineCount <= found.shortLines.length
+          ? [
+              {
+                label: found.shortLineCount === 1 ? `Leave line ${short.line} out` : "Leave these lines out",
+                change: { kind: "leave-lines-out", lines: found.shortLines.map(({ line }) => line) },
+              },
+            ]
+          : [],
     });
   }
   const timeless = found.timeless[0];
@@ -86,6 +98,19 @@ export function lineIssues(
         found.wordLineCount,
       ),
       message: `No number stands here: ${quoted(words.text)}. Skipped, kept in the raw file.`,
+    });
+  }
+  const summary = found.summaries[0];
+  if (summary) {
+    add({
+      code: "summary-row",
+      severity: "note",
+      line: summary.line,
+      place: lineList(
+        found.summaries.map(({ line }) => line),
+        found.summaryCount,
+      ),
+      message: `A statistic of the columns and no reading: ${quoted(summary.text)}. Skipped, kept in the raw file.`,
     });
   }
   for (const line of corrections.linesLeftOut ?? []) {

@@ -20,6 +20,8 @@ describe("one table in every dress", () => {
     ["utf16be-bom.csv", ";", ",", "utf-16be"],
     ["utf16le-no-bom.csv", ";", ",", "utf-16le"],
     ["old-mac-line-ends.csv", ",", ".", "utf-8"],
+    ["blanks-point.txt", " ", ".", "utf-8"],
+    ["blanks-comma.txt", " ", ",", "utf-8"],
   ])("%s gives the same traces", (file, separator, decimalMark, encoding) => {
     const reading = read(file);
     expect(reading.separator.value).toBe(separator);
@@ -39,6 +41,20 @@ describe("one table in every dress", () => {
 });
 
 describe("what stands around the data", () => {
+  it("stops where a cell is missing between blanks, since nothing shows which", () => {
+    const short = issue(read("blanks-cell-missing.txt"), "short-line");
+    expect(short).toMatchObject({ severity: "blocks", line: 3 });
+    expect(blocking(repaired("blanks-cell-missing.txt", "short-line", "Leave line 3 out"))).toEqual([]);
+    expect(blocking(read("ragged-blanks.txt"))).not.toEqual([]);
+  });
+
+  it("passes over statistics below the columns", () => {
+    const reading = read("summary-rows.csv");
+    expect(traces(reading)).toEqual(TWO_RUNS);
+    expect(issue(reading, "summary-row")).toMatchObject({ severity: "note", place: "lines 7 and 8" });
+    expect(blocking(reading)).toEqual([]);
+  });
+
   it("finds preamble, names, units and a blank tail", () => {
     const reading = read("preamble-units-tail.csv");
     expect(reading.headerLine.value).toBe(6);
@@ -225,7 +241,6 @@ describe("what cannot be a table", () => {
     ["picture.png", /picture/],
     ["spectrum.jdx", /JCAMP-DX.*an axis without a unit, not along time/],
     ["only-text.csv", /No line of numbers.*“name colour”/],
-    ["spaces.txt", /separated by spaces/],
   ])("%s is refused with the way out", (file, message) => {
     expect(refusal(file)).toMatch(message);
   });

@@ -6,7 +6,8 @@ import type { TableText, TableTextReading } from "./container";
 import type { Corrections } from "./corrections";
 import { guessDecimalMark } from "./decimal-mark";
 import { type Frame, findFrame } from "./frame";
-import { type Gathered, gather } from "./gather";
+import { gather } from "./gather";
+import type { Gathered } from "./gathered";
 import { brokenQuotes, lineIssues } from "./line-issues";
 import type { DecimalMark, NumberFormat } from "./number";
 import type { FileReading, Guess, Issue, IssueSeverity, Reading, StudyContext } from "./reading";
@@ -51,7 +52,7 @@ export function readTable(table: TableTextReading, context: StudyContext, correc
     stated: stated.decimalMark !== undefined,
   };
   const frame = findFrame(sample, numberFormat, context.species, corrections);
-  if (frame === null) return refused(text, sample);
+  if (frame === null) return refused(sample);
   if (frame.columns > MOST_COLUMNS) {
     return {
       status: "refused",
@@ -101,7 +102,7 @@ export function readTable(table: TableTextReading, context: StudyContext, correc
     ...columnIssues(guessed),
     ...cellIssues(found, { columns: guessed.columns, nameOf }, corrections),
     ...cellsCorrected(corrections, nameOf),
-    ...lineIssues(found, frame.columns, total, corrections),
+    ...lineIssues(found, frame.columns, total, corrections, separator.value),
     ...built.issues,
     ...preambleIssues(frame, sample, recipes),
     ...traceChecks(built.traces, context, found.tooManyPoints),
@@ -223,15 +224,7 @@ function decimalMarkOf(
   };
 }
 
-function refused(text: string, sample: readonly Row[]): Reading {
-  const spaced = text.split("\n").filter((line) => /^\s*[+\-−]?[\d.,]+ +[+\-−]?[\d.,]+/.test(line)).length;
-  if (spaced > 1) {
-    return {
-      status: "refused",
-      message:
-        "The columns seem to be separated by spaces, which also occur inside cells. Export again with tabs, semicolons or commas between the columns.",
-    };
-  }
+function refused(sample: readonly Row[]): Reading {
   const first = sample.find((row) => row.cells.some((cell) => cell !== ""));
   return {
     status: "refused",

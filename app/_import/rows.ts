@@ -1,17 +1,20 @@
 import Papa from "papaparse";
+import { looksNumeric } from "./number";
 
 /**
  * Text into cells. Empty lines are kept here and skipped by the reader, as papaparse's own `skipEmptyLines: "greedy"`
  * would lose the line numbers that every issue names.
  */
 
-export type Separator = "," | ";" | "\t" | "|";
+/** A blank stands for any run of blanks and tabs. */
+export type Separator = "," | ";" | "\t" | "|" | " ";
 
 export const SEPARATOR_NAMES: Record<Separator, string> = {
   ",": "comma",
   ";": "semicolon",
   "\t": "tab",
   "|": "vertical bar",
+  " ": "blank",
 };
 
 export interface RowFormat {
@@ -30,6 +33,11 @@ export interface Row {
 
 /** Calls `visit` for every row in order, until it returns false. `text` has "\n" line ends. */
 export function eachRow(text: string, format: RowFormat, visit: (row: Row) => boolean): void {
+  if (format.separator === " ") eachBlankDividedRow(text, visit);
+  else eachSeparatedRow(text, format, visit);
+}
+
+function eachSeparatedRow(text: string, format: RowFormat, visit: (row: Row) => boolean): void {
   const quoting = format.quotes === "quoting" && text.includes('"');
   let line = 1;
   Papa.parse<string[]>(text, {
@@ -46,6 +54,28 @@ export function eachRow(text: string, format: RowFormat, visit: (row: Row) => bo
       if (!proceed) parser.abort();
     },
   });
+}
+
+function eachBlankDividedRow(text: string, visit: (row: Row) => boolean): void {
+  let line = 1;
+  for (let start = 0; start <= text.length; line++) {
+    const end = text.indexOf("\n", start);
+    const stop = end < 0 ? text.length : end;
+    if (!visit({ line, cells: blankDivided(text.slice(start, stop)), brokenQuotes: false })) return;
+    start = stop + 1;
+  }
+}
+
+/**
+ * Numbers are divided at every blank. A line of words is divided where two blanks or a tab stand, as programs that line
+ * up their columns write it, else at every blank but those about a solidus: "t / s" is one heading.
+ */
+function blankDivided(line: string): string[] {
+  const trimmed = line.trim();
+  const apart = trimmed.split(/\s+/);
+  if (apart.every(looksNumeric)) return apart;
+  if (/\s{2}|\t/.test(trimmed)) return trimmed.split(/\s{2,}|\t/);
+  return trimmed.split(/(?<!\/)\s+(?!\/)/);
 }
 
 /** The first rows of the text, at most `limit`. */

@@ -17,7 +17,12 @@ const SAMPLE_ROWS = 400;
 
 export function guessSeparator(text: string, quotes: RowFormat["quotes"]): SeparatorGuess {
   const all = (["\t", ";", "|", ","] as const).map((separator) => score(text, { separator, quotes }));
-  const candidates = all.filter((candidate) => candidate.columns > 1);
+  const blank = score(text, { separator: " ", quotes: "plain" });
+  // Numbers with blanks inside, where blanks alone divide every line evenly, were not meant as one cell.
+  const candidates = all.filter(
+    (candidate) => candidate.columns > 1 && !(candidate.torn >= 0.5 && blank.regular >= 0.5),
+  );
+  if (candidates.length === 0 && blank.columns > 1 && blank.regular >= 0.5) candidates.push(blank);
   const strong = candidates.filter((candidate) => candidate.separator !== "," && candidate.regular >= 0.5);
   const best = [...(strong.length > 0 ? strong : candidates)].sort((a, b) => b.points - a.points)[0];
   if (!best) {
@@ -44,6 +49,8 @@ interface Score {
   /** Part of the non-blank rows that have the usual number of cells and are mostly numbers. */
   readonly regular: number;
   readonly points: number;
+  /** Part of the rows in which a cell holds two numbers apart. */
+  readonly torn: number;
 }
 
 function score(text: string, format: RowFormat): Score {
@@ -63,7 +70,13 @@ function score(text: string, format: RowFormat): Score {
     columns,
     regular: rows.length === 0 ? 0 : regular / rows.length,
     points,
+    torn: rows.length === 0 ? 0 : rows.filter(({ cells }) => cells.some(isTorn)).length / rows.length,
   };
+}
+
+/** "0 0,010": numbers with a blank between that groups no thousands. */
+function isTorn(cell: string): boolean {
+  return /\d\s+[+\-−]?[\d.,]/.test(cell) && !/^[+\-−]?\d{1,3}(\s\d{3})+([.,]\d*)?$/.test(cell);
 }
 
 function numericShare(row: Row): number {

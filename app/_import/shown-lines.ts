@@ -1,5 +1,5 @@
 import type { Frame } from "./frame";
-import type { Gathered } from "./gather";
+import type { Gathered } from "./gathered";
 import type { Issue, ShownLine } from "./reading";
 import type { RecipeLine } from "./recipes";
 import { eachRow, firstRows, isBlank, type Row, type RowFormat } from "./rows";

@@ -1,6 +1,6 @@
 import { type ClockReading, clockTimes, midnightIssue } from "./clock-columns";
 import type { Corrections } from "./corrections";
-import type { GatheredTrace } from "./gather";
+import type { GatheredTrace } from "./gathered";
 import { labelTraces } from "./labels";
 import type { ColumnReading, Issue, RecipeEntry, SignalUnit, StudyContext, TraceReading } from "./reading";
 import type { RecipeLine, SpeciesKey } from "./recipes";

@@ -150,6 +150,7 @@ const SEPARATORS = [
   [";", "semicolon"],
   ["\t", "tab"],
   ["|", "vertical bar"],
+  [" ", "blanks"],
 ] as const;
 const MARKS = [
   [".", "point"],
