@@ -103,6 +103,6 @@ function readingWeightFault({ readings = [], readingWeights }: CalibrateInput): 
     argument: "readingWeights",
     index,
     replicate: null,
-    message: `The weight of reading ${index + 1} is ${readingWeights[index]}; weights are numbers above 0.`,
+    message: `The weight of reading ${index + 1} is not a number above 0. Correct it, or leave the weights of readings out.`,
   };
 }

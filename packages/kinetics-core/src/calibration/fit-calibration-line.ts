@@ -1,7 +1,7 @@
 import { dot, entry, leastSquares, matrixFromColumns } from "kinetics-core/linear-algebra";
 import { estimateOf } from "kinetics-core/quantities";
 import type { CalibrationFault, CalibrationInput, CalibrationLine } from "./calibration";
-import { levelsOf } from "./levels";
+import { calibrationFault } from "./calibration-fault";
 
 /** What is below this many rounding errors of the signals is rounding. */
 const ROUNDING_ERRORS = 16;
@@ -15,7 +15,7 @@ const ROUNDING_ERRORS = 16;
  * standards as parameters the line is exact and carries no uncertainty.
  */
 export function fitCalibrationLine(input: CalibrationInput): CalibrationLine | CalibrationFault {
-  const fault = faultOf(input);
+  const fault = calibrationFault(input);
   if (fault !== null) return fault;
 
   const { concentrations, signals, level = 0.95 } = input;
@@ -37,16 +37,6 @@ export function fitCalibrationLine(input: CalibrationInput): CalibrationLine | C
   const variance = degreesOfFreedom > 0 ? fit.residualSumOfSquares / degreesOfFreedom : null;
   const intercept = signalAtCentre - slope * centre;
   const interceptFactor = inverseWeight + centre ** 2 * inverseSpread;
-  if (![slope, intercept, inverseSpread, interceptFactor, variance ?? 0].every(Number.isFinite)) {
-    return {
-      status: "beyond-precision",
-      argument: "signals",
-      index: null,
-      message:
-        "The standards are so large or so small that their squares leave the range of the computer's numbers. Give concentrations and signals in other units.",
-    };
-  }
-
   return {
     status: "fitted",
     interceptFitted,
@@ -113,60 +103,4 @@ function rSquaredOf(
   const origin = aboutMean ? weightedMean(signals, weights) : 0;
   const total = signals.reduce((sum, y, i) => sum + (weights[i] ?? 0) * (y - origin) ** 2, 0);
   return total > 0 ? Math.min(Math.max(1 - residual / total, 0), 1) : null;
-}
-
-function faultOf({ concentrations, signals, weights, intercept }: CalibrationInput): CalibrationFault | null {
-  for (const [argument, values] of [
-    ["signals", signals],
-    ["weights", weights ?? concentrations],
-  ] as const) {
-    if (values.length !== concentrations.length) {
-      return {
-        status: "lengths-differ",
-        argument,
-        index: null,
-        message: `There are ${concentrations.length} concentrations and ${values.length} ${argument}. Each standard needs one of each.`,
-      };
-    }
-  }
-  for (const [argument, values] of [
-    ["concentrations", concentrations],
-    ["signals", signals],
-  ] as const) {
-    const index = values.findIndex((value) => !Number.isFinite(value));
-    if (index >= 0) {
-      return {
-        status: "not-finite",
-        argument,
-        index,
-        message: `Standard ${index + 1} has no ${argument.slice(0, -1)} that is a number. Give it, or leave the standard out.`,
-      };
-    }
-  }
-  const index = weights?.findIndex((weight) => !(Number.isFinite(weight) && weight > 0)) ?? -1;
-  if (index >= 0) {
-    return {
-      status: "bad-weight",
-      argument: "weights",
-      index,
-      message: `The weight of standard ${index + 1} is ${weights?.[index]}; weights are numbers above 0. To let a standard not count, leave it out.`,
-    };
-  }
-  return tooFewOf(concentrations, intercept !== "none");
-}
-
-function tooFewOf(concentrations: readonly number[], interceptFitted: boolean): CalibrationFault | null {
-  const levels = levelsOf(concentrations);
-  const enough = interceptFitted
-    ? levels.length >= 2
-    : levels.some(([first = 0]) => (concentrations[first] ?? 0) !== 0);
-  if (enough) return null;
-  return {
-    status: "too-few-standards",
-    argument: "concentrations",
-    index: null,
-    message: interceptFitted
-      ? `A line with an intercept needs standards of at least two concentrations, and here ${concentrations.length === 0 ? "are none" : `all ${concentrations.length} have one`}. Add a standard of another concentration.`
-      : "A line through the origin needs a standard of a concentration other than 0. Add one.",
-  };
 }

@@ -40,7 +40,8 @@ export function readConcentration(
   const slope = line.slope.estimate ?? 0;
   const rise = reading.signal - centre.signal;
   const concentration = centre.concentration + rise / slope;
-  if (!Number.isFinite(concentration)) return { ...noEstimate(level), g: null, set: null };
+  // A slope of 0, or a signal beyond what a double holds.
+  if (!Number.isFinite(concentration ** 2)) return { ...noEstimate(level), g: null, set: null };
   if (s === null) {
     return { estimate: concentration, standardError: null, interval: null, level, g: null, set: null };
   }
