@@ -1,0 +1,1 @@
+export { ionicStrengthOf } from "./ionic-strength";
