@@ -1,0 +1,54 @@
+/**
+ * The constants of the global fit, each with its reason. "Simulation": settled on simulated studies of known truth.
+ */
+
+/** Error of one integration step against the extent that the trace shows: a thousandth of ordinary noise. */
+export const STEP_TOLERANCE = 1e-6;
+
+/** The same while the fit is still looking for its neighbourhood on few points. */
+export const COARSE_TOLERANCE = 1e-4;
+
+/** The same where the residuals are so small that STEP_TOLERANCE would show among them. */
+export const FINE_TOLERANCE = 1e-10;
+
+/** Residual standard deviation against the extent seen, below which FINE_TOLERANCE is called for. */
+export const FINE_BELOW = 1e-4;
+
+/** Steps of one course. Fourteen are usual; a course that needs more than this has no end that steps could reach. */
+export const MOST_STEPS = 2000;
+
+/** Rejections in a row after which a step is given up: the step is then below a double's resolution of the time. */
+export const MOST_REJECTIONS = 60;
+
+/** Points of one block of columns: five columns of it stay in the first-level cache. */
+export const BLOCK_POINTS = 512;
+
+/** Points a run on which the search begins. The full traces only polish what these have found. */
+export const COARSE_POINTS = 48;
+
+/** Largest change of the logarithm of the rate in one step: beyond it a course may lie flat at its end. */
+export const LARGEST_LOG_STEP = 1;
+
+/** Largest change of one order in one step. */
+export const LARGEST_ORDER_STEP = 1;
+
+/** Passes over the data after which a search gives up. Four to eight are usual. */
+export const MOST_PASSES = 80;
+
+/** Predicted fall of the sum of squares, in residual variances, at which the coarse search ends: 3 % of a standard error. */
+export const COARSE_SETTLED = 1e-3;
+
+/** The same for the full traces: a ten-thousandth of a standard error, and the step taken still improves on it. */
+export const SETTLED = 1e-8;
+
+/** Fall of the sum of squares, relative to it, that a double no longer resolves. */
+export const UNRESOLVED = 1e-14;
+
+/** Pivot of the scaled normal matrix below which a combination of parameters is not determined: 1e-5 of a column's length. */
+export const UNDETERMINED = 1e-10;
+
+/** Orders outside are no power law of chemistry; a fit that rests there says so. */
+export const ORDER_BOUNDS = [-6, 6] as const;
+
+/** A scale this many times the stated one, or its inverse, is no longer the same signal. */
+export const SCALE_BOUNDS = [0.05, 20] as const;

@@ -1,0 +1,272 @@
+import { BlockSums } from "./block-sums";
+import { BLOCK_POINTS } from "./constants";
+import { Course, type CourseTask } from "./course";
+import { DENSE_COEFFICIENTS } from "./dormand-prince";
+import type { PreparedRun, PreparedStudy } from "./prepared-study";
+import { projectRun } from "./project-run";
+import type { RunLinearisation } from "./run-linearisation";
+
+/**
+ * One pass over a trace: residual and Jacobian together, from the dense output of the run's course, and their sums.
+ *
+ *   signal = offset + s·c(t),   c = c₀ + ν ξ(τ),   τ = k (t − t₀),   s = stated · ratio of the scale · the run's own
+ *   ∂signal/∂ln k = s ν τ f      ∂signal/∂θ_j = s ν ∂ξ/∂θ_j      ∂signal/∂t₀ = −s ν k f
+ *   ∂signal/∂ratio = stated · own ratio · ν ξ   (its constant part falls to the offset)
+ *
+ * with ξ, f = dξ/dτ and the integrals read from the polynomials of the steps: no logarithm and no power a point.
+ */
+export class TracePass {
+  private readonly study: PreparedStudy;
+  private readonly course: Course;
+  private readonly tasks: readonly CourseTask[];
+  private readonly sums: BlockSums;
+  private readonly layout: ColumnLayout;
+  /** Free parameters of the law alone, as it takes them. */
+  private readonly lawParameters: Float64Array;
+  /** Place within a step, and s ν f, of the points of a block. */
+  private readonly place = new Float64Array(BLOCK_POINTS);
+  private readonly slope = new Float64Array(BLOCK_POINTS);
+  private readonly endRow: Float64Array;
+  private filled = 0;
+  private rateConstant = 1;
+  /** s ν, and the same with the ratio of the scale at one. */
+  private factor = 1;
+  private statedFactor = 1;
+
+  constructor(study: PreparedStudy) {
+    this.study = study;
+    this.layout = columnLayout(study);
+    this.sums = new BlockSums(this.layout.width);
+    this.endRow = new Float64Array(this.layout.width);
+    this.lawParameters = new Float64Array(study.law.free.length);
+    this.tasks = study.runs.map(({ least, most, span }) => ({ system: study.law, least, most, span }));
+    this.course = new Course({ system: study.law, least: 0, most: 0, span: 1 });
+  }
+
+  /**
+   * Linearises run number `index` at θ and at the run's own deviation, time zero and scale ratio, which `into` holds.
+   * False where the law has no finite course there; `into` is then not to be read.
+   */
+  run(index: number, theta: Float64Array, tolerance: number, into: RunLinearisation): boolean {
+    const run = this.study.runs[index];
+    const task = this.tasks[index];
+    if (run === undefined || task === undefined) throw new RangeError(`no run number ${index}`);
+    const ratio = this.layout.ratioPlace < 0 ? 1 : (theta[this.layout.ratioPlace] ?? 1);
+    this.rateConstant = Math.exp((theta[0] ?? 0) + into.deviation);
+    this.statedFactor = this.study.scale * this.study.followedNumber * into.scaleRatio;
+    this.factor = this.statedFactor * ratio;
+    for (let j = 0; j < this.lawParameters.length; j++) this.lawParameters[j] = theta[1 + j] ?? 0;
+    this.study.law.begin(run.concentrations, this.lawParameters);
+    this.sums.clear();
+    this.filled = 0;
+    if (!this.follow(run, task, tolerance, into)) return false;
+    if (this.filled > 0) this.sums.add(this.filled);
+    const endWeight = this.takeEndSignal(run, into.noise);
+    projectRun(this.sums, this.endRow, endWeight, this.layout, this.study, run, ratio, into);
+    const start = run.signal[0] ?? 0;
+    into.startSignal += start;
+    return Number.isFinite(into.residualSquares);
+  }
+
+  /** Follows the course of the run and takes the points as its pieces reach them. */
+  private follow(run: PreparedRun, task: CourseTask, tolerance: number, into: RunLinearisation): boolean {
+    const { course } = this;
+    const { time } = run;
+    const k = this.rateConstant;
+    const end = k * ((time[time.length - 1] ?? 0) - into.timeZero);
+    if (!(end < Number.MAX_VALUE)) return false;
+    let point = 0;
+    // Before mixing nothing has moved.
+    while (point < time.length && (time[point] ?? 0) <= into.timeZero) point++;
+    if (point > 0) this.takeRest(run, 0, point, null);
+    if (point === time.length) return true;
+    if (!course.begin(task, end, tolerance, into.firstStep)) return false;
+    while (point < time.length) {
+      const piece = course.next();
+      if (piece === "failed") return false;
+      if (piece === "rest") {
+        this.takeRest(run, point, time.length, course.coefficients);
+        break;
+      }
+      const until = course.until >= end ? time.length : firstAfter(time, point, into.timeZero + course.until / k);
+      this.takePiece(run, point, until, into.timeZero);
+      point = until;
+    }
+    into.firstStep = course.firstStep;
+    return true;
+  }
+
+  private takePiece(run: PreparedRun, from: number, until: number, timeZero: number): void {
+    let point = from;
+    while (point < until) {
+      const rows = Math.min(until - point, BLOCK_POINTS - this.filled);
+      this.evaluate(run, point, rows, timeZero);
+      point += rows;
+      this.advance(rows);
+    }
+  }
+
+  private advance(rows: number): void {
+    this.filled += rows;
+    if (this.filled === BLOCK_POINTS) {
+      this.sums.add(BLOCK_POINTS);
+      this.filled = 0;
+    }
+  }
+
+  private evaluate(run: PreparedRun, from: number, rows: number, timeZero: number): void {
+    const { course, sums, place, slope, filled, factor, layout } = this;
+    const c = course.coefficients;
+    const perLength = this.rateConstant / course.length;
+    const origin = timeZero * perLength + course.from / course.length;
+    const { time, signal } = run;
+    const reference = signal[0] ?? 0;
+    const residual = sums.columns[0] ?? place;
+    const byLogRate = sums.columns[1] ?? place;
+    const c0 = (c[0] ?? 0) * factor;
+    const c1 = (c[1] ?? 0) * factor;
+    const c2 = (c[2] ?? 0) * factor;
+    const c3 = (c[3] ?? 0) * factor;
+    const c4 = (c[4] ?? 0) * factor;
+    const inverse = 1 / course.length;
+    for (let i = 0; i < rows; i++) {
+      const t = time[from + i] ?? 0;
+      const u = t * perLength - origin;
+      place[i] = u;
+      residual[filled + i] =
+        (signal[from + i] ?? 0) - reference - (c0 + u * (c1 + u * (c2 + u * (c3 + u * c4))));
+      const f = (c1 + u * (2 * c2 + u * (3 * c3 + u * 4 * c4))) * inverse;
+      slope[i] = f;
+      byLogRate[filled + i] = f * this.rateConstant * (t - timeZero);
+    }
+    for (let j = 0; j < layout.lawParameters; j++) this.evaluateSensitivity(j, rows);
+    if (layout.scaleColumn >= 0) this.evaluateScale(rows);
+    if (layout.timeColumn >= 0) {
+      const byTime = sums.columns[layout.timeColumn] ?? place;
+      for (let i = 0; i < rows; i++) byTime[filled + i] = -this.rateConstant * (slope[i] ?? 0);
+    }
+  }
+
+  private evaluateSensitivity(parameter: number, rows: number): void {
+    const { place, slope, filled } = this;
+    const c = this.course.coefficients;
+    const at = (1 + parameter) * DENSE_COEFFICIENTS;
+    const column = this.sums.columns[2 + parameter] ?? place;
+    const integral = this.study.law.sensitivity === "integral";
+    const factor = integral ? 1 : this.factor;
+    const c0 = (c[at] ?? 0) * factor;
+    const c1 = (c[at + 1] ?? 0) * factor;
+    const c2 = (c[at + 2] ?? 0) * factor;
+    const c3 = (c[at + 3] ?? 0) * factor;
+    const c4 = (c[at + 4] ?? 0) * factor;
+    if (integral) {
+      for (let i = 0; i < rows; i++) {
+        const u = place[i] ?? 0;
+        column[filled + i] = (slope[i] ?? 0) * (c0 + u * (c1 + u * (c2 + u * (c3 + u * c4))));
+      }
+    } else {
+      for (let i = 0; i < rows; i++) {
+        const u = place[i] ?? 0;
+        column[filled + i] = c0 + u * (c1 + u * (c2 + u * (c3 + u * c4)));
+      }
+    }
+  }
+
+  private evaluateScale(rows: number): void {
+    const { place, filled, statedFactor } = this;
+    const c = this.course.coefficients;
+    const column = this.sums.columns[this.layout.scaleColumn] ?? place;
+    const c0 = (c[0] ?? 0) * statedFactor;
+    const c1 = (c[1] ?? 0) * statedFactor;
+    const c2 = (c[2] ?? 0) * statedFactor;
+    const c3 = (c[3] ?? 0) * statedFactor;
+    const c4 = (c[4] ?? 0) * statedFactor;
+    for (let i = 0; i < rows; i++) {
+      const u = place[i] ?? 0;
+      column[filled + i] = c0 + u * (c1 + u * (c2 + u * (c3 + u * c4)));
+    }
+  }
+
+  /** Points where nothing moves: before mixing (`coefficients` null) or after the course has come to rest. */
+  private takeRest(run: PreparedRun, from: number, until: number, coefficients: Float64Array | null): void {
+    const { sums, layout } = this;
+    const extent = coefficients?.[0] ?? 0;
+    const moves = coefficients !== null && this.study.law.sensitivity === "variation";
+    const reference = (run.signal[0] ?? 0) + this.factor * extent;
+    let point = from;
+    while (point < until) {
+      const { filled } = this;
+      const rows = Math.min(until - point, BLOCK_POINTS - filled);
+      for (let a = 1; a < layout.width; a++) sums.columns[a]?.fill(0, filled, filled + rows);
+      const residual = sums.columns[0] ?? this.place;
+      for (let i = 0; i < rows; i++) residual[filled + i] = (run.signal[point + i] ?? 0) - reference;
+      if (moves) {
+        for (let j = 0; j < layout.lawParameters; j++)
+          sums.columns[2 + j]?.fill(
+            this.factor * (coefficients[(1 + j) * DENSE_COEFFICIENTS] ?? 0),
+            filled,
+            filled + rows,
+          );
+      }
+      if (layout.scaleColumn >= 0)
+        sums.columns[layout.scaleColumn]?.fill(this.statedFactor * extent, filled, filled + rows);
+      point += rows;
+      this.advance(rows);
+    }
+  }
+
+  /** Writes the row of an end reading and returns its weight in readings; 0 where there is none that could be used. */
+  private takeEndSignal(run: PreparedRun, noise: number): number {
+    const { endRow, layout } = this;
+    endRow.fill(0);
+    const end = run.endSignal;
+    // Where a law comes to equilibrium, the extent at the end is no constant of the design.
+    if (end === null || run.most === Number.MAX_VALUE || this.study.law.sensitivity === "variation") return 0;
+    endRow[0] = end.value - (run.signal[0] ?? 0) - this.factor * run.most;
+    if (layout.scaleColumn >= 0) endRow[layout.scaleColumn] = this.statedFactor * run.most;
+    if (end.variance === null) return 1;
+    return end.variance > noise / MOST_END_WEIGHT ? noise / end.variance : MOST_END_WEIGHT;
+  }
+}
+
+/** An exact end reading counts as this many readings: more would leave no digits for the others. */
+const MOST_END_WEIGHT = 1e8;
+
+export interface ColumnLayout {
+  readonly width: number;
+  readonly lawParameters: number;
+  /** Parameters of θ. */
+  readonly parameters: number;
+  readonly scaleColumn: number;
+  readonly timeColumn: number;
+  /** Place of the scale's ratio in θ, or −1. */
+  readonly ratioPlace: number;
+}
+
+/** Columns: residual, ln k, the law's parameters, scale, time zero; the last two where the study has them. */
+export function columnLayout(study: PreparedStudy): ColumnLayout {
+  const lawParameters = study.law.free.length;
+  const hasScale = study.scaleVariance > 0 || study.scaleDeviationVariance > 0;
+  const scaleColumn = hasScale ? 2 + lawParameters : -1;
+  const before = 2 + lawParameters + (hasScale ? 1 : 0);
+  return {
+    width: before + (study.hasTimeZero ? 1 : 0),
+    lawParameters,
+    parameters: 1 + lawParameters + (study.scaleVariance > 0 ? 1 : 0),
+    scaleColumn,
+    timeColumn: study.hasTimeZero ? before : -1,
+    ratioPlace: study.scaleVariance > 0 ? 1 + lawParameters : -1,
+  };
+}
+
+/** First index from `from` on whose time lies beyond `limit`. */
+function firstAfter(time: Float64Array, from: number, limit: number): number {
+  let low = from;
+  let high = time.length;
+  while (low < high) {
+    const middle = (low + high) >> 1;
+    if ((time[middle] ?? 0) <= limit) low = middle + 1;
+    else high = middle;
+  }
+  return low;
+}
