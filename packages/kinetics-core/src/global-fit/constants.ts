@@ -20,9 +20,6 @@ export const MOST_STEPS = 2000;
 /** Rejections in a row after which a step is given up: the step is then below a double's resolution of the time. */
 export const MOST_REJECTIONS = 60;
 
-/** Points of one block of columns: five columns of it stay in the first-level cache. */
-export const BLOCK_POINTS = 512;
-
 /** Points a run on which the search begins. The full traces only polish what these have found. */
 export const COARSE_POINTS = 48;
 
@@ -38,8 +35,20 @@ export const MOST_PASSES = 80;
 /** Predicted fall of the sum of squares, in residual variances, at which the coarse search ends: 3 % of a standard error. */
 export const COARSE_SETTLED = 1e-3;
 
-/** The same for the full traces: a ten-thousandth of a standard error, and the step taken still improves on it. */
-export const SETTLED = 1e-8;
+/** The same for the full traces: a tenth of a standard error. That step is taken too and leaves a hundredth. */
+export const SETTLED = 1e-2;
+
+/** Step of the outer loop, in standard errors, at which it has settled; that step is taken too. */
+export const OUTER_SETTLED = 0.01;
+
+/** Linearisations of the outer loop. Two or three are usual. */
+export const MOST_LINEARISATIONS = 25;
+
+/** Largest change of a run's own ln k before the loop has settled: farther away its course is no straight line. */
+export const LARGEST_OWN_STEP = 1;
+
+/** A fit this many times worse than the traces' point-to-point noise is searched again from other starts. */
+export const POOR_FIT = 25;
 
 /** Fall of the sum of squares, relative to it, that a double no longer resolves. */
 export const UNRESOLVED = 1e-14;

@@ -97,6 +97,11 @@ export class Course {
     return this.nearlyExhausted() ? this.rest() : "failed";
   }
 
+  /** ξ at the end of the last piece. */
+  get extent(): number {
+    return this.step.y[0] ?? 0;
+  }
+
   /** A tenth of the span at the starting rate, or the whole time where that is less. */
   private guess(): number {
     const rate = Math.abs(this.step.k1[0] ?? 0);
@@ -140,23 +145,25 @@ export class Course {
     let low = 0;
     let high = 1;
     const [c0 = 0, c1 = 0, c2 = 0, c3 = 0, c4 = 0] = this.coefficients;
-    const rising = limit > c0;
+    const rising = (this.step.next[0] ?? 0) > (this.step.y[0] ?? 0);
     for (let halving = 0; halving < 54; halving++) {
-      const u = 0.5 * (low + high);
-      const beyond = c0 + u * (c1 + u * (c2 + u * (c3 + u * c4))) > limit;
-      if (beyond === rising) high = u;
-      else low = u;
+      const part = 0.5 * (low + high);
+      const v = part - 0.5;
+      const beyond = c0 + v * (c1 + v * (c2 + v * (c3 + v * c4))) > limit;
+      if (beyond === rising) high = part;
+      else low = part;
     }
     return high;
   }
 
-  private evaluateAt(u: number, into: Float64Array): void {
+  private evaluateAt(part: number, into: Float64Array): void {
     const c = this.coefficients;
+    const v = part - 0.5;
     for (let i = 0; i < into.length; i++) {
       const at = i * DENSE_COEFFICIENTS;
       into[i] =
         (c[at] ?? 0) +
-        u * ((c[at + 1] ?? 0) + u * ((c[at + 2] ?? 0) + u * ((c[at + 3] ?? 0) + u * (c[at + 4] ?? 0))));
+        v * ((c[at + 1] ?? 0) + v * ((c[at + 2] ?? 0) + v * ((c[at + 3] ?? 0) + v * (c[at + 4] ?? 0))));
     }
   }
 

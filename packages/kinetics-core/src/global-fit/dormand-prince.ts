@@ -13,7 +13,7 @@ export interface CourseSystem {
   evaluate(y: Float64Array, derivative: Float64Array): boolean;
 }
 
-/** Coefficients of a component's dense output, in powers of u = (τ − τ₀)/h from 0 to 4. */
+/** Coefficients of a component's dense output, in powers 0 to 4 of v = (τ − τ₀)/h − ½, which runs from −½ to ½. */
 export const DENSE_COEFFICIENTS = 5;
 
 export class DormandPrinceStep {
@@ -124,12 +124,15 @@ export class DormandPrinceStep {
           (701980252875 / 199316789632) * (k5[i] ?? 0) -
           (1453857185 / 822651844) * (k6[i] ?? 0) +
           (69997945 / 29380423) * (k7[i] ?? 0));
-      // y = r₁ + u(r₂ + (1−u)(r₃ + u(r₄ + (1−u) r₅))), multiplied out.
+      // y = r₁ + u(r₂ + (1−u)(r₃ + u(r₄ + (1−u) r₅))), multiplied out, then about the middle of the step.
+      const c1 = change + third;
+      const c2 = fourth + fifth - third;
+      const c3 = -fourth - 2 * fifth;
       const at = i * DENSE_COEFFICIENTS;
-      into[at] = start;
-      into[at + 1] = change + third;
-      into[at + 2] = fourth + fifth - third;
-      into[at + 3] = -fourth - 2 * fifth;
+      into[at] = start + c1 / 2 + c2 / 4 + c3 / 8 + fifth / 16;
+      into[at + 1] = c1 + c2 + 0.75 * c3 + fifth / 2;
+      into[at + 2] = c2 + 1.5 * c3 + 1.5 * fifth;
+      into[at + 3] = c3 + 2 * fifth;
       into[at + 4] = fifth;
     }
   }

@@ -46,7 +46,7 @@ export function equationCourse(
       const extent = y[0] ?? 0;
       for (let i = 0; i < c.length; i++) {
         const concentration = (starts[i] ?? 0) + (numbers[i] ?? 0) * extent;
-        c[i] = concentration > 0 ? concentration : 0;
+        c[i] = Math.max(concentration, 0);
       }
       if (!equation.evaluate(c, all, value)) return false;
       const rate = value.f;

@@ -1,3 +1,4 @@
+import type { PriorInformation, RunInformation } from "kinetics-core/inference";
 import type { ConcentrationUnit, Estimate, Flag, TimeUnit, Uncertain } from "kinetics-core/quantities";
 import type { RateEquation } from "kinetics-core/rate-equation";
 import type { StudySpecies } from "./course-law";
@@ -42,7 +43,10 @@ export interface GlobalFitInput {
 
 export interface GlobalFitOptions {
   /** Where the search begins, beside the start that is read from the traces. Free parameters by name. */
-  readonly start?: { readonly logRateConstant?: number; readonly parameters?: Readonly<Record<string, number>> };
+  readonly start?: {
+    readonly logRateConstant?: number;
+    readonly parameters?: Readonly<Record<string, number>>;
+  };
   /** Asked between passes over the data; true ends the fit with status "stopped". */
   readonly shouldStop?: () => boolean;
 }
@@ -90,10 +94,40 @@ export interface GlobalFitFailure {
   readonly undetermined: readonly UndeterminedCombination[];
 }
 
-export interface Refusal {
-  readonly status: "refused";
-  readonly failure: GlobalFitFailure;
+export interface GlobalFit {
+  readonly status: "fitted";
+  /** Free parameters of the law by name; an order goes by its species where the law is one of powers. */
+  readonly parameters: Readonly<Record<string, Estimate>>;
+  /** Of every species of a law of powers, held ones without an uncertainty; empty for other equations. */
+  readonly orders: Readonly<Record<string, Estimate>>;
+  readonly logRateConstant: Estimate;
+  /** k at 1 (concentration unit). `unit` is null where the equation gives k none. */
+  readonly rateConstant: Estimate & { readonly unit: string | null };
+  /** ε·l after the fit. */
+  readonly signalPerConcentration: Estimate;
+  /** τ: standard deviation of ln k between runs; null where there are too few runs to tell. */
+  readonly betweenRunStandardDeviation: number | null;
+  /** m − r behind the intervals. */
+  readonly degreesOfFreedom: number;
+  /** Names and order of `covariance`: "ln k", the free parameters, "scale" (the ratio of ε·l to the stated value). */
+  readonly parameterNames: readonly string[];
+  /** Null where there is no uncertainty. */
+  readonly covariance: readonly (readonly number[])[] | null;
+  readonly pooled: PooledEstimates;
+  readonly runs: readonly FittedRun[];
+  /** Of one reading, every run with its own ln k. */
+  readonly residualStandardDeviation: number | null;
+  /** Passes over all readings. */
+  readonly iterations: number;
+  readonly flags: readonly Flag[];
+  /** The linearised problem at the answer, for profiles, robust errors and comparisons. */
+  readonly information: readonly RunInformation[];
+  readonly priors: readonly PriorInformation[];
+  /** r: parameters that only differences between runs determine. */
+  readonly undeterminedWithinRuns: number;
 }
+
+export type GlobalFitResult = GlobalFit | GlobalFitFailure;
 
 export function failure(
   status: GlobalFitFailureStatus,
@@ -103,5 +137,3 @@ export function failure(
 ): GlobalFitFailure {
   return { status, path, message, undetermined };
 }
-
-export type { Flag };

@@ -48,6 +48,22 @@ export class NormalStep {
     for (let i = 0; i < size; i++) step[i] = (step[i] ?? 0) * (scale[i] ?? 0);
   }
 
+  /** G⁻¹ in rows; rows and columns of parameters that nothing determines are 0. */
+  inverse(gram: Float64Array): Float64Array {
+    const { size } = this;
+    const inverse = new Float64Array(size * size);
+    const unit = new Float64Array(size);
+    const column = new Float64Array(size);
+    const none = new Uint8Array(size);
+    for (let j = 0; j < size; j++) {
+      unit.fill(0);
+      unit[j] = 1;
+      this.solve(gram, unit, 0, none, column);
+      inverse.set(column, j * size);
+    }
+    return inverse;
+  }
+
   private factorise(gram: Float64Array, damping: number, held: Uint8Array): void {
     const { size, factor, scale, idle } = this;
     factor.fill(0);
@@ -60,8 +76,7 @@ export class NormalStep {
       if (idle[i] === 1) continue;
       for (let j = 0; j <= i; j++) {
         if (idle[j] === 1) continue;
-        let sum =
-          i === j ? 1 + damping : (gram[i * size + j] ?? 0) * (scale[i] ?? 0) * (scale[j] ?? 0);
+        let sum = i === j ? 1 + damping : (gram[i * size + j] ?? 0) * (scale[i] ?? 0) * (scale[j] ?? 0);
         for (let k = 0; k < j; k++) sum -= (factor[i * size + k] ?? 0) * (factor[j * size + k] ?? 0);
         if (i > j) factor[i * size + j] = sum / (factor[j * size + j] ?? 1);
         else if (sum > UNDETERMINED) factor[i * size + i] = Math.sqrt(sum);

@@ -45,11 +45,7 @@ export class PooledSearch {
     this.logRate = logRate;
     const scale = scalePlace(pass.study) >= 0;
     this.bounds = [[-690, 690], ...law.bounds, ...(scale ? [SCALE_BOUNDS] : [])];
-    this.largest = [
-      Number.POSITIVE_INFINITY,
-      ...law.largestSteps,
-      ...(scale ? [0.5] : []),
-    ];
+    this.largest = [Number.POSITIVE_INFINITY, ...law.largestSteps, ...(scale ? [0.5] : [])];
     this.held = new Uint8Array(p);
     this.solver = new NormalStep(p);
     this.step = new Float64Array(p);
@@ -139,8 +135,7 @@ export class PooledSearch {
   private take(): void {
     const { theta, step, pass } = this;
     for (let i = 0; i < theta.length; i++) theta[i] = (theta[i] ?? 0) + (step[i] ?? 0);
-    for (const run of pass.runs)
-      if (run.eliminated.length > 0) updateNuisances(pass.study, run, step, 0);
+    for (const run of pass.runs) if (run.eliminated.length > 0) updateNuisances(pass.study, run, step, 0);
   }
 
   private keepNuisances(): void {

@@ -36,8 +36,7 @@ export function powerCourse(
     largestSteps: free.map(() => LARGEST_ORDER_STEP),
     begin(concentrations, theta) {
       let greatest = 0;
-      for (let i = 0; i < concentrations.length; i++)
-        greatest = Math.max(greatest, concentrations[i] ?? 0);
+      for (let i = 0; i < concentrations.length; i++) greatest = Math.max(greatest, concentrations[i] ?? 0);
       floor = NOTHING * greatest;
       for (let i = 0; i < count; i++) {
         starts[i] = concentrations[places[i] ?? 0] ?? 0;
@@ -54,7 +53,7 @@ export function powerCourse(
         const exponent = exponents[i] ?? 0;
         // Without a reactant of positive order there is no rate, however near a stage has overshot.
         if (c <= floor && exponent > 0) usedUp = true;
-        const ln = Math.log(c > floor ? c : floor);
+        const ln = Math.log(Math.max(c, floor));
         logarithm += exponent * ln;
         const parameter = parameters[i] ?? -1;
         if (parameter >= 0) derivative[1 + parameter] = ln;

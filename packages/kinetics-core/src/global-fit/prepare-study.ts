@@ -19,14 +19,17 @@ export function prepareStudy(input: GlobalFitInput): Preparation {
   const followed = input.species.findIndex(({ name }) => name === input.followed);
   const followedNumber = input.species[followed]?.stoichiometricNumber ?? 0;
   const { value, standardUncertainty } = input.signalPerConcentration;
+  const law = lawOf(input);
   const study: PreparedStudy = {
-    law: lawOf(input),
+    law,
     runs: input.runs.map((run) => preparedRun(run, input.species, followed, followedNumber, value)),
     followedNumber,
     scale: value,
     scaleVariance: (standardUncertainty / value) ** 2,
     scaleDeviationVariance: (input.scaleDeviation ?? 0) ** 2,
     hasTimeZero: input.runs.some((run) => (run.timeZero?.standardUncertainty ?? 0) > 0),
+    stoichiometricNumbers: input.species.map(({ stoichiometricNumber }) => stoichiometricNumber),
+    changing: law.free.map((parameter) => placesOf(parameter, input)),
   };
   return { status: "prepared", study };
 }
@@ -37,12 +40,24 @@ function lawOf({ law, species }: GlobalFitInput): CourseLaw {
     : equationCourse(species, law.equation, law.held ?? {});
 }
 
+/** An order is named by its species, alone or after "n_"; any other parameter belongs to the whole law. */
+function placesOf(parameter: string, { species, law }: GlobalFitInput): readonly number[] {
+  const own = species.findIndex(({ name }) => parameter === name || parameter === `n_${name}`);
+  if (own >= 0) return [own];
+  const named = "orders" in law ? species.map(({ name }) => name) : law.equation.species;
+  return named.map((name) => species.findIndex((one) => one.name === name));
+}
+
 function inputFault(input: GlobalFitInput): GlobalFitFailure | null {
   const { species, followed, signalPerConcentration, runs, scaleDeviation = 0, level = 0.95 } = input;
   const names = species.map(({ name }) => name);
   const twice = names.findIndex((name, place) => names.indexOf(name) !== place);
   if (twice >= 0)
-    return failure("bad-input", `species.${twice}`, `${names[twice]} stands twice among the species; name each once.`);
+    return failure(
+      "bad-input",
+      `species.${twice}`,
+      `${names[twice]} stands twice among the species; name each once.`,
+    );
   const odd = species.findIndex(({ stoichiometricNumber }) => !Number.isFinite(stoichiometricNumber));
   if (odd >= 0)
     return failure(
@@ -59,7 +74,11 @@ function inputFault(input: GlobalFitInput): GlobalFitFailure | null {
     );
   const { value, standardUncertainty } = signalPerConcentration;
   if (!(Number.isFinite(value) && value !== 0))
-    return failure("bad-input", "signalPerConcentration.value", `The signal per concentration is ${value}; a finite number other than 0 is needed.`);
+    return failure(
+      "bad-input",
+      "signalPerConcentration.value",
+      `The signal per concentration is ${value}; a finite number other than 0 is needed.`,
+    );
   if (!(standardUncertainty >= 0 && Number.isFinite(standardUncertainty)))
     return failure(
       "bad-input",
@@ -67,10 +86,19 @@ function inputFault(input: GlobalFitInput): GlobalFitFailure | null {
       `The standard uncertainty of the signal per concentration is ${standardUncertainty}; a number from 0 on is needed, 0 if it is exact.`,
     );
   if (!(scaleDeviation >= 0 && Number.isFinite(scaleDeviation)))
-    return failure("bad-input", "scaleDeviation", `The deviation of the runs' scales is ${scaleDeviation}; a number from 0 on is needed.`);
+    return failure(
+      "bad-input",
+      "scaleDeviation",
+      `The deviation of the runs' scales is ${scaleDeviation}; a number from 0 on is needed.`,
+    );
   if (!(level > 0 && level < 1))
-    return failure("bad-input", "level", `The confidence level is ${level}; a number between 0 and 1 is needed.`);
-  if (runs.length === 0) return failure("too-few-points", "runs", "There is no run. Add at least one with its trace.");
+    return failure(
+      "bad-input",
+      "level",
+      `The confidence level is ${level}; a number between 0 and 1 is needed.`,
+    );
+  if (runs.length === 0)
+    return failure("too-few-points", "runs", "There is no run. Add at least one with its trace.");
   return lawFault(input, names);
 }
 
@@ -78,15 +106,27 @@ function lawFault({ law }: GlobalFitInput, names: readonly string[]): GlobalFitF
   if ("orders" in law) {
     const unknown = Object.keys(law.orders).find((name) => !names.includes(name));
     if (unknown !== undefined)
-      return failure("bad-input", `law.orders.${unknown}`, `${unknown} has an order but is not among the species (${names.join(", ")}).`);
+      return failure(
+        "bad-input",
+        `law.orders.${unknown}`,
+        `${unknown} has an order but is not among the species (${names.join(", ")}).`,
+      );
     const wrong = Object.entries(law.orders).find(([, order]) => order !== "free" && !Number.isFinite(order));
     if (wrong !== undefined)
-      return failure("bad-input", `law.orders.${wrong[0]}`, `The order of ${wrong[0]} is ${wrong[1]}; a finite number or "free" is needed.`);
+      return failure(
+        "bad-input",
+        `law.orders.${wrong[0]}`,
+        `The order of ${wrong[0]} is ${wrong[1]}; a finite number or "free" is needed.`,
+      );
     return null;
   }
   const unknown = law.equation.species.find((name) => !names.includes(name));
   if (unknown !== undefined)
-    return failure("bad-input", "law.equation", `The rate law names ${unknown}, which is not among the species (${names.join(", ")}).`);
+    return failure(
+      "bad-input",
+      "law.equation",
+      `The rate law names ${unknown}, which is not among the species (${names.join(", ")}).`,
+    );
   const parameters = law.equation.parameters.map(({ name }) => name);
   const held = Object.entries(law.held ?? {});
   const stray = held.find(([name, value]) => !parameters.includes(name) || !Number.isFinite(value));
@@ -103,7 +143,11 @@ function firstRunFault(input: GlobalFitInput): GlobalFitFailure | null {
   const labels = new Set<string>();
   for (const [index, run] of input.runs.entries()) {
     if (labels.has(run.label))
-      return failure("bad-input", `runs.${index}.label`, `Two runs are labelled ${run.label}; give each a label of its own.`);
+      return failure(
+        "bad-input",
+        `runs.${index}.label`,
+        `Two runs are labelled ${run.label}; give each a label of its own.`,
+      );
     labels.add(run.label);
     const fault = runFault(run, `runs.${index}`, input.species);
     if (fault !== null) return fault;
@@ -111,30 +155,65 @@ function firstRunFault(input: GlobalFitInput): GlobalFitFailure | null {
   return null;
 }
 
-function runFault(run: GlobalFitRun, path: string, species: readonly StudySpecies[]): GlobalFitFailure | null {
+function runFault(
+  run: GlobalFitRun,
+  path: string,
+  species: readonly StudySpecies[],
+): GlobalFitFailure | null {
   const { label, time, signal, concentrations, endSignal, timeZero } = run;
   if (time.length !== signal.length)
-    return failure("bad-input", `${path}.signal`, `Run ${label} has ${time.length} times and ${signal.length} signals; as many of one as of the other are needed.`);
+    return failure(
+      "bad-input",
+      `${path}.signal`,
+      `Run ${label} has ${time.length} times and ${signal.length} signals; as many of one as of the other are needed.`,
+    );
   if (time.length < FEWEST_POINTS)
-    return failure("too-few-points", `${path}.time`, `Run ${label} has ${time.length} readings; at least ${FEWEST_POINTS} are needed, since its offset and its own rate are fitted.`);
+    return failure(
+      "too-few-points",
+      `${path}.time`,
+      `Run ${label} has ${time.length} readings; at least ${FEWEST_POINTS} are needed, since its offset and its own rate are fitted.`,
+    );
   let previous = Number.NEGATIVE_INFINITY;
   for (let i = 0; i < time.length; i++) {
     const t = time[i] ?? Number.NaN;
     if (!(t > previous && t >= 0 && t < Number.MAX_VALUE))
-      return failure("bad-input", `${path}.time.${i}`, `Time ${i + 1} of run ${label} is ${t}; times count from mixing, so they start at 0 or later and strictly increase.`);
+      return failure(
+        "bad-input",
+        `${path}.time.${i}`,
+        `Time ${i + 1} of run ${label} is ${t}; times count from mixing, so they start at 0 or later and strictly increase.`,
+      );
     previous = t;
     if (!Number.isFinite(signal[i]))
-      return failure("bad-input", `${path}.signal.${i}`, `Signal ${i + 1} of run ${label} is ${signal[i]}; a finite number is needed.`);
+      return failure(
+        "bad-input",
+        `${path}.signal.${i}`,
+        `Signal ${i + 1} of run ${label} is ${signal[i]}; a finite number is needed.`,
+      );
   }
   for (const { name } of species) {
     const concentration = concentrations[name];
     if (concentration === undefined || !(concentration >= 0 && Number.isFinite(concentration)))
-      return failure("bad-input", `${path}.concentrations.${name}`, `The starting concentration of ${name} in run ${label} is ${concentration ?? "missing"}; a finite number from 0 on is needed.`);
+      return failure(
+        "bad-input",
+        `${path}.concentrations.${name}`,
+        `The starting concentration of ${name} in run ${label} is ${concentration ?? "missing"}; a finite number from 0 on is needed.`,
+      );
   }
-  if (endSignal !== undefined && !(Number.isFinite(endSignal.value) && (endSignal.standardUncertainty ?? 0) >= 0))
-    return failure("bad-input", `${path}.endSignal`, `The end signal of run ${label} needs a finite value and a standard uncertainty from 0 on, or null where it is one reading.`);
+  if (
+    endSignal !== undefined &&
+    !(Number.isFinite(endSignal.value) && (endSignal.standardUncertainty ?? 0) >= 0)
+  )
+    return failure(
+      "bad-input",
+      `${path}.endSignal`,
+      `The end signal of run ${label} needs a finite value and a standard uncertainty from 0 on, or null where it is one reading.`,
+    );
   if (timeZero !== undefined && !(Number.isFinite(timeZero.value) && timeZero.standardUncertainty >= 0))
-    return failure("bad-input", `${path}.timeZero`, `Time zero of run ${label} needs a finite value and a standard uncertainty from 0 on.`);
+    return failure(
+      "bad-input",
+      `${path}.timeZero`,
+      `Time zero of run ${label} needs a finite value and a standard uncertainty from 0 on.`,
+    );
   return null;
 }
 
@@ -146,7 +225,7 @@ function preparedRun(
   scale: number,
 ): PreparedRun {
   const concentrations = Float64Array.from(species, ({ name }) => run.concentrations[name] ?? 0);
-  const signal = Float64Array.from(run.signal);
+  const signal = new Float64Array(run.signal);
   let least = -Number.MAX_VALUE;
   let most = Number.MAX_VALUE;
   species.forEach(({ stoichiometricNumber }, i) => {
@@ -158,7 +237,7 @@ function preparedRun(
   return {
     label: run.label,
     concentrations,
-    time: Float64Array.from(run.time),
+    time: new Float64Array(run.time),
     signal,
     followedStart: concentrations[followed] ?? 0,
     least,

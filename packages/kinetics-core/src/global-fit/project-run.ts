@@ -1,4 +1,4 @@
-import type { BlockSums } from "./block-sums";
+import type { ColumnSums } from "./column-sums";
 import type { PreparedRun, PreparedStudy } from "./prepared-study";
 import type { RunLinearisation } from "./run-linearisation";
 import type { ColumnLayout } from "./trace-pass";
@@ -12,7 +12,7 @@ import type { ColumnLayout } from "./trace-pass";
  * the current value: M_ee + σ²/u², then M_ab − M_ae M_eb / M_ee.
  */
 export function projectRun(
-  sums: BlockSums,
+  sums: ColumnSums,
   endRow: Float64Array,
   endWeight: number,
   layout: ColumnLayout,
@@ -36,13 +36,14 @@ export function projectRun(
       const low = Math.min(columnA, columnB);
       const high = Math.max(columnA, columnB);
       const product =
-        (sums.products[low * sums.width + high] ?? 0) + endWeight * (endRow[columnA] ?? 0) * (endRow[columnB] ?? 0);
+        (sums.products[low * sums.width + high] ?? 0) +
+        endWeight * (endRow[columnA] ?? 0) * (endRow[columnB] ?? 0);
       const value = factorA * factorB * (product - (totalA * totalB) / weight);
       m[a * size + b] = value;
       m[b * size + a] = value;
     }
   }
-  into.lagOne = lagOne(sums);
+  into.lagOne = sums.lagOne();
   into.startSignal = ((sums.sums[0] ?? 0) + endWeight * (endRow[0] ?? 0)) / weight;
   eliminate(m, size, study, run, into);
   into.residualSquares = Math.max(0, m[0] ?? 0);
@@ -113,13 +114,4 @@ export function updateNuisances(
       into.scaleRatio = Math.max(0.05, into.scaleRatio + change);
     else into.timeZero += change;
   }
-}
-
-function lagOne(sums: BlockSums): number {
-  const { count, lagged, first, last } = sums;
-  const total = sums.sums[0] ?? 0;
-  const mean = total / count;
-  const variance = (sums.products[0] ?? 0) - total * mean;
-  if (!(variance > 0)) return 0;
-  return (lagged - mean * (2 * total - first - last) + (count - 1) * mean * mean) / variance;
 }

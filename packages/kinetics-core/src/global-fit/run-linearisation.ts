@@ -13,6 +13,8 @@ export interface RunLinearisation {
   lagOne: number;
   /** Signal at the mixing time, with the offset. */
   startSignal: number;
+  /** Extent at the last reading. */
+  lastExtent: number;
 
   /** Where the run stands: its own ln k less the shared one, time zero, ratio of its scale to the shared one. */
   deviation: number;
@@ -37,6 +39,7 @@ export function runLinearisation(parameters: number, nuisances: number, points: 
     points,
     lagOne: 0,
     startSignal: 0,
+    lastExtent: 0,
     deviation: 0,
     timeZero: 0,
     scaleRatio: 1,

@@ -36,7 +36,10 @@ function earlyRate(run: PreparedRun, factor: number): { logRate: number; extent:
   let furthest = 0;
   for (let i = 0; i < count; i++) furthest = Math.max(furthest, ((signal[i] ?? 0) - first) / factor);
   let used = 0;
-  while (used < count && (used < FEWEST_EARLY_POINTS || ((signal[used] ?? 0) - first) / factor < EARLY_PART * furthest))
+  while (
+    used < count &&
+    (used < FEWEST_EARLY_POINTS || ((signal[used] ?? 0) - first) / factor < EARLY_PART * furthest)
+  )
     used++;
   let meanTime = 0;
   let meanExtent = 0;
@@ -104,7 +107,9 @@ export function startFromRates(
 function logRateRows(study: PreparedStudy, rates: readonly EarlyRate[], theta: Float64Array) {
   return rates.flatMap(({ run, logRate, extent }) => {
     const derivatives = logRateDerivatives(study, run, extent, theta);
-    return derivatives === null ? [] : [{ gap: logRate - derivatives.logRate, derivatives: derivatives.byTheta }];
+    return derivatives === null
+      ? []
+      : [{ gap: logRate - derivatives.logRate, derivatives: derivatives.byTheta }];
   });
 }
 

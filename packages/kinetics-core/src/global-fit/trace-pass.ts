@@ -1,7 +1,8 @@
-import { BlockSums } from "./block-sums";
-import { BLOCK_POINTS } from "./constants";
+import { scaled, slopePolynomial, timesIntegral, timesTime } from "./column-polynomials";
+import { ColumnSums } from "./column-sums";
 import { Course, type CourseTask } from "./course";
 import { DENSE_COEFFICIENTS } from "./dormand-prince";
+import { PieceMoments } from "./piece-moments";
 import type { PreparedRun, PreparedStudy } from "./prepared-study";
 import { projectRun } from "./project-run";
 import type { RunLinearisation } from "./run-linearisation";
@@ -13,21 +14,21 @@ import type { RunLinearisation } from "./run-linearisation";
  *   ∂signal/∂ln k = s ν τ f      ∂signal/∂θ_j = s ν ∂ξ/∂θ_j      ∂signal/∂t₀ = −s ν k f
  *   ∂signal/∂ratio = stated · own ratio · ν ξ   (its constant part falls to the offset)
  *
- * with ξ, f = dξ/dτ and the integrals read from the polynomials of the steps: no logarithm and no power a point.
+ * with ξ, f = dξ/dτ and the integrals as polynomials on each step: no logarithm and no power a point.
  */
 export class TracePass {
   private readonly study: PreparedStudy;
   private readonly course: Course;
   private readonly tasks: readonly CourseTask[];
-  private readonly sums: BlockSums;
+  private readonly sums: ColumnSums;
+  private readonly moments = new PieceMoments();
   private readonly layout: ColumnLayout;
   /** Free parameters of the law alone, as it takes them. */
   private readonly lawParameters: Float64Array;
-  /** Place within a step, and s ν f, of the points of a block. */
-  private readonly place = new Float64Array(BLOCK_POINTS);
-  private readonly slope = new Float64Array(BLOCK_POINTS);
+  /** On the present piece: the signal of the course, and s ν f. */
+  private readonly model = new Float64Array(DENSE_COEFFICIENTS);
+  private readonly slope = new Float64Array(DENSE_COEFFICIENTS);
   private readonly endRow: Float64Array;
-  private filled = 0;
   private rateConstant = 1;
   /** s ν, and the same with the ratio of the scale at one. */
   private factor = 1;
@@ -36,7 +37,7 @@ export class TracePass {
   constructor(study: PreparedStudy) {
     this.study = study;
     this.layout = columnLayout(study);
-    this.sums = new BlockSums(this.layout.width);
+    this.sums = new ColumnSums(this.layout.width);
     this.endRow = new Float64Array(this.layout.width);
     this.lawParameters = new Float64Array(study.law.free.length);
     this.tasks = study.runs.map(({ least, most, span }) => ({ system: study.law, least, most, span }));
@@ -58,9 +59,7 @@ export class TracePass {
     for (let j = 0; j < this.lawParameters.length; j++) this.lawParameters[j] = theta[1 + j] ?? 0;
     this.study.law.begin(run.concentrations, this.lawParameters);
     this.sums.clear();
-    this.filled = 0;
     if (!this.follow(run, task, tolerance, into)) return false;
-    if (this.filled > 0) this.sums.add(this.filled);
     const endWeight = this.takeEndSignal(run, into.noise);
     projectRun(this.sums, this.endRow, endWeight, this.layout, this.study, run, ratio, into);
     const start = run.signal[0] ?? 0;
@@ -88,131 +87,62 @@ export class TracePass {
         this.takeRest(run, point, time.length, course.coefficients);
         break;
       }
-      const until = course.until >= end ? time.length : firstAfter(time, point, into.timeZero + course.until / k);
+      const until =
+        course.until >= end ? time.length : firstAfter(time, point, into.timeZero + course.until / k);
       this.takePiece(run, point, until, into.timeZero);
       point = until;
     }
     into.firstStep = course.firstStep;
+    into.lastExtent = course.extent;
     return true;
   }
 
   private takePiece(run: PreparedRun, from: number, until: number, timeZero: number): void {
-    let point = from;
-    while (point < until) {
-      const rows = Math.min(until - point, BLOCK_POINTS - this.filled);
-      this.evaluate(run, point, rows, timeZero);
-      point += rows;
-      this.advance(rows);
-    }
-  }
-
-  private advance(rows: number): void {
-    this.filled += rows;
-    if (this.filled === BLOCK_POINTS) {
-      this.sums.add(BLOCK_POINTS);
-      this.filled = 0;
-    }
-  }
-
-  private evaluate(run: PreparedRun, from: number, rows: number, timeZero: number): void {
-    const { course, sums, place, slope, filled, factor, layout } = this;
-    const c = course.coefficients;
-    const perLength = this.rateConstant / course.length;
-    const origin = timeZero * perLength + course.from / course.length;
-    const { time, signal } = run;
-    const reference = signal[0] ?? 0;
-    const residual = sums.columns[0] ?? place;
-    const byLogRate = sums.columns[1] ?? place;
-    const c0 = (c[0] ?? 0) * factor;
-    const c1 = (c[1] ?? 0) * factor;
-    const c2 = (c[2] ?? 0) * factor;
-    const c3 = (c[3] ?? 0) * factor;
-    const c4 = (c[4] ?? 0) * factor;
-    const inverse = 1 / course.length;
-    for (let i = 0; i < rows; i++) {
-      const t = time[from + i] ?? 0;
-      const u = t * perLength - origin;
-      place[i] = u;
-      residual[filled + i] =
-        (signal[from + i] ?? 0) - reference - (c0 + u * (c1 + u * (c2 + u * (c3 + u * c4))));
-      const f = (c1 + u * (2 * c2 + u * (3 * c3 + u * 4 * c4))) * inverse;
-      slope[i] = f;
-      byLogRate[filled + i] = f * this.rateConstant * (t - timeZero);
-    }
-    for (let j = 0; j < layout.lawParameters; j++) this.evaluateSensitivity(j, rows);
-    if (layout.scaleColumn >= 0) this.evaluateScale(rows);
-    if (layout.timeColumn >= 0) {
-      const byTime = sums.columns[layout.timeColumn] ?? place;
-      for (let i = 0; i < rows; i++) byTime[filled + i] = -this.rateConstant * (slope[i] ?? 0);
-    }
-  }
-
-  private evaluateSensitivity(parameter: number, rows: number): void {
-    const { place, slope, filled } = this;
-    const c = this.course.coefficients;
-    const at = (1 + parameter) * DENSE_COEFFICIENTS;
-    const column = this.sums.columns[2 + parameter] ?? place;
+    if (until === from) return;
+    const { course, sums, layout, model, slope, rateConstant, factor } = this;
+    const { coefficients, length } = course;
+    const { polynomials } = sums;
+    slopePolynomial(coefficients, factor / length, slope);
+    timesTime(slope, course.from + 0.5 * length, length, polynomials, DENSE_COEFFICIENTS);
     const integral = this.study.law.sensitivity === "integral";
-    const factor = integral ? 1 : this.factor;
-    const c0 = (c[at] ?? 0) * factor;
-    const c1 = (c[at + 1] ?? 0) * factor;
-    const c2 = (c[at + 2] ?? 0) * factor;
-    const c3 = (c[at + 3] ?? 0) * factor;
-    const c4 = (c[at + 4] ?? 0) * factor;
-    if (integral) {
-      for (let i = 0; i < rows; i++) {
-        const u = place[i] ?? 0;
-        column[filled + i] = (slope[i] ?? 0) * (c0 + u * (c1 + u * (c2 + u * (c3 + u * c4))));
-      }
-    } else {
-      for (let i = 0; i < rows; i++) {
-        const u = place[i] ?? 0;
-        column[filled + i] = c0 + u * (c1 + u * (c2 + u * (c3 + u * c4)));
-      }
+    for (let j = 0; j < layout.lawParameters; j++) {
+      const source = (1 + j) * DENSE_COEFFICIENTS;
+      const target = (2 + j) * DENSE_COEFFICIENTS;
+      if (integral) timesIntegral(slope, coefficients, source, polynomials, target);
+      else scaled(coefficients, source, factor, polynomials, target);
     }
-  }
-
-  private evaluateScale(rows: number): void {
-    const { place, filled, statedFactor } = this;
-    const c = this.course.coefficients;
-    const column = this.sums.columns[this.layout.scaleColumn] ?? place;
-    const c0 = (c[0] ?? 0) * statedFactor;
-    const c1 = (c[1] ?? 0) * statedFactor;
-    const c2 = (c[2] ?? 0) * statedFactor;
-    const c3 = (c[3] ?? 0) * statedFactor;
-    const c4 = (c[4] ?? 0) * statedFactor;
-    for (let i = 0; i < rows; i++) {
-      const u = place[i] ?? 0;
-      column[filled + i] = c0 + u * (c1 + u * (c2 + u * (c3 + u * c4)));
-    }
+    if (layout.scaleColumn >= 0)
+      scaled(coefficients, 0, this.statedFactor, polynomials, layout.scaleColumn * DENSE_COEFFICIENTS);
+    if (layout.timeColumn >= 0)
+      scaled(slope, 0, -rateConstant, polynomials, layout.timeColumn * DENSE_COEFFICIENTS);
+    scaled(coefficients, 0, factor, model, 0);
+    model[0] = (model[0] ?? 0) + (run.signal[0] ?? 0);
+    const rate = rateConstant / length;
+    this.takePoints(run, from, until, rate, timeZero * rate + course.from / length + 0.5);
   }
 
   /** Points where nothing moves: before mixing (`coefficients` null) or after the course has come to rest. */
   private takeRest(run: PreparedRun, from: number, until: number, coefficients: Float64Array | null): void {
-    const { sums, layout } = this;
+    const { sums, layout, model } = this;
+    const { polynomials } = sums;
     const extent = coefficients?.[0] ?? 0;
-    const moves = coefficients !== null && this.study.law.sensitivity === "variation";
-    const reference = (run.signal[0] ?? 0) + this.factor * extent;
-    let point = from;
-    while (point < until) {
-      const { filled } = this;
-      const rows = Math.min(until - point, BLOCK_POINTS - filled);
-      for (let a = 1; a < layout.width; a++) sums.columns[a]?.fill(0, filled, filled + rows);
-      const residual = sums.columns[0] ?? this.place;
-      for (let i = 0; i < rows; i++) residual[filled + i] = (run.signal[point + i] ?? 0) - reference;
-      if (moves) {
-        for (let j = 0; j < layout.lawParameters; j++)
-          sums.columns[2 + j]?.fill(
-            this.factor * (coefficients[(1 + j) * DENSE_COEFFICIENTS] ?? 0),
-            filled,
-            filled + rows,
-          );
-      }
-      if (layout.scaleColumn >= 0)
-        sums.columns[layout.scaleColumn]?.fill(this.statedFactor * extent, filled, filled + rows);
-      point += rows;
-      this.advance(rows);
+    polynomials.fill(0);
+    if (coefficients !== null && this.study.law.sensitivity === "variation") {
+      for (let j = 0; j < layout.lawParameters; j++)
+        polynomials[(2 + j) * DENSE_COEFFICIENTS] =
+          this.factor * (coefficients[(1 + j) * DENSE_COEFFICIENTS] ?? 0);
     }
+    if (layout.scaleColumn >= 0)
+      polynomials[layout.scaleColumn * DENSE_COEFFICIENTS] = this.statedFactor * extent;
+    model.fill(0);
+    model[0] = (run.signal[0] ?? 0) + this.factor * extent;
+    this.takePoints(run, from, until, 0, 0);
+  }
+
+  private takePoints(run: PreparedRun, from: number, until: number, rate: number, origin: number): void {
+    const { moments, sums, model } = this;
+    moments.take(run.time, run.signal, from, until, rate, origin, model, sums.count > 0);
+    sums.add(moments);
   }
 
   /** Writes the row of an end reading and returns its weight in readings; 0 where there is none that could be used. */

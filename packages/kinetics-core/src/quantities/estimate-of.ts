@@ -20,8 +20,22 @@ export function estimateOf(
     !(degreesOfFreedom > 0)
   )
     return { estimate, standardError: null, interval: null, level };
-  const halfWidth = standardError === 0 ? 0 : standardError * studentTFactor(level, degreesOfFreedom);
+  const halfWidth = standardError === 0 ? 0 : standardError * factorOf(level, degreesOfFreedom);
   return { estimate, standardError, interval: [estimate - halfWidth, estimate + halfWidth], level };
+}
+
+let lastLevel = Number.NaN;
+let lastFreedom = Number.NaN;
+let lastFactor = Number.NaN;
+
+/** Estimates come in rows with one level and one freedom; a quantile costs more than all the rest of a row. */
+function factorOf(level: number, degreesOfFreedom: number): number {
+  if (level !== lastLevel || degreesOfFreedom !== lastFreedom) {
+    lastFactor = studentTFactor(level, degreesOfFreedom);
+    lastLevel = level;
+    lastFreedom = degreesOfFreedom;
+  }
+  return lastFactor;
 }
 
 /** What is said where the data determine nothing. */

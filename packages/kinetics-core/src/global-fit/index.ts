@@ -1,0 +1,15 @@
+export type { StudySpecies } from "./course-law";
+export { fitGlobal } from "./fit-global";
+export type {
+  FittedRun,
+  GlobalFit,
+  GlobalFitFailure,
+  GlobalFitFailureStatus,
+  GlobalFitInput,
+  GlobalFitLaw,
+  GlobalFitOptions,
+  GlobalFitResult,
+  GlobalFitRun,
+  PooledEstimates,
+  UndeterminedCombination,
+} from "./global-fit";

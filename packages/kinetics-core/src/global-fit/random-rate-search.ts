@@ -1,0 +1,162 @@
+import {
+  type InferenceFailure,
+  type PriorInformation,
+  type RandomRateInference,
+  type RunInformation,
+  randomRateInference,
+} from "kinetics-core/inference";
+import { LARGEST_LOG_STEP, LARGEST_OWN_STEP, MOST_LINEARISATIONS, OUTER_SETTLED } from "./constants";
+import { scalePlace } from "./prepared-study";
+import { updateNuisances } from "./project-run";
+import type { RunLinearisation } from "./run-linearisation";
+import type { StudyPass } from "./study-pass";
+
+/**
+ * The fit with run-to-run scatter in ln k: ln k_j = ln k + b_j, b_j ~ N(0, τ²). The courses are not linear in b_j, and
+ * a few per cent of scatter are many standard errors of a run of a thousand points, so the model is linearised where
+ * each run stands (Lindstrom and Bates 1990, Biometrics 46, 673):
+ *
+ *   1. a pass at θ with each run at its own ln k + b_j gives r, J;
+ *   2. r̃ = r + J e b_j is the residual that the linear model has at b_j = 0: g̃ = g + G e b_j,
+ *      r̃ᵀr̃ = rᵀr + 2 b_j eᵀg + b_j² eᵀG e, with which `randomRateInference` gives the step in θ, τ² and the new b_j;
+ *   3. until no parameter moves by more than a hundredth of its standard error.
+ *
+ * The loop is Gauss and Newton's: its error after a step is of the second order in b_j's own error, so two or three
+ * passes settle it. A fixed point is the least of the penalised sum of squares at its own τ², whatever the way there.
+ */
+export interface RandomRateSettings {
+  readonly tolerance: number;
+  /** r of `randomRateInference`. */
+  readonly undetermined: number;
+  readonly level: number;
+  readonly shouldStop: () => boolean;
+}
+
+export type RandomRateOutcome =
+  | {
+      readonly status: "linearised";
+      readonly settled: boolean;
+      readonly inference: RandomRateInference;
+      readonly information: readonly RunInformation[];
+      readonly priors: readonly PriorInformation[];
+      /** θ of the last linearisation, from which `inference.step` has been taken. */
+      readonly linearisedAt: Float64Array;
+      readonly linearisations: number;
+    }
+  | { readonly status: "failed"; readonly inference: InferenceFailure }
+  | { readonly status: "no-course" }
+  | { readonly status: "stopped" };
+
+/** `theta` comes from the pooled fit and is left at the answer; so are the runs' deviations in `pass`. */
+export function randomRateSearch(
+  pass: StudyPass,
+  theta: Float64Array,
+  bounds: readonly (readonly [number, number])[],
+  logRate: Float64Array,
+  settings: RandomRateSettings,
+): RandomRateOutcome {
+  const linearisedAt = theta.slice();
+  for (let linearisations = 1; ; linearisations++) {
+    if (settings.shouldStop()) return { status: "stopped" };
+    if (!pass.at(theta, settings.tolerance)) return { status: "no-course" };
+    linearisedAt.set(theta);
+    const information = pass.runs.map((run, j) => informationOf(run, pass.study.runs[j]?.label ?? ""));
+    const priors = scalePrior(pass, theta);
+    const inference = randomRateInference(information, priors, {
+      undetermined: settings.undetermined,
+      level: settings.level,
+    });
+    if (inference.status !== "determined") return { status: "failed", inference };
+    const part = partOfStep(inference.step, logRate);
+    const settled = part === 1 && isSettled(inference);
+    take(pass, theta, bounds, inference, part);
+    if (settled || linearisations === MOST_LINEARISATIONS)
+      return {
+        status: "linearised",
+        settled,
+        inference,
+        information,
+        priors,
+        linearisedAt,
+        linearisations,
+      };
+  }
+}
+
+/** A run as `kinetics-core/inference` reads it: about the shared ln k, though linearised at its own. */
+export function informationOf(run: RunLinearisation, label: string): RunInformation {
+  const { gram, gradient, deviation, points, residualSquares } = run;
+  const p = gradient.length;
+  const shifted = gradient.slice();
+  for (let i = 0; i < p; i++) shifted[i] = (gradient[i] ?? 0) + deviation * (gram[i * p] ?? 0);
+  return {
+    label,
+    gram: gram.slice(),
+    gradient: shifted,
+    residualSquares: Math.max(
+      0,
+      residualSquares + 2 * deviation * (gradient[0] ?? 0) + deviation * deviation * (gram[0] ?? 0),
+    ),
+    points,
+    degreesOfFreedom: points - 1,
+    autocorrelation: autocorrelation(run),
+  };
+}
+
+/** Coefficients that a run spends on its own: offset and ln k. */
+const OWN_COEFFICIENTS = 2;
+
+/** Bias-corrected ρ of the run's residuals, by the rule of the initial rates. */
+export function autocorrelation({ lagOne, points }: RunLinearisation): number {
+  const spare = points - OWN_COEFFICIENTS - 2;
+  if (spare <= 0) return 0;
+  return Math.min(0.97, Math.max(0, (points * lagOne + OWN_COEFFICIENTS) / spare));
+}
+
+export function scalePrior(pass: StudyPass, theta: Float64Array): readonly PriorInformation[] {
+  const place = scalePlace(pass.study);
+  if (place < 0) return [];
+  return [
+    {
+      parameter: place,
+      deviation: 1 - (theta[place] ?? 1),
+      standardUncertainty: Math.sqrt(pass.study.scaleVariance),
+    },
+  ];
+}
+
+/** The part of a step that keeps the logarithm of the rate within its cap. */
+function partOfStep(step: Float64Array, logRate: Float64Array): number {
+  let inLogRate = 0;
+  for (let i = 0; i < step.length; i++) inLogRate += (logRate[i] ?? 0) * (step[i] ?? 0);
+  return Math.min(1, LARGEST_LOG_STEP / Math.abs(inLogRate));
+}
+
+function isSettled({ step, covariance }: RandomRateInference): boolean {
+  for (let i = 0; i < step.length; i++)
+    if (Math.abs(step[i] ?? 0) > OUTER_SETTLED * Math.sqrt(covariance[i]?.[i] ?? 0)) return false;
+  return true;
+}
+
+function take(
+  pass: StudyPass,
+  theta: Float64Array,
+  bounds: readonly (readonly [number, number])[],
+  inference: RandomRateInference,
+  part: number,
+): void {
+  const step = new Float64Array(theta.length);
+  for (let i = 0; i < theta.length; i++) {
+    const [low, high] = bounds[i] ?? [0, 0];
+    const from = theta[i] ?? 0;
+    theta[i] = Math.min(high, Math.max(low, from + part * (inference.step[i] ?? 0)));
+    step[i] = (theta[i] ?? 0) - from;
+  }
+  pass.runs.forEach((run, j) => {
+    const predicted = (inference.runs[j]?.logRateConstant.estimate ?? 0) - (inference.step[0] ?? 0);
+    const change = Math.max(-LARGEST_OWN_STEP, Math.min(LARGEST_OWN_STEP, predicted - run.deviation));
+    run.deviation += change;
+    run.noise = inference.noiseVariances[j] ?? run.noise;
+    if (run.eliminated.length > 0) updateNuisances(pass.study, run, step, change);
+  });
+}
