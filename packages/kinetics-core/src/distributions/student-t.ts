@@ -36,8 +36,14 @@ export function studentTQuantile(p: number, degreesOfFreedom: number): number {
 
 /** Half-width of a two-sided interval in standard errors: t with P(|T| ≤ t) = level. */
 export function studentTFactor(level: number, degreesOfFreedom: number): number {
-  return studentTQuantile(0.5 + level / 2, degreesOfFreedom);
+  if (level !== last.level || degreesOfFreedom !== last.degreesOfFreedom) {
+    last = { level, degreesOfFreedom, factor: studentTQuantile(0.5 + level / 2, degreesOfFreedom) };
+  }
+  return last.factor;
 }
+
+/** A table asks for the same factor row after row, and its search costs more than the row: the last one is kept. */
+let last = { level: Number.NaN, degreesOfFreedom: Number.NaN, factor: Number.NaN };
 
 function studentTails(t: number, degreesOfFreedom: number): Tails {
   assertDegreesOfFreedom(degreesOfFreedom, "Student's t");
