@@ -1,6 +1,9 @@
 /** How much a study and a group may hold, each with the sentence that says so and the way out. */
 export const RUNS_PER_STUDY = 2_000;
 export const SPECIES_PER_STUDY = 24;
+export const STOCKS_PER_STUDY = 60;
+export const STANDARDS_PER_STUDY = 120;
+export const SCANS_PER_STUDY = 24;
 export const POINTS_PER_STUDY = 5_000_000;
 /** Raw files and traces of all studies of a group together. */
 export const BYTES_PER_GROUP = 5 * 1024 ** 3;
@@ -24,6 +27,12 @@ export const limitSentences = {
     `A study keeps at most ${grouped(RUNS_PER_STUDY)} files and would have ${grouped(got)}. Put the rest into a second study.`,
   species: (got: number) =>
     `A study has at most ${SPECIES_PER_STUDY} species and would have ${got}. Leave out those that neither react nor count for the ionic strength.`,
+  stocks: (got: number) =>
+    `A study has at most ${STOCKS_PER_STUDY} stocks and would have ${got}. Put the rest into a second study.`,
+  standards: (got: number) =>
+    `A study has at most ${STANDARDS_PER_STUDY} standards and would have ${got}. Enter replicates as readings of one standard.`,
+  scans: (got: number) =>
+    `A study has at most ${SCANS_PER_STUDY} scans and would have ${got}. Remove one that is no longer needed.`,
   points: (got: number) =>
     `A study holds at most ${grouped(POINTS_PER_STUDY)} points and would have ${grouped(got)}. Import every second or tenth reading, or put the rest into a second study.`,
   group: (got: number) =>

@@ -1,4 +1,5 @@
 import { SHEET_VERSION, type Sheet, type SheetRun } from "@/db/sheet/sheet.schema";
+import { NO_PREPARATION, UNSAID_CONDITIONS, UNSAID_RUN, UNSAID_SIGNAL } from "@/db/sheet/unsaid";
 
 /** Small sheets for tests: A + B → P followed by P's absorbance, invented recipes, no trace unless given. */
 
@@ -32,14 +33,17 @@ export function exampleSheet(change: Partial<Sheet> = {}): Sheet {
       wavelengthNanometre: null,
       solvent: "water",
       electrolyte: "",
+      ...UNSAID_CONDITIONS,
     },
     signal: {
       kind: "calibrated",
       quantity: "absorbance",
       unit: "",
       perMolar: { value: 18_000, standardUncertainty: 180 },
+      ...UNSAID_SIGNAL,
     },
     orders: {},
+    ...NO_PREPARATION,
     runs: [],
     uploads: [],
     ...change,
@@ -65,6 +69,7 @@ export function exampleRun(
     trace: null,
     enteredRate: null,
     timeZeroSeconds: 0,
+    ...UNSAID_RUN,
     window: null,
     setAside: null,
     remark: "",

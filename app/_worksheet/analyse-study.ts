@@ -155,6 +155,8 @@ function whatCounts(sheet: Sheet): unknown {
     conditions: sheet.conditions,
     signal: sheet.signal,
     orders: sheet.orders,
+    stocks: sheet.stocks,
+    mixing: sheet.mixing,
     runs: presentRuns(sheet).map(({ remark, changedIn, removedIn, trace, ...run }) => ({
       ...run,
       trace: trace?.sha256 ?? null,

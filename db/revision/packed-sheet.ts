@@ -1,6 +1,7 @@
 import { deflateSync, inflateSync } from "node:zlib";
 import { canonicalJson, sha256Of } from "../canonical-json";
 import { type Sheet, sheet as sheetSchema } from "../sheet/sheet.schema";
+import { upgradeSheet } from "../sheet/upgrade-sheet";
 
 /**
  * A sheet as a revision keeps it: canonical JSON, deflated, with the SHA-256 of the JSON. Synchronous on purpose:
@@ -13,5 +14,5 @@ export function packSheet(sheet: Sheet): { bytes: Uint8Array; sheetHash: string 
 
 export function unpackSheet(bytes: Uint8Array): { sheet: Sheet; sheetHash: string } {
   const json = inflateSync(bytes).toString("utf8");
-  return { sheet: sheetSchema.parse(JSON.parse(json)), sheetHash: sha256Of(json) };
+  return { sheet: sheetSchema.parse(upgradeSheet(JSON.parse(json))), sheetHash: sha256Of(json) };
 }

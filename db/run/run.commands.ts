@@ -2,6 +2,7 @@ import type { Kysely } from "kysely";
 import type { Database } from "../database";
 import type { Actor } from "../member/actor";
 import type { Sheet, SheetRun } from "../sheet/sheet.schema";
+import { UNSAID_RUN } from "../sheet/unsaid";
 import {
   type Apply,
   type ChangeNote,
@@ -51,6 +52,7 @@ export function withRuns(added: readonly NewRun[]): (sheet: Sheet) => Sheet {
         enteredRate: null,
         timeZeroSeconds: 0,
         remark: "",
+        ...UNSAID_RUN,
         ...run,
         position: next + index,
         window: null,

@@ -16,6 +16,14 @@ export const runRow = z.object({
   entered_rate_molar_per_second: z.number().nullable(),
   entered_rate_standard_error: z.number().nullable(),
   time_zero_seconds: z.number(),
+  mark_microlitre: z.number().nullable(),
+  dead_time_seconds: z.number(),
+  trim_from_seconds: z.number().nullable(),
+  trim_to_seconds: z.number().nullable(),
+  /** JSON array of places in the trace. */
+  spikes: z.string(),
+  end_signal: z.number().nullable(),
+  end_signal_uncertainty: z.number().nullable(),
   window_from_seconds: z.number().nullable(),
   window_to_seconds: z.number().nullable(),
   set_aside_reason: z.string().nullable(),
@@ -37,3 +45,12 @@ export const runConcentrationRow = z.object({
 });
 
 export type RunConcentrationTable = z.infer<typeof runConcentrationRow>;
+
+export const runVolumeRow = z.object({
+  study_id: z.string(),
+  run_id: z.string(),
+  stock_id: z.string(),
+  microlitre: z.number(),
+});
+
+export type RunVolumeTable = z.infer<typeof runVolumeRow>;

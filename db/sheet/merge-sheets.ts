@@ -1,5 +1,14 @@
 import type { z } from "zod";
-import { type Sheet, sheetRun, sheet as sheetSchema, sheetSpecies, sheetUpload } from "./sheet.schema";
+import {
+  type Sheet,
+  sheetRun,
+  sheetScan,
+  sheet as sheetSchema,
+  sheetSpecies,
+  sheetStandard,
+  sheetStock,
+  sheetUpload,
+} from "./sheet.schema";
 import { inOrder } from "./sheet-rows";
 
 /**
@@ -21,6 +30,13 @@ export function mergeSheets(current: Sheet, wanted: Sheet, touched: ReadonlySet<
     signal: shape.signal.parse((touched.has("sheet/signal") ? wanted : current).signal),
     orders: shape.orders.parse(mergedFields("orders", current.orders, wanted.orders, touched)),
     species: mergedRows("species", sheetSpecies, current.species, wanted.species, touched),
+    mixing: shape.mixing.parse(mergedFields("mixing", current.mixing, wanted.mixing, touched)),
+    calibration: shape.calibration.parse(
+      mergedFields("calibration", current.calibration, wanted.calibration, touched),
+    ),
+    stocks: mergedRows("stocks", sheetStock, current.stocks, wanted.stocks, touched),
+    standards: mergedRows("standards", sheetStandard, current.standards, wanted.standards, touched),
+    scans: mergedRows("scans", sheetScan, current.scans, wanted.scans, touched),
     runs: mergedRows("runs", sheetRun, current.runs, wanted.runs, touched),
     uploads: mergedRows("uploads", sheetUpload, current.uploads, wanted.uploads, touched),
   });

@@ -1,5 +1,7 @@
 import type { Handle } from "../database";
-import type { RunConcentrationTable } from "../run/run.table";
+import { scanFromColumns } from "../scan/scan.columns";
+import { standardFromColumns } from "../standard/standard.columns";
+import { stockFromColumns } from "../stock/stock.columns";
 import { runFromColumns, speciesFromColumns, studyFromColumns, uploadFromColumns } from "./sheet.columns";
 import { SHEET_VERSION, type Sheet, sheet as sheetSchema } from "./sheet.schema";
 import { inOrder } from "./sheet-rows";
@@ -30,30 +32,57 @@ export async function readSheet(db: Handle, studyId: string): Promise<Sheet | un
     .selectAll()
     .where("study_id", "=", studyId)
     .execute();
+  const volumes = await db.selectFrom("run_volume").selectAll().where("study_id", "=", studyId).execute();
+  const stocks = await db
+    .selectFrom("stock")
+    .selectAll()
+    .where("study_id", "=", studyId)
+    .where("removed_in", "is", null)
+    .execute();
+  const contents = await db.selectFrom("stock_content").selectAll().where("study_id", "=", studyId).execute();
+  const standards = await db
+    .selectFrom("standard")
+    .selectAll()
+    .where("study_id", "=", studyId)
+    .where("removed_in", "is", null)
+    .execute();
+  const scans = await db
+    .selectFrom("scan")
+    .selectAll()
+    .where("study_id", "=", studyId)
+    .where("removed_in", "is", null)
+    .execute();
   const uploads = await db
     .selectFrom("upload")
     .selectAll()
     .where("study_id", "=", studyId)
     .where("removed_in", "is", null)
     .execute();
-  const byRun = groupByRun(concentrations);
+  const concentrationsOf = groupedBy(concentrations, (row) => row.run_id);
+  const volumesOf = groupedBy(volumes, (row) => row.run_id);
+  const contentsOf = groupedBy(contents, (row) => row.stock_id);
   return inOrder(
     sheetSchema.parse({
       version: SHEET_VERSION,
       ...studyFromColumns(study),
       species: species.map(speciesFromColumns),
       orders: Object.fromEntries(orders.map((order) => [order.species_id, order.held_at])),
-      runs: runs.map((run) => runFromColumns(run, byRun.get(run.id) ?? [])),
+      stocks: stocks.map((stock) => stockFromColumns(stock, contentsOf.get(stock.id) ?? [])),
+      standards: standards.map(standardFromColumns),
+      scans: scans.map(scanFromColumns),
+      runs: runs.map((run) =>
+        runFromColumns(run, concentrationsOf.get(run.id) ?? [], volumesOf.get(run.id) ?? []),
+      ),
       uploads: uploads.map(uploadFromColumns),
     }),
   );
 }
 
-function groupByRun(rows: readonly RunConcentrationTable[]): Map<string, RunConcentrationTable[]> {
-  const groups = new Map<string, RunConcentrationTable[]>();
+function groupedBy<Row>(rows: readonly Row[], keyOf: (row: Row) => string): Map<string, Row[]> {
+  const groups = new Map<string, Row[]>();
   for (const row of rows) {
-    const group = groups.get(row.run_id);
-    if (group === undefined) groups.set(row.run_id, [row]);
+    const group = groups.get(keyOf(row));
+    if (group === undefined) groups.set(keyOf(row), [row]);
     else group.push(row);
   }
   return groups;

@@ -12,6 +12,17 @@ const fieldWords: Readonly<Record<string, string>> = {
   "conditions/wavelengthNanometre": "the wavelength",
   "conditions/solvent": "the solvent",
   "conditions/electrolyte": "the inert electrolyte",
+  "conditions/activationEnergy": "the activation energy",
+  "conditions/referenceIonicStrengthMolar": "the ionic strength that k is referred to",
+  "conditions/sampleIntervalSeconds": "the time between readings",
+  "mixing/volumeUnit": "the unit of volume",
+  "mixing/markMicrolitre": "the mark of the mixtures",
+  "mixing/deliveries": "the uncertainty of deliveries",
+  "calibration/speciesId": "the species of the standards",
+  "calibration/intercept": "the intercept of the calibration line",
+  "calibration/weighting": "the weights of the standards",
+  "calibration/rangeMolar": "the linear range",
+  "calibration/stockRelative": "the uncertainty of the standard stock",
   "sheet/followedSpeciesId": "the followed species",
   "sheet/signal": "the signal",
 };
@@ -30,6 +41,13 @@ function rowInWords(key: string, sheets: readonly Sheet[]): string {
   const section = key.slice(0, slash);
   const id = key.slice(slash + 1);
   if (section === "runs") return find(sheets, (sheet) => sheet.runs, id)?.label ?? "a run";
+  if (section === "stocks") {
+    const stock = find(sheets, (sheet) => sheet.stocks, id);
+    return stock === undefined ? "a stock" : `stock ${stock.symbol || stock.name}`;
+  }
+  if (section === "standards")
+    return `standard ${find(sheets, (sheet) => sheet.standards, id)?.label ?? ""}`.trim();
+  if (section === "scans") return `scan ${find(sheets, (sheet) => sheet.scans, id)?.label ?? ""}`.trim();
   if (section === "uploads") return find(sheets, (sheet) => sheet.uploads, id)?.fileName ?? "a file";
   const species = find(sheets, (sheet) => sheet.species, id);
   const name = species?.symbol || species?.name || "a species";

@@ -16,6 +16,11 @@ export function rowsOf(sheet: Sheet): SheetRows {
   rows.set("sheet/signal", sheet.signal);
   for (const [id, held] of Object.entries(sheet.orders)) rows.set(`orders/${id}`, held);
   for (const row of sheet.species) rows.set(`species/${row.id}`, row);
+  for (const [field, value] of Object.entries(sheet.mixing)) rows.set(`mixing/${field}`, value);
+  for (const [field, value] of Object.entries(sheet.calibration)) rows.set(`calibration/${field}`, value);
+  for (const row of sheet.stocks) rows.set(`stocks/${row.id}`, row);
+  for (const row of sheet.standards) rows.set(`standards/${row.id}`, row);
+  for (const row of sheet.scans) rows.set(`scans/${row.id}`, row);
   for (const row of sheet.runs) rows.set(`runs/${row.id}`, row);
   for (const row of sheet.uploads) rows.set(`uploads/${row.id}`, row);
   return rows;
@@ -36,19 +41,27 @@ export function sheetOf(version: Sheet["version"], rows: SheetRows): Sheet {
       ...Object.fromEntries(part("sheet")),
       orders: Object.fromEntries(part("orders")),
       species: list("species"),
+      mixing: Object.fromEntries(part("mixing")),
+      calibration: Object.fromEntries(part("calibration")),
+      stocks: list("stocks"),
+      standards: list("standards"),
+      scans: list("scans"),
       runs: list("runs"),
       uploads: list("uploads"),
     }),
   );
 }
 
-/** Species and runs by position, uploads by time, ties by id: one order, so that equal sheets have equal hashes. */
+/** Rows by position, uploads by time, ties by id: one order, so that equal sheets have equal hashes. */
 export function inOrder(sheet: Sheet): Sheet {
   const byPosition = (a: { position: number; id: string }, b: { position: number; id: string }) =>
     a.position - b.position || byText(a.id, b.id);
   return {
     ...sheet,
     species: [...sheet.species].sort(byPosition),
+    stocks: [...sheet.stocks].sort(byPosition),
+    standards: [...sheet.standards].sort(byPosition),
+    scans: [...sheet.scans].sort(byPosition),
     runs: [...sheet.runs].sort(byPosition),
     uploads: [...sheet.uploads].sort((a, b) => byText(a.at, b.at) || byText(a.id, b.id)),
   };

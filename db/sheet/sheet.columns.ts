@@ -1,4 +1,4 @@
-import type { RunConcentrationTable, RunTable } from "../run/run.table";
+import type { RunConcentrationTable, RunTable, RunVolumeTable } from "../run/run.table";
 import type { SpeciesTable } from "../species/species.table";
 import type { StudyTable } from "../study/study.table";
 import type { UploadTable } from "../upload/upload.table";
@@ -12,7 +12,7 @@ type StudySheetColumns = Omit<
 >;
 
 export function studyColumns(sheet: Sheet): StudySheetColumns {
-  const { study, conditions, signal } = sheet;
+  const { study, conditions, signal, mixing, calibration } = sheet;
   const calibrated = signal?.kind === "calibrated" ? signal : null;
   return {
     name: study.name,
@@ -30,18 +30,33 @@ export function studyColumns(sheet: Sheet): StudySheetColumns {
     wavelength_nanometre: conditions.wavelengthNanometre,
     solvent: conditions.solvent,
     electrolyte: conditions.electrolyte,
+    activation_energy: conditions.activationEnergy?.value ?? null,
+    activation_energy_uncertainty: conditions.activationEnergy?.standardUncertainty ?? null,
+    reference_ionic_strength_molar: conditions.referenceIonicStrengthMolar,
+    sample_interval_seconds: conditions.sampleIntervalSeconds,
     signal_kind: signal?.kind ?? null,
     signal_quantity: calibrated?.quantity ?? null,
     signal_unit: signal?.unit ?? null,
     signal_per_molar: calibrated?.perMolar.value ?? null,
     signal_per_molar_uncertainty: calibrated?.perMolar.standardUncertainty ?? null,
+    signal_blank: calibrated?.blank?.value ?? null,
+    signal_blank_uncertainty: calibrated?.blank?.standardUncertainty ?? null,
+    signal_source: calibrated?.source ?? null,
+    mixing_volume_unit: mixing.volumeUnit,
+    mixing_mark_microlitre: mixing.markMicrolitre,
+    mixing_deliveries: JSON.stringify(mixing.deliveries),
+    calibration_species_id: calibration.speciesId,
+    calibration_intercept: calibration.intercept,
+    calibration_weighting: calibration.weighting,
+    calibration_range_low_molar: calibration.rangeMolar?.low ?? null,
+    calibration_range_high_molar: calibration.rangeMolar?.high ?? null,
+    calibration_stock_relative: calibration.stockRelative,
   };
 }
 
 /** The parts of a sheet that stand in the study's own row, unparsed: `readSheet` parses the whole. */
 export function studyFromColumns(row: StudySheetColumns) {
-  const uncertain = (value: number | null, standardUncertainty: number | null) =>
-    value === null ? null : { value, standardUncertainty };
+  const deliveries: unknown = JSON.parse(row.mixing_deliveries);
   return {
     study: {
       name: row.name,
@@ -58,6 +73,24 @@ export function studyFromColumns(row: StudySheetColumns) {
       wavelengthNanometre: row.wavelength_nanometre,
       solvent: row.solvent,
       electrolyte: row.electrolyte,
+      activationEnergy: uncertain(row.activation_energy, row.activation_energy_uncertainty),
+      referenceIonicStrengthMolar: row.reference_ionic_strength_molar,
+      sampleIntervalSeconds: row.sample_interval_seconds,
+    },
+    mixing: {
+      volumeUnit: row.mixing_volume_unit,
+      markMicrolitre: row.mixing_mark_microlitre,
+      deliveries,
+    },
+    calibration: {
+      speciesId: row.calibration_species_id,
+      intercept: row.calibration_intercept,
+      weighting: row.calibration_weighting,
+      rangeMolar:
+        row.calibration_range_low_molar === null
+          ? null
+          : { low: row.calibration_range_low_molar, high: row.calibration_range_high_molar },
+      stockRelative: row.calibration_stock_relative,
     },
     signal:
       row.signal_kind === null
@@ -69,8 +102,15 @@ export function studyFromColumns(row: StudySheetColumns) {
               quantity: row.signal_quantity,
               unit: row.signal_unit,
               perMolar: uncertain(row.signal_per_molar, row.signal_per_molar_uncertainty),
+              blank: uncertain(row.signal_blank, row.signal_blank_uncertainty),
+              source: row.signal_source,
             },
   };
+}
+
+/** A quantity and its uncertainty are two columns, null together. */
+function uncertain(value: number | null, standardUncertainty: number | null) {
+  return value === null ? null : { value, standardUncertainty };
 }
 
 export function speciesColumns(studyId: string, species: SheetSpecies, revision: number): SpeciesTable {
@@ -122,6 +162,13 @@ export function runColumns(studyId: string, run: SheetRun): RunTable {
     entered_rate_molar_per_second: run.enteredRate?.molarPerSecond ?? null,
     entered_rate_standard_error: run.enteredRate?.standardError ?? null,
     time_zero_seconds: run.timeZeroSeconds,
+    mark_microlitre: run.markMicrolitre,
+    dead_time_seconds: run.deadTimeSeconds,
+    trim_from_seconds: run.trim?.fromSeconds ?? null,
+    trim_to_seconds: run.trim?.toSeconds ?? null,
+    spikes: JSON.stringify(run.spikes),
+    end_signal: run.endSignal?.value ?? null,
+    end_signal_uncertainty: run.endSignal?.standardUncertainty ?? null,
     window_from_seconds: run.window?.fromSeconds ?? null,
     window_to_seconds: run.window?.toSeconds ?? null,
     set_aside_reason: run.setAside?.reason ?? null,
@@ -133,7 +180,12 @@ export function runColumns(studyId: string, run: SheetRun): RunTable {
   };
 }
 
-export function runFromColumns(row: RunTable, concentrations: readonly RunConcentrationTable[]) {
+export function runFromColumns(
+  row: RunTable,
+  concentrations: readonly RunConcentrationTable[],
+  volumes: readonly RunVolumeTable[],
+) {
+  const spikes: unknown = JSON.parse(row.spikes);
   return {
     id: row.id,
     label: row.label,
@@ -163,7 +215,16 @@ export function runFromColumns(row: RunTable, concentrations: readonly RunConcen
             molarPerSecond: row.entered_rate_molar_per_second,
             standardError: row.entered_rate_standard_error,
           },
+    volumes: Object.fromEntries(volumes.map((of) => [of.stock_id, of.microlitre])),
+    markMicrolitre: row.mark_microlitre,
     timeZeroSeconds: row.time_zero_seconds,
+    deadTimeSeconds: row.dead_time_seconds,
+    trim:
+      row.trim_from_seconds === null
+        ? null
+        : { fromSeconds: row.trim_from_seconds, toSeconds: row.trim_to_seconds },
+    spikes,
+    endSignal: uncertain(row.end_signal, row.end_signal_uncertainty),
     window:
       row.window_from_seconds === null
         ? null

@@ -1,12 +1,18 @@
 import { z } from "zod";
-import { RUNS_PER_STUDY, SPECIES_PER_STUDY } from "../limits";
+import {
+  RUNS_PER_STUDY,
+  SCANS_PER_STUDY,
+  SPECIES_PER_STUDY,
+  STANDARDS_PER_STUDY,
+  STOCKS_PER_STUDY,
+} from "../limits";
 
 /**
  * The sheet: everything of a study but trace bytes, which it names by SHA-256. One shape with seven uses: the
  * input of the analysis, the revision, the comparison, undo, the frozen link, the sign-off and the data package.
  * Internal units only: mol L⁻¹, s, K. What a person typed in another unit was converted at the door.
  */
-export const SHEET_VERSION = 1;
+export const SHEET_VERSION = 2;
 
 const identifier = z.string().min(1).max(64);
 const sha256 = z.string().regex(/^[0-9a-f]{64}$/);
@@ -36,15 +42,24 @@ export const sheetSpecies = z.object({
   position: z.number().int().nonnegative(),
 });
 
+/** The signal is the followed species' concentration already, in mol L⁻¹ once imported from `unit`. */
+export const concentrationSignal = z.object({ kind: z.literal("concentration"), unit: concentrationUnit });
+
+/** Any signal linear in the followed species: signal = perMolar · c + blank; for absorbance perMolar is ε·l. */
+export const linearSignal = z.object({
+  kind: z.literal("calibrated"),
+  quantity: z.string().min(1).max(60),
+  unit: z.string().max(20),
+  perMolar: uncertain,
+});
+
 export const signalModel = z.discriminatedUnion("kind", [
-  /** The signal is the followed species' concentration already, in mol L⁻¹ once imported from `unit`. */
-  z.object({ kind: z.literal("concentration"), unit: concentrationUnit }),
-  /** Any signal linear in the followed species: signal = perMolar · c + baseline; for absorbance perMolar is ε·l. */
-  z.object({
-    kind: z.literal("calibrated"),
-    quantity: z.string().min(1).max(60),
-    unit: z.string().max(20),
-    perMolar: uncertain,
+  concentrationSignal,
+  linearSignal.extend({
+    /** Signal of the mixture without the followed species; null where nobody measured it. */
+    blank: uncertain.nullable(),
+    /** Where `perMolar` comes from: typed in, or the slope of the standards' line, which then keeps it up to date. */
+    source: z.enum(["typed", "standards"]),
   }),
 ]);
 
@@ -55,6 +70,105 @@ export const conditions = z.object({
   wavelengthNanometre: z.number().positive().nullable(),
   solvent: z.string().max(200),
   electrolyte: z.string().max(120),
+  /** J mol⁻¹: what temperature does to k; null where it is not known and a usual value is assumed. */
+  activationEnergy: uncertain.nullable(),
+  /** k is referred to this ionic strength by the primary salt effect; null leaves it as measured. */
+  referenceIonicStrengthMolar: z.number().positive().nullable(),
+  /** Time between readings, for the bench sheet. */
+  sampleIntervalSeconds: z.number().positive().nullable(),
+});
+
+/**
+ * A bottle that volumes are taken from: solutes in a medium, or the medium alone. A dilution is made from another stock,
+ * whose error it shares; its contents then follow from that stock and are not written here.
+ */
+export const sheetStock = z.object({
+  id: identifier,
+  /** Head of its column on the mixing table, "A"; empty for a medium, which goes by its name. */
+  symbol: z.string().max(12),
+  name: z.string().min(1).max(160),
+  position: z.number().int().nonnegative(),
+  /** By species id, mol L⁻¹. */
+  contents: z.record(
+    identifier,
+    z.object({ value: z.number().positive(), standardUncertainty: z.number().nonnegative() }),
+  ),
+  dilution: z
+    .object({
+      fromStockId: identifier,
+      takenMicrolitre: z.object({
+        value: z.number().positive(),
+        standardUncertainty: z.number().nonnegative(),
+      }),
+      markMicrolitre: z.object({
+        value: z.number().positive(),
+        standardUncertainty: z.number().nonnegative(),
+      }),
+    })
+    .nullable(),
+  lot: z.string().max(60),
+  madeOn: z.string().max(40),
+  howKnown: z.string().max(120),
+});
+
+/** How volumes are dispensed, for all runs of the study. */
+export const mixing = z.object({
+  volumeUnit: z.enum(["uL", "mL"]),
+  /** Volume that a mixture is made up to; null: its volume is the sum of what went in. */
+  markMicrolitre: z.number().positive().nullable(),
+  /** Standard uncertainty of one delivery, by its size: the first entry that is large enough, the last without end. */
+  deliveries: z
+    .array(
+      z.object({
+        upToMicrolitre: z.number().positive().nullable(),
+        absoluteMicrolitre: amount,
+        relative: z.number().min(0).max(1),
+      }),
+    )
+    .max(6),
+});
+
+const setAsideBy = z.object({ reason: z.string().min(1).max(300), memberId: identifier, at: z.string() });
+
+/** A level of the calibration line, with its replicate readings. */
+export const sheetStandard = z.object({
+  id: identifier,
+  label: z.string().min(1).max(40),
+  position: z.number().int().nonnegative(),
+  /** Private part of the uncertainty: what the common stock brings is in the settings. */
+  concentration: z.object({ value: amount, standardUncertainty: amount }),
+  signals: z.array(z.number()).max(40),
+  /** A blank is read with the others and is not in the line. */
+  isBlank: z.boolean(),
+  setAside: setAsideBy.nullable(),
+  remark: z.string().max(300),
+});
+
+export const calibrationSettings = z.object({
+  /** What the standards contain; null until somebody says. */
+  speciesId: identifier.nullable(),
+  intercept: z.enum(["fitted", "none"]),
+  /** Weights: all readings alike, or by the scatter of each level's replicates. */
+  weighting: z.enum(["none", "replicates"]),
+  /** Part of the line that is used, mol L⁻¹; null: all standards that are not set aside. */
+  rangeMolar: z.object({ low: amount, high: amount }).nullable(),
+  /** Relative standard uncertainty of the stock that all standards were made from. */
+  stockRelative: z.number().min(0).max(1),
+});
+
+/** Signal against wavelength; its points are stored like those of a trace, wavelength in nm in place of time. */
+export const sheetScan = z.object({
+  id: identifier,
+  label: z.string().min(1).max(60),
+  position: z.number().int().nonnegative(),
+  speciesId: identifier.nullable(),
+  molar: amount.nullable(),
+  points: z.object({
+    sha256,
+    points: z.number().int().positive(),
+    uploadId: identifier.nullable(),
+    column: z.string().max(120),
+  }),
 });
 
 export const sheetRun = z.object({
@@ -69,6 +183,10 @@ export const sheetRun = z.object({
   temperatureKelvin: z.number().positive().nullable(),
   block: z.string().max(60).nullable(),
   mixture: z.string().max(60).nullable(),
+  /** Volumes by stock id, µL. Where there are any, `concentrations` follow from them (app/_worksheet/mixing). */
+  volumes: z.record(identifier, amount),
+  /** Volume that this run is made up to; null: the study's. */
+  markMicrolitre: z.number().positive().nullable(),
   trace: z
     .object({
       /** Of the stored points (Float64 little-endian time,signal pairs before compression). */
@@ -81,9 +199,17 @@ export const sheetRun = z.object({
   /** A rate typed in by hand, in mol L⁻¹ s⁻¹ of reaction; stands in for a trace. */
   enteredRate: z.object({ molarPerSecond: z.number(), standardError: amount.nullable() }).nullable(),
   timeZeroSeconds: z.number(),
+  /** From mixing to the first reading that counts; earlier readings are drawn and not fitted. */
+  deadTimeSeconds: amount,
+  /** Part of the trace that is fitted, in its own clock; null: all of it. Points outside are kept. */
+  trim: z.object({ fromSeconds: z.number(), toSeconds: z.number() }).nullable(),
+  /** Readings marked as spikes, by their place in the trace from 0, rising: drawn, never fitted, never deleted. */
+  spikes: z.array(z.number().int().nonnegative()).max(500),
+  /** Signal when the reaction is over, measured or worked out; null where nobody knows it. */
+  endSignal: uncertain.nullable(),
   /** Set by hand for this run; null follows the study's rule. In the trace's clock. */
   window: z.object({ fromSeconds: z.number(), toSeconds: z.number() }).nullable(),
-  setAside: z.object({ reason: z.string().min(1).max(300), memberId: identifier, at: z.string() }).nullable(),
+  setAside: setAsideBy.nullable(),
   remark: z.string().max(300),
   /** Revision that last changed this row, and the one that put it into the bin. */
   changedIn: z.number().int().nonnegative(),
@@ -118,6 +244,11 @@ export const sheet = z.object({
   signal: signalModel.nullable(),
   /** Order of each species of the law: null is free, a number is held. A species not listed is free. */
   orders: z.record(identifier, z.number().min(-4).max(6).nullable()),
+  stocks: z.array(sheetStock).max(STOCKS_PER_STUDY),
+  mixing,
+  standards: z.array(sheetStandard).max(STANDARDS_PER_STUDY),
+  calibration: calibrationSettings,
+  scans: z.array(sheetScan).max(SCANS_PER_STUDY),
   runs: z.array(sheetRun).max(RUNS_PER_STUDY),
   uploads: z.array(sheetUpload).max(RUNS_PER_STUDY),
 });
@@ -125,6 +256,11 @@ export const sheet = z.object({
 export type Sheet = z.infer<typeof sheet>;
 export type SheetSpecies = z.infer<typeof sheetSpecies>;
 export type SheetRun = z.infer<typeof sheetRun>;
+export type SheetStock = z.infer<typeof sheetStock>;
+export type Mixing = z.infer<typeof mixing>;
+export type SheetStandard = z.infer<typeof sheetStandard>;
+export type CalibrationSettings = z.infer<typeof calibrationSettings>;
+export type SheetScan = z.infer<typeof sheetScan>;
 export type SheetUpload = z.infer<typeof sheetUpload>;
 export type SignalModel = z.infer<typeof signalModel>;
 export type Conditions = z.infer<typeof conditions>;

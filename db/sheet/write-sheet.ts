@@ -1,10 +1,13 @@
 import type { Transaction } from "kysely";
 import type { Database } from "../database";
+import { scanColumns } from "../scan/scan.columns";
+import { standardColumns } from "../standard/standard.columns";
+import { stockColumns, stockContentColumns } from "../stock/stock.columns";
 import { runColumns, speciesColumns, studyColumns, uploadColumns } from "./sheet.columns";
 import type { Sheet } from "./sheet.schema";
 import { rowsOf, touchedRows } from "./sheet-rows";
 
-/** Rows per statement: SQLite takes 32 766 parameters, a run has 22. */
+/** Rows per statement: SQLite takes 32 766 parameters, a run has 29. */
 const ROWS_PER_STATEMENT = 500;
 
 /**
@@ -26,6 +29,9 @@ export async function writeSheet(
     .execute();
   await writeSpecies(trx, target, sheet, touched);
   await writeOrders(trx, target, sheet, touched);
+  await writeStocks(trx, target, sheet, touched);
+  await writeStandards(trx, target, sheet, touched);
+  await writeScans(trx, target, sheet, touched);
   await writeRuns(trx, studyId, sheet, touched);
   await writeUploads(trx, target, sheet, touched);
 }
@@ -110,6 +116,90 @@ async function writeRuns(
     })),
   );
   await inChunks(concentrations, (chunk) => trx.insertInto("run_concentration").values(chunk).execute());
+  const volumes = rows.flatMap((run) =>
+    Object.entries(run.volumes).map(([stock_id, microlitre]) => ({
+      study_id: studyId,
+      run_id: run.id,
+      stock_id,
+      microlitre,
+    })),
+  );
+  await inChunks(volumes, (chunk) => trx.insertInto("run_volume").values(chunk).execute());
+}
+
+/** A stock, a standard or a scan that leaves the sheet keeps its row, marked, like a species. */
+async function leave(
+  trx: Transaction<Database>,
+  table: "stock" | "standard" | "scan",
+  { studyId, revision }: { studyId: string; revision: number },
+  ids: ReadonlySet<string>,
+) {
+  await inChunks([...ids], (chunk) =>
+    trx
+      .updateTable(table)
+      .set({ changed_in: revision, removed_in: revision })
+      .where("study_id", "=", studyId)
+      .where("id", "in", chunk)
+      .execute(),
+  );
+}
+
+async function writeStocks(
+  trx: Transaction<Database>,
+  target: { studyId: string; revision: number },
+  sheet: Sheet,
+  touched: ReadonlySet<string>,
+) {
+  const ids = touchedIds(touched, "stocks");
+  const rows = sheet.stocks.filter((stock) => ids.has(stock.id));
+  await leave(trx, "stock", target, ids);
+  // Contents go with the row that is replaced (cascade) and come back with it.
+  await inChunks(rows, (chunk) =>
+    trx
+      .replaceInto("stock")
+      .values(chunk.map((stock) => stockColumns(target.studyId, stock, target.revision)))
+      .execute(),
+  );
+  await inChunks(
+    rows.flatMap((stock) => stockContentColumns(target.studyId, stock)),
+    (chunk) => trx.insertInto("stock_content").values(chunk).execute(),
+  );
+}
+
+async function writeStandards(
+  trx: Transaction<Database>,
+  target: { studyId: string; revision: number },
+  sheet: Sheet,
+  touched: ReadonlySet<string>,
+) {
+  const ids = touchedIds(touched, "standards");
+  await leave(trx, "standard", target, ids);
+  await inChunks(
+    sheet.standards.filter((standard) => ids.has(standard.id)),
+    (chunk) =>
+      trx
+        .replaceInto("standard")
+        .values(chunk.map((standard) => standardColumns(target.studyId, standard, target.revision)))
+        .execute(),
+  );
+}
+
+async function writeScans(
+  trx: Transaction<Database>,
+  target: { studyId: string; revision: number },
+  sheet: Sheet,
+  touched: ReadonlySet<string>,
+) {
+  const ids = touchedIds(touched, "scans");
+  await leave(trx, "scan", target, ids);
+  await inChunks(
+    sheet.scans.filter((scan) => ids.has(scan.id)),
+    (chunk) =>
+      trx
+        .replaceInto("scan")
+        .values(chunk.map((scan) => scanColumns(target.studyId, scan, target.revision)))
+        .execute(),
+  );
 }
 
 async function writeUploads(

@@ -7,6 +7,7 @@ import { studyColumns } from "../sheet/sheet.columns";
 import { SHEET_VERSION, type Sheet } from "../sheet/sheet.schema";
 import { sheetProblem } from "../sheet/sheet-problem";
 import { inOrder } from "../sheet/sheet-rows";
+import { NO_PREPARATION, UNSAID_CONDITIONS, UNSAID_SIGNAL } from "../sheet/unsaid";
 import { writeSheet } from "../sheet/write-sheet";
 import type { SetUp } from "./set-up.schema";
 
@@ -28,6 +29,9 @@ export async function createStudy(
     ...setUp,
     study: { ...setUp.study, invented: options.invented },
     orders: {},
+    ...NO_PREPARATION,
+    conditions: { ...UNSAID_CONDITIONS, ...setUp.conditions },
+    signal: setUp.signal?.kind === "calibrated" ? { ...setUp.signal, ...UNSAID_SIGNAL } : setUp.signal,
     runs: [],
     uploads: [],
   };

@@ -30,12 +30,26 @@ export function saveSetUp(
   );
 }
 
-function withSetUp(sheet: Sheet, { study, ...rest }: SetUp): Sheet {
+/** The sheet with the Set-up station as its form has it. */
+export function withSetUp(sheet: Sheet, { study, ...rest }: SetUp): Sheet {
   const species = new Set(rest.species.map((one) => one.id));
   return {
     ...sheet,
     ...rest,
+    conditions: { ...sheet.conditions, ...rest.conditions },
+    signal: withStandards(sheet.signal, rest.signal),
     study: { ...study, invented: sheet.study.invented },
     orders: Object.fromEntries(Object.entries(sheet.orders).filter(([id]) => species.has(id))),
   };
+}
+
+/** What the standards say of the signal stays; a factor that is typed over theirs is typed from then on. */
+function withStandards(before: Sheet["signal"], typed: SetUp["signal"]): Sheet["signal"] {
+  if (typed?.kind !== "calibrated") return typed;
+  const known = before?.kind === "calibrated" ? before : null;
+  const same =
+    known !== null &&
+    known.perMolar.value === typed.perMolar.value &&
+    known.perMolar.standardUncertainty === typed.perMolar.standardUncertainty;
+  return { ...typed, blank: known?.blank ?? null, source: same ? known.source : "typed" };
 }

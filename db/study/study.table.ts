@@ -27,11 +27,28 @@ export const studyRow = z.object({
   wavelength_nanometre: z.number().nullable(),
   solvent: z.string(),
   electrolyte: z.string(),
+  activation_energy: z.number().nullable(),
+  activation_energy_uncertainty: z.number().nullable(),
+  reference_ionic_strength_molar: z.number().nullable(),
+  sample_interval_seconds: z.number().nullable(),
   signal_kind: z.enum(["concentration", "calibrated"]).nullable(),
   signal_quantity: z.string().nullable(),
   signal_unit: z.string().nullable(),
   signal_per_molar: z.number().nullable(),
   signal_per_molar_uncertainty: z.number().nullable(),
+  signal_blank: z.number().nullable(),
+  signal_blank_uncertainty: z.number().nullable(),
+  signal_source: z.string().nullable(),
+  mixing_volume_unit: z.string(),
+  mixing_mark_microlitre: z.number().nullable(),
+  /** JSON array. */
+  mixing_deliveries: z.string(),
+  calibration_species_id: z.string().nullable(),
+  calibration_intercept: z.string(),
+  calibration_weighting: z.string(),
+  calibration_range_low_molar: z.number().nullable(),
+  calibration_range_high_molar: z.number().nullable(),
+  calibration_stock_relative: z.number(),
 });
 
 export type StudyTable = z.infer<typeof studyRow>;

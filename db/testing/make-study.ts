@@ -2,6 +2,7 @@ import type { Kysely } from "kysely";
 import type { Database } from "../database";
 import type { Actor } from "../member/actor";
 import type { SheetRun, SheetSpecies } from "../sheet/sheet.schema";
+import { UNSAID_RUN } from "../sheet/unsaid";
 import { createStudy } from "../study/create-study";
 import type { SetUp } from "../study/set-up.schema";
 
@@ -82,6 +83,7 @@ export function exampleRun(label: string, rest: Partial<SheetRun> = {}): SheetRu
     trace: null,
     enteredRate: { molarPerSecond: 1e-6, standardError: null },
     timeZeroSeconds: 0,
+    ...UNSAID_RUN,
     window: null,
     setAside: null,
     remark: "",

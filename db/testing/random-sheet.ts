@@ -15,6 +15,14 @@ export function randomSheet(seed: number): Sheet {
     Array.from({ length: integer(most) }, (_, index) => make(index));
   const moment = () => new Date(1.7e12 + integer(1e11)).toISOString();
 
+  const setAside = () => ({ reason: `${text(40)}!`, memberId: `m${integer(9)}`, at: moment() });
+  const points = () => ({
+    sha256: hash(),
+    points: 1 + integer(1e6),
+    uploadId: maybe(() => `u${integer(9)}`),
+    column: text(20),
+  });
+
   const species = times(6, (index) => ({
     id: `s${index}`,
     symbol: chance(0.5) ? "" : text(4),
@@ -45,15 +53,74 @@ export function randomSheet(seed: number): Sheet {
       wavelengthNanometre: maybe(positive),
       solvent: text(60),
       electrolyte: text(20),
+      activationEnergy: maybe(() => uncertain(number())),
+      referenceIonicStrengthMolar: maybe(positive),
+      sampleIntervalSeconds: maybe(positive),
     },
     signal: maybe(() =>
       chance(0.5)
         ? { kind: "concentration", unit: any(["mol/L", "mmol/L", "umol/L"] as const) }
-        : { kind: "calibrated", quantity: `${text(20)}q`, unit: text(5), perMolar: uncertain(number()) },
+        : {
+            kind: "calibrated",
+            quantity: `${text(20)}q`,
+            unit: text(5),
+            perMolar: uncertain(number()),
+            blank: maybe(() => uncertain(number())),
+            source: any(["typed", "standards"] as const),
+          },
     ),
     orders: Object.fromEntries(
       species.filter(() => chance(0.5)).map(({ id }) => [id, maybe(() => integer(10) - 4 + 0.5)]),
     ),
+    stocks: times(5, (index) => ({
+      id: `k${index}`,
+      symbol: text(4),
+      name: `${text(30)}k`,
+      position: integer(4),
+      contents: Object.fromEntries(times(3, (of) => [`s${of}`, uncertain(positive())])),
+      dilution: maybe(() => ({
+        fromStockId: `k${integer(9)}`,
+        takenMicrolitre: uncertain(positive()),
+        markMicrolitre: uncertain(positive()),
+      })),
+      lot: text(20),
+      madeOn: text(10),
+      howKnown: text(40),
+    })),
+    mixing: {
+      volumeUnit: any(["uL", "mL"] as const),
+      markMicrolitre: maybe(positive),
+      deliveries: times(3, () => ({
+        upToMicrolitre: maybe(positive),
+        absoluteMicrolitre: positive(),
+        relative: number() ** 2 % 1,
+      })),
+    },
+    standards: times(6, (index) => ({
+      id: `d${index}`,
+      label: `${text(6)}${index}`,
+      position: integer(5),
+      concentration: uncertain(positive()),
+      signals: times(5, number),
+      isBlank: chance(0.2),
+      setAside: maybe(setAside),
+      remark: text(30),
+    })),
+    calibration: {
+      speciesId: maybe(() => `s${integer(9)}`),
+      intercept: any(["fitted", "none"] as const),
+      weighting: any(["none", "replicates"] as const),
+      rangeMolar: maybe(() => ({ low: positive(), high: positive() })),
+      stockRelative: number() ** 2 % 1,
+    },
+    scans: times(3, (index) => ({
+      id: `c${index}`,
+      label: `${text(6)}${index}`,
+      position: integer(3),
+      speciesId: maybe(() => `s${integer(9)}`),
+      molar: maybe(positive),
+      points: points(),
+    })),
     runs: times(12, (index) => ({
       id: `r${index}`,
       label: `${text(6)}${index}`,
@@ -64,16 +131,17 @@ export function randomSheet(seed: number): Sheet {
       temperatureKelvin: maybe(positive),
       block: maybe(() => text(10)),
       mixture: maybe(() => text(10)),
-      trace: maybe(() => ({
-        sha256: hash(),
-        points: 1 + integer(1e6),
-        uploadId: maybe(() => `u${integer(9)}`),
-        column: text(20),
-      })),
+      volumes: Object.fromEntries(times(4, (of) => [`k${of}`, positive()])),
+      markMicrolitre: maybe(positive),
+      trace: maybe(points),
       enteredRate: maybe(() => ({ molarPerSecond: number(), standardError: maybe(positive) })),
       timeZeroSeconds: number(),
+      deadTimeSeconds: positive(),
+      trim: maybe(() => ({ fromSeconds: number(), toSeconds: number() })),
+      spikes: times(5, (of) => of * 7 + integer(7)),
+      endSignal: maybe(() => uncertain(number())),
       window: maybe(() => ({ fromSeconds: number(), toSeconds: number() })),
-      setAside: maybe(() => ({ reason: `${text(40)}!`, memberId: `m${integer(9)}`, at: moment() })),
+      setAside: maybe(setAside),
       remark: text(60),
       changedIn: integer(1000),
       removedIn: maybe(() => 1 + integer(1000)),

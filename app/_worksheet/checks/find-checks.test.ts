@@ -130,6 +130,8 @@ test("a calibration without uncertainty is a note, a missing temperature weakens
         quantity: "absorbance",
         unit: "",
         perMolar: { value: 18_000, standardUncertainty: 0 },
+        blank: null,
+        source: "typed",
       },
     }),
   );

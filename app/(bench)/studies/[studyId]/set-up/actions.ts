@@ -10,7 +10,7 @@ import {
   previewEffect,
 } from "@/app/_server/study-change";
 import { newIdentifier } from "@/db/identifier";
-import { saveSetUp } from "@/db/study/save-set-up";
+import { saveSetUp, withSetUp } from "@/db/study/save-set-up";
 import { readStudy } from "@/db/study/study.queries";
 import { readSetUpForm } from "../../_set-up/read-set-up-form";
 import { setUpFormOf } from "../../_set-up/set-up-form";
@@ -26,14 +26,8 @@ export const previewSetUp = memberAction(
   async ({ db, actor, input }): Promise<ActionResult<LawPreview>> => {
     const reading = readSetUpForm(input.form, newIdentifier);
     if (reading.status === "faults") return refused(NOT_READ, reading.faults);
-    const { study, ...rest } = reading.setUp;
-    return done(
-      await previewEffect(db, actor, input.studyId, (sheet) => ({
-        ...sheet,
-        ...rest,
-        study: { ...study, invented: sheet.study.invented },
-      })),
-    );
+    const { setUp } = reading;
+    return done(await previewEffect(db, actor, input.studyId, (sheet) => withSetUp(sheet, setUp)));
   },
 );
 
