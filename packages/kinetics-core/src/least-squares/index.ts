@@ -21,4 +21,6 @@ export {
   polynomialsAt,
   projectOn,
 } from "./orthonormal-polynomials";
+export { type ProfileEnd, type ProfileInterval, profileInterval } from "./profile-interval";
+export { correlationOf, covarianceOf, standardErrorsOf } from "./solution-uncertainty";
 export { powersOf, type TwicePrecise } from "./twice-precision";
