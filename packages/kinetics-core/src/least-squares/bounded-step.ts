@@ -21,7 +21,9 @@ export function releaseFree(search: NonlinearSearch): void {
   const { linear, low, high, current, free } = search;
   const { parameters: n, triangle, projected } = linear;
   for (let j = 0; j < n; j++) {
-    const [value, least, most] = [current.theta[j] ?? 0, low[j] ?? 0, high[j] ?? 0];
+    const value = current.theta[j] ?? 0;
+    const least = low[j] ?? 0;
+    const most = high[j] ?? 0;
     free[j] = least < most ? 1 : 0;
     if (value > least && value < most) continue;
     let gradient = 0;

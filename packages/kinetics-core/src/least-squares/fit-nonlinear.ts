@@ -123,7 +123,8 @@ function stepWithin(
 function gainOf({ current, trial }: NonlinearSearch): number {
   let gain = 0;
   for (let i = 0; i < current.residuals.length; i++) {
-    const [before, after] = [current.residuals[i] ?? 0, trial.residuals[i] ?? 0];
+    const before = current.residuals[i] ?? 0;
+    const after = trial.residuals[i] ?? 0;
     gain += (before - after) * (before + after);
   }
   return gain;

@@ -34,21 +34,26 @@ const RANK_TOLERANCE = 64 * Number.EPSILON;
 const ROTATION_TOLERANCE = 1e-15;
 const MOST_SWEEPS = 40;
 
-export function newLinearisation(points: number, parameters: number): Linearisation {
-  const square = () => new Float64Array(parameters * parameters);
-  const vector = () => new Float64Array(parameters);
+/** `take` hands out zeroed stretches of one store: a fit makes one array and not a score of small ones. */
+export type Take = (length: number) => Float64Array;
+
+export function linearisationSize(points: number, parameters: number): number {
+  return points * (parameters + 1) + 3 * parameters * parameters + 4 * parameters;
+}
+
+export function newLinearisation(points: number, parameters: number, take: Take): Linearisation {
   return {
     points,
     parameters,
-    scale: vector().fill(1),
-    reflectors: new Float64Array(points * parameters),
-    triangle: square(),
-    projected: vector(),
-    rotated: square(),
-    directions: square(),
-    singular: vector(),
-    slopes: vector(),
-    work: new Float64Array(points),
+    scale: take(parameters),
+    reflectors: take(points * parameters),
+    triangle: take(parameters * parameters),
+    projected: take(parameters),
+    rotated: take(parameters * parameters),
+    directions: take(parameters * parameters),
+    singular: take(parameters),
+    slopes: take(parameters),
+    work: take(points),
   };
 }
 

@@ -1,4 +1,4 @@
-import { type Linearisation, newLinearisation } from "./linearisation";
+import { type Linearisation, linearisationSize, newLinearisation, type Take } from "./linearisation";
 import type { NonlinearOptions, NonlinearProblem } from "./nonlinear-problem";
 
 /** A point of the search with everything that the problem says there. */
@@ -40,20 +40,19 @@ export function newSearch(
   options: NonlinearOptions,
 ): NonlinearSearch {
   const { residuals: m, parameters: n } = problem;
-  const point = (): SearchPoint => ({
-    theta: Float64Array.from(start),
-    residuals: new Float64Array(m),
-    jacobian: Array.from({ length: n }, () => new Float64Array(m)),
-    squares: Number.POSITIVE_INFINITY,
-  });
-  const low = Float64Array.from(
-    { length: n },
-    (_, j) => problem.bounds?.[j]?.[0] ?? Number.NEGATIVE_INFINITY,
-  );
-  const high = Float64Array.from(
-    { length: n },
-    (_, j) => problem.bounds?.[j]?.[1] ?? Number.POSITIVE_INFINITY,
-  );
+  const store = new Float64Array(linearisationSize(m, n) + 2 * pointSize(m, n) + 5 * n);
+  let taken = 0;
+  const take: Take = (length) => {
+    taken += length;
+    return store.subarray(taken - length, taken);
+  };
+  const [low, high] = [take(n), take(n)];
+  for (let j = 0; j < n; j++) {
+    low[j] = problem.bounds?.[j]?.[0] ?? Number.NEGATIVE_INFINITY;
+    high[j] = problem.bounds?.[j]?.[1] ?? Number.POSITIVE_INFINITY;
+  }
+  const current = newPoint(m, n, take);
+  current.theta.set(start);
   const adjustable = adjustableIn(problem);
   return {
     problem,
@@ -62,22 +61,33 @@ export function newSearch(
     high,
     adjustable,
     degreesOfFreedom: m - adjustable,
-    current: point(),
-    trial: point(),
-    linear: newLinearisation(m, n),
-    step: new Float64Array(n),
-    rest: new Float64Array(n),
+    current,
+    trial: newPoint(m, n, take),
+    linear: newLinearisation(m, n, take),
+    step: take(n),
+    rest: take(n),
     free: new Uint8Array(n),
-    projected: new Float64Array(n),
+    projected: take(n),
     steps: 0,
     evaluations: 0,
   };
 }
 
+function pointSize(points: number, parameters: number): number {
+  return points * (parameters + 1) + parameters;
+}
+
+function newPoint(points: number, parameters: number, take: Take): SearchPoint {
+  const jacobian: Float64Array[] = [];
+  for (let j = 0; j < parameters; j++) jacobian.push(take(points));
+  return { theta: take(parameters), residuals: take(points), jacobian, squares: Number.POSITIVE_INFINITY };
+}
+
 /** Parameters whose bounds leave them a choice. */
 export function adjustableIn({ parameters, bounds }: NonlinearProblem): number {
-  if (bounds === undefined) return parameters;
-  return parameters - bounds.filter(([low, high]) => low === high).length;
+  let adjustable = parameters;
+  for (const [low, high] of bounds ?? []) if (low === high) adjustable--;
+  return adjustable;
 }
 
 /** Evaluates the model at a point; false where it, or its sum of squares, is not finite. */

@@ -40,8 +40,9 @@ export type SearchEnd = "converged" | keyof typeof MESSAGES;
 export function solutionOf(search: NonlinearSearch, end: SearchEnd): NonlinearFit {
   const { current, degreesOfFreedom, low, high } = search;
   const solution: NonlinearSolution = {
-    parameters: current.theta,
-    residuals: current.residuals,
+    // Copies: the search's own store is larger than what is kept of it.
+    parameters: current.theta.slice(),
+    residuals: current.residuals.slice(),
     residualSquares: current.squares,
     degreesOfFreedom,
     residualStandardDeviation: degreesOfFreedom > 0 ? Math.sqrt(current.squares / degreesOfFreedom) : null,

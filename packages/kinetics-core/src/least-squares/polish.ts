@@ -65,7 +65,8 @@ function proposePolish(search: NonlinearSearch): number {
 /** Whether the step is lost in the rounding of the parameters themselves. */
 function isInvisible({ current, trial }: NonlinearSearch): boolean {
   for (let j = 0; j < current.theta.length; j++) {
-    const [here, there] = [current.theta[j] ?? 0, trial.theta[j] ?? 0];
+    const here = current.theta[j] ?? 0;
+    const there = trial.theta[j] ?? 0;
     if (Math.abs(there - here) > Number.EPSILON * Math.abs(here)) return false;
   }
   return true;

@@ -67,6 +67,8 @@ const STEP_OUT = 2;
 /** In standard errors: a model that ends this near to a refit has no more to say. */
 const SHORTEST_STEP = 1e-3;
 const MOST_REFITS = 60;
+/** A refit starts next to its answer; one that takes longer than this does not find it. */
+const REFIT = { mostEvaluations: 100 };
 /** Of the limit; the profile is nearly straight there, so the end has as many digits. */
 const TOLERANCE = 1e-9;
 /** Part of the variance by which a refit may undercut the solution by rounding. */
@@ -86,11 +88,12 @@ function endOf(profile: Profile, side: -1 | 1): ProfileEnd | null {
   const bound = boundOf(profile, side);
   const farthest = best + side * FARTHEST * limit * error;
   let inner: Refit = { value: best, excess: -limit, parameters: solution.parameters };
+  let before: Refit | null = null;
   let step = limit * error;
   if (side * (bound - best) <= 0) return { at: best, kind: "bound" };
   for (let count = 0; count < MOST_REFITS; count++) {
     const value = side * (inner.value + side * step - bound) >= 0 ? bound : inner.value + side * step;
-    const outer = refit(profile, value, inner);
+    const outer = refit(profile, value, inner, before);
     if (outer === "undercut") return null;
     if (outer === "failed") {
       // Perhaps beyond what the model can have: come nearer.
@@ -101,6 +104,7 @@ function endOf(profile: Profile, side: -1 | 1): ProfileEnd | null {
     if (outer.excess >= 0) return crossing(profile, inner, outer);
     if (value === bound) return { at: bound, kind: "bound" };
     if (side * (value - farthest) >= 0) break;
+    before = inner;
     inner = outer;
     step *= STEP_OUT;
   }
@@ -120,7 +124,7 @@ function crossing(profile: Profile, innerStart: Refit, outerStart: Refit): Profi
   for (let count = 0; count < MOST_REFITS; count++) {
     const [below, above] = [inner.excess * innerWeight, outer.excess * outerWeight];
     const value = (inner.value * above - outer.value * below) / (above - below);
-    const found = refit(profile, value, nearer(inner, outer));
+    const found = refit(profile, value, inner, outer);
     if (found === "undercut") return null;
     if (found === "failed") return { at: null, kind: "failed" };
     const settled = Math.abs(outer.value - inner.value) <= 4 * Number.EPSILON * Math.abs(value);
@@ -141,48 +145,61 @@ function crossing(profile: Profile, innerStart: Refit, outerStart: Refit): Profi
   return { at: null, kind: "failed" };
 }
 
-function nearer(inner: Refit, outer: Refit): Refit {
-  return -inner.excess < outer.excess ? inner : outer;
-}
-
-/** The others refitted with the parameter held at `value`, from a neighbour moved along the valley. */
-function refit(profile: Profile, value: number, from: Refit): Refit | "failed" | "undercut" {
+/**
+ * The others refitted with the parameter held at `value`, from where the valley is expected there: on the line through
+ * two refits, or along the tangent at the solution where there is only one.
+ *
+ * A refit that does not settle still bounds S(θ_p) from above, and below the limit that is all that is asked.
+ */
+function refit(
+  profile: Profile,
+  value: number,
+  from: Refit,
+  other: Refit | null,
+): Refit | "failed" | "undercut" {
   const { problem, solution, parameter, scatter, limit } = profile;
   const fixed = Array.from({ length: problem.parameters }, (_, j) => {
     const bounds = problem.bounds?.[j] ?? ([Number.NEGATIVE_INFINITY, Number.POSITIVE_INFINITY] as const);
     return j === parameter ? ([value, value] as const) : bounds;
   });
   const held: NonlinearProblem = { ...problem, bounds: fixed };
-  const along = fitNonlinear(held, movedAlong(profile, value, from, fixed));
+  const along = fitNonlinear(held, expectedAt(profile, value, from, other, fixed), REFIT);
   const fit =
-    along.status === "converged" ? along : fitNonlinear(held, withValue(from.parameters, parameter, value));
-  if (fit.status !== "converged") return "failed";
+    along.status === "converged" ? along : fitNonlinear(held, withValue(from, parameter, value), REFIT);
+  if (!("residualSquares" in fit)) return "failed";
   const rise = (fit.residualSquares - solution.residualSquares) / scatter ** 2;
   if (rise < -UNDERCUT) return "undercut";
-  return { value, excess: Math.sqrt(Math.max(rise, 0)) - limit, parameters: fit.parameters };
+  const excess = Math.sqrt(Math.max(rise, 0)) - limit;
+  if (fit.status !== "converged" && excess >= 0) return "failed";
+  return { value, excess, parameters: fit.parameters };
 }
 
-function withValue(theta: Float64Array, parameter: number, value: number): Float64Array {
-  const start = Float64Array.from(theta);
+function withValue({ parameters }: Refit, parameter: number, value: number): Float64Array {
+  const start = Float64Array.from(parameters);
   start[parameter] = value;
   return start;
 }
 
-/** By the tangent of the valley at the solution: dθ_j/dθ_p = C_jp/C_pp. */
-function movedAlong(
+function expectedAt(
   { solution, parameter }: Profile,
   value: number,
   from: Refit,
+  other: Refit | null,
   bounds: readonly (readonly [number, number])[],
 ): Float64Array {
   const covariance = solution.unscaledCovariance;
   const own = covariance?.[parameter]?.[parameter] ?? 0;
-  const start = withValue(from.parameters, parameter, value);
+  const start = withValue(from, parameter, value);
   start.forEach((theta, j) => {
-    if (j === parameter || !(own > 0)) return;
+    if (j === parameter) return;
+    // Along the valley of a linear model, dθ_j/dθ_p = C_jp/C_pp.
+    const slope =
+      other === null
+        ? (covariance?.[j]?.[parameter] ?? 0) / own
+        : ((other.parameters[j] ?? 0) - theta) / (other.value - from.value);
+    const moved = theta + slope * (value - from.value);
     const [low, high] = bounds[j] ?? [theta, theta];
-    const moved = theta + ((covariance?.[j]?.[parameter] ?? 0) / own) * (value - from.value);
-    start[j] = Math.min(Math.max(moved, low), high);
+    start[j] = Number.isFinite(moved) ? Math.min(Math.max(moved, low), high) : theta;
   });
   return start;
 }

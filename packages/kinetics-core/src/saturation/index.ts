@@ -1,0 +1,2 @@
+export { fitSaturation } from "./fit-saturation";
+export type { LackOfFit, SaturationFit, SaturationInput, SaturationResult } from "./saturation";
