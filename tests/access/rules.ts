@@ -63,6 +63,7 @@ export const rules: Readonly<Record<string, Rule>> = {
   "POST /api/v1/compute/calibration": member,
   "POST /api/v1/compute/initial-rate": member,
   "POST /api/v1/compute/rate-law": member,
+  "POST /api/v1/compute/saturation": member,
   "POST /api/v1/compute/temperature": member,
   "GET /api/v1/openapi.json": anyone,
 

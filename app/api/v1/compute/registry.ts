@@ -8,6 +8,8 @@ import { computeInitialRate } from "./initial-rate/compute";
 import { initialRateRequest, initialRateResponse } from "./initial-rate/schema";
 import { computeRateLaw } from "./rate-law/compute";
 import { rateLawRequest, rateLawResponse } from "./rate-law/schema";
+import { computeSaturation } from "./saturation/compute";
+import { saturationRequest, saturationResponse } from "./saturation/schema";
 import { computeTemperature } from "./temperature/compute";
 import { temperatureRequest, temperatureResponse } from "./temperature/schema";
 
@@ -56,6 +58,14 @@ export const rateLawComputation = computation({
   isQuick: isQuickFit,
 });
 
+export const saturationComputation = computation({
+  name: "saturation",
+  summary: "Limiting rate and half-saturation concentration from initial rates, with profile intervals.",
+  request: saturationRequest,
+  response: saturationResponse,
+  compute: computeSaturation,
+});
+
 export const temperatureComputation = computation({
   name: "temperature",
   summary:
@@ -80,6 +90,7 @@ export const COMPUTATIONS: readonly Computation[] = [
   calibrationComputation,
   initialRateComputation,
   rateLawComputation,
+  saturationComputation,
   temperatureComputation,
 ];
 

@@ -48,11 +48,9 @@ export const calibrationResponse = z
     rSquared: nullable.meta({
       description: "About the mean of the signals, or about zero where the line goes through the origin.",
     }),
-    curvature: z
-      .object({ fStatistic: nullable, pValue: nullable, quadratic: estimate.nullable() })
-      .meta({
-        description: "F of the reduction by a quadratic term; null with too few levels or no scatter.",
-      }),
+    curvature: z.object({ fStatistic: nullable, pValue: nullable, quadratic: estimate.nullable() }).meta({
+      description: "F of the reduction by a quadratic term; null with too few levels or no scatter.",
+    }),
     lackOfFit: z
       .object({
         fStatistic: z.number(),
