@@ -3,6 +3,13 @@ export { type BackgroundOptions, backgroundEquation } from "./background-equatio
 export { type CatalystOptions, catalystEquation } from "./catalyst-equation";
 export type { TypicalConcentration } from "./constant-parameter";
 export { describeEquation } from "./describe-equation";
+export {
+  type ExpressionEquation,
+  type ExpressionOptions,
+  expressionEquation,
+} from "./expression/expression-equation";
+export type { ExpressionFault, ExpressionFaultCode } from "./expression/expression-fault";
+export type { RateConstantOf } from "./expression/rate-constant-of";
 export { type InhibitedOptions, inhibitedEquation } from "./inhibited-equation";
 export type { PowerTerm } from "./law-of-powers";
 export { powerEquation } from "./power-equation";

@@ -16,7 +16,7 @@ export interface PowerTerm {
  */
 const ORDER_BOUNDS: readonly [number, number] = [-3, 5];
 
-const START_OF_AN_ORDER = 1;
+export const START_OF_AN_ORDER = 1;
 
 /** Where the species of an equation stand in c and its parameters in θ, while the equation is put together. */
 export interface EquationLayout {
@@ -66,7 +66,7 @@ function layOutPower(term: PowerTerm, layout: EquationLayout, symbol: string): P
   return { place, order: { held: order } };
 }
 
-function orderParameter(name: string, start: number): EquationParameter {
+export function orderParameter(name: string, start: number): EquationParameter {
   const [low, high] = ORDER_BOUNDS;
   if (!(start >= low && start <= high)) {
     throw new RangeError(`${name} starts at ${start}; orders are sought from ${low} to ${high}`);

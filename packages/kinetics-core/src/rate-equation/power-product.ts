@@ -1,4 +1,5 @@
 import type { EquationValue } from "./rate-equation";
+import { isMultiplied, wholePower } from "./whole-power";
 
 /**
  * P = Π c_i^{n_i} with its derivatives ∂P/∂c_i = n_i P/c_i and ∂P/∂n_i = P ln c_i. Fitted orders share one exponential,
@@ -35,8 +36,6 @@ interface Factor {
   order: number;
   logarithm: number;
 }
-
-const LARGEST_MULTIPLIED_ORDER = 3;
 
 export function powerProduct(powers: readonly PowerFactor[]): PowerProduct {
   // c^0 is 1 whatever c: a held order of zero leaves the product, so that its species may be missing.
@@ -86,14 +85,7 @@ function factorOf({ place, order }: PowerFactor): Factor {
     return { place, parameter: order.parameter, multiplied: false, order: Number.NaN, logarithm: 0 };
   }
   const { held } = order;
-  const multiplied = Number.isInteger(held) && Math.abs(held) <= LARGEST_MULTIPLIED_ORDER;
-  return { place, parameter: -1, multiplied, order: held, logarithm: 0 };
-}
-
-function wholePower(x: number, order: number): number {
-  const size = Math.abs(order);
-  const power = size === 1 ? x : size === 2 ? x * x : x * x * x;
-  return order > 0 ? power : 1 / power;
+  return { place, parameter: -1, multiplied: isMultiplied(held), order: held, logarithm: 0 };
 }
 
 /** Some concentration is zero: P is zero, and at most one slope is not. */
