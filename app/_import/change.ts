@@ -19,6 +19,10 @@ export function applyChange(current: Corrections, change: Change): Corrections {
     case "set": {
       // Another sheet is another table.
       if ("sheet" in change.values) return change.values;
+      if ("arrangement" in change.values) {
+        const { columns, labels, cells, linesLeftOut, lastDataLine, ...rest } = current;
+        return { ...rest, ...change.values };
+      }
       const { columns, labels, cells, ...rest } = current;
       const kept = "separator" in change.values || "quotes" in change.values ? rest : current;
       return { ...kept, ...change.values };

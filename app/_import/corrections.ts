@@ -25,6 +25,7 @@ export const corrections = z.object({
   sheet: z.string().max(100).optional(),
   encoding: z.enum(["utf-8", "utf-16le", "utf-16be", "windows-1252"]).optional(),
   separator: z.enum([",", ";", "\t", "|", " "]).optional(),
+  arrangement: z.enum(["as-it-stands", "blocks", "turned"]).optional(),
   quotes: z.enum(["quoting", "plain"]).optional(),
   decimalMark: z.enum([".", ",", "either"]).optional(),
   /** null: the file has no such line. */

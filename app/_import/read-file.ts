@@ -1,8 +1,9 @@
 import { POINTS_PER_STUDY } from "@/db/limits";
+import { type Arranged, blocksInOne, turnedTable } from "./arrangement";
 import { cellIssues } from "./cell-issues";
 import { clockColumns } from "./clock-columns";
 import { type ColumnGuess, guessColumns } from "./columns";
-import type { TableText, TableTextReading } from "./container";
+import { CONTAINER_FORMAT, type TableText, type TableTextReading } from "./container";
 import type { Corrections } from "./corrections";
 import { guessDecimalMark } from "./decimal-mark";
 import { type Frame, findFrame } from "./frame";
@@ -51,6 +52,23 @@ export function readTable(table: TableTextReading, context: StudyContext, correc
     decimalMark: mark.guess.value ?? "either",
     stated: stated.decimalMark !== undefined,
   };
+  /** The same bytes, written anew as one table that runs down; what was guessed of the file itself stays. */
+  const rearranged = (arranged: Arranged): Reading => {
+    const format = { ...CONTAINER_FORMAT, decimalMark: numberFormat.decimalMark };
+    const reading = readTable(
+      { ...table, text: arranged.text, format, issues: [...table.issues, arranged.issue] },
+      context,
+      { ...corrections, arrangement: "as-it-stands" },
+    );
+    return reading.status === "refused"
+      ? reading
+      : { ...reading, separator, quotes: quotes.value, decimalMark: mark.guess, corrections };
+  };
+  const isOpen = corrections.arrangement === undefined && mark.guess.value !== null;
+  if (corrections.arrangement === "turned" || (isOpen && sample.length < SAMPLE_ROWS)) {
+    const turned = turnedTable(sample, numberFormat, corrections.arrangement === "turned");
+    if (turned !== null) return rearranged(turned);
+  }
   const frame = findFrame(sample, numberFormat, context.species, corrections);
   if (frame === null) return refused(sample);
   if (frame.columns > MOST_COLUMNS) {
@@ -88,6 +106,14 @@ export function readTable(table: TableTextReading, context: StudyContext, correc
     titles: frame.titles?.cells ?? [],
     speciesColumns: speciesColumns(guessed, context),
   });
+  if (corrections.arrangement === "blocks" || (isOpen && mayBeBlocks(found, built.issues))) {
+    const blocks = blocksInOne(text, rowFormat, numberFormat, {
+      firstDataLine: frame.firstDataLine.value,
+      headerLine: frame.headerLine.value,
+      forced: corrections.arrangement === "blocks",
+    });
+    if (blocks !== null) return rearranged(blocks);
+  }
   const labelOf = new Map(built.traces.map((trace) => [trace.source, trace.label]));
   const nameOf = (column: number) =>
     labelOf.get(`c${column}`) ?? columnName(column, guessed.columns[column]?.name ?? "");
@@ -129,6 +155,14 @@ export function readTable(table: TableTextReading, context: StudyContext, correc
     shownLines: shownLines({ text, rowFormat, frame, recipes, found, total, issues }),
     corrections,
   };
+}
+
+/** A time that starts again, and lines between the data that are none. */
+function mayBeBlocks(found: Gathered, issues: readonly Issue[]): boolean {
+  return (
+    found.wordLineCount + found.blankLineCount > 0 &&
+    issues.some(({ code }) => code === "falling-time" || code === "repeated-time")
+  );
 }
 
 /** A container's own format stands before anything that could be said or guessed of it, but for the decimal mark of texts. */

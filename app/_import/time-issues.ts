@@ -40,6 +40,10 @@ export function timeIssues(
     const repairs: Repair[] = [];
     if (restarts) {
       repairs.push({
+        label: "Read as runs below one another",
+        change: { kind: "set", values: { arrangement: "blocks" } },
+      });
+      repairs.push({
         label: `Read up to line ${fall.earlierLine} only`,
         change: { kind: "set", values: { lastDataLine: fall.earlierLine } },
       });
@@ -67,7 +71,7 @@ export function timeIssues(
         faults.falls.map(({ line }) => line),
         faults.fallCount,
       ),
-      message: `The time falls from ${plain(fall.earlierTime)} ${place.unit} on line ${fall.earlierLine} to ${plain(fall.time)} ${place.unit} on line ${fall.line}${place.traces === "" ? "" : ` (${place.traces})`}. Time has to rise within a trace.${restarts ? " If another run begins here, give it a column of its own, or name the run of each line in a column." : ""}`,
+      message: `The time falls from ${plain(fall.earlierTime)} ${place.unit} on line ${fall.earlierLine} to ${plain(fall.time)} ${place.unit} on line ${fall.line}${place.traces === "" ? "" : ` (${place.traces})`}. Time has to rise within a trace.${restarts ? " If another run begins here, read the file as runs below one another." : ""}`,
       repairs,
     });
   }
