@@ -10,6 +10,11 @@ function fitted(input: TemperatureInput): TemperatureFit {
   return fit;
 }
 
+function numbersIn(value: unknown): readonly number[] {
+  if (typeof value === "number") return [value];
+  return typeof value === "object" && value !== null ? Object.values(value).flatMap(numbersIn) : [];
+}
+
 const ENERGY = 52e3;
 const LOG_A = 21;
 
@@ -84,8 +89,7 @@ describe("activation parameters", () => {
     fc.assert(
       fc.property(fc.array(point, { maxLength: 8 }), (points) => {
         const fit = fitTemperature({ points, shared: [{ source: "thermometer", temperatureKelvin: 0.2 }] });
-        // JSON turns NaN and Infinity into null, so a round trip that changes nothing has seen neither.
-        expect(JSON.parse(JSON.stringify(fit))).toEqual(fit);
+        expect(numbersIn(fit).filter((value) => !Number.isFinite(value))).toEqual([]);
         if (fit.status !== "fitted") expect(fit.message).toMatch(/\w/);
       }),
       { numRuns: 300 },
