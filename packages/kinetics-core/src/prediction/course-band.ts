@@ -1,0 +1,206 @@
+import type { Flag } from "kinetics-core/quantities";
+import type { FittedLaw } from "./fitted-law";
+import { factorOf, logPrediction } from "./log-prediction";
+import { rangeFlags } from "./prediction-flags";
+import {
+  type Course,
+  type CourseFault,
+  courseOf,
+  type Mixture,
+  rateFactorAt,
+  timeIntegrals,
+} from "./reaction-course";
+
+export interface CourseBand {
+  readonly status: "predicted";
+  readonly points: readonly CourseBandPoint[];
+  readonly flags: readonly Flag[];
+}
+
+type Interval = readonly [number, number];
+
+/** A concentration or an extent, in the unit of the law, with the law's interval and that of one new run. */
+export interface Banded {
+  readonly value: number;
+  readonly ofTheLaw: Interval | null;
+  readonly newRun: Interval | null;
+}
+
+export interface CourseBandPoint {
+  readonly time: number;
+  /** ξ, from 0 to its end. */
+  readonly extent: Banded;
+  readonly concentrations: Readonly<Record<string, Banded>>;
+}
+
+/**
+ * Concentrations against time with a band. Where a reactant runs out the band is made sideways: at an extent ξ the time
+ * has the interval t(ξ) e^(±q s(ξ)) of `timeToConversion`, and the extents whose time interval contains t are the band
+ * at t. It never leaves 0 to ξ_end. Towards an equilibrium t(ξ) grows without bound and says nothing, so there the
+ * extent itself gets its interval: ∂ξ/∂ln k = f·k t, ∂ξ/∂θ = −f·∂(k t)/∂θ, cut at 0.
+ * `times`: 0 or above, in the time unit of the law.
+ */
+export function courseBand(
+  law: FittedLaw,
+  mixture: Mixture,
+  times: readonly number[],
+): CourseBand | CourseFault {
+  const wrong = times.findIndex((time) => !(time >= 0) || !Number.isFinite(time));
+  if (wrong >= 0)
+    return {
+      status: "bad-mixture",
+      place: `times.${wrong}`,
+      message: `Time ${wrong + 1} is ${times[wrong]}; times are counted from mixing and are 0 or above.`,
+    };
+  const prepared = courseOf(law, mixture);
+  if (prepared.status !== "course") return prepared;
+  const table = tableOf(prepared.course, Math.max(0, ...times));
+  return {
+    status: "predicted",
+    points: times.map((time) => pointAt(table, time)),
+    flags: rangeFlags(law, mixture.concentrations),
+  };
+}
+
+/** Integrals from 0 to u at a row of u, from which any other u is one short quadrature away. */
+interface CourseTable {
+  readonly course: Course;
+  readonly rows: readonly { readonly u: number; readonly sums: Float64Array }[];
+}
+
+const STEP = 0.5;
+
+function tableOf(course: Course, lastTime: number): CourseTable {
+  const { law } = course;
+  const rows = [{ u: 0, sums: new Float64Array(2 + law.parameters.length) }];
+  const factor = factorOf(law) ?? 0;
+  for (let u = STEP; u <= course.lastU; u += STEP) {
+    const sums = (rows.at(-1)?.sums ?? new Float64Array(0)).slice();
+    if (!timeIntegrals(course, u - STEP, u, sums)) break;
+    rows.push({ u, sums });
+    if (timeOf(course, sums, -factor, "newRun") > lastTime) break;
+  }
+  return { course, rows };
+}
+
+type Kind = "ofTheLaw" | "newRun";
+
+/** t·e^(z s) with s the standard deviation of ln t. */
+function timeOf(course: Course, sums: Float64Array, z: number, kind: Kind): number {
+  const { law } = course;
+  const [scaledTime = Number.NaN] = sums;
+  if (scaledTime === 0) return 0;
+  const logTime = Math.log(scaledTime) - law.logRateConstant;
+  if (z === 0) return Math.exp(logTime);
+  const { variance, newRunVariance } = logPrediction(law, logTime, gradientOf(course, sums));
+  const own = kind === "newRun" ? (newRunVariance ?? variance) : variance;
+  return Math.exp(logTime + z * Math.sqrt(own ?? 0));
+}
+
+function gradientOf({ law }: Course, sums: Float64Array): readonly number[] {
+  const [scaledTime = Number.NaN] = sums;
+  return [-1, ...law.parameters.map((_, j) => (sums[1 + j] ?? Number.NaN) / scaledTime)];
+}
+
+function pointAt(table: CourseTable, time: number): CourseBandPoint {
+  const { course } = table;
+  const { mixture } = course;
+  const best = solve(table, time, 0, "ofTheLaw");
+  const value = extentAt(course, best.u);
+  const extent: Banded = {
+    value,
+    ofTheLaw: intervalAt(table, time, "ofTheLaw", best),
+    newRun: course.law.betweenRunStandardDeviation === null ? null : intervalAt(table, time, "newRun", best),
+  };
+  return {
+    time,
+    extent,
+    concentrations: Object.fromEntries(
+      Object.entries(mixture.concentrations).map(([name, start]) => [
+        name,
+        concentrationOf(course, name, start, extent),
+      ]),
+    ),
+  };
+}
+
+function intervalAt(table: CourseTable, time: number, kind: Kind, best: Position): Interval | null {
+  const { course } = table;
+  const factor = factorOf(course.law);
+  if (factor === null || course.law.covariance === null) return null;
+  if (course.end.kind === "equilibrium") return intervalOfExtent(course, best, factor, kind);
+  // A slow reaction takes long: the upper end of the time interval belongs to the lower extent.
+  return [
+    extentAt(course, solve(table, time, factor, kind).u),
+    extentAt(course, solve(table, time, -factor, kind).u),
+  ];
+}
+
+function intervalOfExtent(course: Course, { u, sums }: Position, factor: number, kind: Kind): Interval {
+  const f = rateFactorAt(course, u) ?? 0;
+  const value = extentAt(course, u);
+  const [scaledTime = 0] = sums;
+  const gradient = [scaledTime * f, ...course.law.parameters.map((_, j) => -f * (sums[1 + j] ?? 0))];
+  const { variance, newRunVariance } = logPrediction(course.law, value, gradient, scaledTime * f);
+  const half = factor * Math.sqrt((kind === "newRun" ? newRunVariance : variance) ?? 0);
+  return [Math.max(0, value - half), value + half];
+}
+
+function extentAt(course: Course, u: number): number {
+  return u >= course.lastU ? course.end.extent : -course.end.extent * Math.expm1(-u);
+}
+
+function concentrationOf(course: Course, name: string, start: number, extent: Banded): Banded {
+  const number = course.mixture.stoichiometricNumbers[name] ?? 0;
+  const at = (x: number) => {
+    const done = x >= course.end.extent && course.end.exhausted.includes(name);
+    return done ? 0 : Math.max(0, start + number * x);
+  };
+  const turned = (interval: Interval | null): Interval | null => {
+    if (interval === null) return null;
+    const [low, high] = [at(interval[0]), at(interval[1])];
+    return low <= high ? [low, high] : [high, low];
+  };
+  return { value: at(extent.value), ofTheLaw: turned(extent.ofTheLaw), newRun: turned(extent.newRun) };
+}
+
+interface Position {
+  readonly u: number;
+  /** Integrals from 0 to u. */
+  readonly sums: Float64Array;
+}
+
+const MOST_ITERATIONS = 100;
+
+/** u at which t·e^(z s) is `time`, by regula falsi with the Illinois rule; the end where it is never so late. */
+function solve({ course, rows }: CourseTable, time: number, z: number, kind: Kind): Position {
+  const next = rows.findIndex(({ sums }) => timeOf(course, sums, z, kind) >= time);
+  const last = rows.at(-1);
+  if (last === undefined) throw new RangeError("a table of a course begins at 0");
+  if (next < 0) return { u: course.lastU, sums: last.sums };
+  const upper = rows[next] ?? last;
+  if (next === 0) return upper;
+  const lower = rows[next - 1] ?? last;
+  const sumsAt = (u: number) => {
+    const sums = lower.sums.slice();
+    timeIntegrals(course, lower.u, u, sums);
+    return sums;
+  };
+  let [a, fa] = [lower.u, timeOf(course, lower.sums, z, kind) - time];
+  let [b, fb] = [upper.u, timeOf(course, upper.sums, z, kind) - time];
+  let sums = upper.sums;
+  for (let i = 0; i < MOST_ITERATIONS && b - a > 1e-12 * b && fb !== 0; i++) {
+    const u = i % 8 === 7 ? (a + b) / 2 : (a * fb - b * fa) / (fb - fa);
+    sums = sumsAt(u);
+    const f = timeOf(course, sums, z, kind) - time;
+    if (Math.abs(f) <= 1e-12 * time) return { u, sums };
+    if (f > 0) {
+      [b, fb] = [u, f];
+      fa /= 2;
+    } else {
+      [a, fa] = [u, f];
+      fb /= 2;
+    }
+  }
+  return { u: b, sums };
+}
