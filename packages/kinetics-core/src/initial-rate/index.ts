@@ -1,3 +1,4 @@
+export { quadraticForm, stepCorrelations } from "./autoregressive-noise";
 export { chooseFromSurveys, chooseStudyRule } from "./choose-study-rule";
 export { estimateInitialRate } from "./estimate-initial-rate";
 export { evaluateCurve } from "./evaluate-curve";
@@ -14,6 +15,7 @@ export type {
   StudyTrace,
   Trace,
 } from "./initial-rate";
+export { type Readings, type RefusedTrace, readingsOf } from "./readings";
 export { type SlopeAtEnd, slopeAgainstWindowEnd } from "./slope-against-window-end";
 export { surveyTrace, type TraceSurvey } from "./survey-trace";
 export { type TraceNoise, traceNoise } from "./trace-noise";

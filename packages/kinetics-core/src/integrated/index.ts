@@ -1,0 +1,19 @@
+export { autocatalyticCourse } from "./autocatalytic-course";
+export { consecutiveCourse } from "./consecutive-course";
+export { type CoursePoint, coursePoint } from "./course-point";
+export type { EndSignal } from "./end-signal";
+export { fitIntegratedLaw } from "./fit-integrated-law";
+export type { IntegratedLawFit, IntegratedLawInput, IntegratedLawResult } from "./integrated-law";
+export type { LackOfFit } from "./lack-of-fit";
+export { orderCourse } from "./order-course";
+export {
+  type OrderCandidate,
+  type OrderOfTrace,
+  type OrderOfTraceInput,
+  type OrderReading,
+  orderOfTrace,
+} from "./order-of-trace";
+export { orderResolution, orderStandardDeviation } from "./order-resolution";
+export { reversibleCourse } from "./reversible-course";
+export { type AxisLine, straightestAxisOrder } from "./straightest-axis";
+export { unequalSecondOrderCourse } from "./unequal-second-order-course";

@@ -1,0 +1,149 @@
+import { fSurvival, studentTFactor } from "kinetics-core/distributions";
+import type { Trace } from "kinetics-core/initial-rate";
+import { type Estimate, type Flag, inARow, numberInWords } from "kinetics-core/quantities";
+import { CONFLICT_BLOCKS, LACK_OF_FIT_LEVEL, ORDER_HALF_WIDTH_WEAKENS } from "./constants";
+import { heldOrderLaw } from "./course-laws";
+import type { EndSignal } from "./end-signal";
+import { type CourseFit, effectiveDeviation } from "./fit-course";
+import { fitWithWorking } from "./fit-integrated-law";
+import type { IntegratedLawFit, IntegratedLawResult } from "./integrated-law";
+import type { ScaledReadings } from "./scaled-reading";
+import { searchCourse } from "./search-course";
+
+export interface OrderOfTraceInput extends Trace {
+  /** Free where absent; an end that is known with its uncertainty decides more than anything else. */
+  readonly endSignal?: EndSignal;
+  /** Orders to decide among; default 0, 1 and 2. */
+  readonly candidates?: readonly number[];
+  readonly timeZero?: number;
+  readonly level?: number;
+}
+
+/** How a trace reads one order. */
+export interface OrderCandidate {
+  readonly order: number;
+  /** Rise of the sum of squares over that of the free order, in effective variances; about t² of the order. */
+  readonly excess: number;
+  /** Of that rise by F(1, degrees of freedom). */
+  readonly pValue: number;
+  readonly excluded: boolean;
+}
+
+/**
+ * - `is`: one candidate alone is not excluded, and the order is known to a quarter or better.
+ * - `consistent`: with the candidates that are not excluded, no single one shown.
+ * - `none`: every candidate is excluded, or no single order follows the trace, or the end signal is in conflict.
+ */
+export type OrderReading = "is" | "consistent" | "none";
+
+export type OrderOfTrace =
+  | {
+      readonly status: "read";
+      readonly reading: OrderReading;
+      /** The order that is shown; null unless `reading` is "is". */
+      readonly order: number | null;
+      /** The candidate that fits best, whatever the reading. */
+      readonly nearest: number;
+      readonly candidates: readonly OrderCandidate[];
+      /** The order as a free parameter, always beside. */
+      readonly freeOrder: Estimate;
+      readonly freeFit: IntegratedLawFit;
+      /** One sentence for the page. */
+      readonly reason: string;
+      readonly flags: readonly Flag[];
+    }
+  | Exclude<IntegratedLawResult, { status: "fitted" }>;
+
+/**
+ * The order of one trace among simple ones, with the end signal as one more observation and correlated noise counted:
+ * candidates are compared by their least sum of squares on the same rows, over the effective variance σ²(1 + ρ)/(1 − ρ)
+ * of the free order, and never by how straight a transformed axis looks.
+ */
+export function orderOfTrace(input: OrderOfTraceInput): OrderOfTrace {
+  const { candidates: orders = [0, 1, 2], level = 0.95 } = input;
+  if (orders.length === 0) throw new RangeError("At least one candidate order is needed");
+  const free = fitWithWorking({ ...input, order: "free" });
+  if (free.status !== "fitted") return free;
+  const { report, fit, scaled } = free;
+  const candidates = orders
+    .map((order) => candidateOf(order, fit, scaled, level))
+    .filter((candidate) => candidate !== null);
+  const nearest = candidates.reduce<OrderCandidate | null>(
+    (best, one) => (best === null || one.excess < best.excess ? one : best),
+    null,
+  );
+  if (nearest === null) {
+    return {
+      status: "not-converged",
+      message: `None of the orders ${inARow(orders.map(numberInWords))} could be fitted to this trace; check its time and signal columns.`,
+    };
+  }
+  const verdict = verdictOf(report, candidates, level);
+  return {
+    status: "read",
+    ...verdict,
+    nearest: nearest.order,
+    candidates,
+    freeOrder: report.order,
+    freeFit: report,
+    flags: report.flags,
+  };
+}
+
+/** The same rows and the same weight of the end for every order, so that sums of squares compare. */
+function candidateOf(
+  order: number,
+  { found, condition, noise }: CourseFit,
+  { trace }: ScaledReadings,
+  level: number,
+): OrderCandidate | null {
+  const held = searchCourse(heldOrderLaw(order), trace, condition);
+  if (held.status !== "found") return null;
+  const rise = Math.max(held.residualSquares - found.residualSquares, 0);
+  const effective = effectiveDeviation(noise);
+  if (noise.degreesOfFreedom === 0 || effective === 0) {
+    // Nothing to judge a difference by: the sums of squares only rank.
+    return { order, excess: rise, pValue: 1, excluded: false };
+  }
+  const excess = rise / effective ** 2;
+  const pValue = fSurvival(excess, 1, noise.degreesOfFreedom);
+  return { order, excess, pValue, excluded: pValue < 1 - level };
+}
+
+function verdictOf(
+  report: IntegratedLawFit,
+  candidates: readonly OrderCandidate[],
+  level: number,
+): { readonly reading: OrderReading; readonly order: number | null; readonly reason: string } {
+  const { lackOfFit, endConflict, orderStandardError, degreesOfFreedom } = report;
+  const open = candidates.filter(({ excluded }) => !excluded).map(({ order }) => order);
+  const none = (reason: string) => ({ reading: "none", order: null, reason }) as const;
+  if (endConflict !== null && Math.abs(endConflict) >= CONFLICT_BLOCKS)
+    return none("The stated end signal contradicts the readings, so that no order should be claimed.");
+  if (lackOfFit !== null && lackOfFit.pValue < LACK_OF_FIT_LEVEL)
+    return none("No single order follows this trace: its residuals hold a pattern.");
+  if (open.length === 0)
+    return none(
+      `Orders ${inARow(candidates.map(({ order }) => numberInWords(order)))} are all excluded; the free order is ${numberInWords(report.order.estimate ?? Number.NaN)}.`,
+    );
+  const consistent = (reason: string) => ({ reading: "consistent", order: null, reason }) as const;
+  const names = inARow(open.map(numberInWords));
+  const [only] = open;
+  if (open.length > 1 || only === undefined)
+    return consistent(
+      `Orders ${names} are all consistent with this trace; follow it further or state the end signal.`,
+    );
+  const halfWidth =
+    orderStandardError === null
+      ? Number.POSITIVE_INFINITY
+      : orderStandardError * studentTFactor(level, degreesOfFreedom);
+  if (!(halfWidth <= ORDER_HALF_WIDTH_WEAKENS))
+    return consistent(
+      `The trace is consistent with order ${names}, yet tells its order too poorly to show it.`,
+    );
+  return {
+    reading: "is",
+    order: only,
+    reason: `Order ${names} is shown: the other candidates are excluded.`,
+  };
+}

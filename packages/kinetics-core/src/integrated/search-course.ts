@@ -1,0 +1,114 @@
+import { fitNonlinear, type NonlinearSolution } from "kinetics-core/least-squares";
+import type { CourseLaw } from "./course-law";
+import type { EndCondition } from "./end-signal";
+import { type ProjectedCourse, projectedCourse } from "./projected-course";
+
+/** A trace on its own scales: time from the first reading to 1 at the last, signal from the first over the range. */
+export interface ScaledTrace {
+  readonly time: Float64Array;
+  readonly signal: Float64Array;
+  /** What a reading is uncertain by at least, for it is a double: half their spacing at the largest signal. */
+  readonly rounding: number;
+}
+
+export interface CourseFound {
+  readonly status: "found";
+  readonly theta: Float64Array;
+  readonly held: readonly boolean[];
+  readonly residuals: Float64Array;
+  readonly residualSquares: number;
+  /** Evaluated at `theta`. */
+  readonly problem: ProjectedCourse;
+}
+
+export type CourseSearch = CourseFound | { readonly status: "not-converged"; readonly message: string };
+
+/** Readings on which starting values compete. */
+const THINNED_READINGS = 80;
+/** Starts that are followed to their end: below first order the sum of squares has a least between each two readings. */
+const FOLLOWED_STARTS = 4;
+/** Steps of one descent; a well-posed one takes about ten. */
+const MOST_EVALUATIONS = 300;
+
+/** The least of the sum of squares over θ, from many starts on a thinned trace and then on all readings. */
+export function searchCourse(law: CourseLaw, trace: ScaledTrace, end: EndCondition): CourseSearch {
+  const thinned = thin(trace);
+  const heats = projectedCourse(law, thinned.time, thinned.signal, end);
+  const starts = ranked(heats, startsOf(law, heats)).slice(0, FOLLOWED_STARTS);
+  const ends = starts
+    .flatMap((start) => descend(law, heats, start))
+    .sort((a, b) => a.residualSquares - b.residualSquares);
+  const problem = projectedCourse(law, trace.time, trace.signal, end);
+  for (const { parameters } of ends) {
+    const [fit] = descend(law, problem, parameters);
+    if (fit === undefined) continue;
+    const residuals = new Float64Array(problem.residuals);
+    problem.evaluate(fit.parameters, residuals, null);
+    return {
+      status: "found",
+      theta: fit.parameters,
+      held: fit.held,
+      residuals,
+      residualSquares: fit.residualSquares,
+      problem,
+    };
+  }
+  return {
+    status: "not-converged",
+    message:
+      "The search for the course of this trace did not settle; check its time and signal columns, or hold the order.",
+  };
+}
+
+/**
+ * One descent; nothing where it did not settle. A course that ends before the last reading has a corner there, and the
+ * sum of squares may have its least where a reading meets the corner: no gradient vanishes at such a point, and the
+ * descent that can get no lower has arrived.
+ */
+function descend(law: CourseLaw, problem: ProjectedCourse, start: ArrayLike<number>): NonlinearSolution[] {
+  const fit = fitNonlinear(problem, start, { mostEvaluations: MOST_EVALUATIONS });
+  if (fit.status === "converged") return [fit];
+  if (!("parameters" in fit)) return [];
+  return (law.endOfCourse?.(fit.parameters) ?? Number.POSITIVE_INFINITY) < 1 ? [fit] : [];
+}
+
+function thin({ time, signal }: ScaledTrace): Pick<ScaledTrace, "time" | "signal"> {
+  if (time.length <= THINNED_READINGS) return { time, signal };
+  const pick = (column: Float64Array) =>
+    Float64Array.from(
+      { length: THINNED_READINGS },
+      (_, i) => column[Math.round((i * (column.length - 1)) / (THINNED_READINGS - 1))] ?? Number.NaN,
+    );
+  return { time: pick(time), signal: pick(signal) };
+}
+
+/** All combinations of the parameters' own starts. */
+function startsOf(law: CourseLaw, { bounds }: ProjectedCourse): number[][] {
+  return law.parameters.reduce<number[][]>(
+    (tuples, { starts }, j) => {
+      const [low, high] = bounds[j] ?? [Number.NEGATIVE_INFINITY, Number.POSITIVE_INFINITY];
+      const within = starts.filter((start) => start >= low && start <= high);
+      return tuples.flatMap((tuple) => within.map((start) => [...tuple, start]));
+    },
+    [[]],
+  );
+}
+
+/** Best first; starts at which the law has no finite value are left out. */
+function ranked(problem: ProjectedCourse, starts: readonly number[][]): number[][] {
+  const residuals = new Float64Array(problem.residuals);
+  return starts
+    .map((start) => {
+      const valid = problem.evaluate(Float64Array.from(start), residuals, null);
+      return { start, squares: valid ? sumOfSquares(residuals) : Number.POSITIVE_INFINITY };
+    })
+    .filter(({ squares }) => Number.isFinite(squares))
+    .sort((a, b) => a.squares - b.squares)
+    .map(({ start }) => start);
+}
+
+function sumOfSquares(values: Float64Array): number {
+  let sum = 0;
+  for (let i = 0; i < values.length; i++) sum += (values[i] ?? Number.NaN) ** 2;
+  return sum;
+}
