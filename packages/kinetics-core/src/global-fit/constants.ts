@@ -6,7 +6,7 @@
 export const STEP_TOLERANCE = 1e-6;
 
 /** The same while the fit is still looking for its neighbourhood on few points. */
-export const COARSE_TOLERANCE = 1e-4;
+export const COARSE_TOLERANCE = 1e-3;
 
 /** The same where the residuals are so small that STEP_TOLERANCE would show among them. */
 export const FINE_TOLERANCE = 1e-10;
@@ -21,7 +21,7 @@ export const MOST_STEPS = 2000;
 export const MOST_REJECTIONS = 60;
 
 /** Points a run on which the search begins. The full traces only polish what these have found. */
-export const COARSE_POINTS = 48;
+export const COARSE_POINTS = 32;
 
 /** Largest change of the logarithm of the rate in one step: beyond it a course may lie flat at its end. */
 export const LARGEST_LOG_STEP = 1;
@@ -32,14 +32,20 @@ export const LARGEST_ORDER_STEP = 1;
 /** Passes over the data after which a search gives up. Four to eight are usual. */
 export const MOST_PASSES = 80;
 
-/** Predicted fall of the sum of squares, in residual variances, at which the coarse search ends: 3 % of a standard error. */
-export const COARSE_SETTLED = 1e-3;
+/** Predicted fall of the sum of squares, in residual variances, at which the coarse search ends. */
+export const COARSE_SETTLED = 0.1;
 
-/** The same for the full traces: a tenth of a standard error. That step is taken too and leaves a hundredth. */
-export const SETTLED = 1e-2;
+/**
+ * The same for the full traces: a third of a standard error. That step is taken too and leaves a hundredth, less than
+ * the pooled fit, a start and a comparison, has to be known.
+ */
+export const SETTLED = 0.1;
 
-/** Step of the outer loop, in standard errors, at which it has settled; that step is taken too. */
-export const OUTER_SETTLED = 0.01;
+/**
+ * Step of the outer loop, in standard errors, at which it has settled. The step is taken; the next would be two to four
+ * hundredths of it. Simulation.
+ */
+export const OUTER_SETTLED = 0.1;
 
 /** Linearisations of the outer loop. Two or three are usual. */
 export const MOST_LINEARISATIONS = 25;

@@ -54,10 +54,12 @@ export type StudyFit =
 export function fitStudy(study: PreparedStudy, level: number, options: GlobalFitOptions): StudyFit {
   const shouldStop = options.shouldStop ?? (() => false);
   const names = parameterNames(study);
-  const begun = beginning(study, options, shouldStop);
-  if (begun === null) return refused(noCourse());
-  const { theta, logRate, noise } = begun;
   const pass = new StudyPass(study);
+  const begun = beginning(study, pass, options, shouldStop);
+  if (begun === null) return refused(shouldStop() ? stopped() : noCourse());
+  const { theta, logRate, noise } = begun;
+  pass.read(study);
+  pass.reset();
   pass.setNoise(noise);
   const search = new PooledSearch(pass, theta, logRate);
   let tolerance = STEP_TOLERANCE;
@@ -116,13 +118,19 @@ export function parameterNames(study: PreparedStudy): readonly string[] {
 }
 
 /** θ found on thinned traces, from the start that fits best; null where no start has a course in every run. */
-function beginning(study: PreparedStudy, options: GlobalFitOptions, shouldStop: () => boolean) {
+function beginning(
+  study: PreparedStudy,
+  pass: StudyPass,
+  options: GlobalFitOptions,
+  shouldStop: () => boolean,
+) {
   const few = thinned(study);
   const rates = earlyRates(few);
   const noise = pointNoise(study);
   let best: { theta: Float64Array; logRate: Float64Array; own: number } | null = null;
   for (const start of starts(study, few, rates, options)) {
-    const pass = new StudyPass(few);
+    pass.read(few);
+    pass.reset();
     pass.setNoise(noise);
     const logRate = meanLogRateDerivatives(few, start);
     const search = new PooledSearch(pass, start, logRate);

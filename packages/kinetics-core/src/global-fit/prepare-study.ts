@@ -2,7 +2,7 @@ import type { CourseLaw, StudySpecies } from "./course-law";
 import { equationCourse } from "./equation-course";
 import { failure, type GlobalFitFailure, type GlobalFitInput, type GlobalFitRun } from "./global-fit";
 import { powerCourse } from "./power-course";
-import type { PreparedRun, PreparedStudy } from "./prepared-study";
+import { type PreparedRun, type PreparedStudy, spacingOf } from "./prepared-study";
 
 /** Reads a study into typed arrays, or says which argument keeps it from being fitted. */
 
@@ -225,7 +225,8 @@ function preparedRun(
   scale: number,
 ): PreparedRun {
   const concentrations = Float64Array.from(species, ({ name }) => run.concentrations[name] ?? 0);
-  const signal = new Float64Array(run.signal);
+  const time = inRow(run.time);
+  const signal = inRow(run.signal);
   let least = -Number.MAX_VALUE;
   let most = Number.MAX_VALUE;
   species.forEach(({ stoichiometricNumber }, i) => {
@@ -237,8 +238,9 @@ function preparedRun(
   return {
     label: run.label,
     concentrations,
-    time: new Float64Array(run.time),
+    time,
     signal,
+    spacing: spacingOf(time),
     followedStart: concentrations[followed] ?? 0,
     least,
     most,
@@ -253,6 +255,11 @@ function preparedRun(
     timeZero:
       timeZero === undefined ? null : { value: timeZero.value, variance: timeZero.standardUncertainty ** 2 },
   };
+}
+
+/** As doubles in a row; what is that already is read where it stands, never written. */
+function inRow(values: ArrayLike<number>): Float64Array {
+  return values instanceof Float64Array ? values : new Float64Array(values);
 }
 
 /** Extent that the signal runs through, noise and all, but no more than there is. */

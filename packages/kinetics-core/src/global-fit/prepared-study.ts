@@ -9,6 +9,8 @@ export interface PreparedRun {
   readonly concentrations: Float64Array;
   readonly time: Float64Array;
   readonly signal: Float64Array;
+  /** Distance of the times where they are equally spaced, else 0. */
+  readonly spacing: number;
   readonly followedStart: number;
   /** Extents at which a product or a reactant is used up; ∓Number.MAX_VALUE where none is. */
   readonly least: number;
@@ -63,5 +65,18 @@ function thinnedRun(run: PreparedRun, points: number): PreparedRun {
     time[i] = run.time[from] ?? 0;
     signal[i] = run.signal[from] ?? 0;
   }
-  return { ...run, time, signal };
+  return { ...run, time, signal, spacing: spacingOf(time) };
+}
+
+/** A clock that strays from equal distances by less than this part of one counts as even. */
+const EVEN = 1e-6;
+
+/** Distance of equally spaced times; 0 where they are not. */
+export function spacingOf(time: Float64Array): number {
+  const count = time.length;
+  const first = time[0] ?? 0;
+  const spacing = ((time[count - 1] ?? 0) - first) / (count - 1);
+  const most = EVEN * spacing;
+  for (let i = 1; i < count; i++) if (Math.abs((time[i] ?? 0) - first - i * spacing) > most) return 0;
+  return spacing;
 }

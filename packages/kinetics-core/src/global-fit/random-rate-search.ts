@@ -19,7 +19,7 @@ import type { StudyPass } from "./study-pass";
  *   1. a pass at θ with each run at its own ln k + b_j gives r, J;
  *   2. r̃ = r + J e b_j is the residual that the linear model has at b_j = 0: g̃ = g + G e b_j,
  *      r̃ᵀr̃ = rᵀr + 2 b_j eᵀg + b_j² eᵀG e, with which `randomRateInference` gives the step in θ, τ² and the new b_j;
- *   3. until no parameter moves by more than a hundredth of its standard error.
+ *   3. until no parameter moves by more than a tenth of its standard error; that step is taken too.
  *
  * The loop is Gauss and Newton's: its error after a step is of the second order in b_j's own error, so two or three
  * passes settle it. A fixed point is the least of the penalised sum of squares at its own τ², whatever the way there.
@@ -65,10 +65,11 @@ export function randomRateSearch(
     const inference = randomRateInference(information, priors, {
       undetermined: settings.undetermined,
       level: settings.level,
+      ...(linearisations === 1 ? { betweenRunVariance: spreadOfOwn(information) } : {}),
     });
     if (inference.status !== "determined") return { status: "failed", inference };
     const part = partOfStep(inference.step, logRate);
-    const settled = part === 1 && isSettled(inference);
+    const settled = linearisations > 1 && part === 1 && isSettled(inference);
     take(pass, theta, bounds, inference, part);
     if (settled || linearisations === MOST_LINEARISATIONS)
       return {
@@ -83,15 +84,17 @@ export function randomRateSearch(
   }
 }
 
-/** A run as `kinetics-core/inference` reads it: about the shared ln k, though linearised at its own. */
+/**
+ * A run as `kinetics-core/inference` reads it: about the shared ln k, though linearised at its own. Its arrays are those
+ * of the run and hold until the next pass.
+ */
 export function informationOf(run: RunLinearisation, label: string): RunInformation {
-  const { gram, gradient, deviation, points, residualSquares } = run;
+  const { gram, gradient, shifted, deviation, points, residualSquares } = run;
   const p = gradient.length;
-  const shifted = gradient.slice();
   for (let i = 0; i < p; i++) shifted[i] = (gradient[i] ?? 0) + deviation * (gram[i * p] ?? 0);
   return {
     label,
-    gram: gram.slice(),
+    gram,
     gradient: shifted,
     residualSquares: Math.max(
       0,
@@ -130,6 +133,24 @@ function partOfStep(step: Float64Array, logRate: Float64Array): number {
   let inLogRate = 0;
   for (let i = 0; i < step.length; i++) inLogRate += (logRate[i] ?? 0) * (step[i] ?? 0);
   return Math.min(1, LARGEST_LOG_STEP / Math.abs(inLogRate));
+}
+
+/**
+ * τ² for the first step: the spread of the runs' own ln k about their mean, in closed form. The pooled θ is off by
+ * about as much as the runs scatter, so a search for the best τ² there would be wasted.
+ */
+function spreadOfOwn(information: readonly RunInformation[]): number {
+  let count = 0;
+  let sum = 0;
+  let squares = 0;
+  for (const { gram, gradient } of information) {
+    if (!((gram[0] ?? 0) > 0)) continue;
+    const own = (gradient[0] ?? 0) / (gram[0] ?? 1);
+    count++;
+    sum += own;
+    squares += own * own;
+  }
+  return count > 1 ? Math.max(0, squares - (sum * sum) / count) / (count - 1) : 0;
 }
 
 function isSettled({ step, covariance }: RandomRateInference): boolean {

@@ -102,7 +102,7 @@ function pooledEstimates(input: GlobalFitInput, fitted: FittedStudy, level: numb
     return estimateOf(
       pooled.theta[place] ?? Number.NaN,
       variance > 0 ? Math.sqrt(variance) : null,
-      pooled.freedom,
+      roundedFreedom(pooled.freedom),
       level,
     );
   };
@@ -121,7 +121,7 @@ function fittedRun(fitted: FittedStudy, index: number, level: number): FittedRun
   const ratio = scalePlace(study) < 0 ? 1 : (linearisedAt[scalePlace(study)] ?? 1);
   const rho = autocorrelation(linearisation);
   const freedom = told.points - 2;
-  const independent = twoDigits((freedom * (1 - rho)) / (1 + rho));
+  const independent = roundedFreedom((freedom * (1 - rho)) / (1 + rho));
   const g = told.gram[0] ?? 0;
   const squares = Math.max(0, told.residualSquares - (g > 0 ? (told.gradient[0] ?? 0) ** 2 / g : 0));
   const offset =
@@ -151,8 +151,12 @@ function residualDeviation({ information }: FittedStudy): number | null {
   return freedom > parameters ? Math.sqrt(squares / (freedom - parameters)) : null;
 }
 
-/** Effective readings are known no better, and equal numbers share one quantile of Student's t. */
-function twoDigits(value: number): number {
-  const unit = 10 ** Math.max(0, Math.floor(Math.log10(value)) - 1);
+/** Degrees of freedom beyond which Student's quantile is the normal one to half a per cent. */
+const MANY = 300;
+
+/** Rounded down to a digit, since effective readings are known no better, and without end where they are many. */
+function roundedFreedom(value: number): number {
+  if (value > MANY) return Number.POSITIVE_INFINITY;
+  const unit = 10 ** Math.floor(Math.log10(value));
   return value > 1 ? Math.floor(value / unit) * unit : value;
 }

@@ -7,8 +7,10 @@ export interface RunLinearisation {
   readonly gram: Float64Array;
   /** Jᵀr, r = measured − fitted. */
   readonly gradient: Float64Array;
+  /** The gradient moved to the shared ln k; written by `informationOf`. */
+  readonly shifted: Float64Array;
   residualSquares: number;
-  readonly points: number;
+  points: number;
   /** r₁ of the residuals about their mean. */
   lagOne: number;
   /** Signal at the mixing time, with the offset. */
@@ -31,12 +33,27 @@ export interface RunLinearisation {
   readonly eliminated: readonly Float64Array[];
 }
 
-export function runLinearisation(parameters: number, nuisances: number, points: number): RunLinearisation {
-  return {
-    gram: new Float64Array(parameters * parameters),
-    gradient: new Float64Array(parameters),
+/** Linearisations of all runs, their numbers in one stretch of memory: a fit makes hundreds of such small arrays. */
+export function runLinearisations(
+  points: readonly number[],
+  parameters: number,
+  nuisances: number,
+): readonly RunLinearisation[] {
+  const p = parameters;
+  const size = 1 + p + nuisances;
+  const buffer = new ArrayBuffer(8 * points.length * (p * p + 2 * p + size * size + nuisances * size));
+  let used = 0;
+  const stretch = (length: number) => {
+    const view = new Float64Array(buffer, used, length);
+    used += 8 * length;
+    return view;
+  };
+  return points.map((count) => ({
+    gram: stretch(p * p),
+    gradient: stretch(p),
+    shifted: stretch(p),
     residualSquares: 0,
-    points,
+    points: count,
     lagOne: 0,
     startSignal: 0,
     lastExtent: 0,
@@ -45,7 +62,7 @@ export function runLinearisation(parameters: number, nuisances: number, points: 
     scaleRatio: 1,
     noise: 0,
     firstStep: 0,
-    moments: new Float64Array((1 + parameters + nuisances) ** 2),
-    eliminated: Array.from({ length: nuisances }, () => new Float64Array(1 + parameters + nuisances)),
-  };
+    moments: stretch(size * size),
+    eliminated: Array.from({ length: nuisances }, () => stretch(size)),
+  }));
 }

@@ -1,6 +1,6 @@
 import type { PreparedStudy } from "./prepared-study";
 import { parameterCount, scalePlace } from "./prepared-study";
-import { type RunLinearisation, runLinearisation } from "./run-linearisation";
+import { type RunLinearisation, runLinearisations } from "./run-linearisation";
 import { TracePass } from "./trace-pass";
 
 /**
@@ -8,7 +8,7 @@ import { TracePass } from "./trace-pass";
  * taken here once; a pass allocates nothing.
  */
 export class StudyPass {
-  readonly study: PreparedStudy;
+  study: PreparedStudy;
   readonly parameters: number;
   readonly runs: readonly RunLinearisation[];
   /** Σ_j JᵀJ and Σ_j Jᵀr with the observation of ε·l, in signal². */
@@ -28,13 +28,31 @@ export class StudyPass {
     this.parameters = parameterCount(study);
     this.ratioPlace = scalePlace(study);
     const nuisances = (study.hasTimeZero ? 1 : 0) + (study.scaleDeviationVariance > 0 ? 1 : 0);
-    this.runs = study.runs.map((run) => {
-      const linearisation = runLinearisation(this.parameters, nuisances, run.time.length);
-      linearisation.timeZero = run.timeZero?.value ?? 0;
-      return linearisation;
-    });
+    const points = study.runs.map((run) => run.time.length);
+    this.runs = runLinearisations(points, this.parameters, nuisances);
+    this.reset();
     this.gram = new Float64Array(this.parameters * this.parameters);
     this.gradient = new Float64Array(this.parameters);
+  }
+
+  /** Goes on with other readings of the same runs; passes are counted anew. */
+  read(study: PreparedStudy): void {
+    this.study = study;
+    this.trace.read(study);
+    this.passes = 0;
+    this.runs.forEach((run, j) => {
+      run.points = study.runs[j]?.time.length ?? 0;
+    });
+  }
+
+  /** Back to where every run starts: no deviation of its own, its nuisances as stated. */
+  reset(): void {
+    this.runs.forEach((run, j) => {
+      run.deviation = 0;
+      run.timeZero = this.study.runs[j]?.timeZero?.value ?? 0;
+      run.scaleRatio = 1;
+      run.firstStep = 0;
+    });
   }
 
   /** Linearises all runs; false where some run has no finite course at θ. */

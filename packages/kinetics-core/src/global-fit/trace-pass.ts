@@ -17,7 +17,7 @@ import type { RunLinearisation } from "./run-linearisation";
  * with ξ, f = dξ/dτ and the integrals as polynomials on each step: no logarithm and no power a point.
  */
 export class TracePass {
-  private readonly study: PreparedStudy;
+  private study: PreparedStudy;
   private readonly course: Course;
   private readonly tasks: readonly CourseTask[];
   private readonly sums: ColumnSums;
@@ -42,6 +42,11 @@ export class TracePass {
     this.lawParameters = new Float64Array(study.law.free.length);
     this.tasks = study.runs.map(({ least, most, span }) => ({ system: study.law, least, most, span }));
     this.course = new Course({ system: study.law, least: 0, most: 0, span: 1 });
+  }
+
+  /** Goes on with other readings of the same runs. */
+  read(study: PreparedStudy): void {
+    this.study = study;
   }
 
   /**
@@ -141,7 +146,7 @@ export class TracePass {
 
   private takePoints(run: PreparedRun, from: number, until: number, rate: number, origin: number): void {
     const { moments, sums, model } = this;
-    moments.take(run.time, run.signal, from, until, rate, origin, model, sums.count > 0);
+    moments.take(run.time, run.signal, from, until, rate, origin, model, sums.count > 0, run.spacing);
     sums.add(moments);
   }
 
