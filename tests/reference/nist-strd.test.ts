@@ -1,4 +1,10 @@
-import { fitLinear, fitNonlinear, type NonlinearProblem, powersOf } from "kinetics-core/least-squares";
+import {
+  fitLinear,
+  fitNonlinear,
+  type NonlinearProblem,
+  powersOf,
+  secondOpinion,
+} from "kinetics-core/least-squares";
 import { describe, expect, it } from "vitest";
 import fixture from "./nist-strd.fixture.json";
 import { STRD_MODELS, type StrdModel } from "./nist-strd-models";
@@ -87,6 +93,28 @@ describe("certified nonlinear sets (NIST StRD)", () => {
     expect(digits([scatter], [set.residualDeviation])).toBeGreaterThan(LEAST_DIGITS);
     expect(digits(Array.from(fit.parameters), set.certified)).toBeGreaterThan(LEAST_DIGITS);
     expect(digits(deviations, set.certifiedDeviations)).toBeGreaterThan(LEAST_DIGITS);
+  });
+});
+
+describe("a second optimiser on the certified nonlinear sets", () => {
+  it("agrees with every fit that it arrives at, and never finds a better one", () => {
+    const opinions = nonlinear.flatMap((set) =>
+      (set.starts ?? []).map((start) => {
+        const fit = fitNonlinear(problemOf(set), start);
+        if (fit.status !== "converged") throw new Error(fit.message);
+        return { name: set.name, opinion: secondOpinion(problemOf(set), fit) };
+      }),
+    );
+    for (const { opinion } of opinions) {
+      expect(opinion.status).not.toBe("better");
+      if (opinion.status === "agrees") expect(opinion.digits).toBeGreaterThan(6);
+    }
+    // One standard error away, the exponent of Nelson and the cubics of Thurber are out of its reach.
+    const missing = opinions
+      .filter(({ opinion }) => opinion.status === "not-arrived")
+      .map(({ name }) => name);
+    expect(missing.filter((name) => name !== "Nelson" && name !== "Thurber")).toEqual([]);
+    expect(missing.length).toBeLessThanOrEqual(4);
   });
 });
 

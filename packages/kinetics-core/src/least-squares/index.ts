@@ -22,5 +22,6 @@ export {
   projectOn,
 } from "./orthonormal-polynomials";
 export { type ProfileEnd, type ProfileInterval, profileInterval } from "./profile-interval";
+export { type SecondOpinion, type SecondOpinionOptions, secondOpinion } from "./second-opinion";
 export { correlationOf, covarianceOf, standardErrorsOf } from "./solution-uncertainty";
 export { powersOf, type TwicePrecise } from "./twice-precision";
