@@ -5,6 +5,8 @@ import type { Propagated } from "./propagate";
 
 /** Charges that do not balance by more than this part of all charge: a counter-ion is missing, not a rounding. */
 const LARGEST_IMBALANCE = 0.01;
+/** In size: beyond any ion, polyelectrolytes included. */
+const LARGEST_CHARGE = 1e4;
 
 /** A solved solution in plain records by species, with its ionic strength. */
 export function compositionOf(
@@ -39,7 +41,7 @@ function strengthOf(
   charges: MixingInput["charges"],
 ): Pick<Composition, "ionicStrength" | "flags"> {
   if (charges === undefined) return { ionicStrength: null, flags: [] };
-  const numbers = species.map((name) => (Object.hasOwn(charges, name) ? charges[name] : undefined));
+  const numbers = species.map((name) => chargeOf(charges, name));
   const unknown = species.filter((_, i) => numbers[i] === undefined && (concentrations[i] ?? 0) > 0);
   if (unknown.length > 0)
     return {
@@ -60,6 +62,12 @@ function strengthOf(
     ionicStrength: { value, standardUncertainty: Math.sqrt(variance) },
     flags: imbalanceFlags(label, concentrations, known),
   };
+}
+
+/** Undefined where it is not given or is no charge that an ion has. */
+function chargeOf(charges: Readonly<Record<string, number>>, species: string): number | undefined {
+  const charge = Object.hasOwn(charges, species) ? charges[species] : undefined;
+  return charge !== undefined && Math.abs(charge) <= LARGEST_CHARGE ? charge : undefined;
 }
 
 function imbalanceFlags(

@@ -58,7 +58,7 @@ export interface MixedSolution {
 /** A pipette, burette or flask that is used more than once. */
 export interface Device {
   readonly name: string;
-  /** Relative standard uncertainty of its calibration: it delivers this part too much or too little every time. */
+  /** Relative standard uncertainty of its calibration, 0 to 1: it delivers this part too much or too little every time. */
   readonly relative: number;
 }
 
@@ -83,6 +83,7 @@ export type MixingRefusal =
   | "volume-missing"
   | "volume-negative"
   | "uncertainty-negative"
+  | "beyond-precision"
   | "no-total"
   | "above-the-mark"
   | "stock-missing"

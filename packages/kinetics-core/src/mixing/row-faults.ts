@@ -5,24 +5,42 @@ import type { Device, MeasuredVolume, MixingRefusal, Portion, RefusedRow, Stock,
 
 /** Rounding of sums and of unit conversion must not put a full flask above its mark. */
 const ABOVE_THE_MARK = 1e-9;
+/** Sizes, zero aside, whose products, quotients and squares stay within what a double holds. */
+const LEAST_SIZE = 1e-40;
+const GREATEST_SIZE = 1e40;
 
 export function refused(label: string, code: MixingRefusal, message: string): RefusedRow {
   return { status: "refused", label, code, message };
 }
 
+/** An uncertainty may be as small as it likes: it then counts for nothing. */
+function isBenchSize(value: number, uncertainty: number): boolean {
+  const size = Math.abs(value);
+  return (
+    (size === 0 || (size >= LEAST_SIZE && size <= GREATEST_SIZE)) && !(Math.abs(uncertainty) > GREATEST_SIZE)
+  );
+}
+
+function beyondPrecision(label: string, what: string): RefusedRow {
+  return refused(
+    label,
+    "beyond-precision",
+    `${what} has a size that no bench has. Check the power of ten and the unit.`,
+  );
+}
+
 export function deviceFault({ name, relative }: Device): RefusedRow | null {
-  if (Number.isFinite(relative) && relative >= 0) return null;
+  if (relative >= 0 && relative <= 1) return null;
   return refused(
     name,
     "bad-device",
-    `The calibration uncertainty of ${name} is not a number from 0 up. Give it as a part of the volume, 0.002 for 0.2 %.`,
+    `The calibration uncertainty of ${name} is not a number from 0 to 1. Give it as a part of the volume, 0.002 for 0.2 %.`,
   );
 }
 
 export function stockFault({ name, solutes }: Stock): RefusedRow | null {
   for (const solute of solutes) {
     const { value, standardUncertainty } = solute.concentration;
-    const isPositive = (number: number) => Number.isFinite(number) && number > 0;
     if (
       !Number.isFinite(value) ||
       value < 0 ||
@@ -34,7 +52,8 @@ export function stockFault({ name, solutes }: Stock): RefusedRow | null {
         "bad-concentration",
         `Stock ${name}: the concentration of ${solute.name} and its uncertainty must be numbers from 0 up. Correct them.`,
       );
-    const species = Object.entries(solute.species).find(([, count]) => !isPositive(count));
+    if (!isBenchSize(value, standardUncertainty)) return beyondPrecision(name, `Stock ${name}`);
+    const species = Object.entries(solute.species).find(([, count]) => !(count > 0 && isBenchSize(count, 0)));
     if (species !== undefined)
       return refused(
         name,
@@ -87,6 +106,7 @@ function volumeFault(
 ): RefusedRow | null {
   if (!Number.isFinite(volume))
     return refused(label, "volume-missing", `${what} is missing. Give it, or 0 where there is none.`);
+  if (!isBenchSize(volume, standardUncertainty)) return beyondPrecision(label, what);
   if (volume < 0)
     return refused(
       label,

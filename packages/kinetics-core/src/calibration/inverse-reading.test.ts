@@ -1,0 +1,72 @@
+import { describe, expect, it } from "vitest";
+import { confidenceBand, predictionBand } from "./bands";
+import { type Calibration, calibrate } from "./calibrate";
+import type { CalibrateInput, CalibrationInput, CalibrationLine } from "./calibration";
+import { fitCalibrationLine } from "./fit-calibration-line";
+import { readConcentration, standardAdditions } from "./inverse-reading";
+
+function line(input: CalibrationInput): CalibrationLine {
+  const result = fitCalibrationLine(input);
+  if (result.status !== "fitted") throw new Error(result.message);
+  return result;
+}
+
+function calibrated(input: CalibrateInput): Calibration {
+  const result = calibrate(input);
+  if (result.status !== "calibrated") throw new Error(result.message);
+  return result;
+}
+
+const codes = (result: Calibration) => result.flags.map((flag) => flag.code);
+
+/** Six standards on y = 1 + 2 x with errors of one size, alternating. */
+const x = [0, 1, 2, 3, 4, 5];
+const scattered = x.map((value, i) => 1 + 2 * value + 0.05 * (i % 2 === 0 ? 1 : -1));
+
+describe("readings", () => {
+  const fitted = line({ concentrations: x, signals: scattered });
+
+  it("ends of the interval are where the prediction band passes through the signal", () => {
+    const { interval } = readConcentration(fitted, { signal: 7.3, replicates: 3 });
+    const [low, high] = interval ?? [0, 0];
+    expect(predictionBand(fitted, low, 3).interval?.[1]).toBeCloseTo(7.3, 9);
+    expect(predictionBand(fitted, high, 3).interval?.[0]).toBeCloseTo(7.3, 9);
+  });
+
+  it("standard additions are the mirrored reading of an exact zero", () => {
+    const added = standardAdditions(fitted);
+    const { intercept, slope } = fitted;
+    expect(added.estimate).toBeCloseTo((intercept.estimate ?? 0) / (slope.estimate ?? 1), 12);
+    const [low, high] = added.interval ?? [0, 0];
+    expect(confidenceBand(fitted, -low).interval?.[0]).toBeCloseTo(0, 9);
+    expect(confidenceBand(fitted, -high).interval?.[1]).toBeCloseTo(0, 9);
+  });
+
+  it("have no interval, and say why, where the slope may be zero", () => {
+    const flat = calibrated({
+      concentrations: x,
+      signals: [1, 1.4, 0.8, 1.5, 0.9, 1.3],
+      readings: [[1.1]],
+    });
+    expect(flat.readings[0]?.interval).toBeNull();
+    expect(flat.readings[0]?.g).toBeGreaterThan(1);
+    expect(flat.readings[0]?.set?.kind).not.toBe("bounded");
+    expect(codes(flat)).toEqual(expect.arrayContaining(["slope-not-shown", "reading-unbounded"]));
+    const level = calibrated({ concentrations: [0, 1, 2], signals: [1, 2, 1], readings: [[1]] });
+    expect(level.readings[0]).toMatchObject({ estimate: null, interval: null });
+  });
+
+  it("outside the standards, below the limits, or with restless replicates are named", () => {
+    const result = calibrated({
+      concentrations: x,
+      signals: scattered,
+      readings: [[13], [1.06], [1.3], [5, 6], [5]],
+    });
+    const message = (code: string) => result.flags.find((flag) => flag.code === code)?.message ?? "";
+    expect(message("reading-outside-standards")).toMatch(/^Reading 1 lies outside the standards, 0 to 5,/);
+    expect(message("reading-below-detection")).toMatch(/^Reading 2 is below/);
+    expect(message("reading-below-quantitation")).toMatch(/^Reading 3 is between/);
+    expect(message("reading-scatter")).toMatch(/^Reading 4 has/);
+    expect(codes(result)).not.toContain("reading-unbounded");
+  });
+});
