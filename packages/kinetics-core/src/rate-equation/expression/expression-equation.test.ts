@@ -155,6 +155,25 @@ describe("what is known of the equation", () => {
   });
 });
 
+describe("one name in several places", () => {
+  it("gathers what every place says of it", () => {
+    const c = 0.3;
+    const n = 1.2;
+    const f = c ** (n + 1) * 0.5 ** n;
+    expect(values(read("k [A] [A]^n [B]^n").equation, [c, 0.5], [n])).toEqual(
+      [f, ((n + 1) * f) / c, (n * f) / 0.5, f * Math.log(c * 0.5)].map((value) => expect.closeTo(value, 14)),
+    );
+    expect(values(read("k [A]^n [A]^n").equation, [c], [n])).toEqual(
+      [c ** 2.4, 2.4 * c ** 1.4, 2 * c ** 2.4 * Math.log(c)].map((value) => expect.closeTo(value, 14)),
+    );
+    expect(values(read("k n [A]^n").equation, [c], [n])).toEqual(
+      [n * c ** n, n * n * c ** (n - 1), c ** n * (1 + n * Math.log(c))].map((value) =>
+        expect.closeTo(value, 14),
+      ),
+    );
+  });
+});
+
 describe("limits", () => {
   it("eleven parameters are too many", () => {
     const text = `k (${"abcdfghijl".split("").join(" + ")})`;

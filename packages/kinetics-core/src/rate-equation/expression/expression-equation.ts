@@ -1,5 +1,6 @@
 import { type TypicalConcentration, typicalOf } from "../constant-parameter";
 import { START_OF_AN_ORDER } from "../law-of-powers";
+import { powerProduct } from "../power-product";
 import type { RateEquation } from "../rate-equation";
 import { compileExpression, type NamedSlots, type ParameterPlace } from "./compile-expression";
 import { type ExpressionFault, faultAt } from "./expression-fault";
@@ -9,6 +10,7 @@ import { expressionParameter } from "./expression-parameter";
 import { isNeverNegative, parametersInExponents } from "./expression-sign";
 import { expressionUnits } from "./expression-units";
 import { parseExpression } from "./parse-expression";
+import { powersInProgram } from "./powers-in-program";
 import { printExpression } from "./print-expression";
 import { type RateConstantOf, rateConstantOf } from "./rate-constant-of";
 import { runProgram } from "./run-program";
@@ -47,6 +49,7 @@ export function expressionEquation(text: string, options: ExpressionOptions): Ex
   const fitted = written.filter((name) => name !== rateConstant.name);
   const program = compileExpression(node, slotsOf(species, fitted, rateConstant.name));
   if ("withoutValue" in program) return withoutValue(program.withoutValue);
+  const powers = powersInProgram(program, species.length);
   const units = expressionUnits(node, fitted);
   const exponents = parametersInExponents(node);
   const atStart = {
@@ -73,7 +76,7 @@ export function expressionEquation(text: string, options: ExpressionOptions): Ex
           atStart,
         );
       }),
-      evaluate: runProgram(program, species.length),
+      evaluate: powers === null ? runProgram(program, species.length) : powerProduct(powers).evaluate,
       reversible: !isNeverNegative(node, exponents),
       overallOrder: units.whole,
       simpler: [],
