@@ -9,6 +9,11 @@ import {
   type Trace,
   type TraceSurvey,
 } from "kinetics-core/initial-rate";
+import {
+  fitIntegratedLaw,
+  type IntegratedLawInput,
+  type IntegratedLawResult,
+} from "kinetics-core/integrated";
 import { fitRateLaw, type RateLawInput, type RateLawResult } from "kinetics-core/rate-law";
 import type { Corrections } from "@/app/_import/corrections";
 import { type ImportPreview, previewOf } from "@/app/_import/preview";
@@ -57,4 +62,8 @@ export function sweepLongTrace({ trace, options }: SweepTask): SlopeAtEnd[] {
 
 export function fitLargeLaw(input: RateLawInput): RateLawResult {
   return fitRateLaw(input);
+}
+
+export function fitLongTrace(input: IntegratedLawInput): IntegratedLawResult {
+  return fitIntegratedLaw(input);
 }

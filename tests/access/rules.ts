@@ -62,6 +62,7 @@ export const rules: Readonly<Record<string, Rule>> = {
   "POST /api/v1/studies/[studyId]/uploads/[uploadId]/preview": group(),
   "POST /api/v1/compute/calibration": member,
   "POST /api/v1/compute/initial-rate": member,
+  "POST /api/v1/compute/integrated-law": member,
   "POST /api/v1/compute/rate-law": member,
   "POST /api/v1/compute/saturation": member,
   "POST /api/v1/compute/temperature": member,

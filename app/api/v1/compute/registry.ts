@@ -6,6 +6,8 @@ import { calibrationRequest, calibrationResponse } from "./calibration/schema";
 import type { Computed } from "./estimate.schema";
 import { computeInitialRate } from "./initial-rate/compute";
 import { initialRateRequest, initialRateResponse } from "./initial-rate/schema";
+import { computeIntegratedLaw } from "./integrated-law/compute";
+import { integratedLawRequest, integratedLawResponse } from "./integrated-law/schema";
 import { computeRateLaw } from "./rate-law/compute";
 import { rateLawRequest, rateLawResponse } from "./rate-law/schema";
 import { computeSaturation } from "./saturation/compute";
@@ -49,6 +51,18 @@ export const initialRateComputation = computation({
   isQuick: ({ time, signal }) => Math.max(time.length, signal.length) <= QUICK_READINGS,
 });
 
+/** Every reading is passed some dozens of times, once for each step of each search. */
+const QUICK_COURSE_READINGS = 2000;
+
+export const integratedLawComputation = computation({
+  name: "integrated-law",
+  summary: "Order, rate constant, start, end and half-life of one trace by its integrated rate law.",
+  request: integratedLawRequest,
+  response: integratedLawResponse,
+  compute: computeIntegratedLaw,
+  isQuick: ({ time, signal }) => Math.max(time.length, signal.length) <= QUICK_COURSE_READINGS,
+});
+
 export const rateLawComputation = computation({
   name: "rate-law",
   summary: "Orders and rate constant from initial rates, with intervals and an uncertainty budget.",
@@ -89,6 +103,7 @@ export function runComputation<Request extends z.ZodType, Response extends z.Zod
 export const COMPUTATIONS: readonly Computation[] = [
   calibrationComputation,
   initialRateComputation,
+  integratedLawComputation,
   rateLawComputation,
   saturationComputation,
   temperatureComputation,
