@@ -4,6 +4,7 @@ import type { AnalysisTable } from "./analysis/analysis.table";
 import type { AuditEntryTable } from "./audit/audit.table";
 import type { BlobPartTable, BlobTable } from "./blob/blob.table";
 import type { ResearchGroupTable } from "./group/group.table";
+import type { ImportLayoutTable } from "./import-layout/import-layout.table";
 import type { MemberTable } from "./member/member.table";
 import type { RevisionTable } from "./revision/revision.table";
 import type { RunConcentrationTable, RunTable, RunVolumeTable } from "./run/run.table";
@@ -24,6 +25,7 @@ export interface Database {
   audit_entry: AuditEntryTable;
   blob: BlobTable;
   blob_part: BlobPartTable;
+  import_layout: ImportLayoutTable;
   incoming_upload: IncomingUploadTable;
   member: MemberTable;
   personal_token: PersonalTokenTable;

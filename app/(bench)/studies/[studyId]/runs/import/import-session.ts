@@ -1,3 +1,4 @@
+import type { Corrections } from "@/app/_import/corrections";
 import type { ImportPreview } from "@/app/_import/preview";
 
 /** What the routes of uploads answer, as the page holds it. */
@@ -15,6 +16,14 @@ export interface PreviewAnswer {
   readonly file: WaitingFile;
   readonly revision: number;
   readonly reading: ImportPreview;
+  /** How the group read files of the same heading before; null where it says nothing new. */
+  readonly remembered: RememberedReading | null;
+}
+
+export interface RememberedReading {
+  readonly corrections: Corrections;
+  readonly fileName: string;
+  readonly at: string;
 }
 
 export type Answer<Value> =

@@ -15,6 +15,7 @@ import { FileTable } from "./file-table";
 import { IssueList } from "./issue-list";
 import { LayoutBar } from "./layout-bar";
 import { RecipeGrid } from "./recipe-grid";
+import { RememberedLayout } from "./remembered-layout";
 import { StoreMargin } from "./store-margin";
 import { useDroppedFile } from "./use-dropped-file";
 import { usePreview } from "./use-preview";
@@ -199,6 +200,9 @@ export function ImportWorkbench({
               Choose another file
             </Button>
           </div>
+          {answer.remembered !== null && (
+            <RememberedLayout remembered={answer.remembered} onUse={preview.readAs} />
+          )}
           <LayoutBar reading={reading} signal={signal} change={change} />
           <FileTable reading={reading} species={species} change={change} />
           <IssueList issues={reading.issues} change={change} />

@@ -38,8 +38,12 @@ export function usePreview(studyId: string, uploadId: string | null) {
   }, [studyId, uploadId, corrections]);
 
   const change = useCallback((made: Change) => setCorrections((before) => applyChange(before, made)), []);
+  const readAs = useCallback(
+    (layout: Corrections) => setCorrections((before) => ({ ...before, ...layout })),
+    [],
+  );
   const forget = useCallback(() => setCorrections({}), []);
-  return { state, corrections, change, forget };
+  return { state, corrections, change, readAs, forget };
 }
 
 function earlierOf(state: PreviewState, uploadId: string): PreviewAnswer | null {
