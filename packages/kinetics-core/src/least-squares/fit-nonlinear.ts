@@ -1,3 +1,4 @@
+import { accelerate } from "./accelerated-step";
 import { type Proposal, proposeStep, releaseFree } from "./bounded-step";
 import { factorise, wholePromise } from "./linearisation";
 import type { NonlinearFit, NonlinearOptions, NonlinearProblem } from "./nonlinear-problem";
@@ -22,7 +23,8 @@ import { raiseScale, rescale } from "./rescale";
  *
  * It stops when the whole linear step promises less than a 10⁻¹⁰ part of the residual variance, that is moves no
  * parameter by 10⁻⁵ of its standard error, and then polishes: undamped steps from a compensated gradient while they
- * shrink. Bounds act by holding: a parameter on a bound stays there while the sum of squares falls outwards.
+ * shrink. A descent that proves long is helped along its curved valley (accelerated-step.ts). Bounds act by holding: a
+ * parameter on a bound stays there while the sum of squares falls outwards.
  *
  * `start`: within the bounds. Nothing throws on data; what could not be fitted is a status with a sentence.
  */
@@ -54,6 +56,8 @@ const FIRST_RADIUS = 1;
 const SMALLEST_PROMISE = 1e-10;
 /** Where the promise is below this part and no step keeps it, the model's own noise is in the way. */
 const PROMISE_LOST_IN_NOISE = 1e-6;
+/** Evaluations after which a descent counts as a long one and its steps are bent. */
+const LONG_DESCENT = 100;
 const SMALLEST_RADIUS = 4 * Number.EPSILON;
 /** Part of its promise that a step must keep to be accepted. */
 const LEAST_KEPT = 1e-4;
@@ -105,6 +109,7 @@ function stepWithin(
     if (search.options.shouldStop?.()) return "stopped";
     const proposal = proposeStep(search, radius);
     if (first && !again) radius = Math.min(radius, proposal.length);
+    if (search.evaluations >= LONG_DESCENT && !proposal.crossed) accelerate(search, proposal.damping);
     const valid = proposal.promise > 0 && evaluateAt(search, search.trial);
     const gain = valid ? gainOf(search) : Number.NaN;
     if (gain >= LEAST_KEPT * proposal.promise) return { radius: nextRadius(radius, gain, proposal) };

@@ -93,6 +93,11 @@ export function factorise(
   for (let k = 0; k < last; k++) projected[k] = work[k] ?? 0;
 }
 
+/** Turns `work` into Qᵀ·work by the reflectors of the last factorisation. */
+export function applyReflectors({ points: m, parameters: n, reflectors, work }: Linearisation): void {
+  for (let k = 0; k < Math.min(m, n); k++) reflect(reflectors, k * m + k, k * m + m, work, k);
+}
+
 /** Turns a stretch into the unit vector v of H = I − 2 v vᵀ that maps it on its first axis; the new first element. */
 function makeReflector(values: Float64Array, start: number, end: number): number {
   let sum = 0;
