@@ -1,3 +1,4 @@
+import { fitGlobal, type GlobalFitInput, type GlobalFitResult } from "kinetics-core/global-fit";
 import {
   estimateInitialRate,
   type InitialRate,
@@ -66,4 +67,8 @@ export function fitLargeLaw(input: RateLawInput): RateLawResult {
 
 export function fitLongTrace(input: IntegratedLawInput): IntegratedLawResult {
   return fitIntegratedLaw(input);
+}
+
+export function fitAllTraces(input: GlobalFitInput): GlobalFitResult {
+  return fitGlobal(input);
 }

@@ -61,6 +61,7 @@ export const rules: Readonly<Record<string, Rule>> = {
   "DELETE /api/v1/studies/[studyId]/uploads/[uploadId]": group(),
   "POST /api/v1/studies/[studyId]/uploads/[uploadId]/preview": group(),
   "POST /api/v1/compute/calibration": member,
+  "POST /api/v1/compute/global-fit": member,
   "POST /api/v1/compute/initial-rate": member,
   "POST /api/v1/compute/integrated-law": member,
   "POST /api/v1/compute/rate-law": member,

@@ -4,6 +4,8 @@ import { isQuickFit } from "@/app/_worksheet/quick-fit";
 import { computeCalibration } from "./calibration/compute";
 import { calibrationRequest, calibrationResponse } from "./calibration/schema";
 import type { Computed } from "./estimate.schema";
+import { computeGlobalFit } from "./global-fit/compute";
+import { globalFitRequest, globalFitResponse } from "./global-fit/schema";
 import { computeInitialRate } from "./initial-rate/compute";
 import { initialRateRequest, initialRateResponse } from "./initial-rate/schema";
 import { computeIntegratedLaw } from "./integrated-law/compute";
@@ -40,6 +42,15 @@ export const calibrationComputation = computation({
   request: calibrationRequest,
   response: calibrationResponse,
   compute: computeCalibration,
+});
+
+export const globalFitComputation = computation({
+  name: "global-fit",
+  summary: "One rate law fitted to all traces at once, with scatter of the rate constant between runs.",
+  request: globalFitRequest,
+  response: globalFitResponse,
+  compute: computeGlobalFit,
+  isQuick: ({ runs }) => runs.reduce((sum, { time }) => sum + time.length, 0) <= QUICK_READINGS,
 });
 
 export const initialRateComputation = computation({
@@ -102,6 +113,7 @@ export function runComputation<Request extends z.ZodType, Response extends z.Zod
 /** Every computation: its path in the description and its name on the command line follow from this list. */
 export const COMPUTATIONS: readonly Computation[] = [
   calibrationComputation,
+  globalFitComputation,
   initialRateComputation,
   integratedLawComputation,
   rateLawComputation,

@@ -1,4 +1,4 @@
-import type { PriorInformation, RunInformation } from "kinetics-core/inference";
+import type { PriorInformation, RandomRateInference, RunInformation } from "kinetics-core/inference";
 import type { ConcentrationUnit, Estimate, Flag, TimeUnit, Uncertain } from "kinetics-core/quantities";
 import type { RateEquation } from "kinetics-core/rate-equation";
 import type { StudySpecies } from "./course-law";
@@ -123,6 +123,7 @@ export interface GlobalFit {
   /** The linearised problem at the answer, for profiles, robust errors and comparisons. */
   readonly information: readonly RunInformation[];
   readonly priors: readonly PriorInformation[];
+  readonly inference: RandomRateInference;
   /** r: parameters that only differences between runs determine. */
   readonly undeterminedWithinRuns: number;
 }

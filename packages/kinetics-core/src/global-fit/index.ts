@@ -13,3 +13,4 @@ export type {
   PooledEstimates,
   UndeterminedCombination,
 } from "./global-fit";
+export { type RobustBeside, robustBeside } from "./robust-beside";

@@ -53,6 +53,7 @@ export function report(input: GlobalFitInput, fitted: FittedStudy): GlobalFit {
     flags: fitFlags(input, fitted),
     information: fitted.information,
     priors: fitted.priors,
+    inference,
     undeterminedWithinRuns: fitted.undetermined,
   };
 }
