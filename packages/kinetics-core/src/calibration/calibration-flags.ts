@@ -5,6 +5,7 @@ import { detectionLimits } from "./detection-limits";
 import { fitCalibrationLine } from "./fit-calibration-line";
 import { type CalibrationLackOfFit, pureErrorOf, unevenScatter } from "./lack-of-fit";
 import { type LinearRange, linearRangeFlags } from "./linear-range";
+import { partWithoutCurvature } from "./part-without-curvature";
 
 /** ISO 8466-1 compares with 99 % points, both for curvature and for uneven scatter; lack of fit follows. */
 const SIGNIFICANT = 0.01;
@@ -32,6 +33,7 @@ export function lineFlags(
       range,
       line.standards.map((one) => one.concentration).filter((concentration) => concentration !== 0),
       "standards",
+      partWithoutCurvature(line),
     ),
     ...limitFlags(line, weighted),
   ];

@@ -37,3 +37,4 @@ export {
   type Straightness,
   straightnessAt,
 } from "./linear-range";
+export { partWithoutCurvature } from "./part-without-curvature";
