@@ -2,7 +2,7 @@ import type { AddedVariable, RateLawFit } from "kinetics-core/rate-law";
 import type { AddedVariableView } from "@/app/_figures/figure-view";
 import type { StudyAnalysis } from "@/app/_worksheet/analysis";
 import { concentrationDisplay, rateDisplay } from "@/app/_worksheet/display-units";
-import { lawName } from "@/app/_worksheet/law-input";
+import { lawName } from "@/app/_worksheet/law-name";
 import { list } from "@/app/_worksheet/missing-law";
 import { lawSpecies, presentRuns } from "@/app/_worksheet/present-runs";
 import { printSimpleOrder } from "@/app/_worksheet/print-order";

@@ -2,6 +2,8 @@ import type { RateLawInput, RateLawRun } from "kinetics-core/rate-law";
 import type { Sheet, SheetRun, SheetSpecies } from "@/db/sheet/sheet.schema";
 import type { RunRate } from "./analysis";
 import { rateScale } from "./assemble";
+import { lawName } from "./law-name";
+import { sharedThroughStocks } from "./mixing/remixed";
 import { lawSpecies } from "./present-runs";
 
 /**
@@ -19,7 +21,7 @@ export function lawInput(sheet: Sheet, carrying: readonly CarryingRun[]): RateLa
   const species = lawSpecies(sheet);
   const scale = rateScale(sheet);
   const estimated = carrying.filter((one) => one.rate.kind === "estimated").map((one) => one.run.label);
-  const shared =
+  const calibration =
     scale.status === "known" && scale.sharedRelative > 0 && estimated.length > 0
       ? [
           {
@@ -35,7 +37,13 @@ export function lawInput(sheet: Sheet, carrying: readonly CarryingRun[]): RateLa
   return {
     species: species.map(lawName),
     runs: carrying.map((one) => lawRun(one, species)),
-    shared,
+    shared: [
+      ...calibration,
+      ...sharedThroughStocks(
+        sheet,
+        carrying.map(({ run }) => run),
+      ),
+    ],
     orders: Object.fromEntries(species.map((one) => [lawName(one), sheet.orders[one.id] ?? "free"] as const)),
     concentrationUnit: "mol/L",
     timeUnit: "s",
@@ -47,11 +55,6 @@ export function lawInput(sheet: Sheet, carrying: readonly CarryingRun[]): RateLa
 export interface CarryingRun {
   readonly run: SheetRun;
   readonly rate: Exclude<RunRate, { kind: "none" }>;
-}
-
-/** The name under which the law, its tables and its checks speak of a species. */
-export function lawName(species: SheetSpecies): string {
-  return species.symbol || species.formula || species.name;
 }
 
 /** Relative standard uncertainty that the stated temperature brings to k: E_a·u_T/(R·T²). */

@@ -2,7 +2,8 @@ import type { Sheet } from "@/db/sheet/sheet.schema";
 import type { RunAnalysis } from "./analysis";
 import { rateScale } from "./assemble";
 import type { LawInTime } from "./fit-law";
-import { type CarryingRun, lawName } from "./law-input";
+import type { CarryingRun } from "./law-input";
+import { lawName } from "./law-name";
 import { followedSpecies, lawSpecies, presentRuns } from "./present-runs";
 import { distinctLevels } from "./run-marks";
 

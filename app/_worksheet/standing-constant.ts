@@ -1,7 +1,7 @@
 import type { Estimate } from "kinetics-core/quantities";
 import type { RateLawFit } from "kinetics-core/rate-law";
 import type { Sheet } from "@/db/sheet/sheet.schema";
-import { lawName } from "./law-input";
+import { lawName } from "./law-name";
 import { lawSpecies } from "./present-runs";
 import { type OrderReading, readOrder } from "./print-order";
 

@@ -5,7 +5,7 @@ import type { Sheet } from "@/db/sheet/sheet.schema";
 import type { Check, StudyAnalysis } from "./analysis";
 import { gatherNotes } from "./checks/gather-notes";
 import { concentrationDisplay, type DisplayScale, rateConstantDisplay, rateDisplay } from "./display-units";
-import { lawName } from "./law-input";
+import { lawName } from "./law-name";
 import { list } from "./missing-law";
 import { lawSpecies } from "./present-runs";
 import { printExponent } from "./print-order";

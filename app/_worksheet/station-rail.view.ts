@@ -1,7 +1,7 @@
 import type { StationState, StationView } from "@/app/_ui/law-view";
 import type { Sheet } from "@/db/sheet/sheet.schema";
 import type { StudyAnalysis } from "./analysis";
-import { lawName } from "./law-input";
+import { lawName } from "./law-name";
 import { list } from "./missing-law";
 import { lawSpecies } from "./present-runs";
 import { printExponent } from "./print-order";

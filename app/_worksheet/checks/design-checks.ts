@@ -1,5 +1,5 @@
 import type { Check } from "../analysis";
-import { lawName } from "../law-input";
+import { lawName } from "../law-name";
 import { lawSpecies } from "../present-runs";
 import { distinctLevels } from "../run-marks";
 import { studyCheck } from "./check";

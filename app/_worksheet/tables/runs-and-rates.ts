@@ -2,7 +2,7 @@ import Papa from "papaparse";
 import type { Sheet, SheetRun } from "@/db/sheet/sheet.schema";
 import type { RunAnalysis, StudyAnalysis } from "../analysis";
 import { concentrationDisplay, rateDisplay, timeDisplay } from "../display-units";
-import { lawName } from "../law-input";
+import { lawName } from "../law-name";
 import { lawSpecies, presentRuns } from "../present-runs";
 
 /**

@@ -4,7 +4,7 @@ import { type PrintedConcentrations, printConcentrations } from "@/app/_findings
 import type { RunState } from "@/app/_ui/run-mark";
 import type { RunAnalysis, StudyAnalysis } from "@/app/_worksheet/analysis";
 import { concentrationDisplay, rateDisplay } from "@/app/_worksheet/display-units";
-import { lawName } from "@/app/_worksheet/law-input";
+import { lawName } from "@/app/_worksheet/law-name";
 import { lawSpecies, presentRuns } from "@/app/_worksheet/present-runs";
 import { type ColumnText, columnOf, type PrintedColumn } from "@/app/_worksheet/printed-column";
 import { dayInWords } from "@/app/_worksheet/words";

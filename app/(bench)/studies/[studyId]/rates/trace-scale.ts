@@ -2,7 +2,7 @@ import { timeToSeconds } from "kinetics-core/quantities";
 import type { AxisView } from "@/app/_figures/figure-view";
 import { rateScale } from "@/app/_worksheet/assemble";
 import { concentrationDisplay, rateDisplay } from "@/app/_worksheet/display-units";
-import { lawName } from "@/app/_worksheet/law-input";
+import { lawName } from "@/app/_worksheet/law-name";
 import { followedSpecies } from "@/app/_worksheet/present-runs";
 import type { Sheet } from "@/db/sheet/sheet.schema";
 

@@ -5,7 +5,7 @@ import type { DependenceView } from "@/app/_figures/figure-view";
 import type { PrintedNumber } from "@/app/_ui/law-view";
 import type { Check, RunAnalysis, StudyAnalysis } from "@/app/_worksheet/analysis";
 import { concentrationDisplay, rateDisplay } from "@/app/_worksheet/display-units";
-import { lawName } from "@/app/_worksheet/law-input";
+import { lawName } from "@/app/_worksheet/law-name";
 import { lawSpecies } from "@/app/_worksheet/present-runs";
 import { columnOf, type PrintedColumn } from "@/app/_worksheet/printed-column";
 import { rateOptions } from "@/app/_worksheet/run-rate";

@@ -32,12 +32,9 @@ export const integratedLawRequest = z
       description:
         "Time of mixing, in the unit of `time`; `initialSignal` and `halfLife` count from there. 0 by default.",
     }),
-    signalUnit: z
-      .enum(["mol/L", "mmol/L", "umol/L", "mmHg"])
-      .optional()
-      .meta({
-        description: "For the unit of k in words, where the signal is a concentration or a pressure.",
-      }),
+    signalUnit: z.enum(["mol/L", "mmol/L", "umol/L", "mmHg"]).optional().meta({
+      description: "For the unit of k in words, where the signal is a concentration or a pressure.",
+    }),
     timeUnit: z.enum(["s", "min", "h"]).optional().meta({ description: "For the unit of k in words." }),
     level: level.optional(),
   })
