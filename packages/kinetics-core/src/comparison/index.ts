@@ -21,3 +21,10 @@ export type { CandidateRun } from "./rate-problem";
 export type { ResidualOrder } from "./residual-order";
 export type { LeaveOneOutOpinion } from "./run-level-statistics";
 export type { RunsTest } from "./runs-test";
+export {
+  type AddedTerm,
+  extensionByStandardError,
+  type TraceFit,
+  traceCandidates,
+} from "./trace-candidates";
+export { traceDisagreement } from "./trace-disagreement";
