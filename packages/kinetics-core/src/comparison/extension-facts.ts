@@ -18,8 +18,8 @@ export function extensionFacts(
   fit: RateFit,
   profiles: readonly (ProfileInterval | null)[],
 ): readonly ExtensionFact[] {
-  const theta = fit.solution.parameters.subarray(1);
-  const freedom = runs.length - fit.solution.parameters.length;
+  const { theta } = fit;
+  const freedom = runs.length - theta.length - 1;
   if (freedom < 1) return [];
   const factor = studentTFactor(INTERVAL_LEVEL, freedom);
   return equation.simpler.flatMap(({ parameter, at, equation: simpler }): readonly ExtensionFact[] => {

@@ -25,10 +25,10 @@ export function fitCandidateOnRates(
   if (problem !== null) return failed(problem);
   const fit = bestFitOnRates(equation, runs);
   if ("message" in fit) return failed(fit.message);
-  const { parameters } = fit.solution;
+  const { theta } = fit;
   const residuals = new Float64Array(runs.length);
-  const columns = Array.from(parameters, () => new Float64Array(runs.length));
-  rateProblem(equation, runs).evaluate(parameters, residuals, columns);
+  const columns = Array.from(theta, () => new Float64Array(runs.length));
+  rateProblem(equation, runs).evaluate(theta, residuals, columns);
   const roots = runs.map((run) => Math.sqrt(run.weight));
   const logResiduals = runs.map((_, j) => -(residuals[j] ?? 0) / (roots[j] ?? 1));
   const species = speciesOf(runs);
@@ -37,14 +37,16 @@ export function fitCandidateOnRates(
     status: "fitted",
     id,
     law: equation.law,
-    parameters: parameters.length,
+    parameters: theta.length + 1,
     runSquares: fit.runSquares,
     onRates: {
       residuals: logResiduals,
       fitted: runs.map((run, j) => Math.log(run.rate) - (logResiduals[j] ?? 0)),
-      sensitivities: columns.map((column) =>
-        Float64Array.from(column, (value, j) => value / (roots[j] ?? 1)),
-      ),
+      // Centred, as ln k has taken out their means: the columns span the same space.
+      sensitivities: [
+        runs.map(() => 1),
+        ...columns.map((column) => Float64Array.from(column, (value, j) => value / (roots[j] ?? 1))),
+      ],
       leaveOneOut: leaveOneOut(equation, runs, fit),
     },
     estimates: estimates(equation, runs, fit, { residuals, columns, profiles }),
@@ -54,7 +56,7 @@ export function fitCandidateOnRates(
             runs.map((run) => species.map((name) => run.concentrations[name] ?? 0)),
             logResiduals,
             runs.map((run) => run.weight),
-            parameters.length,
+            theta.length + 1,
           )
         : null,
     extensions: extensionFacts(equation, runs, fit, profiles),
@@ -74,15 +76,11 @@ function leaveOneOut(
 ): readonly (number | null)[] {
   return runs.map((run, j) => {
     const others = runs.filter((_, i) => i !== j);
-    const without = bestFitOnRates(equation, others, fit.solution.parameters);
-    if ("message" in without || without.solution.unscaledCovariance === null) return null;
-    const alone = new Float64Array(1);
-    const hasValue = rateProblem(equation, [{ ...run, weight: 1 }]).evaluate(
-      without.solution.parameters,
-      alone,
-      null,
-    );
-    return hasValue ? -(alone[0] ?? 0) : null;
+    const without = bestFitOnRates(equation, others, fit.theta);
+    if ("message" in without || without.unscaledCovariance === null) return null;
+    // Of one run alone the best ln k is what it says itself.
+    const own = rateProblem(equation, [run]).level(without.theta);
+    return own === null ? null : own.logConstant - without.logConstant;
   });
 }
 
@@ -98,15 +96,14 @@ function estimates(
   fit: RateFit,
   at: AtSolution,
 ): readonly CandidateParameter[] {
-  const { parameters, unscaledCovariance, held } = fit.solution;
-  const freedom = runs.length - parameters.length;
+  const { unscaledCovariance } = fit;
+  const freedom = runs.length - fit.theta.length - 1;
   const scale = freedom > 0 ? fit.runSquares / freedom : null;
-  return Array.from(parameters, (estimate, k) => {
+  return [fit.logConstant, ...fit.theta].map((estimate, k) => {
     const definition = equation.parameters[k - 1];
     const variance = unscaledCovariance?.[k]?.[k];
-    const known = variance !== undefined && scale !== null && freedom > 0;
-    const standardError = known ? Math.sqrt(variance * scale) : null;
-    const atBound = held[k] ?? false;
+    const standardError = variance !== undefined && scale !== null ? Math.sqrt(variance * scale) : null;
+    const atBound = fit.held[k - 1] ?? false;
     if (definition === undefined || standardError === null)
       return {
         name: definition?.name ?? "ln k",
@@ -124,7 +121,7 @@ function estimates(
       name: definition.name,
       value: wald.estimate === null ? noEstimate(INTERVAL_LEVEL) : { ...wald, interval },
       atBound,
-      impossible: atBound && isImpossible(fit, at, k, definition.bounds, freedom),
+      impossible: atBound && isImpossible(fit, at, k - 1, definition.bounds, freedom),
     };
   });
 }
@@ -141,7 +138,8 @@ function isImpossible(
   [low, high]: readonly [number, number],
   freedom: number,
 ): boolean {
-  const row = fit.solution.unscaledCovariance?.[k] ?? [];
+  // Of θ alone, whose columns are centred.
+  const row = fit.unscaledCovariance?.[k + 1]?.slice(1) ?? [];
   const variance = row[k] ?? 0;
   let step = 0;
   columns.forEach((column, i) => {
@@ -152,6 +150,6 @@ function isImpossible(
   if (!(variance > 0)) return false;
   const scatter = Math.max(0, fit.runSquares - step ** 2 / variance) / freedom;
   const half = studentTFactor(IMPOSSIBLE_LEVEL, freedom) * Math.sqrt(variance * scatter);
-  const free = (fit.solution.parameters[k] ?? 0) + step;
+  const free = (fit.theta[k] ?? 0) + step;
   return free + half < low || free - half > high;
 }

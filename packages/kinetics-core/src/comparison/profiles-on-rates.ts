@@ -17,7 +17,7 @@ export function profilesOnRates(
 ): readonly (ProfileInterval | null)[] {
   const added = new Set(equation.simpler.map(({ parameter }) => parameter));
   return equation.parameters.map(({ kind }, k) =>
-    kind === "constant" || added.has(k) ? profileOnRates(equation, runs, fit, k + 1) : null,
+    kind === "constant" || added.has(k) ? profileOnRates(equation, runs, fit, k) : null,
   );
 }
 
@@ -34,19 +34,19 @@ function profileOnRates(
   fit: RateFit,
   index: number,
 ): ProfileInterval | null {
-  const { parameters, unscaledCovariance } = fit.solution;
-  const definition = equation.parameters[index - 1];
-  const variance = unscaledCovariance?.[index]?.[index];
-  const freedom = runs.length - parameters.length;
+  const { theta } = fit;
+  const definition = equation.parameters[index];
+  const variance = fit.unscaledCovariance?.[index + 1]?.[index + 1];
+  const freedom = runs.length - theta.length - 1;
   if (definition === undefined || variance === undefined || freedom < 1) return null;
   const scale = fit.runSquares / freedom;
   const problem = rateProblem(equation, runs);
-  const estimate = parameters[index] ?? Number.NaN;
-  let start = Float64Array.from(parameters);
+  const estimate = theta[index] ?? Number.NaN;
+  let start = Float64Array.from(theta);
   let last = estimate;
   const refit = (value: number): number | null => {
     // Refits of one side begin where its last ended; the other side begins at the fit.
-    if (value < estimate !== last < estimate) start = Float64Array.from(parameters);
+    if (value < estimate !== last < estimate) start = Float64Array.from(theta);
     last = value;
     start[index] = value;
     const bounds = problem.bounds?.map((one, k) => (k === index ? ([value, value] as const) : one)) ?? [];
@@ -59,7 +59,7 @@ function profileOnRates(
     estimate,
     standardError: Math.sqrt(variance * scale),
     degreesOfFreedom: freedom,
-    deviance: fit.solution.residualSquares / scale,
+    deviance: fit.residualSquares / scale,
     refit,
     bounds: definition.bounds,
     level: INTERVAL_LEVEL,

@@ -1,4 +1,5 @@
 import type { RateResiduals } from "./candidate";
+import { EXACT_RELATIVE } from "./constants";
 import { type DurbinWatson, durbinWatson } from "./durbin-watson";
 import { type RunsTest, runsTest } from "./runs-test";
 
@@ -8,9 +9,6 @@ export interface ResidualOrder {
   readonly durbinWatson: DurbinWatson | null;
 }
 
-/** Fitted ln v closer than this part of their range count as equal: repeats of one recipe, then taken by label. */
-const EQUAL_PART = 1e-9;
-
 /** `labels` and `weights` run by run. The order does not depend on how the runs were listed. */
 export function residualOrder(
   onRates: RateResiduals,
@@ -19,14 +17,15 @@ export function residualOrder(
 ): ResidualOrder {
   const { fitted, residuals, sensitivities } = onRates;
   const low = Math.min(...fitted);
-  const unit = EQUAL_PART * (Math.max(...fitted) - low) || 1;
-  const steps = fitted.map((value) => Math.round((value - low) / unit));
+  // Repeats of one recipe have one fitted value but for rounding, and are taken by label.
+  const steps = fitted.map((value) => Math.round((value - low) / EXACT_RELATIVE));
   const order = fitted
     .map((_, j) => j)
     .sort((a, b) => (steps[a] ?? 0) - (steps[b] ?? 0) || compareText(labels[a] ?? "", labels[b] ?? ""));
   const weighted = (column: ArrayLike<number>) =>
     order.map((j) => Math.sqrt(weights[j] ?? 0) * (column[j] ?? 0));
-  const inOrder = weighted(residuals);
+  // A run on the law to rounding has no side.
+  const inOrder = weighted(residuals.map((value) => (Math.abs(value) > EXACT_RELATIVE ? value : 0)));
   return { runsTest: runsTest(inOrder), durbinWatson: durbinWatson(inOrder, sensitivities.map(weighted)) };
 }
 
