@@ -63,7 +63,13 @@ function endOf({ current, step, linear }: NonlinearSearch, j: number): number {
   return (current.theta[j] ?? 0) + (step[j] ?? 0) / (linear.scale[j] ?? 1);
 }
 
-/** Holds every free parameter whose step ends outside at its bound; false where none does. */
+/** Part of a value that its own step may leave by rounding. */
+const ROUNDING = 8 * Number.EPSILON;
+
+/**
+ * Holds every free parameter whose step ends outside at its bound; false where none does. A step as long as the way to
+ * the bound may end next to it by rounding, where no further step would be worth its name: it ends on it.
+ */
 function holdCrossing(search: NonlinearSearch): boolean {
   const { linear, low, high, current, step, free, projected, trial } = search;
   const { parameters: n, triangle, scale } = linear;
@@ -71,8 +77,10 @@ function holdCrossing(search: NonlinearSearch): boolean {
   for (let j = 0; j < n; j++) {
     if (!free[j]) continue;
     const end = endOf(search, j);
-    const bound = end < (low[j] ?? 0) ? low[j] : end > (high[j] ?? 0) ? high[j] : undefined;
-    if (bound === undefined) continue;
+    const slack = ROUNDING * Math.abs(current.theta[j] ?? 0);
+    const downwards = (step[j] ?? 0) < 0;
+    const bound = downwards ? low[j] : high[j];
+    if (bound === undefined || (downwards ? end > bound + slack : end < bound - slack)) continue;
     found = true;
     free[j] = 0;
     const move = (bound - (current.theta[j] ?? 0)) * (scale[j] ?? 1);

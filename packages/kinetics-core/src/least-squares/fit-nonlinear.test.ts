@@ -123,6 +123,32 @@ describe("bounds of a nonlinear fit", () => {
     });
   });
 
+  it("are reached exactly by a step that is as long as the way to them, whatever its rounding", () => {
+    // A path β beside one of first order that the rates, which bend the other way, would have below zero.
+    const levels = [0.005, 0.0025, 0.025];
+    const rates = [4.756e-6, 2.5e-6, 2.6e-5].map(Math.log);
+    const problem: NonlinearProblem = {
+      residuals: 3,
+      parameters: 1,
+      bounds: [[0, 2000]],
+      evaluate([beta = 0], residuals, jacobian) {
+        const logs = levels.map((a) => Math.log(a + beta));
+        const mean = (values: readonly number[]) => values.reduce((sum, value) => sum + value, 0) / 3;
+        const slopes = levels.map((a) => 1 / (a + beta));
+        levels.forEach((_, j) => {
+          residuals[j] = (logs[j] ?? 0) - mean(logs) - ((rates[j] ?? 0) - mean(rates));
+          if (jacobian?.[0]) jacobian[0][j] = (slopes[j] ?? 0) - mean(slopes);
+        });
+        return true;
+      },
+    };
+    for (let i = 1; i <= 50; i++) {
+      const fit = solved(fitNonlinear(problem, [1e-3 / i]));
+      expect(fit.parameters[0]).toBe(0);
+      expect(fit.held).toEqual([true]);
+    }
+  });
+
   it("count a parameter that they fix as known", () => {
     const fit = solved(
       fitNonlinear(
