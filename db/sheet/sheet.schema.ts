@@ -148,8 +148,8 @@ export const calibrationSettings = z.object({
   /** What the standards contain; null until somebody says. */
   speciesId: identifier.nullable(),
   intercept: z.enum(["fitted", "none"]),
-  /** Weights: all readings alike, or by the scatter of each level's replicates. */
-  weighting: z.enum(["none", "replicates"]),
+  /** All readings scatter alike, or in proportion to their signal (weights 1/S²). */
+  weighting: z.enum(["none", "proportional"]),
   /** Part of the line that is used, mol L⁻¹; null: all standards that are not set aside. */
   rangeMolar: z.object({ low: amount, high: amount }).nullable(),
   /** Relative standard uncertainty of the stock that all standards were made from. */

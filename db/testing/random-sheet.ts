@@ -109,7 +109,7 @@ export function randomSheet(seed: number): Sheet {
     calibration: {
       speciesId: maybe(() => `s${integer(9)}`),
       intercept: any(["fitted", "none"] as const),
-      weighting: any(["none", "replicates"] as const),
+      weighting: any(["none", "proportional"] as const),
       rangeMolar: maybe(() => ({ low: positive(), high: positive() })),
       stockRelative: number() ** 2 % 1,
     },
