@@ -3,7 +3,7 @@ import { fitCalibrationLine } from "./fit-calibration-line";
 import { linearRange } from "./linear-range";
 
 /** A dense set of levels is searched in steps: the answer is advice, not a limit. */
-const MOST_TRIALS = 40;
+const MOST_TRIALS = 20;
 
 /**
  * Where curvature is shown, the highest standard that can be kept: the line through it and all below is the longest that

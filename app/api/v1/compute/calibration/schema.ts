@@ -1,9 +1,9 @@
 import { z } from "zod";
 import { estimate, flag, level, measured } from "../estimate.schema";
 
-const MOST_STANDARDS = 2000;
-const MOST_UNKNOWNS = 1000;
-const MOST_REPLICATES = 100;
+const MOST_STANDARDS = 500;
+const MOST_UNKNOWNS = 500;
+const MOST_REPLICATES = 20;
 
 const weight = measured.gt(0);
 
