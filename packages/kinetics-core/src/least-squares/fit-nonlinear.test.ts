@@ -287,6 +287,43 @@ describe("a nonlinear fit in difficulty", () => {
     });
   });
 
+  it("says so where no parameter changes anything", () => {
+    const away: NonlinearProblem = {
+      ...decay(scattered),
+      evaluate(_theta, residuals, jacobian) {
+        residuals.set(scattered);
+        for (const column of jacobian ?? []) column.fill(0);
+        return true;
+      },
+    };
+    const fit = fitNonlinear(away, [1, 5, 0]);
+    expect(fit).toMatchObject({
+      status: "not-converged",
+      rank: 0,
+      message: expect.stringContaining("plateau"),
+    });
+  });
+
+  it("is not confused by the noise of a model, such as an integrator's tolerance leaves", () => {
+    const exact = solved(fitNonlinear(decay(scattered), [1, 0.3, 0]));
+    const error = (exact.residualStandardDeviation ?? 0) * Math.sqrt(exact.unscaledCovariance?.[1]?.[1] ?? 0);
+    for (const size of [1e-9, 1e-7, 1e-5]) {
+      const noisy: NonlinearProblem = {
+        ...decay(scattered),
+        evaluate(theta, residuals, jacobian) {
+          decay(scattered).evaluate(theta, residuals, jacobian);
+          const seed = 1e4 * ((theta[0] ?? 0) + 3 * (theta[1] ?? 0) + 7 * (theta[2] ?? 0));
+          residuals.forEach((residual, i) => {
+            residuals[i] = residual + size * Math.sin(1e8 * seed + 1e3 * i * i);
+          });
+          return true;
+        },
+      };
+      const fit = solved(fitNonlinear(noisy, [1, 0.3, 0]));
+      expect(Math.abs((fit.parameters[1] ?? 0) - (exact.parameters[1] ?? 0))).toBeLessThan(0.01 * error);
+    }
+  });
+
   it("stops when it is told to, and when its evaluations are used up", () => {
     expect(fitNonlinear(decay(scattered), [1, 0.3, 0], { shouldStop: () => true }).status).toBe("stopped");
     const short = fitNonlinear(decay(scattered), [1, 0.3, 0], { mostEvaluations: 3 });

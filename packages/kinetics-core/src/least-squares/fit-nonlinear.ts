@@ -54,10 +54,15 @@ type DescentEnd = "converged" | "no-descent" | "out-of-evaluations" | "stopped";
 const FIRST_RADIUS = 1;
 /** Part of the residual variance that a step must promise to be worth its evaluation. */
 const SMALLEST_PROMISE = 1e-10;
-/** Where the promise is below this part and no step keeps it, the model's own noise is in the way. */
+/** Where the promise is below this part, a thousandth of a standard error, one step that fails is enough to end. */
 const PROMISE_LOST_IN_NOISE = 1e-6;
 /** Evaluations after which a descent counts as a long one and its steps are bent. */
 const LONG_DESCENT = 100;
+/**
+ * Where not even the shortest step keeps its promise, the noise of the model (an integrator's tolerance) ends the
+ * descent; it is an answer if the whole promise is below this part, a tenth of a standard error.
+ */
+const PROMISE_OF_NO_MATTER = 1e-2;
 const SMALLEST_RADIUS = 4 * Number.EPSILON;
 /** Part of its promise that a step must keep to be accepted. */
 const LEAST_KEPT = 1e-4;
@@ -119,7 +124,10 @@ function stepWithin(
     )
       return "converged";
     radius = reducedRadius(radius, gain, proposal);
-    if (!(radius > smallest)) return "no-descent";
+    const isLost = valid && proposal.promise <= SMALLEST_PROMISE * residualVariance(search);
+    if (isLost || !(radius > smallest)) {
+      return promiseAtBest <= PROMISE_OF_NO_MATTER * residualVariance(search) ? "converged" : "no-descent";
+    }
     if (proposal.crossed) releaseFree(search);
   }
 }

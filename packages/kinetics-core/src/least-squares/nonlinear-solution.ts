@@ -31,14 +31,18 @@ const MESSAGES = {
     "No step lowers the sum of squares although the derivatives promise it: the model is flat or not smooth here, or its derivatives do not belong to it. Start elsewhere.",
   "out-of-evaluations":
     "The sum of squares was still falling when the allowed number of evaluations was used up. Start nearer to the answer, or allow more.",
+  flat: "No parameter changes the residuals here: the point lies on a plateau of the model. Start elsewhere.",
   stopped: "The fit was stopped before its end.",
 };
 
 export type SearchEnd = "converged" | keyof typeof MESSAGES;
 
 /** The current point of the search with its rank and covariance. */
-export function solutionOf(search: NonlinearSearch, end: SearchEnd): NonlinearFit {
+export function solutionOf(search: NonlinearSearch, searchEnd: SearchEnd): NonlinearFit {
   const { current, degreesOfFreedom, low, high } = search;
+  const determined = determination(search);
+  const isFlat = determined.rank === 0 && search.adjustable > 0 && current.squares > 0;
+  const end = searchEnd === "converged" && isFlat ? "flat" : searchEnd;
   const solution: NonlinearSolution = {
     // Copies: the search's own store is larger than what is kept of it.
     parameters: current.theta.slice(),
@@ -46,7 +50,7 @@ export function solutionOf(search: NonlinearSearch, end: SearchEnd): NonlinearFi
     residualSquares: current.squares,
     degreesOfFreedom,
     residualStandardDeviation: degreesOfFreedom > 0 ? Math.sqrt(current.squares / degreesOfFreedom) : null,
-    ...determination(search),
+    ...determined,
     held: Array.from(current.theta, (value, j) => value <= (low[j] ?? 0) || value >= (high[j] ?? 0)),
     steps: search.steps,
     evaluations: search.evaluations,

@@ -1,7 +1,7 @@
 import { releaseFree } from "./bounded-step";
 import { compensatedDot } from "./compensated-dot";
 import { fillStep } from "./damped-step";
-import { factorise } from "./linearisation";
+import { factorise, wholePromise } from "./linearisation";
 import { evaluateAt, moveOn, type NonlinearSearch, residualVariance } from "./nonlinear-search";
 import { rescale } from "./rescale";
 
@@ -16,12 +16,14 @@ import { rescale } from "./rescale";
  * round, and many rounds are needed for the last digits.
  */
 export function polish(search: NonlinearSearch): void {
+  // A descent that ended in the noise of its model may rise by what it could not see.
+  const unseen = wholePromise(search.linear);
   let before = Number.POSITIVE_INFINITY;
   for (let round = 0; round < MOST_ROUNDS; round++) {
     if (search.options.shouldStop?.()) return;
     const length = proposePolish(search);
     if (!(length < SHRINKING * before) || isInvisible(search)) return;
-    const limit = (1 + TOLERATED_RISE) * search.current.squares;
+    const limit = (1 + TOLERATED_RISE) * search.current.squares + unseen;
     if (!evaluateAt(search, search.trial) || search.trial.squares > limit) return;
     moveOn(search);
     if (length <= INVISIBLE * Math.sqrt(residualVariance(search))) return;
