@@ -50,6 +50,8 @@ export interface ComparedLaw {
   /** Against the law of least AICc; null for that law and for laws that fit better than it. */
   readonly fStatistic: number | null;
   readonly pValue: number | null;
+  /** `pValue` times the number of laws with more parameters, by which the reading is taken. */
+  readonly familyPValue: number | null;
   /** `pValue` adjusted by Holm over the candidates. */
   readonly holmPValue: number | null;
   readonly leaveOneOut: LeaveOneOutOpinion | null;
@@ -85,6 +87,8 @@ export interface JudgedLaw {
   readonly aicc: number | null;
   readonly deltaAicc: number | null;
   readonly f: { readonly fStatistic: number; readonly pValue: number } | null;
+  /** `pValue` times the number of compared laws with more parameters, where these are more than one; at most 1. */
+  readonly familyPValue: number | null;
 }
 
 export function compareLaws({ runs, candidates }: ComparisonInput): Comparison {
@@ -112,6 +116,7 @@ export function compareLaws({ runs, candidates }: ComparisonInput): Comparison {
       deltaAicc: law.deltaAicc,
       fStatistic: law.f?.fStatistic ?? null,
       pValue: law.f?.pValue ?? null,
+      familyPValue: law.familyPValue,
       holmPValue: adjusted[place] ?? null,
       leaveOneOut:
         onRates === null
@@ -158,11 +163,16 @@ function judge(fitted: readonly FittedCandidate[], runs: number): readonly Judge
   return fitted.map((candidate, i) => {
     const aicc = criteria[i] ?? null;
     const compared = aicc !== null && bestLaw !== undefined;
+    const f = compared && i !== best ? runLevelF(candidate.runSquares, bestLaw, runs) : null;
+    const richer = fitted.filter(
+      (other, k) => (criteria[k] ?? null) !== null && other.parameters > candidate.parameters,
+    ).length;
     return {
       candidate,
       aicc,
       deltaAicc: compared ? aicc - (criteria[best] ?? 0) : null,
-      f: compared && i !== best ? runLevelF(candidate.runSquares, bestLaw, runs) : null,
+      f,
+      familyPValue: f === null ? null : Math.min(1, f.pValue * Math.max(1, richer)),
     };
   });
 }
@@ -184,6 +194,7 @@ function notCompared(candidate: Candidate): ComparedLaw {
     deltaAicc: null,
     fStatistic: null,
     pValue: null,
+    familyPValue: null,
     holmPValue: null,
     leaveOneOut: null,
     residualScatter: null,

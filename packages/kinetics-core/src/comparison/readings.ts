@@ -47,16 +47,26 @@ export function readingsOf(judged: readonly JudgedLaw[]): readonly ReadLaw[] {
   });
 }
 
-function reasonsAgainst({ candidate, deltaAicc, f }: JudgedLaw, best: JudgedLaw | undefined): Reason[] {
+function reasonsAgainst(
+  { candidate, deltaAicc, f, familyPValue }: JudgedLaw,
+  best: JudgedLaw | undefined,
+): Reason[] {
   const reasons: Reason[] = [];
   if (
     f !== null &&
     best !== undefined &&
-    f.pValue < RULED_OUT_P_VALUE &&
+    familyPValue !== null &&
+    familyPValue < RULED_OUT_P_VALUE &&
     deltaAicc !== null &&
     deltaAicc >= RULED_OUT_LEAD
   )
-    reasons.push({ kind: "fits-worse", than: best.candidate.law, ...f, deltaAicc });
+    reasons.push({
+      kind: "fits-worse",
+      than: best.candidate.law,
+      fStatistic: f.fStatistic,
+      pValue: familyPValue,
+      deltaAicc,
+    });
   const { lackOfFit } = candidate;
   if (lackOfFit !== null && lackOfFit.pValue < LACK_OF_FIT_P_VALUE)
     reasons.push({
