@@ -6,7 +6,8 @@ import {
   type QrFactors,
   solveUpper,
 } from "kinetics-core/linear-algebra";
-import { amend, type TwicePrecise, TwiceSum, twicePrecise } from "./twice-precision";
+import { productError } from "./compensated-dot";
+import { amend, type TwicePrecise, twicePrecise } from "./twice-precision";
 
 /**
  * Least squares to the last digits by iterative refinement (Björck, BIT 7 (1967) 257-278; Higham, Accuracy and Stability
@@ -57,57 +58,79 @@ export function refinedSolution(
     coefficients: twicePrecise(new Float64Array(system.columns.length)),
     residuals: twicePrecise(new Float64Array(system.points)),
   };
-  let before = Number.POSITIVE_INFINITY;
+  let before = 1;
   for (let round = 0; round < MOST_ROUNDS; round++) {
     const left = defectOf(system, solution, response);
     const slope = gradientDefectOf(system, solution, gradient);
     const change = correct(system, solution, left, slope);
-    if (change <= Number.EPSILON ** 2 || !(change < 0.5 * before)) break;
+    // What is left now is the last change once more reduced by the same factor.
+    const isDone = round > 0 && change * (change / before) <= Number.EPSILON / 8;
+    if (isDone || (round > 1 && !(change < 0.5 * before))) break;
     before = change;
   }
   return solution;
 }
 
-/** y − r − X b. */
+/** y − r − X b: column after column, with the rounding of each point's sum kept beside it. */
 function defectOf(
   { columns, points }: RefinedSystem,
   { coefficients, residuals }: RefinedSolution,
   response: TwicePrecise | null,
 ): Float64Array {
-  const left = new Float64Array(points);
-  const sum = new TwiceSum();
-  for (let i = 0; i < points; i++) {
-    sum.start(response?.values[i] ?? 0);
-    sum.addSmall((response?.remainders[i] ?? 0) - (residuals.remainders[i] ?? 0));
-    sum.add(-(residuals.values[i] ?? 0));
-    columns.forEach(({ values, remainders }, j) => {
-      const value = values[i] ?? 0;
-      const coefficient = -(coefficients.values[j] ?? 0);
-      sum.addProduct(value, coefficient);
-      sum.addSmall((remainders[i] ?? 0) * coefficient - value * (coefficients.remainders[j] ?? 0));
-    });
-    left[i] = sum.value;
-  }
+  const left = Float64Array.from(response?.values ?? new Float64Array(points));
+  const error = Float64Array.from(response?.remainders ?? new Float64Array(points));
+  subtractFrom(left, error, residuals, 1, 0);
+  columns.forEach((column, j) => {
+    subtractFrom(left, error, column, coefficients.values[j] ?? 0, coefficients.remainders[j] ?? 0);
+  });
+  for (let i = 0; i < points; i++) left[i] = (left[i] ?? 0) + (error[i] ?? 0);
   return left;
+}
+
+/** sum −= numbers·(factor + remainder), in twice the working precision. */
+function subtractFrom(
+  sum: Float64Array,
+  error: Float64Array,
+  { values, remainders }: TwicePrecise,
+  factor: number,
+  remainder: number,
+): void {
+  for (let i = 0; i < sum.length; i++) {
+    const value = values[i] ?? 0;
+    const product = -value * factor;
+    const before = sum[i] ?? 0;
+    const after = before + product;
+    const shift = after - before;
+    const lost = before - (after - shift) + (product - shift) - productError(value, factor, -product);
+    sum[i] = after;
+    error[i] = (error[i] ?? 0) + lost - (remainders[i] ?? 0) * factor - value * remainder;
+  }
 }
 
 /** g − Xᵀr. */
 function gradientDefectOf(
-  { columns, points }: RefinedSystem,
+  { columns }: RefinedSystem,
   { residuals }: RefinedSolution,
   gradient: ArrayLike<number> | null,
 ): Float64Array {
-  const sum = new TwiceSum();
-  return Float64Array.from(columns, ({ values, remainders }, j) => {
-    sum.start(gradient?.[j] ?? 0);
-    for (let i = 0; i < points; i++) {
-      const residual = -(residuals.values[i] ?? 0);
-      const value = values[i] ?? 0;
-      sum.addProduct(value, residual);
-      sum.addSmall((remainders[i] ?? 0) * residual - value * (residuals.remainders[i] ?? 0));
-    }
-    return sum.value;
-  });
+  return Float64Array.from(columns, (column, j) => -twiceDot(column, residuals, -(gradient?.[j] ?? 0)));
+}
+
+/** start + Σ a·b in twice the working precision. */
+function twiceDot(a: TwicePrecise, b: TwicePrecise, start: number): number {
+  let sum = start;
+  let error = 0;
+  for (let i = 0; i < a.values.length; i++) {
+    const x = a.values[i] ?? 0;
+    const y = b.values[i] ?? 0;
+    const product = x * y;
+    const before = sum;
+    sum += product;
+    const shift = sum - before;
+    error += before - (sum - shift) + (product - shift) + productError(x, y, product);
+    error += (a.remainders[i] ?? 0) * y + x * (b.remainders[i] ?? 0);
+  }
+  return sum + error;
 }
 
 /** Adds δb and δr; the largest relative change of a coefficient. */

@@ -1,41 +1,5 @@
 import { productError } from "./compensated-dot";
 
-/**
- * A sum in about twice the working precision: `value` is the rounded sum, what rounding took away is gathered beside it
- * (Ogita, Rump and Oishi, SIAM J. Sci. Comput. 26 (2005) 1955-1988).
- */
-export class TwiceSum {
-  private sum = 0;
-  private error = 0;
-
-  start(value: number): void {
-    this.sum = value;
-    this.error = 0;
-  }
-
-  add(value: number): void {
-    const before = this.sum;
-    this.sum = before + value;
-    const shift = this.sum - before;
-    this.error += before - (this.sum - shift) + (value - shift);
-  }
-
-  addProduct(x: number, y: number): void {
-    const product = x * y;
-    this.add(product);
-    this.error += productError(x, y, product);
-  }
-
-  /** A term so small that its own rounding does not count. */
-  addSmall(value: number): void {
-    this.error += value;
-  }
-
-  get value(): number {
-    return this.sum + this.error;
-  }
-}
-
 /** Numbers to about twice the working precision: each is the unevaluated sum of its two parts. */
 export interface TwicePrecise {
   readonly values: Float64Array;

@@ -90,7 +90,8 @@ export function fitCurve(points: SaturationPoints): SaturationShape {
     start.limiting / start.half,
     1 / start.half,
   ]);
-  if (origin.status === "converged" && origin.parameters[1] === 0)
+  const highest = Math.max(...points.concentrations);
+  if (origin.status === "converged" && (origin.parameters[1] ?? 0) * highest <= NO_BEND)
     return { orientation, shape: "straight", origin };
   const [slope = 0, curvature = 0] = origin.status === "converged" ? origin.parameters : [];
   const limits = fitNonlinear(
@@ -107,6 +108,8 @@ export function fitCurve(points: SaturationPoints): SaturationShape {
     : { orientation, shape: "unsettled" };
 }
 
+/** A bend κ c this small is the rounding of a straight line. */
+const NO_BEND = 1e-9;
 /** A K this far below the least concentration is none: no rate there differs from V by as much as rounding. */
 const NO_HALF = 1e-9;
 
