@@ -1,4 +1,4 @@
-import { type Estimate, ZERO_CELSIUS } from "kinetics-core/quantities";
+import { ZERO_CELSIUS } from "kinetics-core/quantities";
 import {
   fitTemperature,
   gibbsEnergyOfActivationAt,
@@ -8,6 +8,7 @@ import {
   type TwoByTwo,
 } from "kinetics-core/temperature";
 import type { Computed } from "../estimate.schema";
+import { plainEstimate as plain } from "../plain-estimate";
 import type { TemperatureRequest, TemperatureResponse } from "./schema";
 
 /** The public face of `fitTemperature`: temperatures into kelvins and back, k as it came. */
@@ -99,11 +100,6 @@ function answerOf(fit: TemperatureFit, request: TemperatureRequest): Temperature
     residuals: fit.residuals.map((one) => ({ ...one })),
     flags: [...fit.flags, ...wanted.flatMap(({ at }) => at.flags)].map((flag) => ({ ...flag })),
   };
-}
-
-function plain(one: Estimate) {
-  const interval: [number, number] | null = one.interval === null ? null : [...one.interval];
-  return { estimate: one.estimate, standardError: one.standardError, interval, level: one.level };
 }
 
 function plainPair(pair: TwoByTwo | null): TemperatureResponse["covariance"]["arrhenius"] {
