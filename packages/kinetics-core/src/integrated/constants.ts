@@ -20,3 +20,15 @@ export const LACK_OF_FIT_LEVEL = 0.05;
 
 /** Part of the whole change that may come before the first reading. As for initial rates. */
 export const DEAD_PART_WEAKENS = 0.2;
+
+/** A burst or a lag is seen when neither a line nor an ordinary course does as well, at this level: once in a hundred. */
+export const BURST_LEVEL = 0.01;
+
+/** Five parameters' worth of noise and shape: S₀, v_s, v_0, λ, and as many readings again to judge by. */
+export const LEAST_BURST_READINGS = 8;
+
+/** The phase has to die away to 5 % within the trace before the rest is called steady. */
+export const LEAST_PHASE_DECAYS = 3;
+
+/** Readings within 1/λ below which λ and v_0 are one reading's noise. */
+export const READINGS_IN_PHASE = 3;

@@ -19,7 +19,7 @@ export function endConflict(
   end: ScaledEnd,
 ): number | null {
   if (end.kind === "free") return null;
-  const free = fitCourse(law, trace, { kind: "free" });
+  const free = stated.freeEnd ?? fitCourse(law, trace, { kind: "free" });
   if (free.status !== "fitted" || free.cornered || free.stopped.includes(true)) return null;
   if (free.noise.degreesOfFreedom === 0) return null;
   const error = free.standardErrorOf({ theta: [], scales: [], end: 1 });

@@ -33,6 +33,8 @@ export interface CourseFit {
   readonly stopped: readonly boolean[];
   /** A free end rests on one or two readings behind a corner, and so on their noise. */
   readonly cornered: boolean;
+  /** The fit with a free end, where the end is stated. */
+  readonly freeEnd: CourseResult | null;
   /** (fitted end − stated end)/u; 0 where there is no stated end. */
   readonly endDeviation: number;
   /**
@@ -58,7 +60,7 @@ export function fitCourse(law: CourseLaw, trace: ScaledTrace, end: ScaledEnd): C
   if (end.kind === "stated") return fitStated(law, trace, end);
   if (end.kind === "free") return fitFree(law, trace);
   const found = searchCourse(law, trace, end);
-  return found.status === "found" ? assembled(found, trace, end) : found;
+  return found.status === "found" ? linearisedFit(found, trace, end) : found;
 }
 
 /**
@@ -71,7 +73,7 @@ function fitFree(law: CourseLaw, trace: ScaledTrace): CourseResult {
   const condition = { kind: "free" } as const;
   const found = searchCourse(law, trace, condition);
   if (found.status !== "found") return found;
-  const fit = assembled(found, trace, condition);
+  const fit = linearisedFit(found, trace, condition);
   const over = law.endOfCourse?.(found.theta) ?? Number.POSITIVE_INFINITY;
   if (over >= 1 && !fit.stopped.includes(true)) return fit;
   const behind = trace.time.reduce((count, time) => count + (time > over ? 1 : 0), 0);
@@ -81,7 +83,7 @@ function fitFree(law: CourseLaw, trace: ScaledTrace): CourseResult {
   if (within.status !== "found") return fit;
   const gain = (within.residualSquares - found.residualSquares) / effectiveDeviation(fit.noise) ** 2;
   const believed = behind >= READINGS_BEHIND_CORNER && gain > CORNER_EVIDENCE;
-  return believed ? fit : assembled(within, trace, condition);
+  return believed ? fit : linearisedFit(within, trace, condition);
 }
 
 const READINGS_BEHIND_CORNER = 3;
@@ -104,14 +106,17 @@ function fitStated(
       ? free
       : fitCourse(law, trace, { kind: "fixed", value: end.value });
   let weight = guide.status === "fitted" ? weightBeside(guide.noise, end.standardUncertainty) : 1;
+  let near: Float64Array | undefined;
   for (let round = 1; ; round++) {
     const condition = { kind: "observed", value: end.value, weight } as const;
-    const found = searchCourse(law, trace, condition);
+    const found = searchCourse(law, trace, condition, near);
     if (found.status !== "found") return found;
-    const fit = assembled(found, trace, condition, end.standardUncertainty);
+    const fit = linearisedFit(found, trace, condition, end.standardUncertainty);
     const next = weightBeside(fit.noise, end.standardUncertainty);
-    if (round === MOST_WEIGHINGS || Math.abs(next - weight) <= SETTLED * weight) return fit;
+    if (round === MOST_WEIGHINGS || Math.abs(next - weight) <= SETTLED * weight)
+      return { ...fit, freeEnd: free };
     weight = next;
+    near = found.theta;
   }
 }
 
@@ -124,7 +129,8 @@ function weightBeside(noise: CourseNoise, standardUncertainty: number): number {
   return Math.min(Math.max(effectiveDeviation(noise) / standardUncertainty, LEAST_WEIGHT), LARGEST_WEIGHT);
 }
 
-function assembled(
+/** A course that was found, with its noise and what it knows of its parameters. */
+export function linearisedFit(
   found: CourseFound,
   { time, rounding }: ScaledTrace,
   condition: EndCondition,
@@ -144,6 +150,7 @@ function assembled(
     stopped: found.held.map((held, j) => held && isDetermined(j)),
     parameters: jacobian.length,
     cornered: false,
+    freeEnd: null,
     endDeviation: condition.kind === "observed" ? (end - condition.value) / endUncertainty : 0,
     standardErrorOf(gradient) {
       const flat = [
@@ -193,7 +200,7 @@ function errorOf(
   return Math.sqrt(rowVariance(row, noise, condition, endUncertainty));
 }
 
-export function rowVariance(
+function rowVariance(
   row: Float64Array,
   noise: CourseNoise,
   condition: EndCondition,

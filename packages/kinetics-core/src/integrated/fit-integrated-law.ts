@@ -1,12 +1,15 @@
 import { dot } from "kinetics-core/linear-algebra";
-import { type Estimate, estimateOf, exponentialOf, noEstimate } from "kinetics-core/quantities";
+import { type Estimate, estimateOf, exponentialOf, type Flag, noEstimate } from "kinetics-core/quantities";
+import { LACK_OF_FIT_LEVEL } from "./constants";
 import type { CourseLaw } from "./course-law";
 import { freeOrderLaw, heldOrderLaw, ORDER_BOUNDS } from "./course-laws";
 import { endConflict } from "./end-conflict";
 import type { EndSignal } from "./end-signal";
+import { fitBurst } from "./fit-burst";
 import { type CourseFit, fitCourse, type Gradient } from "./fit-course";
 import type { IntegratedLawFit, IntegratedLawInput, IntegratedLawResult } from "./integrated-law";
 import { integratedLawFlags } from "./integrated-law-flags";
+import type { LackOfFit } from "./lack-of-fit";
 import { courseLackOfFit, orderCheck } from "./order-check";
 import {
   endSignalOf,
@@ -121,24 +124,29 @@ function reportOf(
     lackOfFit: courseLackOfFit(fit, scaled),
     curve: curveOf(fit, scaled),
   } as const;
-  return {
-    ...report,
-    flags: integratedLawFlags({
-      report,
-      heldOrder: input.order === "free" ? null : input.order,
-      endSignal: input.endSignal ?? null,
-      before: scaled.readings.before,
-      timeZero: scaled.readings.timeZero,
-      firstTime: scaled.firstTime,
-      duration: scaled.duration,
-      parameters: fit.parameters,
-      held: fit.stopped,
-      cornered: fit.cornered,
-      exhaustion: exhaustionOf(state),
-      orderShift: check?.shift ?? 0,
-      level,
-    }),
-  };
+  const flags = integratedLawFlags({
+    report,
+    heldOrder: input.order === "free" ? null : input.order,
+    endSignal: input.endSignal ?? null,
+    before: scaled.readings.before,
+    timeZero: scaled.readings.timeZero,
+    firstTime: scaled.firstTime,
+    duration: scaled.duration,
+    parameters: fit.parameters,
+    held: fit.stopped,
+    cornered: fit.cornered,
+    exhaustion: exhaustionOf(state),
+    orderCheck: check,
+    level,
+  });
+  return { ...report, flags: [...flags, ...phaseFlags(input, report.lackOfFit)] };
+}
+
+/** What leaves a pattern may be a burst or a lag: it is named where one is seen. */
+function phaseFlags(input: IntegratedLawInput, lack: LackOfFit | null): readonly Flag[] {
+  if (lack === null || lack.pValue >= LACK_OF_FIT_LEVEL) return [];
+  const burst = fitBurst(input);
+  return burst.status === "found" ? burst.flags : [];
 }
 
 function stateOf(order: number | "free", scaled: ScaledReadings, { found }: CourseFit): OrderCourseState {

@@ -1,7 +1,9 @@
 export { autocatalyticCourse } from "./autocatalytic-course";
+export type { BurstFit, BurstInput, BurstOptions, BurstResult } from "./burst";
 export { consecutiveCourse } from "./consecutive-course";
 export { type CoursePoint, coursePoint } from "./course-point";
 export type { EndSignal } from "./end-signal";
+export { fitBurst } from "./fit-burst";
 export { fitIntegratedLaw } from "./fit-integrated-law";
 export type { IntegratedLawFit, IntegratedLawInput, IntegratedLawResult } from "./integrated-law";
 export type { LackOfFit } from "./lack-of-fit";

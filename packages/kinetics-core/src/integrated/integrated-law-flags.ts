@@ -13,6 +13,7 @@ import {
 } from "./constants";
 import type { EndSignal } from "./end-signal";
 import type { IntegratedLawFit } from "./integrated-law";
+import type { OrderCheck } from "./order-check";
 
 export interface FlagContext {
   readonly report: Omit<IntegratedLawFit, "flags">;
@@ -33,7 +34,7 @@ export interface FlagContext {
   readonly cornered: boolean;
   /** Since the first reading. */
   readonly exhaustion: number | null;
-  readonly orderShift: number;
+  readonly orderCheck: OrderCheck | null;
   readonly level: number;
 }
 
@@ -82,44 +83,43 @@ function endFlags({ endSignal, report, heldOrder }: FlagContext): Flag[] {
   return flags;
 }
 
-function orderFlags({ report, heldOrder, orderShift, level, held, cornered }: FlagContext): Flag[] {
+function orderFlags({ report, heldOrder, orderCheck, level, held, cornered }: FlagContext): Flag[] {
   if (held.includes(true) || cornered) return [];
-  const error = report.orderStandardError;
-  if (error === null || report.degreesOfFreedom <= 0) {
-    return [
-      {
-        code: "order-not-shown",
-        severity: heldOrder === null ? "blocks" : "weakens",
-        message:
-          heldOrder === null
-            ? "The readings do not determine an order; add readings, follow the run further or state the end signal."
-            : `Order ${numberInWords(heldOrder)} is taken as given: these readings cannot test it.`,
-      },
-    ];
-  }
-  const halfWidth = error * studentTFactor(level, report.degreesOfFreedom);
   const flags: Flag[] = [];
-  if (halfWidth > ORDER_HALF_WIDTH_WEAKENS) {
-    const blocks = heldOrder === null && halfWidth > ORDER_HALF_WIDTH_BLOCKS;
+  const error = orderCheck?.standardError ?? null;
+  if (orderCheck === null || error === null) {
     flags.push({
       code: "order-not-shown",
-      severity: blocks ? "blocks" : "weakens",
-      message: `This trace tells its order to ± ${halfWidth < 100 ? halfWidth.toPrecision(2) : "more than 100"} only${
-        report.conversion === null ? "" : ` at ${percent(clippedPart(report.conversion))} conversion`
-      }; follow the run further, with less noise, or state the end signal.`,
+      severity: heldOrder === null ? "blocks" : "weakens",
+      message:
+        heldOrder === null
+          ? "The readings do not determine an order; add readings, follow the run further or state the end signal."
+          : `Order ${numberInWords(heldOrder)} is taken as given: these readings cannot test it; add readings, or state the end signal.`,
     });
+  } else {
+    const halfWidth = error * studentTFactor(level, orderCheck.degreesOfFreedom);
+    if (halfWidth > ORDER_HALF_WIDTH_WEAKENS) flags.push(wideOrder(halfWidth, heldOrder, report.conversion));
   }
-  // A held order that a shift of the whole interval would still contain is not contradicted.
-  if (heldOrder !== null && Math.abs(orderShift) > halfWidth) {
+  if (heldOrder !== null && orderCheck !== null && orderCheck.pValue < 1 - level) {
     flags.push({
       code: "order-disagrees",
       severity: "weakens",
       message:
-        `The readings ask for an order ${orderShift > 0 ? "above" : "below"} ${numberInWords(heldOrder)} by more than their ` +
-        "uncertainty; fit the order free, or check the end signal.",
+        `The readings ask for an order ${orderCheck.shift > 0 ? "above" : "below"} ${numberInWords(heldOrder)}: about ` +
+        `${numberInWords(heldOrder + orderCheck.shift)}; fit the order free, or check the end signal.`,
     });
   }
   return flags;
+}
+
+function wideOrder(halfWidth: number, heldOrder: number | null, conversion: number | null): Flag {
+  return {
+    code: "order-not-shown",
+    severity: heldOrder === null && halfWidth > ORDER_HALF_WIDTH_BLOCKS ? "blocks" : "weakens",
+    message: `This trace tells its order to ± ${halfWidth < 100 ? halfWidth.toPrecision(2) : "more than 100"} only${
+      conversion === null ? "" : ` at ${percent(clippedPart(conversion))} conversion`
+    }; follow the run further, with less noise, or state the end signal.`,
+  };
 }
 
 function fitFlags({ report, held, heldOrder, cornered }: FlagContext): Flag[] {

@@ -1,53 +1,54 @@
-import { dot } from "kinetics-core/linear-algebra";
+import { fSurvival } from "kinetics-core/distributions";
 import { freeOrderLaw } from "./course-laws";
-import { type CourseFit, courseJacobian, rowVariance } from "./fit-course";
+import { type CourseFit, courseJacobian, effectiveDeviation, linearisedFit } from "./fit-course";
 import { type LackOfFit, lackOfFit } from "./lack-of-fit";
 import { linearInformation } from "./linear-information";
 import type { ScaledReadings } from "./scaled-reading";
+import { searchCourse } from "./search-course";
 
 /** What a fitted trace knows of its order. */
 export interface OrderCheck {
-  /** Of the free order, or of what a held one would have if it were free. */
-  readonly standardError: number;
-  /** By how much the readings would move a held order: one Gauss-Newton step. 0 for a free order. */
+  /** Of the free order, or of what a held one would have if it were free; null where the readings do not determine it. */
+  readonly standardError: number | null;
+  readonly degreesOfFreedom: number;
+  /** Free order less held order; 0 for a free one. */
   readonly shift: number;
+  /** Of the rise of the sum of squares by holding the order, over the effective variance of the free one: F(1, df). */
+  readonly pValue: number;
 }
 
-/** The order as one parameter more, linearised at the fit; null where the trace does not determine it. */
+/** Null where no fit with a free order leaves a degree of freedom. A held order is freed from where it stands. */
 export function orderCheck(
   order: number | "free",
   fit: CourseFit,
   { trace, end }: ScaledReadings,
 ): OrderCheck | null {
-  const { found, condition, noise } = fit;
-  if (noise.degreesOfFreedom === 0) return null;
-  const fitted = courseJacobian(found, condition);
-  const jacobian = order === "free" ? fitted : [...fitted, byOrder(order, fit, trace.time)];
-  const place = order === "free" ? 1 : fitted.length;
-  if (trace.time.length <= jacobian.length) return null;
-  const row = linearInformation(jacobian).rowOf(jacobian.map((_, j) => (j === place ? 1 : 0)));
-  if (row === null) return null;
-  const endUncertainty = end.kind === "stated" ? end.standardUncertainty : 0;
+  const freed = order === "free" ? fit : freedOrder(order, fit, trace, end);
+  if (freed === null || freed.noise.degreesOfFreedom === 0) return null;
+  const { degreesOfFreedom } = freed.noise;
+  const error = freed.stopped.includes(true)
+    ? null
+    : freed.standardErrorOf({ theta: [0, 1], scales: [], end: 0 });
+  const rise = Math.max(fit.found.residualSquares - freed.found.residualSquares, 0);
   return {
-    standardError: Math.sqrt(rowVariance(row, noise, condition, endUncertainty)),
-    shift: order === "free" ? 0 : dot(row, found.residuals),
+    standardError: typeof error === "number" ? error : null,
+    degreesOfFreedom,
+    shift: order === "free" ? 0 : (freed.found.theta[1] ?? Number.NaN) - order,
+    pValue: fSurvival(rise / effectiveDeviation(freed.noise) ** 2, 1, degreesOfFreedom),
   };
 }
 
-/** ∂S/∂n of a course whose order is held. */
-function byOrder(order: number, { found }: CourseFit, time: Float64Array): Float64Array {
-  const column = new Float64Array(found.residuals.length);
-  const onReadings = () => new Float64Array(time.length);
-  const derivative = column.subarray(0, time.length);
-  freeOrderLaw().evaluate(
-    time,
-    Float64Array.of(found.theta[0] ?? Number.NaN, order),
-    [onReadings()],
-    [[onReadings()], [derivative]],
-  );
-  const scale = found.problem.linear.scales[0] ?? Number.NaN;
-  for (let i = 0; i < derivative.length; i++) derivative[i] = scale * (derivative[i] ?? Number.NaN);
-  return column;
+/** On the same rows and with the same weight of the end, so that sums of squares compare. */
+function freedOrder(
+  order: number,
+  { found, condition }: CourseFit,
+  trace: ScaledReadings["trace"],
+  end: ScaledReadings["end"],
+): CourseFit | null {
+  const near = Float64Array.of(found.theta[0] ?? Number.NaN, order);
+  const free = searchCourse(freeOrderLaw(), trace, condition, near);
+  if (free.status !== "found") return null;
+  return linearisedFit(free, trace, condition, end.kind === "stated" ? end.standardUncertainty : 0);
 }
 
 export function courseLackOfFit(fit: CourseFit, { trace }: ScaledReadings): LackOfFit | null {

@@ -30,17 +30,19 @@ const FOLLOWED_STARTS = 4;
 /** Steps of one descent; a well-posed one takes about ten. */
 const MOST_EVALUATIONS = 300;
 
-/** The least of the sum of squares over θ, from many starts on a thinned trace and then on all readings. */
-export function searchCourse(law: CourseLaw, trace: ScaledTrace, end: EndCondition): CourseSearch {
-  const thinned = thin(trace);
-  const heats = projectedCourse(law, thinned.time, thinned.signal, end);
-  const starts = ranked(heats, startsOf(law, heats)).slice(0, FOLLOWED_STARTS);
-  const ends = starts
-    .flatMap((start) => descend(law, heats, start))
-    .sort((a, b) => a.residualSquares - b.residualSquares);
+/**
+ * The least of the sum of squares over θ, from many starts on a thinned trace and then on all readings; or from
+ * `near` alone, the solution of a neighbouring problem.
+ */
+export function searchCourse(
+  law: CourseLaw,
+  trace: ScaledTrace,
+  end: EndCondition,
+  near?: ArrayLike<number>,
+): CourseSearch {
   const problem = projectedCourse(law, trace.time, trace.signal, end);
-  for (const { parameters } of ends) {
-    const [fit] = descend(law, problem, parameters);
+  for (const start of near === undefined ? bestStarts(law, trace, end) : [near]) {
+    const [fit] = descend(law, problem, start, trace.rounding);
     if (fit === undefined) continue;
     const residuals = new Float64Array(problem.residuals);
     problem.evaluate(fit.parameters, residuals, null);
@@ -60,16 +62,47 @@ export function searchCourse(law: CourseLaw, trace: ScaledTrace, end: EndConditi
   };
 }
 
+/** Where descents on the thinned trace ended, best first. */
+function bestStarts(law: CourseLaw, trace: ScaledTrace, end: EndCondition): Float64Array[] {
+  const { time, signal } = thin(trace);
+  const heats = projectedCourse(law, time, signal, end);
+  return ranked(heats, startsOf(law, heats))
+    .slice(0, FOLLOWED_STARTS)
+    .flatMap((start) => descend(law, heats, start, trace.rounding))
+    .sort((a, b) => a.residualSquares - b.residualSquares)
+    .map(({ parameters }) => parameters);
+}
+
 /**
  * One descent; nothing where it did not settle. A course that ends before the last reading has a corner there, and the
  * sum of squares may have its least where a reading meets the corner: no gradient vanishes at such a point, and the
- * descent that can get no lower has arrived.
+ * descent that can get no lower has arrived. So has one whose residuals are nothing but rounding.
  */
-function descend(law: CourseLaw, problem: ProjectedCourse, start: ArrayLike<number>): NonlinearSolution[] {
+function descend(
+  law: CourseLaw,
+  problem: ProjectedCourse,
+  start: ArrayLike<number>,
+  rounding: number,
+): NonlinearSolution[] {
   const fit = fitNonlinear(problem, start, { mostEvaluations: MOST_EVALUATIONS });
   if (fit.status === "converged") return [fit];
   if (!("parameters" in fit)) return [];
-  return (law.endOfCourse?.(fit.parameters) ?? Number.POSITIVE_INFINITY) < 1 ? [fit] : [];
+  const over = law.endOfCourse?.(fit.parameters) ?? Number.POSITIVE_INFINITY;
+  return over < 1 || isExact(problem, fit, rounding) ? [fit] : [];
+}
+
+/** A residual collects about this many roundings of what it is the difference of. */
+const ROUNDINGS = 32;
+
+function isExact(
+  problem: ProjectedCourse,
+  { residualSquares }: NonlinearSolution,
+  rounding: number,
+): boolean {
+  const { end, scales } = problem.linear;
+  const parts = scales.reduce((sum, scale) => sum + Math.abs(scale), Math.abs(end));
+  const largest = ROUNDINGS * (rounding + Number.EPSILON * parts);
+  return residualSquares <= problem.residuals * largest * largest;
 }
 
 function thin({ time, signal }: ScaledTrace): Pick<ScaledTrace, "time" | "signal"> {
