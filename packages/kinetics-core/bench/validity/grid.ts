@@ -66,6 +66,94 @@ export const STUDY_RULE_CELLS: readonly StudyRuleCell[] = [16, 24, 120].flatMap(
   ),
 );
 
+export interface GlobalFitCell {
+  readonly name: string;
+  readonly runs: number;
+  /** Order in the reactant A that is followed; the catalyst B has order 1. */
+  readonly order: number;
+  /** Conversion of the fastest run at the last reading. */
+  readonly fastest: number;
+  /** Standard deviation of ln k between runs. */
+  readonly scatter: number;
+  readonly autocorrelation: number;
+}
+
+/** 100 readings a run, a noise of 0.5 % of the least span, offsets of their own, a scale stated to 1 %. */
+export const GLOBAL_FIT_CELLS: readonly GlobalFitCell[] = [
+  ...[6, 8, 12].flatMap((runs) =>
+    [0.4, 0.8].flatMap((fastest) =>
+      [0, 0.01, 0.04, 0.1].flatMap((scatter) =>
+        [0, 0.6].map((autocorrelation) =>
+          globalFitCell({ runs, order: 1, fastest, scatter, autocorrelation }),
+        ),
+      ),
+    ),
+  ),
+  ...[0.5, 2].flatMap((order) =>
+    [6, 12].flatMap((runs) =>
+      [0.4, 0.8].map((fastest) =>
+        globalFitCell({ runs, order, fastest, scatter: 0.04, autocorrelation: 0.6 }),
+      ),
+    ),
+  ),
+];
+
+function globalFitCell(cell: Omit<GlobalFitCell, "name">): GlobalFitCell {
+  const { runs, order, fastest, scatter, autocorrelation } = cell;
+  return {
+    name: `${runs} runs, order ${order}, fastest to ${100 * fastest} %, scatter ${100 * scatter} %, ρ ${autocorrelation}`,
+    ...cell,
+  };
+}
+
+/** Laws that compete in every cell of the readings. */
+export type LawName = "simple" | "power" | "saturating" | "inhibited" | "background";
+
+export interface ReadingsCell {
+  readonly name: string;
+  readonly truth: LawName;
+  readonly runs: number;
+  /** Standard deviation of ln v between runs. */
+  readonly scatter: number;
+}
+
+export const READINGS_CELLS: readonly ReadingsCell[] = (
+  ["simple", "power", "saturating", "inhibited", "background"] as const
+).flatMap((truth) =>
+  [7, 14].flatMap((runs) =>
+    [0.02, 0.05].map((scatter) => ({
+      name: `${truth}, ${runs} runs, scatter ${100 * scatter} %`,
+      truth,
+      runs,
+      scatter,
+    })),
+  ),
+);
+
+export interface TraceOrderCell {
+  readonly name: string;
+  readonly order: number;
+  readonly conversion: number;
+  readonly autocorrelation: number;
+  /** Signal after the reaction, in parts of the span: what the straightest axis takes for zero. */
+  readonly end: number;
+}
+
+/** 100 readings with a noise of 0.5 % of the span. */
+export const TRACE_ORDER_CELLS: readonly TraceOrderCell[] = [0, 1, 2].flatMap((order) =>
+  [0.6, 0.9].flatMap((conversion) =>
+    [0, 0.5, 0.8].flatMap((autocorrelation) =>
+      [0, 0.25].map((end) => ({
+        name: `order ${order}, ${100 * conversion} % conversion, ρ ${autocorrelation}, end signal at ${100 * end} % of the span`,
+        order,
+        conversion,
+        autocorrelation,
+        end,
+      })),
+    ),
+  ),
+);
+
 export interface OrdersCell {
   readonly name: string;
   /** Row of the table. */

@@ -124,7 +124,7 @@ function verdictOf(
     return none("No single order follows this trace: its residuals hold a pattern.");
   if (open.length === 0)
     return none(
-      `Orders ${inARow(candidates.map(({ order }) => numberInWords(order)))} are all excluded; the free order is ${numberInWords(report.order.estimate ?? Number.NaN)}.`,
+      `Orders ${inARow(candidates.map(({ order }) => numberInWords(order)))} are all excluded; ${freeOrderInWords(report.order.estimate)}.`,
     );
   const consistent = (reason: string) => ({ reading: "consistent", order: null, reason }) as const;
   const names = inARow(open.map(numberInWords));
@@ -146,4 +146,10 @@ function verdictOf(
     order: only,
     reason: `Order ${names} is shown: the other candidates are excluded.`,
   };
+}
+
+function freeOrderInWords(order: number | null): string {
+  return order === null
+    ? "as a free parameter the order is not determined"
+    : `the free order is ${numberInWords(order)}`;
 }

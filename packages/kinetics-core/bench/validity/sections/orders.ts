@@ -1,10 +1,10 @@
-import type { Estimate } from "kinetics-core/quantities";
 import type { RandomDraws } from "kinetics-core/random";
 import { fitRateLaw } from "kinetics-core/rate-law";
 import { simulateRuns } from "kinetics-core/simulation";
 import { ORDERS_CELLS, type OrdersCell } from "../grid";
 import { leastCovered } from "../limits";
 import { markdownTable, percent, significant } from "../markdown";
+import { outcomeOf } from "../outcome-of";
 import type { CellResult, Outcome, Section, SectionReport } from "../section";
 import { countOnes, mean, rootMeanSquare, share } from "../statistics";
 
@@ -38,16 +38,6 @@ export const orders: Section<OrdersCell> = {
 };
 
 const LOG_RATE_CONSTANT = "ln k";
-
-/** Coverage, width and error of one estimate, as columns named after the quantity. */
-export function outcomeOf(name: string, estimate: Estimate | null, truth: number): Outcome {
-  const interval = estimate?.interval ?? null;
-  return {
-    [`${name} covered`]: interval === null ? 0 : Number(interval[0] <= truth && truth <= interval[1]),
-    [`${name} width`]: interval === null ? Number.NaN : interval[1] - interval[0],
-    [`${name} error`]: (estimate?.estimate ?? Number.NaN) - truth,
-  };
-}
 
 function report(results: readonly CellResult<OrdersCell>[]): SectionReport {
   const rows = results.map((result) => ({

@@ -12,9 +12,9 @@ import { progressTo, simulateTrace } from "kinetics-core/simulation";
 import { STUDY_RULE_CELLS, type StudyRuleCell } from "../grid";
 import { STUDIES_BY_DESIGN, STUDIES_OVERALL } from "../limits";
 import { markdownTable, percent, significant } from "../markdown";
+import { outcomeOf } from "../outcome-of";
 import type { CellResult, Outcome, Section, SectionReport } from "../section";
 import { mean, rootMeanSquare, share } from "../statistics";
-import { outcomeOf } from "./orders";
 
 /**
  * From traces to orders: v = k·aⁿ·b with b a catalyst, nine runs that differ in conversion and carry 3 % of scatter in
@@ -25,7 +25,7 @@ export const studyRule: Section<StudyRuleCell> = {
   name: "study-rule",
   title: "From traces to orders: one rule for all runs, judged by its upper or its lower member",
   cells: STUDY_RULE_CELLS,
-  replicates: 1000,
+  replicates: 600,
   reason: "a study is nine traces under every rule",
   prepare,
   report,

@@ -1,0 +1,40 @@
+import { benchmarkStudy } from "./benchmark-study";
+import { fitOrThrow, inputOf } from "./our-fit";
+import { leastTimeOf, medianOf } from "./stopwatch";
+
+/** Cost a run at ten times as many runs, and a point at ten times as many points, over that of the study itself. */
+export interface Growth {
+  readonly runs: number;
+  readonly points: number;
+}
+
+const ROUNDS = 5;
+const REPEATS = 3;
+/** Fits take four to six passes by the luck of their noise; several studies of each size even that out. */
+const STUDIES = 6;
+const RUNS = 12;
+const READINGS = 1000;
+const TIMES = 10;
+
+export function measureGrowth(progress: (message: string) => void): Growth {
+  const plain = fitsOf(RUNS, READINGS);
+  const moreRuns = fitsOf(TIMES * RUNS, READINGS);
+  const morePoints = fitsOf(RUNS, TIMES * READINGS);
+  for (let i = 0; i < 3; i++) for (const fits of [plain, moreRuns, morePoints]) fits();
+  const rounds = Array.from({ length: ROUNDS }, (_, round) => {
+    progress(`growth, round ${round + 1} of ${ROUNDS}`);
+    const base = TIMES * leastTimeOf(REPEATS, plain);
+    return { runs: leastTimeOf(REPEATS, moreRuns) / base, points: leastTimeOf(REPEATS, morePoints) / base };
+  });
+  return {
+    runs: medianOf(rounds.map(({ runs }) => runs)),
+    points: medianOf(rounds.map(({ points }) => points)),
+  };
+}
+
+function fitsOf(runs: number, readings: number): () => void {
+  const inputs = Array.from({ length: STUDIES }, (_, i) => inputOf(benchmarkStudy(runs, readings, 101 + i)));
+  return () => {
+    for (const input of inputs) fitOrThrow(input);
+  };
+}
