@@ -76,7 +76,8 @@ function bestStarts(law: CourseLaw, trace: ScaledTrace, end: EndCondition): Floa
 /**
  * One descent; nothing where it did not settle. A course that ends before the last reading has a corner there, and the
  * sum of squares may have its least where a reading meets the corner: no gradient vanishes at such a point, and the
- * descent that can get no lower has arrived. So has one whose residuals are nothing but rounding.
+ * descent that can get no lower has arrived. So has one whose residuals are nothing but rounding, and one on a plateau:
+ * a straight trace with a free end is the same at every rate. Plateaus far from the readings lose by their sum of squares.
  */
 function descend(
   law: CourseLaw,
@@ -88,7 +89,7 @@ function descend(
   if (fit.status === "converged") return [fit];
   if (!("parameters" in fit)) return [];
   const over = law.endOfCourse?.(fit.parameters) ?? Number.POSITIVE_INFINITY;
-  return over < 1 || isExact(problem, fit, rounding) ? [fit] : [];
+  return fit.rank === 0 || over < 1 || isExact(problem, fit, rounding) ? [fit] : [];
 }
 
 /** A residual collects about this many roundings of what it is the difference of. */
