@@ -54,8 +54,6 @@ type DescentEnd = "converged" | "no-descent" | "out-of-evaluations" | "stopped";
 const FIRST_RADIUS = 1;
 /** Part of the residual variance that a step must promise to be worth its evaluation. */
 const SMALLEST_PROMISE = 1e-10;
-/** Where the promise is below this part, a thousandth of a standard error, one step that fails is enough to end. */
-const PROMISE_LOST_IN_NOISE = 1e-6;
 /** Evaluations after which a descent counts as a long one and its steps are bent. */
 const LONG_DESCENT = 100;
 /**
@@ -118,11 +116,7 @@ function stepWithin(
     const valid = proposal.promise > 0 && evaluateAt(search, search.trial);
     const gain = valid ? gainOf(search) : Number.NaN;
     if (gain >= LEAST_KEPT * proposal.promise) return { radius: nextRadius(radius, gain, proposal) };
-    if (
-      promiseAtBest <= PROMISE_LOST_IN_NOISE * residualVariance(search) ||
-      (valid && isWithinRounding(search))
-    )
-      return "converged";
+    if (valid && isWithinRounding(search)) return "converged";
     radius = reducedRadius(radius, gain, proposal);
     const isLost = valid && proposal.promise <= SMALLEST_PROMISE * residualVariance(search);
     if (isLost || !(radius > smallest)) {
