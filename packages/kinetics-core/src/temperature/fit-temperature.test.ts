@@ -139,6 +139,35 @@ describe("weights", () => {
   });
 });
 
+describe("points that lie on a line by luck", () => {
+  const stated = (relative: number) =>
+    fitted({
+      points: arrheniusPoints([298, 308, 318]).map((point) => ({
+        ...point,
+        rateConstantUncertainty: relative * point.rateConstant,
+      })),
+    });
+
+  it("keep the uncertainty that they state, propagated to E_a with z and not with t of one degree", () => {
+    const fit = stated(0.02);
+    const reciprocals = [298, 308, 318].map((t) => 1 / t);
+    const centre = reciprocals.reduce((sum, x) => sum + x, 0) / 3;
+    const spread = Math.sqrt(reciprocals.reduce((sum, x) => sum + (x - centre) ** 2, 0));
+    const expected = (GAS_CONSTANT * 0.02) / spread;
+    const { standardError, interval } = fit.activationEnergy;
+    expect(Number(standardError) / expected).toBeCloseTo(1, 9);
+    const [low = 0, high = 0] = interval ?? [];
+    expect((high - low) / 2 / expected).toBeCloseTo(1.959964, 5);
+    expect(fit.covariance.arrhenius?.[0][0]).toBeCloseTo(expected ** 2, 2);
+    expect(fit.newPointStandardDeviation).toBeCloseTo(0.02, 12);
+  });
+
+  it("have nothing to keep where they state nothing", () => {
+    const bare = fitted({ points: arrheniusPoints([298, 308, 318]) });
+    expect(Number(bare.activationEnergy.standardError)).toBeLessThan(1e-6);
+  });
+});
+
 describe("shared errors", () => {
   const points = arrheniusPoints(FIVE, ERRORS);
   const without = fitted({ points });

@@ -8,7 +8,7 @@ import {
 } from "kinetics-core/quantities";
 import { FEWEST_FOR_INTERVAL } from "./constants";
 import { curvatureOf } from "./curvature";
-import { allStated, type PlottedPoints, pointVariances } from "./point-variances";
+import { allStated, mean, type PlottedPoints, type PointVariances, pointVariances } from "./point-variances";
 import {
   covarianceOf,
   estimateFunctional,
@@ -45,16 +45,16 @@ export function fitTemperature(input: TemperatureInput): TemperatureResult {
 
   let slope = 0;
   let spread = pointVariances(plotted, slope, weighting, scatterIsKnown);
-  let fitted = lineThrough(plotted, plotted.logarithms, spread.variances, shared, slope, scatterFrom);
+  let fitted = lineThrough(plotted, plotted.logarithms, spread, shared, slope, scatterFrom);
   // u(T) becomes a variance of ln k by the slope, which the weights hardly move: twice is enough.
   for (let round = 0; round < 2; round++) {
     slope = fitted.line.coefficients[1];
     spread = pointVariances(plotted, slope, weighting, scatterIsKnown);
-    fitted = lineThrough(plotted, plotted.logarithms, spread.variances, shared, slope, scatterFrom);
+    fitted = lineThrough(plotted, plotted.logarithms, spread, shared, slope, scatterFrom);
   }
   const arrhenius = fitted.line;
   const reduced = reducedLogarithms(plotted, input.unit);
-  const eyring = lineThrough(plotted, reduced, spread.variances, shared, slope, scatterFrom).line;
+  const eyring = lineThrough(plotted, reduced, spread, shared, slope, scatterFrom).line;
 
   const degreesOfFreedom = points.length - 2;
   const options = { level, degreesOfFreedom: scatterIsKnown ? degreesOfFreedom : null };
@@ -83,7 +83,7 @@ export function fitTemperature(input: TemperatureInput): TemperatureResult {
     eyring,
     degreesOfFreedom,
     betweenPointStandardDeviation: spread.between === null ? null : Math.sqrt(spread.between),
-    newPointStandardDeviation: newPoint(fitted, spread.variances, scatterIsKnown),
+    newPointStandardDeviation: newPoint(fitted, spread, scatterIsKnown),
     temperatures,
     range,
     curvature,
@@ -140,7 +140,7 @@ function toMolarSeconds({ overallOrder, concentrationUnit, timeUnit }: RateConst
 function lineThrough(
   { points, reciprocals }: PlottedPoints,
   values: readonly number[],
-  variances: readonly number[],
+  { variances, floors }: PointVariances,
   shared: readonly SharedPointUncertainty[],
   slope: number,
   scatterFrom: "residuals" | "stated" | "none",
@@ -152,15 +152,15 @@ function lineThrough(
       ? [points.map((point) => (-slope * temperatureKelvin) / point.temperatureKelvin ** 2)]
       : []),
   ]);
-  return fitReciprocalLine({ reciprocals, values, variances, loadings, scatterFrom });
+  return fitReciprocalLine({ reciprocals, values, variances, floors, loadings, scatterFrom });
 }
 
-/** s² times the mean variance: the scatter that the points show, whatever they state. */
+/** s² times the mean variance: the scatter that the points show, and not below what they state. */
 function newPoint(
   { scale }: FittedLine,
-  variances: readonly number[],
+  { variances, floors }: PointVariances,
   scatterIsKnown: boolean,
 ): number | null {
   if (!scatterIsKnown || scale === null) return null;
-  return Math.sqrt((scale * variances.reduce((sum, variance) => sum + variance, 0)) / variances.length);
+  return Math.sqrt(Math.max(scale * mean(variances), mean(floors)));
 }

@@ -14,6 +14,8 @@ import type { TemperaturePoint } from "./temperature";
 export interface PointVariances {
   /** u² + f, or 1 for all where nothing is stated and nothing scatters. */
   readonly variances: readonly number[];
+  /** u² that counts as a floor of the errors; 0 for `stated` weights, whose errors are the residuals' alone. */
+  readonly floors: readonly number[];
   /** τ̂²; null where it is not estimated. */
   readonly between: number | null;
 }
@@ -53,12 +55,13 @@ export function pointVariances(
       fromRateConstant(point) +
       ((slope * (point.temperatureUncertaintyKelvin ?? 0)) / point.temperatureKelvin ** 2) ** 2,
   );
-  if (!scatterIsKnown) return { variances: stated ? own : own.map(() => 1), between: null };
-  if (weighting === "stated" && stated) return { variances: own, between: null };
+  const none = own.map(() => 0);
+  if (!scatterIsKnown) return { variances: stated ? own : own.map(() => 1), floors: none, between: null };
+  if (weighting === "stated" && stated) return { variances: own, floors: none, between: null };
   const between = betweenPoints(reciprocals, logarithms, own);
   const floor = Math.max(between, mean(own));
   const variances = floor < EXACT_VARIANCE ? own.map(() => 1) : own.map((value) => value + floor);
-  return { variances, between };
+  return { variances, floors: own, between };
 }
 
 function betweenPoints(
@@ -71,6 +74,6 @@ function betweenPoints(
   return varianceComponents({ terms, response: logarithms, stated: own, shared: [], blocks: [] }).betweenRuns;
 }
 
-function mean(values: readonly number[]): number {
+export function mean(values: readonly number[]): number {
   return values.reduce((sum, value) => sum + value, 0) / values.length;
 }

@@ -30,8 +30,9 @@ export interface TemperatureInput {
   /** Unit of k, for ΔS‡, which refers to 1 mol L⁻¹ and to seconds. Absent: per second, and mol L⁻¹ where it enters. */
   readonly unit?: RateConstantMeasure;
   /**
-   * `scatter` (default): weights 1/(u² + f) with f = max(τ̂², mean of u²). `stated`: 1/u² alone, the weighted least
-   * squares of textbooks, where every point states its u; it undercovers when the stated u are uneven.
+   * `scatter` (default): weights 1/(u² + f) with f = max(τ̂², mean of u²), errors from residuals but never below what the
+   * points state. `stated`: weights 1/u² and errors from residuals alone, the weighted least squares of textbooks, where
+   * every point states its u; it undercovers when the stated u are uneven.
    */
   readonly weighting?: "scatter" | "stated";
   /** Confidence level of every interval, default 0.95. */
@@ -58,6 +59,8 @@ export interface ReciprocalLine {
   readonly coefficients: Pair;
   /** Covariance from the scatter of the points, s²(XᵀWX)⁻¹; null where no scatter can be known. */
   readonly scatter: TwoByTwo | null;
+  /** Covariance from what the points state about themselves, below which a lucky scatter does not go. */
+  readonly floor: TwoByTwo;
   /** Covariance from shared errors, as stated. */
   readonly stated: TwoByTwo;
   /** Square root of the residual sum of squares of y over m − 2, unweighted; null with no degree of freedom. */
