@@ -5,9 +5,11 @@ import type { LawView, PrintedNumber } from "@/app/_ui/law-view";
 import type { Check, StudyAnalysis } from "@/app/_worksheet/analysis";
 import { type DisplayScale, rateConstantDisplay, rateDisplay } from "@/app/_worksheet/display-units";
 import { ASSUMED_ACTIVATION_ENERGY } from "@/app/_worksheet/law-input";
+import { presentRuns } from "@/app/_worksheet/present-runs";
 import { printSimpleOrder } from "@/app/_worksheet/print-order";
 import { type NamedOrder, standingConstant, standingOrders } from "@/app/_worksheet/standing-constant";
 import { lawExpression, printEstimate } from "@/app/_worksheet/standing-law.view";
+import { isMixed } from "@/db/sheet/mixed-run";
 import type { Sheet } from "@/db/sheet/sheet.schema";
 import { type AddedVariableFigureView, addedVariableViews } from "./added-variable.view";
 import { orderInWords } from "./order-words";
@@ -240,7 +242,7 @@ function budgetView(sheet: Sheet, fit: RateLawFit): BudgetView | null {
             `Temperature counts at ${ASSUMED_ACTIVATION_ENERGY / 1000} kJ mol^-1, assumed until the study has its own activation energy.`,
           ]
         : []),
-      STOCKS_NOT_COUNTED,
+      ...(presentRuns(sheet).some(isMixed) ? [] : [STOCKS_NOT_COUNTED]),
     ].join(" "),
   };
 }
@@ -248,7 +250,7 @@ function budgetView(sheet: Sheet, fit: RateLawFit): BudgetView | null {
 /** As the library names the line. */
 const TEMPERATURE_LINE = "Temperature";
 
-/** The sheet holds concentrations run by run: what is wrong with a stock is wrong with all of them, and moves k unseen. */
+/** Concentrations typed run by run: what is wrong with a stock is wrong with all of them, and moves k unseen. */
 const STOCKS_NOT_COUNTED =
   "An error that the runs share through a stock is not on the sheet and not counted here.";
 

@@ -5,7 +5,8 @@ import { bytesKeptByGroup } from "../group/bytes-kept";
 import { newIdentifier } from "../identifier";
 import { BYTES_PER_GROUP, limitSentences, POINTS_PER_STUDY } from "../limits";
 import { type Actor, mayActAs } from "../member/actor";
-import type { Sheet, SheetUpload } from "../sheet/sheet.schema";
+import { isMixed, stockedSpecies } from "../sheet/mixed-run";
+import type { Sheet, SheetRun, SheetUpload } from "../sheet/sheet.schema";
 import { type ChangeResult, type ChangeTarget, changeStudyIn } from "../study/change-study";
 import { readStudy } from "../study/study.queries";
 import { packTrace, type StoredTrace } from "../trace/trace-bytes";
@@ -161,10 +162,23 @@ function withTracedRuns(sheet: Sheet, runs: readonly WantedRun[]): Sheet | { ref
   }
   const filled = sheet.runs.map((run) => {
     const readings = planned.get(run.id);
-    return readings === undefined ? run : { ...run, ...readings };
+    if (readings === undefined) return run;
+    return { ...run, ...readings, concentrations: withWorkedOnes(sheet, run, readings.concentrations) };
   });
   const added = runs.flatMap(({ run, plannedRunId }) => (plannedRunId === null ? [run] : []));
   return withRuns(added)({ ...sheet, runs: filled });
+}
+
+/** What follows from volumes is not overwritten by what a file or a box says of the recipe. */
+function withWorkedOnes(
+  { stocks }: Sheet,
+  planned: SheetRun,
+  said: SheetRun["concentrations"],
+): SheetRun["concentrations"] {
+  if (!isMixed(planned)) return said;
+  const stocked = stockedSpecies(stocks);
+  const worked = Object.entries(planned.concentrations).filter(([id]) => stocked.has(id));
+  return { ...said, ...Object.fromEntries(worked) };
 }
 
 interface WaitingUpload {

@@ -9,6 +9,7 @@ import {
   type ChangeResult,
   type ChangeTarget,
   changeStudy,
+  type Derive,
 } from "../study/change-study";
 
 /**
@@ -21,7 +22,15 @@ export type NewRun = Pick<SheetRun, "id" | "label" | "concentrations"> &
   Partial<
     Pick<
       SheetRun,
-      "temperatureKelvin" | "block" | "mixture" | "trace" | "enteredRate" | "timeZeroSeconds" | "remark"
+      | "temperatureKelvin"
+      | "block"
+      | "mixture"
+      | "volumes"
+      | "markMicrolitre"
+      | "trace"
+      | "enteredRate"
+      | "timeZeroSeconds"
+      | "remark"
     >
   >;
 
@@ -125,19 +134,27 @@ export function removeRuns(
   );
 }
 
-/** Takes runs out of the bin; refused where another run has taken their label meanwhile. */
+/**
+ * Takes runs out of the bin; refused where another run has taken their label meanwhile. `derive` works out what follows from
+ * their volumes, since a stock may have changed.
+ */
 export function restoreRuns(
   db: Kysely<Database>,
   actor: Actor,
   target: ChangeTarget,
   runIds: readonly string[],
+  derive: Derive = (sheet) => sheet,
 ): Promise<ChangeResult> {
+  const restore = onRuns(runIds, (run) => ({ ...run, removedIn: null }));
   return changeStudy(
     db,
     actor,
     target,
     { verb: "restored", summary: about(runIds, "restored from the bin") },
-    onRuns(runIds, (run) => ({ ...run, removedIn: null })),
+    (sheet, revision) => {
+      const wanted = restore(sheet, revision);
+      return "refused" in wanted ? wanted : derive(wanted);
+    },
   );
 }
 

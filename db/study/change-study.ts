@@ -50,6 +50,9 @@ export type ChangeResult =
   | { readonly status: "not-found" }
   | { readonly status: "forbidden" };
 
+/** Works out anew what follows from the rest of a sheet; made above the store, which knows no chemistry. */
+export type Derive = (sheet: Sheet) => Sheet;
+
 export async function changeStudy(
   db: Kysely<Database>,
   actor: Actor,

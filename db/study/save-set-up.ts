@@ -4,18 +4,20 @@ import type { Actor } from "../member/actor";
 import { rowsInWords } from "../sheet/row-words";
 import type { Sheet } from "../sheet/sheet.schema";
 import { rowsOf, touchedRows } from "../sheet/sheet-rows";
-import { type ChangeResult, type ChangeTarget, changeStudy } from "./change-study";
+import { type ChangeResult, type ChangeTarget, changeStudy, type Derive } from "./change-study";
 import type { SetUp } from "./set-up.schema";
 
 /**
  * Saves the Set-up station as a whole. Rows that somebody else changed meanwhile and this form left alone stay as
- * they are. A species that leaves takes its order with it; what runs held of it stays with them.
+ * they are. A species that leaves takes its order with it; what runs held of it stays with them. `derive` works out what
+ * follows from what the form says.
  */
 export function saveSetUp(
   db: Kysely<Database>,
   actor: Actor,
   target: ChangeTarget,
   setUp: SetUp,
+  derive: Derive = (sheet) => sheet,
 ): Promise<ChangeResult> {
   return changeStudy(
     db,
@@ -26,7 +28,7 @@ export function saveSetUp(
       summary: (before, after) =>
         `Changed ${rowsInWords(touchedRows(rowsOf(before), rowsOf(after)), after, before)}.`,
     },
-    (sheet) => withSetUp(sheet, setUp),
+    (sheet) => derive(withSetUp(sheet, setUp)),
   );
 }
 

@@ -5,25 +5,28 @@ import { readRevisionSheet } from "../revision/revision.queries";
 import { readSheet } from "../sheet/read-sheet";
 import { rowsInWords } from "../sheet/row-words";
 import { rowsOf, type SheetRows, sameRow, sheetOf, touchedRows } from "../sheet/sheet-rows";
-import { type ChangeResult, changeStudyIn } from "./change-study";
+import { type ChangeResult, changeStudyIn, type Derive } from "./change-study";
 
 /**
  * Undoes one revision by a forward change: the rows it touched become again what they were before it. Refused when
  * one of them changed since, as that later work would be lost. Runs that the revision added go to the bin; files
- * stay. Undoing an undo is the redo.
+ * stay. Undoing an undo is the redo. `derive` works out what follows from rows that come back, such as the concentrations
+ * of a run whose stock changed while it was in the bin.
  */
 export async function undoRevision(
   db: Kysely<Database>,
   actor: Actor,
   target: { studyId: string; revision: number },
+  derive: Derive = (sheet) => sheet,
 ): Promise<ChangeResult> {
-  return db.transaction().execute((trx) => undoIn(trx, actor, target));
+  return db.transaction().execute((trx) => undoIn(trx, actor, target, derive));
 }
 
 async function undoIn(
   trx: Transaction<Database>,
   actor: Actor,
   { studyId, revision }: { studyId: string; revision: number },
+  derive: Derive,
 ): Promise<ChangeResult> {
   const study = await trx
     .selectFrom("study")
@@ -59,7 +62,7 @@ async function undoIn(
     .where("revision", "=", revision)
     .executeTakeFirstOrThrow();
   return changeStudyIn(trx, actor, { studyId, base: study.revision }, noteOf(entry), (sheet, next) =>
-    sheetOf(sheet.version, restored(rowsOf(sheet), rowsOf(before), changed, next)),
+    derive(sheetOf(sheet.version, restored(rowsOf(sheet), rowsOf(before), changed, next))),
   );
 }
 

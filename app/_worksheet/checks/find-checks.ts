@@ -3,6 +3,7 @@ import type { Sheet } from "@/db/sheet/sheet.schema";
 import type { Check, CheckSeverity, LawAnalysis, RunAnalysis } from "../analysis";
 import type { CarryingRun } from "../law-input";
 import { designChecks } from "./design-checks";
+import { ionicStrengthChecks } from "./ionic-strength-checks";
 import { lawChecks } from "./law-checks";
 import { rateChecks } from "./rate-checks";
 import { setUpChecks } from "./set-up-checks";
@@ -22,6 +23,7 @@ export function findChecks(checked: Checked): readonly Check[] {
   return [
     ...setUpChecks(checked),
     ...temperatureChecks(checked),
+    ...ionicStrengthChecks(checked),
     ...rateChecks(checked),
     ...designChecks(checked),
     ...lawChecks(checked),

@@ -2,11 +2,17 @@ import type { MixingInput, Portion, Solute } from "kinetics-core/mixing";
 import type { Mixing, Sheet, SheetRun, SheetSpecies, SheetStock } from "@/db/sheet/sheet.schema";
 import { lawName } from "../law-name";
 
+/** Stocks, how they are dispensed, and what they may hold. */
+export type Preparation = Pick<Sheet, "stocks" | "mixing" | "species">;
+
 /**
  * What `mixRuns` takes, from the stocks and volumes of the sheet. Volumes in µL, concentrations in mol L⁻¹. Species of
  * the law go by the name under which the law knows them, the others by their id.
  */
-export function mixingInput(sheet: Sheet, runs: readonly SheetRun[]): MixingInput {
+export function mixingInput(
+  sheet: Preparation,
+  runs: readonly Pick<SheetRun, "label" | "volumes" | "markMicrolitre">[],
+): MixingInput {
   const { stocks, mixing, species } = sheet;
   const byId = new Map(stocks.map((stock) => [stock.id, stock]));
   return {

@@ -1,6 +1,7 @@
 import { forRateLaw, mixRuns } from "kinetics-core/mixing";
 import type { SharedUncertainty } from "kinetics-core/rate-law";
-import type { Sheet, SheetRun, SheetSpecies } from "@/db/sheet/sheet.schema";
+import { isMixed, stockedSpecies } from "@/db/sheet/mixed-run";
+import type { Sheet, SheetRun } from "@/db/sheet/sheet.schema";
 import { lawSpecies, presentRuns } from "../present-runs";
 import { mixingInput, mixingName } from "./mixing-input";
 
@@ -12,7 +13,8 @@ import { mixingInput, mixingName } from "./mixing-input";
 export function remixed(sheet: Sheet): Sheet {
   const mixed = presentRuns(sheet).filter(isMixed);
   if (mixed.length === 0) return sheet;
-  const species = lawSpecies(sheet).filter((one) => isInStock(sheet, one));
+  const stocked = stockedSpecies(sheet.stocks);
+  const species = lawSpecies(sheet).filter(({ id }) => stocked.has(id));
   const { runs } = forRateLaw(mixRuns(mixingInput(sheet, mixed)), species.map(mixingName));
   const byLabel = new Map(runs.map((row) => [row.label, row]));
   return {
@@ -39,13 +41,4 @@ export function sharedThroughStocks(sheet: Sheet, runs: readonly SheetRun[]): re
   if (mixed.length === 0) return [];
   const names = lawSpecies(sheet).map(mixingName);
   return forRateLaw(mixRuns(mixingInput(sheet, mixed)), names).shared;
-}
-
-/** Concentrations follow from volumes; without any they were typed. */
-export function isMixed(run: Pick<SheetRun, "volumes">): boolean {
-  return Object.values(run.volumes).some((volume) => volume > 0);
-}
-
-function isInStock({ stocks }: Sheet, { id }: SheetSpecies): boolean {
-  return stocks.some((stock) => stock.contents[id] !== undefined);
 }

@@ -11,6 +11,7 @@ import {
 } from "@/app/_server/study-change";
 import { rateDisplay } from "@/app/_worksheet/display-units";
 import { lawSpecies } from "@/app/_worksheet/present-runs";
+import { workedOut } from "@/app/_worksheet/worked-out";
 import { newIdentifier } from "@/db/identifier";
 import { addRuns, removeRuns, restoreRuns, setRunsAside, takeRunsBack } from "@/db/run/run.commands";
 import type { Sheet } from "@/db/sheet/sheet.schema";
@@ -52,7 +53,7 @@ export const putIntoBin = memberAction(runsInput, "analyst", ({ db, actor, input
 );
 
 export const restoreFromBin = memberAction(runsInput, "analyst", ({ db, actor, input }) =>
-  changeWithEffect(db, actor, input.studyId, () => restoreRuns(db, actor, input, input.runIds)),
+  changeWithEffect(db, actor, input.studyId, () => restoreRuns(db, actor, input, input.runIds, workedOut)),
 );
 
 /** Plans a run with another run's recipe. */
@@ -68,6 +69,8 @@ export const repeatRecipe = memberAction(recipeInput, "analyst", async ({ db, ac
         id: newIdentifier(),
         label,
         concentrations: source.concentrations,
+        volumes: source.volumes,
+        markMicrolitre: source.markMicrolitre,
         remark: `Repeats ${source.label}`,
       },
     ]),

@@ -9,6 +9,7 @@ import {
   type LawPreview,
   previewEffect,
 } from "@/app/_server/study-change";
+import { workedOut } from "@/app/_worksheet/worked-out";
 import { newIdentifier } from "@/db/identifier";
 import { saveSetUp, withSetUp } from "@/db/study/save-set-up";
 import { readStudy } from "@/db/study/study.queries";
@@ -27,7 +28,7 @@ export const previewSetUp = memberAction(
     const reading = readSetUpForm(input.form, newIdentifier);
     if (reading.status === "faults") return refused(NOT_READ, reading.faults);
     const { setUp } = reading;
-    return done(await previewEffect(db, actor, input.studyId, (sheet) => withSetUp(sheet, setUp)));
+    return done(await previewEffect(db, actor, input.studyId, (sheet) => workedOut(withSetUp(sheet, setUp))));
   },
 );
 
@@ -44,7 +45,7 @@ export const keepSetUp = memberAction(
     if (reading.status === "faults") return refused(NOT_READ, reading.faults);
     let conflict = false;
     const outcome = await changeWithEffect(db, actor, input.studyId, async () => {
-      const result = await saveSetUp(db, actor, input, reading.setUp);
+      const result = await saveSetUp(db, actor, input, reading.setUp, workedOut);
       conflict = result.status === "conflict";
       return result;
     });
