@@ -7,9 +7,10 @@ import type { TemperaturePoint } from "./temperature";
  * Variance of ln k of each point. u_j² = u²(k)/k² + (E_a u_T/(R T²))², and points scatter beyond what they state: a
  * bath that was off, another day, another stock. As for orders from rates, weights are 1/(u² + f) with
  * f = max(τ̂², mean of u²), τ̂² by restricted likelihood, so that one point with a small stated u cannot carry the line;
- * s² from the residuals then scales them. Simulated with 3, 4, 5 and 8 temperatures, stated u even, alternating
- * between 1 and 10 %, or with one poor point, scatter of 0 to 4 %: this covers 94 to 99.9 % at a nominal 95 %, weights
- * 1/u² with the same s² 64 to 96 %, 1/(u² + τ̂²) 72 to 96 %, and 1/u² taken as known with z 36 to 96 %.
+ * s² from the residuals then scales them, with what the points state as a floor. Simulated with 3, 4, 5 and 8
+ * temperatures over 40 K, stated u even, alternating between 1 and 10 %, or with one poor point, further scatter of 0 to
+ * 4 %: E_a covers 95 to 100 % at a nominal 95 %; weights 1/u² with the same s² 64 to 96 %, 1/(u² + τ̂²) 72 to 96 %, and
+ * 1/u² taken as known with z 36 to 96 %. The price is two to four times the width where uneven statements are all true.
  */
 export interface PointVariances {
   /** u² + f, or 1 for all where nothing is stated and nothing scatters. */
