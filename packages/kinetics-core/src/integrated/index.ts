@@ -5,6 +5,13 @@ export { type CoursePoint, coursePoint } from "./course-point";
 export type { EndSignal } from "./end-signal";
 export { fitBurst } from "./fit-burst";
 export { fitIntegratedLaw } from "./fit-integrated-law";
+export {
+  fitSignalCourse,
+  type SignalCourseFit,
+  type SignalCourseInput,
+  type SignalCourseLaw,
+  type SignalCourseResult,
+} from "./fit-signal-course";
 export type { IntegratedLawFit, IntegratedLawInput, IntegratedLawResult } from "./integrated-law";
 export type { LackOfFit } from "./lack-of-fit";
 export { orderCourse } from "./order-course";
