@@ -13,29 +13,19 @@ const PULLED = 2;
 export function fitFlags(input: GlobalFitInput, fitted: FittedStudy): readonly Flag[] {
   return [
     ...fitted.inference.flags,
-    ...settledFlags(fitted),
+    ...boundFlags(fitted),
     ...runFlags(fitted),
     ...scaleFlags(input, fitted),
     ...endFlags(input, fitted),
   ];
 }
 
-function settledFlags({ settled, atBound }: FittedStudy): Flag[] {
-  const flags: Flag[] = [];
-  if (!settled)
-    flags.push({
-      code: "not-settled",
-      severity: "blocks",
-      message:
-        "The fit with scatter between runs has not settled: the runs differ too much for one law. Look for a run that does not belong, or fit another law.",
-    });
-  for (const name of atBound)
-    flags.push({
-      code: "at-bound",
-      severity: "blocks",
-      message: `${name} rests on the bound of what is accepted, so its interval means nothing. Hold it or choose another law.`,
-    });
-  return flags;
+function boundFlags({ atBound }: FittedStudy): Flag[] {
+  return atBound.map((name) => ({
+    code: "at-bound",
+    severity: "blocks",
+    message: `${name} rests on the bound of what is accepted, so its interval means nothing. Hold it or choose another law.`,
+  }));
 }
 
 function runFlags({ pass, study }: FittedStudy): Flag[] {

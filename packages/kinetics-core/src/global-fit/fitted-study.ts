@@ -32,8 +32,9 @@ export interface FittedStudy {
   readonly undetermined: number;
   readonly pooled: PooledNumbers;
   readonly pass: StudyPass;
+  readonly bounds: readonly (readonly [number, number])[];
+  readonly logRate: Float64Array;
   readonly atBound: readonly string[];
-  readonly settled: boolean;
   /** Passes over the full traces. */
   readonly iterations: number;
   readonly tolerance: number;
@@ -72,7 +73,6 @@ export function fitStudy(study: PreparedStudy, level: number, options: GlobalFit
   const fault = pooledFault(end, pass, names, theta);
   if (fault !== null) return refused(fault);
   const pooled = pooledNumbers(pass, theta);
-  const atBound = names.filter((_, i) => search.held[i] === 1);
 
   pass.setNoise(ownVariance(pass));
   for (const run of pass.runs) {
@@ -91,6 +91,7 @@ export function fitStudy(study: PreparedStudy, level: number, options: GlobalFit
   if (outcome.status === "no-course") return refused(noCourse());
   if (outcome.status === "failed")
     return refused(failure("not-determined", "runs", outcome.inference.message));
+  if (!outcome.settled) return refused(notConverged());
   return {
     status: "fitted",
     fitted: {
@@ -104,12 +105,17 @@ export function fitStudy(study: PreparedStudy, level: number, options: GlobalFit
       undetermined,
       pooled,
       pass,
-      atBound,
-      settled: outcome.settled,
+      bounds: search.bounds,
+      logRate,
+      atBound: names.filter((_, i) => isAtBound(theta[i] ?? 0, search.bounds[i])),
       iterations: pass.passes,
       tolerance,
     },
   };
+}
+
+function isAtBound(value: number, bounds: readonly [number, number] | undefined): boolean {
+  return bounds !== undefined && (value <= bounds[0] || value >= bounds[1]);
 }
 
 /** Names of θ: "ln k", the law's free parameters, "scale". */
@@ -196,6 +202,30 @@ function isFine(pass: StudyPass): boolean {
   return Math.sqrt(ownVariance(pass)) < FINE_BELOW * signal;
 }
 
+/**
+ * All courses together gain no more over a constant for each run than chance would give them in one of a thousand. In
+ * most studies the first run settles that it is not so.
+ */
+function isUnchanged(pass: StudyPass): boolean {
+  const least = (10 + 6 * pass.runs.length) * ownVariance(pass);
+  let gain = 0;
+  for (const [j, { signal }] of pass.study.runs.entries()) {
+    const flat = squaresAboutMean(signal);
+    gain += Math.max(0, flat - (pass.runs[j]?.residualSquares ?? 0));
+    if (gain > least) return false;
+  }
+  return true;
+}
+
+/** 0 where only rounding is left. */
+function squaresAboutMean(values: Float64Array): number {
+  let mean = 0;
+  for (let i = 0; i < values.length; i++) mean += (values[i] ?? 0) / values.length;
+  let squares = 0;
+  for (let i = 0; i < values.length; i++) squares += ((values[i] ?? 0) - mean) ** 2;
+  return squares > values.length * (1e-14 * mean) ** 2 ? squares : 0;
+}
+
 function pooledNumbers(pass: StudyPass, theta: Float64Array): PooledNumbers {
   let freedom = -pass.parameters + (scalePlace(pass.study) >= 0 ? 1 : 0);
   for (const run of pass.runs) freedom += run.points - 1;
@@ -227,16 +257,24 @@ function pooledFault(
       "runs",
       "In every run the reaction is over at the first reading, or never begins with the concentrations given, so the traces say nothing about its rate. Read earlier, slow the reaction down, or check the starting concentrations.",
     );
+  if (isUnchanged(pass))
+    return failure(
+      "no-change",
+      "runs",
+      "No trace changes beyond its noise: the reaction was over before the first reading, or has hardly begun at the last. Read earlier, or wait longer.",
+    );
   const open = undeterminedCombinations(pass.gram, names);
   if (open.length > 0)
     return failure("not-determined", "runs", open.map(({ message }) => message).join(" "), open);
-  if (end === "not-settled")
-    return failure(
-      "not-converged",
-      "law",
-      "The search for the parameters did not settle: the traces do not follow this law from any start that was tried. Try another law, or hold an order.",
-    );
-  return null;
+  return end === "not-settled" ? notConverged() : null;
+}
+
+function notConverged(): GlobalFitFailure {
+  return failure(
+    "not-converged",
+    "law",
+    "The search for the parameters did not settle from any start that was tried: the traces do not follow this law, or one run does not belong. Set a run aside, try another law, or hold an order.",
+  );
 }
 
 function noCourse(): GlobalFitFailure {

@@ -78,6 +78,7 @@ export interface UndeterminedCombination {
 export type GlobalFitFailureStatus =
   | "bad-input"
   | "too-few-points"
+  | "no-change"
   | "exhausted-at-first-reading"
   | "not-determined"
   | "no-course"

@@ -1,3 +1,9 @@
+export {
+  type GlobalBootstrap,
+  type GlobalBootstrapOptions,
+  type GlobalBootstrapResult,
+  bootstrapGlobalFit,
+} from "./bootstrap-global-fit";
 export type { StudySpecies } from "./course-law";
 export { fitGlobal } from "./fit-global";
 export type {
@@ -13,4 +19,5 @@ export type {
   PooledEstimates,
   UndeterminedCombination,
 } from "./global-fit";
+export { type GlobalProfile, profileGlobalFit } from "./profile-global-fit";
 export { type RobustBeside, robustBeside } from "./robust-beside";

@@ -68,9 +68,8 @@ export function randomRateSearch(
       ...(linearisations === 1 ? { betweenRunVariance: spreadOfOwn(information) } : {}),
     });
     if (inference.status !== "determined") return { status: "failed", inference };
-    const part = partOfStep(inference.step, logRate);
-    const settled = linearisations > 1 && part === 1 && isSettled(inference);
-    take(pass, theta, bounds, inference, part);
+    take(pass, theta, bounds, inference, partOfStep(inference.step, logRate));
+    const settled = linearisations > 1 && isSettled(inference, linearisedAt, theta);
     if (settled || linearisations === MOST_LINEARISATIONS)
       return {
         status: "linearised",
@@ -129,7 +128,7 @@ export function scalePrior(pass: StudyPass, theta: Float64Array): readonly Prior
 }
 
 /** The part of a step that keeps the logarithm of the rate within its cap. */
-function partOfStep(step: Float64Array, logRate: Float64Array): number {
+export function partOfStep(step: Float64Array, logRate: Float64Array): number {
   let inLogRate = 0;
   for (let i = 0; i < step.length; i++) inLogRate += (logRate[i] ?? 0) * (step[i] ?? 0);
   return Math.min(1, LARGEST_LOG_STEP / Math.abs(inLogRate));
@@ -153,9 +152,12 @@ function spreadOfOwn(information: readonly RunInformation[]): number {
   return count > 1 ? Math.max(0, squares - (sum * sum) / count) / (count - 1) : 0;
 }
 
-function isSettled({ step, covariance }: RandomRateInference): boolean {
-  for (let i = 0; i < step.length; i++)
-    if (Math.abs(step[i] ?? 0) > OUTER_SETTLED * Math.sqrt(covariance[i]?.[i] ?? 0)) return false;
+/** By the step that was taken: one that a bound has held back is none. */
+export function isSettled({ covariance }: RandomRateInference, from: Float64Array, to: Float64Array): boolean {
+  for (let i = 0; i < to.length; i++) {
+    const step = Math.abs((to[i] ?? 0) - (from[i] ?? 0));
+    if (step > OUTER_SETTLED * Math.sqrt(covariance[i]?.[i] ?? 0)) return false;
+  }
   return true;
 }
 
@@ -166,18 +168,38 @@ function take(
   inference: RandomRateInference,
   part: number,
 ): void {
-  const step = new Float64Array(theta.length);
-  for (let i = 0; i < theta.length; i++) {
+  const step = takeStep(theta, bounds, inference.step, part);
+  pass.runs.forEach((run, j) => {
+    moveRun(pass, run, inference, j, step);
+  });
+}
+
+/** Moves θ by a part of the step, no farther than its bounds; returns what it moved by. */
+export function takeStep(
+  theta: Float64Array,
+  bounds: readonly (readonly [number, number])[],
+  wanted: Float64Array,
+  part: number,
+): Float64Array {
+  return wanted.map((change, i) => {
     const [low, high] = bounds[i] ?? [0, 0];
     const from = theta[i] ?? 0;
-    theta[i] = Math.min(high, Math.max(low, from + part * (inference.step[i] ?? 0)));
-    step[i] = (theta[i] ?? 0) - from;
-  }
-  pass.runs.forEach((run, j) => {
-    const predicted = (inference.runs[j]?.logRateConstant.estimate ?? 0) - (inference.step[0] ?? 0);
-    const change = Math.max(-LARGEST_OWN_STEP, Math.min(LARGEST_OWN_STEP, predicted - run.deviation));
-    run.deviation += change;
-    run.noise = inference.noiseVariances[j] ?? run.noise;
-    if (run.eliminated.length > 0) updateNuisances(pass.study, run, step, change);
+    theta[i] = Math.min(high, Math.max(low, from + part * change));
+    return (theta[i] ?? 0) - from;
   });
+}
+
+/** Moves a run to the ln k that the model predicts for it; `place`: of the run among those of the inference. */
+export function moveRun(
+  pass: StudyPass,
+  run: RunLinearisation,
+  inference: RandomRateInference,
+  place: number,
+  step: Float64Array,
+): void {
+  const predicted = (inference.runs[place]?.logRateConstant.estimate ?? 0) - (inference.step[0] ?? 0);
+  const change = Math.max(-LARGEST_OWN_STEP, Math.min(LARGEST_OWN_STEP, predicted - run.deviation));
+  run.deviation += change;
+  run.noise = inference.noiseVariances[place] ?? run.noise;
+  if (run.eliminated.length > 0) updateNuisances(pass.study, run, step, change);
 }

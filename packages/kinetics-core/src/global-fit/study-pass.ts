@@ -81,6 +81,12 @@ export class StudyPass {
     return true;
   }
 
+  /** Linearises one run where it stands; false where it has no finite course at θ. */
+  one(index: number, theta: Float64Array, tolerance: number): boolean {
+    const run = this.runs[index];
+    return run !== undefined && this.trace.run(index, theta, tolerance, run);
+  }
+
   /** The same variance of a reading for ε·l and for what is known of the runs' nuisances. */
   setNoise(variance: number): void {
     this.noise = variance;
