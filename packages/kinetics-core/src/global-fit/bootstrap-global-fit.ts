@@ -137,7 +137,9 @@ class Refits {
       if (linearisations > 0 && isSettled(inference, from, theta)) return theta;
       this.move(drawn, indices, inference, step);
       for (const j of drawn) if (!pass.one(j, theta, tolerance)) return null;
-      const anew = pass.runs.map((run, j) => (drawn.includes(j) ? informationOf(run, stands[j]?.information.label ?? "") : null));
+      const anew = pass.runs.map((run, j) =>
+        drawn.includes(j) ? informationOf(run, stands[j]?.information.label ?? "") : null,
+      );
       told = Array.from(indices).flatMap((j) => anew[j] ?? []);
       variance = undefined;
     }
@@ -169,7 +171,7 @@ class Refits {
   ): void {
     for (const j of drawn) {
       const run = this.fitted.pass.runs[j];
-      if (run !== undefined) moveRun(this.fitted.pass, run, inference, indices.indexOf(j), step);
+      if (run !== undefined) moveRun(this.fitted.pass, run, inference, indices.indexOf(j), step, 1);
     }
   }
 }

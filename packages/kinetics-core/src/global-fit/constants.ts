@@ -29,8 +29,9 @@ export const LARGEST_LOG_STEP = 1;
 /** Largest change of one order in one step. */
 export const LARGEST_ORDER_STEP = 1;
 
-/** Passes over the data after which a search gives up. Four to eight are usual. */
+/** Passes after which a search of the full traces gives up, and one of the thinned ones. Two or three are usual. */
 export const MOST_PASSES = 80;
+export const MOST_COARSE_PASSES = 20;
 
 /** Predicted fall of the sum of squares, in residual variances, at which the coarse search ends. */
 export const COARSE_SETTLED = 0.1;
@@ -49,6 +50,9 @@ export const OUTER_SETTLED = 0.1;
 
 /** Linearisations of the outer loop. Two or three are usual. */
 export const MOST_LINEARISATIONS = 25;
+
+/** Linearisation from which on the loop goes half the way. */
+export const FIRST_HALVED = 5;
 
 /** Largest change of a run's own ln k before the loop has settled: farther away its course is no straight line. */
 export const LARGEST_OWN_STEP = 1;

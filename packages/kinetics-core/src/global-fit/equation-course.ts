@@ -2,6 +2,9 @@ import { equationValue, type RateEquation } from "kinetics-core/rate-equation";
 import { LARGEST_ORDER_STEP } from "./constants";
 import type { CourseLaw, StudySpecies } from "./course-law";
 
+/** A stage that oversteps exhaustion finds this part of a reactant left: c^n ln c has no value at 0 where n ≤ 0. */
+const NOTHING = 1e-12;
+
 /**
  * Any rate equation along a course, a user's expression included. The equation is asked at the stages of some fourteen
  * steps a run; the points themselves are read from the dense output and never ask it.
@@ -22,6 +25,7 @@ export function equationCourse(
   const free = equation.parameters.filter(({ name }) => held[name] === undefined);
   const count = free.length;
   const starts = new Float64Array(places.length);
+  const floors = new Float64Array(places.length);
   const c = new Float64Array(places.length);
   const value = equationValue(equation);
   const reversible = equation.reversible;
@@ -39,7 +43,11 @@ export function equationCourse(
     starts: free.map(({ start }) => start),
     largestSteps: free.map(({ kind }) => (kind === "order" ? LARGEST_ORDER_STEP : Number.POSITIVE_INFINITY)),
     begin(concentrations, theta) {
-      for (let i = 0; i < places.length; i++) starts[i] = concentrations[places[i] ?? 0] ?? 0;
+      for (let i = 0; i < places.length; i++) {
+        const start = concentrations[places[i] ?? 0] ?? 0;
+        starts[i] = start;
+        floors[i] = (numbers[i] ?? 0) < 0 ? NOTHING * start : 0;
+      }
       take(theta);
     },
     evaluate(y, derivative) {

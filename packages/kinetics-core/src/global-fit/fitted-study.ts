@@ -4,6 +4,8 @@ import {
   COARSE_TOLERANCE,
   FINE_BELOW,
   FINE_TOLERANCE,
+  MOST_COARSE_PASSES,
+  MOST_PASSES,
   POOR_FIT,
   SETTLED,
   STEP_TOLERANCE,
@@ -64,11 +66,11 @@ export function fitStudy(study: PreparedStudy, level: number, options: GlobalFit
   pass.setNoise(noise);
   const search = new PooledSearch(pass, theta, logRate);
   let tolerance = STEP_TOLERANCE;
-  let end = search.search({ tolerance, settled: SETTLED, shouldStop });
+  let end = search.search({ tolerance, settled: SETTLED, mostPasses: MOST_PASSES, shouldStop });
   if (end === "settled" && isFine(pass)) {
     tolerance = FINE_TOLERANCE;
     pass.setNoise(ownVariance(pass));
-    end = search.search({ tolerance, settled: SETTLED, shouldStop });
+    end = search.search({ tolerance, settled: SETTLED, mostPasses: MOST_PASSES, shouldStop });
   }
   const fault = pooledFault(end, pass, names, theta);
   if (fault !== null) return refused(fault);
@@ -140,7 +142,12 @@ function beginning(
     pass.setNoise(noise);
     const logRate = meanLogRateDerivatives(few, start);
     const search = new PooledSearch(pass, start, logRate);
-    const end = search.search({ tolerance: COARSE_TOLERANCE, settled: COARSE_SETTLED, shouldStop });
+    const end = search.search({
+      tolerance: COARSE_TOLERANCE,
+      settled: COARSE_SETTLED,
+      mostPasses: MOST_COARSE_PASSES,
+      shouldStop,
+    });
     if (end === "stopped") return best === null ? null : { ...best, noise };
     if (end === "no-course") continue;
     const own = ownVariance(pass);

@@ -1,8 +1,8 @@
 export {
+  bootstrapGlobalFit,
   type GlobalBootstrap,
   type GlobalBootstrapOptions,
   type GlobalBootstrapResult,
-  bootstrapGlobalFit,
 } from "./bootstrap-global-fit";
 export type { StudySpecies } from "./course-law";
 export { fitGlobal } from "./fit-global";

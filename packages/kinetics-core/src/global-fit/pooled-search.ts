@@ -1,4 +1,4 @@
-import { LARGEST_LOG_STEP, MOST_PASSES, SCALE_BOUNDS, UNRESOLVED } from "./constants";
+import { LARGEST_LOG_STEP, SCALE_BOUNDS, UNRESOLVED } from "./constants";
 import { NormalStep } from "./normal-step";
 import { scalePlace } from "./prepared-study";
 import { updateNuisances } from "./project-run";
@@ -12,10 +12,13 @@ import type { StudyPass } from "./study-pass";
  * large by a thousand puts every reading on the flat end of its course, where nothing shows the way back. A parameter
  * at its bound whose gradient points outwards is held for the step.
  */
+const MOST_DAMPING = 1e7;
+
 export interface SearchSettings {
   readonly tolerance: number;
   /** Predicted fall of Σ r², in residual variances, at which the search ends. */
   readonly settled: number;
+  readonly mostPasses: number;
   readonly shouldStop: () => boolean;
 }
 
@@ -56,14 +59,14 @@ export class PooledSearch {
   }
 
   /** From `theta`, which is left at the best point; the last step that settled is taken and not looked at again. */
-  search({ tolerance, settled, shouldStop }: SearchSettings): SearchEnd {
+  search({ tolerance, settled, mostPasses, shouldStop }: SearchSettings): SearchEnd {
     const { pass, theta } = this;
     if (!pass.at(theta, tolerance)) return "no-course";
     let best = pass.residualSquares;
     let damping = 0;
     this.gram.set(pass.gram);
     this.gradient.set(pass.gradient);
-    for (let trial = 0; trial < MOST_PASSES; trial++) {
+    for (let trial = 0; trial < mostPasses; trial++) {
       if (shouldStop()) return "stopped";
       const fall = this.prepareStep(damping);
       const variance = best / this.freedom();
@@ -86,10 +89,9 @@ export class PooledSearch {
       }
       theta.set(this.kept);
       this.restoreNuisances();
-      // A fall that only rounding or the steps' error has undone is none that could be had.
-      if (fall < 1e-9 * best && walked && -gain < 1e-7 * best) return "settled";
       damping = damping === 0 ? 1e-3 : 10 * damping;
-      if (damping > 1e9) return "not-settled";
+      // No step leads down, however short: a minimum to within the steps' error, or the bottom of a kink.
+      if (damping > MOST_DAMPING) return "settled";
     }
     return "not-settled";
   }

@@ -10,9 +10,7 @@ import { informationOf, isSettled, moveRun, partOfStep, scalePrior, takeStep } f
  * held by one more observation of it, a millionth of its standard error wide, since ln k cannot leave θ: its direction
  * is that of the scatter between runs.
  */
-export type GlobalProfile =
-  | ({ readonly status: "profiled" } & ProfileInterval)
-  | GlobalFitFailure;
+export type GlobalProfile = ({ readonly status: "profiled" } & ProfileInterval) | GlobalFitFailure;
 
 const HELD_WITHIN = 1e-6;
 const MOST_LINEARISATIONS_HELD = 12;
@@ -78,7 +76,7 @@ function leastDeviance(
     const step = takeStep(theta, bounds, inference.step, partOfStep(inference.step, logRate));
     theta[place] = value;
     pass.runs.forEach((run, j) => {
-      moveRun(pass, run, inference, j, step);
+      moveRun(pass, run, inference, j, step, 1);
     });
     if (linearisations > 0 && isSettled({ ...inference, covariance: whole.covariance }, from, theta))
       return inference.marginalDeviance - 2 * Math.log(hold.standardUncertainty);

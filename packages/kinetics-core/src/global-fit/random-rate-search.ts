@@ -5,7 +5,13 @@ import {
   type RunInformation,
   randomRateInference,
 } from "kinetics-core/inference";
-import { LARGEST_LOG_STEP, LARGEST_OWN_STEP, MOST_LINEARISATIONS, OUTER_SETTLED } from "./constants";
+import {
+  FIRST_HALVED,
+  LARGEST_LOG_STEP,
+  LARGEST_OWN_STEP,
+  MOST_LINEARISATIONS,
+  OUTER_SETTLED,
+} from "./constants";
 import { scalePlace } from "./prepared-study";
 import { updateNuisances } from "./project-run";
 import type { RunLinearisation } from "./run-linearisation";
@@ -22,7 +28,9 @@ import type { StudyPass } from "./study-pass";
  *   3. until no parameter moves by more than a tenth of its standard error; that step is taken too.
  *
  * The loop is Gauss and Newton's: its error after a step is of the second order in b_j's own error, so two or three
- * passes settle it. A fixed point is the least of the penalised sum of squares at its own τ², whatever the way there.
+ * passes settle it. Where a reactant is used up with a kink in the course (order 0), the linear model changes as a
+ * reading passes the kink and the loop may turn about its end; after a few passes it goes half the way.
+ * A fixed point is the least of the penalised sum of squares at its own τ², whatever the way there.
  */
 export interface RandomRateSettings {
   readonly tolerance: number;
@@ -68,7 +76,8 @@ export function randomRateSearch(
       ...(linearisations === 1 ? { betweenRunVariance: spreadOfOwn(information) } : {}),
     });
     if (inference.status !== "determined") return { status: "failed", inference };
-    take(pass, theta, bounds, inference, partOfStep(inference.step, logRate));
+    const turn = linearisations < FIRST_HALVED ? 1 : 0.5;
+    take(pass, theta, bounds, inference, turn * partOfStep(inference.step, logRate), turn);
     const settled = linearisations > 1 && isSettled(inference, linearisedAt, theta);
     if (settled || linearisations === MOST_LINEARISATIONS)
       return {
@@ -153,7 +162,11 @@ function spreadOfOwn(information: readonly RunInformation[]): number {
 }
 
 /** By the step that was taken: one that a bound has held back is none. */
-export function isSettled({ covariance }: RandomRateInference, from: Float64Array, to: Float64Array): boolean {
+export function isSettled(
+  { covariance }: RandomRateInference,
+  from: Float64Array,
+  to: Float64Array,
+): boolean {
   for (let i = 0; i < to.length; i++) {
     const step = Math.abs((to[i] ?? 0) - (from[i] ?? 0));
     if (step > OUTER_SETTLED * Math.sqrt(covariance[i]?.[i] ?? 0)) return false;
@@ -167,10 +180,11 @@ function take(
   bounds: readonly (readonly [number, number])[],
   inference: RandomRateInference,
   part: number,
+  turn: number,
 ): void {
   const step = takeStep(theta, bounds, inference.step, part);
   pass.runs.forEach((run, j) => {
-    moveRun(pass, run, inference, j, step);
+    moveRun(pass, run, inference, j, step, turn);
   });
 }
 
@@ -189,16 +203,18 @@ export function takeStep(
   });
 }
 
-/** Moves a run to the ln k that the model predicts for it; `place`: of the run among those of the inference. */
+/** Moves a run by a part of the way to the ln k that the model predicts for it; `place`: of the run in the inference. */
 export function moveRun(
   pass: StudyPass,
   run: RunLinearisation,
   inference: RandomRateInference,
   place: number,
   step: Float64Array,
+  part: number,
 ): void {
   const predicted = (inference.runs[place]?.logRateConstant.estimate ?? 0) - (inference.step[0] ?? 0);
-  const change = Math.max(-LARGEST_OWN_STEP, Math.min(LARGEST_OWN_STEP, predicted - run.deviation));
+  const wanted = part * (predicted - run.deviation);
+  const change = Math.max(-LARGEST_OWN_STEP, Math.min(LARGEST_OWN_STEP, wanted));
   run.deviation += change;
   run.noise = inference.noiseVariances[place] ?? run.noise;
   if (run.eliminated.length > 0) updateNuisances(pass.study, run, step, change);
