@@ -1,9 +1,10 @@
 import fc from "fast-check";
 import { describe, expect, it } from "vitest";
 import { fitNonlinear } from "./fit-nonlinear";
-import type { NonlinearProblem, NonlinearSolution } from "./nonlinear-problem";
+import type { NonlinearProblem } from "./nonlinear-problem";
 import { profileInterval } from "./profile-interval";
 import { secondOpinion } from "./second-opinion";
+import { numbersIn, solved } from "./simulated-decay";
 import { standardErrorsOf } from "./solution-uncertainty";
 
 interface Point {
@@ -30,17 +31,8 @@ function decay(points: readonly Point[]): NonlinearProblem {
   };
 }
 
-function solved(problem: NonlinearProblem, start: readonly number[]): NonlinearSolution {
-  const fit = fitNonlinear(problem, start);
-  if (fit.status !== "converged") throw new Error(`${fit.status}: ${fit.message}`);
-  return fit;
-}
-
-function numbersIn(value: unknown): number[] {
-  if (typeof value === "number") return [value];
-  if (value instanceof Float64Array) return Array.from(value);
-  return typeof value === "object" && value !== null ? Object.values(value).flatMap(numbersIn) : [];
-}
+const fittedTo = (problem: NonlinearProblem, start: readonly number[]) =>
+  solved(fitNonlinear(problem, start));
 
 const between = (min: number, max: number) => fc.double({ min, max, noNaN: true });
 const power = between(-9, 9).map((exponent) => 10 ** exponent);
@@ -58,8 +50,8 @@ describe("any nonlinear fit", () => {
   it("scales with the units of its data, standard errors included", () => {
     fc.assert(
       fc.property(trace, power, power, (points, byX, byY) => {
-        const plain = solved(decay(points), [0.7, 1, 0]);
-        const scaled = solved(decay(points.map(({ x, y }) => ({ x: x * byX, y: y * byY }))), [
+        const plain = fittedTo(decay(points), [0.7, 1, 0]);
+        const scaled = fittedTo(decay(points.map(({ x, y }) => ({ x: x * byX, y: y * byY }))), [
           0.7 * byY,
           1 / byX,
           0,
@@ -81,8 +73,8 @@ describe("any nonlinear fit", () => {
     );
     fc.assert(
       fc.property(trace, order, (points, places) => {
-        const plain = solved(decay(points), [0.7, 1, 0]);
-        const shuffled = solved(decay(places.flatMap((place) => points[place] ?? [])), [0.7, 1, 0]);
+        const plain = fittedTo(decay(points), [0.7, 1, 0]);
+        const shuffled = fittedTo(decay(places.flatMap((place) => points[place] ?? [])), [0.7, 1, 0]);
         plain.parameters.forEach((value, j) => {
           expect(shuffled.parameters[j]).toBeCloseTo(value, 10);
         });
@@ -131,9 +123,9 @@ describe("any nonlinear fit", () => {
             return problem.evaluate(theta, residuals, jacobian);
           },
         };
-        const fit = solved(bounded, [1, low, 0.5]);
+        const fit = fittedTo(bounded, [1, low, 0.5]);
         expect(asked.every((k) => k >= low && k <= high)).toBe(true);
-        const best = solved(problem, [0.7, 1, 0]).residualSquares;
+        const best = fittedTo(problem, [0.7, 1, 0]).residualSquares;
         expect(fit.residualSquares).toBeGreaterThanOrEqual(best * (1 - 1e-12));
         if (!fit.held.some(Boolean)) expect(fit.residualSquares).toBeCloseTo(best, 12);
       }),
