@@ -1,3 +1,4 @@
+import fc from "fast-check";
 import { describe, expect, it } from "vitest";
 import { fitLinear, type LinearFit, type LinearSolution } from "./fit-linear";
 
@@ -55,12 +56,12 @@ describe("a linear fit", () => {
   it("keeps columns of very different size apart", () => {
     const fit = fitted(
       fitLinear(
-        [ONES.map(() => 1e-150), X.map((x) => x * 1e150)],
+        [ONES.map(() => 1e-120), X.map((x) => x * 1e120)],
         X.map((x) => 1 + 2 * x),
       ),
     );
-    expect((fit.coefficients[0] ?? 0) * 1e-150).toBeCloseTo(1, 13);
-    expect((fit.coefficients[1] ?? 0) * 1e150).toBeCloseTo(2, 13);
+    expect((fit.coefficients[0] ?? 0) * 1e-120).toBeCloseTo(1, 13);
+    expect((fit.coefficients[1] ?? 0) * 1e120).toBeCloseTo(2, 13);
   });
 
   it.each([
@@ -78,6 +79,14 @@ describe("a linear fit", () => {
       /response holds NaN at place 5/,
     ],
     [
+      "a column too small to square",
+      [ONES, X.map((x) => x * 1e-160)],
+      Y,
+      {},
+      "bad-input",
+      /column 1 has values of up to 6e-160/,
+    ],
+    [
       "a weight of zero",
       [ONES, X],
       Y,
@@ -89,5 +98,89 @@ describe("a linear fit", () => {
     const fit = fitLinear(columns, response, options);
     expect(fit.status).toBe(status);
     expect("message" in fit && fit.message).toMatch(sentence);
+  });
+});
+
+describe("any linear fit", () => {
+  const value = fc.integer({ min: -10_000, max: 10_000 }).map((whole) => whole / 1000);
+  const rows = fc.array(fc.tuple(value, value, value), { minLength: 6, maxLength: 12 });
+  const fitOf = (
+    data: readonly (readonly [number, number, number])[],
+    unit = 1,
+    weights?: readonly number[],
+  ) =>
+    fitLinear(
+      [data.map(() => 1), data.map(([x]) => x * unit), data.map(([, z]) => z)],
+      data.map(([, , y]) => y),
+      {
+        ...(weights && { weights }),
+      },
+    );
+
+  it("scales a coefficient against its column, and is the same in another order", () => {
+    fc.assert(
+      fc.property(rows, fc.integer({ min: -40, max: 40 }), fc.boolean(), (data, exponent, backwards) => {
+        const plain = fitOf(data);
+        const other = fitOf(backwards ? [...data].reverse() : data, 2 ** exponent);
+        expect(other.status).toBe(plain.status);
+        if (plain.status !== "fitted" || other.status !== "fitted") return;
+        const [slope, scaled] = [plain.coefficients[1] ?? 0, (other.coefficients[1] ?? 0) * 2 ** exponent];
+        expect(Math.abs(scaled - slope)).toBeLessThanOrEqual(
+          1e-12 * (plain.standardDeviations?.[1] ?? 0) + 1e-12 * Math.abs(slope),
+        );
+      }),
+      { numRuns: 200, seed: 21 },
+    );
+  });
+
+  it("leaves residuals without a component along any column, weighted or not, and no NaN", () => {
+    fc.assert(
+      fc.property(
+        rows,
+        fc.array(fc.double({ min: 0.01, max: 100, noNaN: true }), { minLength: 12, maxLength: 12 }),
+        (data, twelve) => {
+          const weights = data.map((_, i) => twelve[i] ?? 1);
+          const fit = fitOf(data, 1, weights);
+          if (fit.status !== "fitted") return;
+          const size = Math.sqrt(fit.residualSquares) * 1000;
+          for (const column of [data.map(() => 1), data.map(([x]) => x), data.map(([, z]) => z)]) {
+            const along = column.reduce(
+              (sum, x, i) => sum + x * (weights[i] ?? 0) * (fit.residuals[i] ?? 0),
+              0,
+            );
+            expect(Math.abs(along)).toBeLessThanOrEqual(1e-13 * size + 1e-11);
+          }
+          expect(
+            [...fit.coefficients, ...(fit.standardDeviations ?? []), fit.rSquared ?? 0].every(
+              Number.isFinite,
+            ),
+          ).toBe(true);
+        },
+      ),
+      { numRuns: 200, seed: 22 },
+    );
+  });
+
+  it("is refused or finite, however small the numbers", () => {
+    const wild = fc.array(
+      fc.array(fc.double({ min: -10, max: 10, noNaN: true }), { minLength: 3, maxLength: 3 }),
+      {
+        minLength: 1,
+        maxLength: 8,
+      },
+    );
+    fc.assert(
+      fc.property(wild, (data) => {
+        const fit = fitOf(data.map(([x = 0, z = 0, y = 0]) => [x, z, y]));
+        expect(JSON.parse(JSON.stringify(fit.status === "fitted" ? fit.unscaledCovariance : []))).toEqual(
+          fit.status === "fitted" ? fit.unscaledCovariance : [],
+        );
+        if (fit.status === "fitted")
+          expect(
+            [...fit.coefficients, ...fit.residuals, ...(fit.standardDeviations ?? [])].every(Number.isFinite),
+          ).toBe(true);
+      }),
+      { numRuns: 300, seed: 23 },
+    );
   });
 });

@@ -1,5 +1,6 @@
 import { columnOf, type Matrix, singularValues, zeroMatrix } from "kinetics-core/linear-algebra";
 import { compensatedDot } from "./compensated-dot";
+import { faultOf, sizeFaultOf } from "./linear-input";
 import { type RefinedSystem, refinedSolution, refinedSystem } from "./refined-solution";
 import { type TwicePrecise, timesEach, twicePrecise } from "./twice-precision";
 
@@ -48,62 +49,65 @@ export function fitLinear(
   response: ArrayLike<number>,
   options: LinearOptions = {},
 ): LinearFit {
-  const m = response.length;
   const design = columns.map((column) => ("remainders" in column ? column : twicePrecise(column)));
-  const refusal = refusalOf(design, response, options.weights);
-  if (refusal !== null) return refusal;
+  const bad = (message: string): LinearFit => ({ status: "bad-input", message });
+  const fault = faultOf(design, response, options.weights);
+  if (fault !== null) return bad(fault);
+  if (response.length < design.length)
+    return {
+      status: "too-few-points",
+      message: `There are ${response.length} points for ${design.length} coefficients; at least as many points as coefficients are needed.`,
+    };
   const roots = options.weights && Float64Array.from(options.weights, Math.sqrt);
   const weighted = (numbers: TwicePrecise) => (roots === undefined ? numbers : timesEach(numbers, roots));
-  const system = refinedSystem(design.map(weighted), m);
+  const weightedDesign = design.map(weighted);
+  const weightedResponse = weighted(twicePrecise(response));
+  const sizeFault = sizeFaultOf(weightedDesign, weightedResponse);
+  if (sizeFault !== null) return bad(sizeFault);
+  const system = refinedSystem(weightedDesign, response.length);
   const dependence = dependenceIn(system);
   if (dependence !== null) return dependence;
-
-  const { coefficients, residuals } = refinedSolution(system, weighted(twicePrecise(response)), null);
+  const { coefficients, residuals } = refinedSolution(system, weightedResponse, null);
   const residualSquares = compensatedDot(residuals.values, residuals.values);
-  const degreesOfFreedom = m - design.length;
-  const unscaledCovariance = unscaledCovarianceOf(system);
-  const variance = degreesOfFreedom > 0 ? residualSquares / degreesOfFreedom : null;
   return {
     status: "fitted",
     coefficients: coefficients.values,
     residuals: residuals.values.map((residual, i) => residual / (roots?.[i] ?? 1)),
     residualSquares,
-    degreesOfFreedom,
-    residualStandardDeviation: variance === null ? null : Math.sqrt(variance),
-    unscaledCovariance,
-    covariance: variance === null ? null : unscaledCovariance.map((row) => row.map((c) => variance * c)),
-    standardDeviations:
-      variance === null ? null : unscaledCovariance.map((row, j) => Math.sqrt(variance * (row[j] ?? 0))),
+    ...scatterOf(system, residualSquares),
     rSquared: rSquaredOf(design, response, options.weights, residualSquares),
   };
 }
 
-function refusalOf(
-  design: readonly TwicePrecise[],
-  response: ArrayLike<number>,
-  weights: ArrayLike<number> | undefined,
-): LinearFit | null {
-  const bad = (message: string): LinearFit => ({ status: "bad-input", message });
-  const m = response.length;
-  const lengths = [
-    ...design.map(({ values }, j) => [`column ${j}`, values] as const),
-    ["weights", weights] as const,
-  ];
-  for (const [name, values] of [["response", response] as const, ...lengths]) {
-    if (values === undefined) continue;
-    if (values.length !== m) return bad(`${name} has ${values.length} values; the response has ${m}.`);
-    const at = Array.from(values).findIndex((value) => !Number.isFinite(value));
-    if (at >= 0) return bad(`${name} holds ${values[at]} at place ${at}; finite numbers are accepted.`);
-  }
-  const light = Array.from(weights ?? []).findIndex((weight) => !(weight > 0));
-  if (light >= 0) return bad(`weights holds ${weights?.[light]} at place ${light}; weights must be above 0.`);
-  if (design.length === 0) return bad("There is no column; a fit needs at least one.");
-  if (m < design.length)
+type Scatter = Pick<
+  LinearSolution,
+  | "degreesOfFreedom"
+  | "residualStandardDeviation"
+  | "unscaledCovariance"
+  | "covariance"
+  | "standardDeviations"
+>;
+
+function scatterOf(system: RefinedSystem, residualSquares: number): Scatter {
+  const degreesOfFreedom = system.points - system.columns.length;
+  const unscaledCovariance = unscaledCovarianceOf(system);
+  if (degreesOfFreedom === 0)
     return {
-      status: "too-few-points",
-      message: `There are ${m} points for ${design.length} coefficients; at least as many points as coefficients are needed.`,
+      degreesOfFreedom,
+      residualStandardDeviation: null,
+      unscaledCovariance,
+      covariance: null,
+      standardDeviations: null,
     };
-  return null;
+  const variance = residualSquares / degreesOfFreedom;
+  const deviation = Math.sqrt(variance);
+  return {
+    degreesOfFreedom,
+    residualStandardDeviation: deviation,
+    unscaledCovariance,
+    covariance: unscaledCovariance.map((row) => row.map((value) => variance * value)),
+    standardDeviations: unscaledCovariance.map((row, j) => deviation * Math.sqrt(row[j] ?? 0)),
+  };
 }
 
 /** Columns of unit length that are alike to this part are one column, as far as a double tells. */
