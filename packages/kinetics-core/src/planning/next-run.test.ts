@@ -1,5 +1,8 @@
-import type { FittedLaw } from "kinetics-core/prediction";
+import { type FittedLaw, lawOfRates } from "kinetics-core/prediction";
+import { randomDraws } from "kinetics-core/random";
 import { powerEquation, saturatingEquation } from "kinetics-core/rate-equation";
+import { fitRateLaw } from "kinetics-core/rate-law";
+import { nineRecipes, nineRuns, simulateRuns } from "kinetics-core/simulation";
 import { describe, expect, it } from "vitest";
 import { nextRuns, type PlannedRun } from "./next-run";
 
@@ -54,7 +57,34 @@ describe("standard errors of a design", () => {
   });
 });
 
+describe("the law of a fit", () => {
+  it("gives the standard errors that the fit itself reports", () => {
+    const fit = fitRateLaw(
+      simulateRuns({ ...nineRuns, rateErrors: [], pipetting: 0 }, randomDraws(8).normal),
+    );
+    if (fit.status !== "fitted") throw new Error(fit.message);
+    const found = lawOfRates(fit);
+    if (found.status !== "law") throw new Error(found.message);
+    const made = nineRecipes.map(([A, B]) => ({ A, B }));
+    const scatter = Number(fit.betweenRunStandardDeviation);
+    const [run] = planned({ law: found.law, made, scatter });
+    expect(Number(run?.standardErrorsBefore.n_B) / Number(fit.orders.B?.standardError)).toBeCloseTo(1, 6);
+    const ofConstant = Number(run?.standardErrorsBefore["ln k"]);
+    expect(ofConstant / Number(fit.logRateConstant.standardError)).toBeCloseTo(1, 6);
+  });
+});
+
 describe("the next run", () => {
+  it("is one of the caller's candidates where the grid has nothing better, and never one that does not fit", () => {
+    const only = { A: 0.03, B: 0.07 };
+    const request = {
+      made: series,
+      feasible: { ranges: { A: [0.03, 0.03], B: [0.02, 0.07] }, stocks: {} },
+    } as const;
+    const [run] = planned({ ...request, candidates: [only, { A: 0.03, B: 5 }] });
+    expect(run?.recipe).toEqual(only);
+  });
+
   it("separates what the runs left open: B was never varied, so it goes to an end of B", () => {
     const [run] = planned({ made: series });
     expect(run?.standardErrorsBefore.n_B).toBeNull();

@@ -1,6 +1,6 @@
 import type { FittedLaw } from "kinetics-core/prediction";
 import { type Flag, inARow, numberInWords } from "kinetics-core/quantities";
-import { type FeasibleSet, type Recipe, recipeGrid, refineRecipe } from "./feasible-set";
+import { type FeasibleSet, isFeasible, type Recipe, recipeGrid, refineRecipe } from "./feasible-set";
 import { cautionsOf } from "./planning-cautions";
 import {
   type Design,
@@ -57,7 +57,7 @@ export function nextRuns(request: NextRunRequest): NextRunResult {
   const fault = faultOf(request, names, target);
   if (fault !== null) return fault;
   const gradient = gradientAt(law);
-  const grid = [...recipeGrid(feasible), ...candidates];
+  const grid = [...recipeGrid(feasible), ...candidates.filter((recipe) => isFeasible(feasible, recipe))];
   let design = designOf(law, made);
   const runs: PlannedRun[] = [];
   for (let i = 0; i < count; i++) {
@@ -84,7 +84,7 @@ export function nextRuns(request: NextRunRequest): NextRunResult {
   };
 }
 
-/** The best of a grid, refined; null where the law gives no rate anywhere. Candidates of the caller stay as they are. */
+/** The best of a grid, refined; null where the law gives no rate anywhere. */
 export function bestOf(
   feasible: FeasibleSet,
   grid: readonly Recipe[],

@@ -54,10 +54,10 @@ export function courseBand(
     };
   const prepared = courseOf(law, mixture);
   if (prepared.status !== "course") return prepared;
-  const table = tableOf(prepared.course, Math.max(0, ...times));
+  const edges = edgesOf(tableOf(prepared.course, Math.max(0, ...times)));
   return {
     status: "predicted",
-    points: times.map((time) => pointAt(table, time)),
+    points: times.map((time) => pointAt(edges, time)),
     flags: rangeFlags(law, mixture.concentrations),
   };
 }
@@ -102,21 +102,53 @@ function gradientOf({ law }: Course, sums: Float64Array): readonly number[] {
   return [-1, ...law.parameters.map((_, j) => (sums[1 + j] ?? Number.NaN) / scaledTime)];
 }
 
-function pointAt(table: CourseTable, time: number): CourseBandPoint {
-  const { course } = table;
-  const { mixture } = course;
-  const best = solve(table, time, 0, "ofTheLaw");
-  const value = extentAt(course, best.u);
+/** The course and its two edges as times against u: t·e^(z s) at every row of the table. */
+interface Edge {
+  readonly table: CourseTable;
+  readonly z: number;
+  readonly kind: Kind;
+  readonly times: Float64Array;
+}
+
+interface Edges {
+  readonly best: Edge;
+  /** Slow and fast; null where there is no interval. */
+  readonly ofTheLaw: readonly [Edge, Edge] | null;
+  readonly newRun: readonly [Edge, Edge] | null;
+}
+
+function edgesOf(table: CourseTable): Edges {
+  const { course, rows } = table;
+  const { law } = course;
+  const edge = (z: number, kind: Kind): Edge => ({
+    table,
+    z,
+    kind,
+    times: Float64Array.from(rows, ({ sums }) => timeOf(course, sums, z, kind)),
+  });
+  const factor = law.covariance === null ? null : factorOf(law);
+  const pair = (kind: Kind) =>
+    factor === null ? null : ([edge(factor, kind), edge(-factor, kind)] as const);
+  return {
+    best: edge(0, "ofTheLaw"),
+    ofTheLaw: pair("ofTheLaw"),
+    newRun: law.betweenRunStandardDeviation === null ? null : pair("newRun"),
+  };
+}
+
+function pointAt(edges: Edges, time: number): CourseBandPoint {
+  const { course } = edges.best.table;
+  const best = solve(edges.best, time);
   const extent: Banded = {
-    value,
-    ofTheLaw: intervalAt(table, time, "ofTheLaw", best),
-    newRun: course.law.betweenRunStandardDeviation === null ? null : intervalAt(table, time, "newRun", best),
+    value: extentAt(course, best.u),
+    ofTheLaw: intervalAt(edges.ofTheLaw, time, best),
+    newRun: intervalAt(edges.newRun, time, best),
   };
   return {
     time,
     extent,
     concentrations: Object.fromEntries(
-      Object.entries(mixture.concentrations).map(([name, start]) => [
+      Object.entries(course.mixture.concentrations).map(([name, start]) => [
         name,
         concentrationOf(course, name, start, extent),
       ]),
@@ -124,16 +156,12 @@ function pointAt(table: CourseTable, time: number): CourseBandPoint {
   };
 }
 
-function intervalAt(table: CourseTable, time: number, kind: Kind, best: Position): Interval | null {
-  const { course } = table;
-  const factor = factorOf(course.law);
-  if (factor === null || course.law.covariance === null) return null;
-  if (course.end.kind === "equilibrium") return intervalOfExtent(course, best, factor, kind);
-  // A slow reaction takes long: the upper end of the time interval belongs to the lower extent.
-  return [
-    extentAt(course, solve(table, time, factor, kind).u),
-    extentAt(course, solve(table, time, -factor, kind).u),
-  ];
+function intervalAt(pair: readonly [Edge, Edge] | null, time: number, best: Position): Interval | null {
+  if (pair === null) return null;
+  const [slow, fast] = pair;
+  const { course } = slow.table;
+  if (course.end.kind === "equilibrium") return intervalOfExtent(course, best, slow.z, slow.kind);
+  return [extentAt(course, solve(slow, time).u), extentAt(course, solve(fast, time).u)];
 }
 
 function intervalOfExtent(course: Course, { u, sums }: Position, factor: number, kind: Kind): Interval {
@@ -171,10 +199,13 @@ interface Position {
 }
 
 const MOST_ITERATIONS = 100;
+/** Of the time, relative: far below what is drawn or printed. */
+const SETTLED = 1e-11;
 
 /** u at which t·e^(z s) is `time`, by regula falsi with the Illinois rule; the end where it is never so late. */
-function solve({ course, rows }: CourseTable, time: number, z: number, kind: Kind): Position {
-  const next = rows.findIndex(({ sums }) => timeOf(course, sums, z, kind) >= time);
+function solve({ table, z, kind, times }: Edge, time: number): Position {
+  const { course, rows } = table;
+  const next = times.findIndex((reached) => reached >= time);
   const last = rows.at(-1);
   if (last === undefined) throw new RangeError("a table of a course begins at 0");
   if (next < 0) return { u: course.lastU, sums: last.sums };
@@ -186,14 +217,19 @@ function solve({ course, rows }: CourseTable, time: number, z: number, kind: Kin
     timeIntegrals(course, lower.u, u, sums);
     return sums;
   };
-  let [a, fa] = [lower.u, timeOf(course, lower.sums, z, kind) - time];
-  let [b, fb] = [upper.u, timeOf(course, upper.sums, z, kind) - time];
+  // ln t is nearly straight in u away from the start, t itself next to it.
+  const miss = (sums: Float64Array) => {
+    const at = timeOf(course, sums, z, kind);
+    return lower.u === 0 ? at / time - 1 : Math.log(at / time);
+  };
+  let [a, fa] = [lower.u, miss(lower.sums)];
+  let [b, fb] = [upper.u, miss(upper.sums)];
   let sums = upper.sums;
-  for (let i = 0; i < MOST_ITERATIONS && b - a > 1e-12 * b && fb !== 0; i++) {
+  for (let i = 0; i < MOST_ITERATIONS && b - a > SETTLED * b && fb !== 0; i++) {
     const u = i % 8 === 7 ? (a + b) / 2 : (a * fb - b * fa) / (fb - fa);
     sums = sumsAt(u);
-    const f = timeOf(course, sums, z, kind) - time;
-    if (Math.abs(f) <= 1e-12 * time) return { u, sums };
+    const f = miss(sums);
+    if (Math.abs(f) <= SETTLED) return { u, sums };
     if (f > 0) {
       [b, fb] = [u, f];
       fa /= 2;

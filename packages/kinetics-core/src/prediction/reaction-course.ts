@@ -50,6 +50,8 @@ const LAST_U_TO_EQUILIBRIUM = 16;
 /** A reactant left over by less than rounding of the starting concentrations is used up. */
 const USED_UP = 1e-12;
 const STEPS_TO_EQUILIBRIUM = 400;
+/** A millionth of the way. */
+const JUST_AFTER = 1e-6;
 
 export function courseOf(law: FittedLaw, mixture: Mixture): CourseResult {
   const fault = faultOf(law, mixture);
@@ -109,15 +111,18 @@ function faultOf({ equation, parameters }: FittedLaw, mixture: Mixture): CourseF
   return null;
 }
 
-/** A course needs a rate just after the start. */
+/**
+ * A course needs a rate at the start. Where f is 0 there (autocatalysis without any product) the reaction never begins by
+ * this law; where it has no value (a negative order in an absent product) it counts just after.
+ */
 function startsAt(course: Course): CourseResult {
   const at = evaluator(course);
-  const early = at(1e-6);
-  if (early !== null && early.f > 0) return { status: "course", course };
+  const first = at(0)?.f ?? at(JUST_AFTER)?.f ?? null;
+  if (first !== null && first > 0) return { status: "course", course };
   return {
     status: "no-rate",
     place: "concentrations",
-    message: `The law gives no rate of reaction in this mixture${early === null ? "" : ` (k times ${printNumber(early.f, 3)})`}: a species that it needs is absent, or the mixture lies beyond its equilibrium. Change the starting concentrations.`,
+    message: `The law gives no rate of reaction in this mixture${first === null ? "" : ` (k times ${printNumber(first, 3)})`}: a species that it needs is absent, or the mixture lies beyond its equilibrium. Change the starting concentrations.`,
   };
 }
 
@@ -125,7 +130,7 @@ function startsAt(course: Course): CourseResult {
 function equilibriumExtent(course: Course): number | null {
   const at = evaluator(course);
   const positive = (u: number) => (at(u)?.f ?? 0) > 0;
-  if (!positive(1e-6)) return null;
+  if (!positive(JUST_AFTER)) return null;
   let below = 0;
   for (let step = 1; step <= STEPS_TO_EQUILIBRIUM; step++) {
     const u = (course.lastU * step) / STEPS_TO_EQUILIBRIUM;

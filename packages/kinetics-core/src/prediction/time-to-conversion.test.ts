@@ -186,6 +186,33 @@ describe("what cannot be predicted", () => {
     expect(result).toMatchObject({ status, place, message: expect.stringMatching(/\w/) });
   });
 
+  it("a reaction that its own product must start does not start without it", () => {
+    const autocatalytic = power({ A: 1, P: 1 }, 0.3);
+    const mixtureWith = (P: number) => ({
+      concentrations: { A: 0.2, P },
+      stoichiometricNumbers: { A: -1, P: 1 },
+    });
+    expect(timeToConversion(autocatalytic, mixtureWith(0), 0.5).status).toBe("no-rate");
+    // k t = ln[(A0 P)/(P0 A)]/(A0 + P0).
+    const expected = Math.log((0.2 * 0.101) / (0.001 * 0.1)) / (0.201 * 0.3);
+    const found = predicted(timeToConversion(autocatalytic, mixtureWith(0.001), 0.5));
+    expect(Number(found.ofTheLaw.estimate) / expected).toBeCloseTo(1, 9);
+  });
+
+  it("a product that inhibits by a negative order does not stop the start", () => {
+    const inhibited = power({ A: 1, P: -0.5 }, 0.3);
+    const result = predicted(
+      timeToConversion(
+        inhibited,
+        { concentrations: { A: 0.2, P: 0 }, stoichiometricNumbers: { A: -1, P: 1 } },
+        0.5,
+      ),
+    );
+    // k t = ∫ √x/(0.2 − x) dx = √0.2 (2 artanh √½ − 2 √½).
+    const expected = (Math.sqrt(0.2) * (2 * Math.atanh(Math.SQRT1_2) - 2 * Math.SQRT1_2)) / 0.3;
+    expect(Number(result.ofTheLaw.estimate) / expected).toBeCloseTo(1, 7);
+  });
+
   it("flags starting concentrations outside the runs", () => {
     const result = predicted(timeToConversion(law, { ...mixture, concentrations: { A: 0.2, B: 3 } }, 0.5));
     expect(result.flags[0]).toMatchObject({
