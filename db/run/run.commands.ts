@@ -78,7 +78,15 @@ export function withRuns(added: readonly NewRun[]): (sheet: Sheet) => Sheet {
 export type RunEdit = Partial<
   Pick<
     SheetRun,
-    "label" | "concentrations" | "temperatureKelvin" | "block" | "mixture" | "enteredRate" | "remark"
+    | "label"
+    | "concentrations"
+    | "temperatureKelvin"
+    | "block"
+    | "mixture"
+    | "volumes"
+    | "markMicrolitre"
+    | "enteredRate"
+    | "remark"
   >
 >;
 
@@ -143,18 +151,15 @@ export function restoreRuns(
   actor: Actor,
   target: ChangeTarget,
   runIds: readonly string[],
-  derive: Derive = (sheet) => sheet,
+  derive?: Derive,
 ): Promise<ChangeResult> {
-  const restore = onRuns(runIds, (run) => ({ ...run, removedIn: null }));
   return changeStudy(
     db,
     actor,
     target,
     { verb: "restored", summary: about(runIds, "restored from the bin") },
-    (sheet, revision) => {
-      const wanted = restore(sheet, revision);
-      return "refused" in wanted ? wanted : derive(wanted);
-    },
+    onRuns(runIds, (run) => ({ ...run, removedIn: null })),
+    derive,
   );
 }
 

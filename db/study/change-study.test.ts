@@ -261,6 +261,28 @@ describe("two people at once", () => {
     expect(sheet.conditions.solvent).toBe("ethanol");
   });
 
+  test("what follows from the rest is worked out on the sheet as it will stand, and clashes with nobody", async () => {
+    // Each run's remark follows from the study's name, as concentrations follow from stocks.
+    const derive = (sheet: Sheet): Sheet => ({
+      ...sheet,
+      runs: sheet.runs.map((one) => ({ ...one, remark: sheet.study.name })),
+    });
+    const { db } = temporary;
+    revisionOf(await editRun(db, group.lead, { studyId, base }, "run-R02", { block: "day 2" }));
+    revisionOf(await addRuns(db, group.lead, { studyId, base: base + 1 }, [exampleRun("R04")]));
+    const revision = revisionOf(
+      await changeStudy(db, group.analyst, { studyId, base }, note, rename("Renamed"), derive),
+    );
+    const { sheet } = await present();
+    expect(sheet.runs.map(({ label, remark, block }) => [label, remark, block])).toEqual([
+      ["R01", "Renamed", null],
+      ["R02", "Renamed", "day 2"],
+      ["R03", "Renamed", null],
+      ["R04", "Renamed", null],
+    ]);
+    expect(sheet.runs.every(({ changedIn }) => changedIn === revision)).toBe(true);
+  });
+
   test("runs added by both stand side by side, and a label taken meanwhile is refused", async () => {
     const { db } = temporary;
     revisionOf(await addRuns(db, group.lead, { studyId, base }, [exampleRun("R04")]));

@@ -50,8 +50,13 @@ export type ChangeResult =
   | { readonly status: "not-found" }
   | { readonly status: "forbidden" };
 
-/** Works out anew what follows from the rest of a sheet; made above the store, which knows no chemistry. */
+/**
+ * Works out anew what follows from the rest of a sheet; made above the store, which knows no chemistry. It sees the sheet as
+ * it will stand, with others' rows in it, and what it changes is part of the same revision and no cause of a conflict.
+ */
 export type Derive = (sheet: Sheet) => Sheet;
+
+const NOTHING_FOLLOWS: Derive = (sheet) => sheet;
 
 export async function changeStudy(
   db: Kysely<Database>,
@@ -59,8 +64,9 @@ export async function changeStudy(
   target: ChangeTarget,
   note: ChangeNote,
   apply: Apply,
+  derive: Derive = NOTHING_FOLLOWS,
 ): Promise<ChangeResult> {
-  return db.transaction().execute((trx) => changeStudyIn(trx, actor, target, note, apply));
+  return db.transaction().execute((trx) => changeStudyIn(trx, actor, target, note, apply, derive));
 }
 
 /** As `changeStudy`, inside a transaction of the caller's that keeps something else with it. */
@@ -70,6 +76,7 @@ export async function changeStudyIn(
   { studyId, base }: ChangeTarget,
   note: ChangeNote,
   apply: Apply,
+  derive: Derive = NOTHING_FOLLOWS,
 ): Promise<ChangeResult> {
   const study = await trx
     .selectFrom("study")
@@ -111,7 +118,7 @@ export async function changeStudyIn(
   const [currentRows, wantedRows] = [rowsOf(current), rowsOf(wanted)];
   const open = new Set([...touched].filter((key) => !sameRow(key, wantedRows, currentRows)));
   if (open.size === 0) return { status: "unchanged" };
-  const merged = mergeSheets(current, marked(wanted, open, revision), open);
+  const merged = withDerived(mergeSheets(current, marked(wanted, open, revision), open), derive, revision);
   const problem = rowCountProblem(rowsOf(merged)) ?? sheetProblem(merged);
   if (problem !== undefined) return { status: "refused", message: problem };
 
@@ -137,6 +144,12 @@ export async function changeStudyIn(
 /** Touched rows that also changed between what was seen and now, and not to the same. */
 function clashes(touched: ReadonlySet<string>, seen: SheetRows, wanted: SheetRows, current: SheetRows) {
   return [...touched].filter((key) => !sameRow(key, seen, current) && !sameRow(key, wanted, current));
+}
+
+function withDerived(merged: Sheet, derive: Derive, revision: number): Sheet {
+  const derived = derive(merged);
+  const follows = touchedRows(rowsOf(merged), rowsOf(derived));
+  return follows.size === 0 ? merged : mergeSheets(merged, marked(derived, follows, revision), follows);
 }
 
 /** The touched runs note the revision that changes them. */

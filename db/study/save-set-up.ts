@@ -17,7 +17,7 @@ export function saveSetUp(
   actor: Actor,
   target: ChangeTarget,
   setUp: SetUp,
-  derive: Derive = (sheet) => sheet,
+  derive?: Derive,
 ): Promise<ChangeResult> {
   return changeStudy(
     db,
@@ -28,7 +28,8 @@ export function saveSetUp(
       summary: (before, after) =>
         `Changed ${rowsInWords(touchedRows(rowsOf(before), rowsOf(after)), after, before)}.`,
     },
-    (sheet) => derive(withSetUp(sheet, setUp)),
+    (sheet) => withSetUp(sheet, setUp),
+    derive,
   );
 }
 

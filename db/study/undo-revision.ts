@@ -17,7 +17,7 @@ export async function undoRevision(
   db: Kysely<Database>,
   actor: Actor,
   target: { studyId: string; revision: number },
-  derive: Derive = (sheet) => sheet,
+  derive?: Derive,
 ): Promise<ChangeResult> {
   return db.transaction().execute((trx) => undoIn(trx, actor, target, derive));
 }
@@ -26,7 +26,7 @@ async function undoIn(
   trx: Transaction<Database>,
   actor: Actor,
   { studyId, revision }: { studyId: string; revision: number },
-  derive: Derive,
+  derive: Derive | undefined,
 ): Promise<ChangeResult> {
   const study = await trx
     .selectFrom("study")
@@ -61,8 +61,13 @@ async function undoIn(
     .where("study_id", "=", studyId)
     .where("revision", "=", revision)
     .executeTakeFirstOrThrow();
-  return changeStudyIn(trx, actor, { studyId, base: study.revision }, noteOf(entry), (sheet, next) =>
-    derive(sheetOf(sheet.version, restored(rowsOf(sheet), rowsOf(before), changed, next))),
+  return changeStudyIn(
+    trx,
+    actor,
+    { studyId, base: study.revision },
+    noteOf(entry),
+    (sheet, next) => sheetOf(sheet.version, restored(rowsOf(sheet), rowsOf(before), changed, next)),
+    derive,
   );
 }
 

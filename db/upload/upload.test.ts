@@ -5,9 +5,10 @@ import { PART_BYTES } from "../blob/blob.commands";
 import { BYTES_PER_FILE, BYTES_PER_GROUP } from "../limits";
 import { addTraces } from "../run/add-traces";
 import { addRuns } from "../run/run.commands";
+import { changeStudy } from "../study/change-study";
 import { readStudy } from "../study/study.queries";
 import { makeGroup, type TestGroup } from "../testing/make-group";
-import { makeStudy } from "../testing/make-study";
+import { exampleRun, makeStudy } from "../testing/make-study";
 import { type TemporaryDatabase, temporaryDatabase } from "../testing/temporary-database";
 import { readTrace } from "../trace/read-trace";
 import { dropLeftovers } from "./drop-leftovers";
@@ -149,6 +150,43 @@ test("a planned run takes readings where it stands, once; a second time is refus
   expect(again).toMatchObject({ status: "refused" });
   expect((await readStudy(db, group.reader, study))?.revision).toBe(after?.revision);
   expect(await leftInBlobs()).toBe(kept);
+});
+
+test("a planned run that was mixed from stocks keeps the concentrations that follow from its volumes", async () => {
+  const { db } = temporary;
+  const study = await makeStudy(db, group.lead);
+  const worked = { molar: 0.00125, relativeUncertainty: 0.004 };
+  const made = await changeStudy(
+    db,
+    group.analyst,
+    { studyId: study, base: 1 },
+    { verb: "runs added", summary: "R01 added." },
+    (sheet) => ({
+      ...sheet,
+      stocks: [
+        {
+          id: "s",
+          symbol: "A",
+          name: "A in water",
+          position: 0,
+          contents: { a: { value: 0.0025, standardUncertainty: 0 } },
+          dilution: null,
+          lot: "",
+          madeOn: "",
+          howKnown: "",
+        },
+      ],
+      runs: [{ ...exampleRun("R01"), enteredRate: null, volumes: { s: 500 }, concentrations: { a: worked } }],
+    }),
+  );
+  expect(made.status).toBe("changed");
+  const readings = oneRun(null);
+  const said = { a: { molar: 0.002, relativeUncertainty: 0 }, c: { molar: 0.01, relativeUncertainty: 0 } };
+  const runs = readings.runs.map((run) => ({ ...run, plannedRunId: "run-R01", concentrations: said }));
+  await addTraces(db, group.analyst, { studyId: study, base: 2 }, { ...readings, runs });
+  const [run] = (await readStudy(db, group.reader, study))?.sheet.runs ?? [];
+  expect(run?.trace?.points).toBe(3);
+  expect(run?.concentrations).toEqual({ a: worked, c: said.c });
 });
 
 test("an empty file and one that broke off are refused by a sentence, and nothing of them is left", async () => {

@@ -11,6 +11,8 @@ export interface GridColumn {
   readonly readOnly?: boolean;
   /** Why values under such a heading may not be pasted into this column, another unit; null where they may. */
   readonly headingFault?: (heading: string) => string | null;
+  /** Whether a heading that is pasted with its block names this column: such blocks go by name instead of place. */
+  readonly isNamed?: (heading: string) => boolean;
   /** Smallest width, any CSS length. */
   readonly width?: string;
 }
@@ -22,6 +24,8 @@ export interface GridRow {
   readonly cells: Readonly<Record<string, string>>;
   /** Drawn in place of the text while the cell is not edited. */
   readonly drawn?: Readonly<Record<string, ReactNode>>;
+  /** Columns that are worked out in this row, though they are typed in others. */
+  readonly readOnly?: readonly string[];
   /** What is wrong with a cell whose text is kept as typed. */
   readonly faults?: Readonly<Record<string, string>>;
   /** Said in the row below: what is wrong, and what repairs it. */
@@ -35,6 +39,19 @@ export interface GridProblem {
   readonly title: string;
   readonly detail?: string;
   readonly repairs: readonly { readonly label: string; readonly act: () => void }[];
+}
+
+/** Columns under one heading above their own, in order from the first: "Volumes", "After mixing". */
+export interface GridBand {
+  readonly id: string;
+  readonly head: ReactNode;
+  readonly columns: number;
+  readonly computed?: boolean;
+}
+
+/** Whether a cell is worked out and neither typed nor pasted into. */
+export function isReadOnly(row: GridRow | undefined, column: GridColumn | undefined): boolean {
+  return column === undefined || column.readOnly === true || row?.readOnly?.includes(column.id) === true;
 }
 
 export interface GridPosition {

@@ -1,5 +1,13 @@
 import type { Block } from "./clipboard-block";
-import type { GridChange, GridColumn, GridPosition, GridRow, GridStep, Rectangle } from "./grid-shape";
+import {
+  type GridChange,
+  type GridColumn,
+  type GridPosition,
+  type GridRow,
+  type GridStep,
+  isReadOnly,
+  type Rectangle,
+} from "./grid-shape";
 import { planPaste } from "./plan-paste";
 
 /** What an act on the grid changes: only cells whose text differs, none that is computed. `null` where nothing does. */
@@ -89,13 +97,20 @@ export function pasteStep(
   const plan = planPaste(block, { columns, rowCount: rows.length, from, roomForNewRows });
   if (plan.status === "refused") return { refused: plan.message };
   const changes = changesOf(rows, columns, plan.cells);
+  const workedOut = plan.cells.filter(
+    ({ row, column, text }) => text !== "" && isReadOnly(rows[row], columns[column]),
+  );
+  const skippedComputed = plan.skippedComputedCells + workedOut.length;
   const said = [
     `${cells(changes.length)} pasted`,
     plan.newRows > 0 ? `${plan.newRows} new ${plan.newRows === 1 ? "run" : "runs"}` : "",
     plan.skippedHeadLines > 0
       ? `${plan.skippedHeadLines === 1 ? "a line" : `${plan.skippedHeadLines} lines`} of headings skipped`
       : "",
-    plan.skippedComputedCells > 0 ? `${cells(plan.skippedComputedCells)} of computed columns skipped` : "",
+    plan.skippedHeadings.length > 0
+      ? `${plan.skippedHeadings.map((heading) => `“${heading}”`).join(", ")} not among the columns and skipped`
+      : "",
+    skippedComputed > 0 ? `${cells(skippedComputed)} of computed columns skipped` : "",
   ].filter((part) => part !== "");
   const lastRow = Math.max(from.row, ...plan.cells.map(({ row }) => row));
   const lastColumn = Math.max(from.column, ...plan.cells.map(({ column }) => column));
@@ -119,7 +134,7 @@ function changesOf(
   return wanted.flatMap(({ row, column, text }) => {
     const target = columns[column];
     const present = rows[row];
-    if (!target || target.readOnly || (present?.cells[target.id] ?? "") === text) return [];
+    if (!target || isReadOnly(present, target) || (present?.cells[target.id] ?? "") === text) return [];
     return [{ rowId: present?.id ?? null, newRow: row - rows.length, columnId: target.id, text }];
   });
 }

@@ -1,7 +1,8 @@
 import { describe, expect, it } from "vitest";
 import { parseBlock, printBlock } from "./clipboard-block";
 import { commandFor, type GridCommand, type KeyContext, moved, type PressedKey } from "./grid-keys";
-import type { GridColumn } from "./grid-shape";
+import type { GridColumn, GridRow } from "./grid-shape";
+import { clearStep, pasteStep } from "./grid-steps";
 import { planPaste } from "./plan-paste";
 
 const columns: readonly GridColumn[] = [
@@ -136,6 +137,7 @@ describe("planPaste", () => {
       newRows: 1,
       skippedHeadLines: 0,
       skippedComputedCells: 2,
+      skippedHeadings: [],
     });
   });
 
@@ -189,5 +191,57 @@ describe("planPaste", () => {
   it("refuses more rows than a study holds", () => {
     const rows = Array.from({ length: 12 }, (_, index) => [`R${index}`]);
     expect(planPaste(rows, target).status).toBe("refused");
+  });
+
+  it("goes by the names of a heading line, in whatever order, and says which it does not know", () => {
+    const named = columns.map((column) => ({
+      ...column,
+      isNamed: (heading: string) => heading.toLowerCase() === column.id,
+    }));
+    const plan = planPaste(
+      [
+        ["B", "Temp", "Label", "Sum"],
+        ["2,5", "25", "R07", "10"],
+        ["3,5", "25", "R08", "10"],
+      ],
+      { columns: named, rowCount: 1, from: { row: 0, column: 3 }, roomForNewRows: 5 },
+    );
+    expect(plan).toEqual({
+      status: "planned",
+      cells: [
+        { row: 0, column: 3, text: "2,5" },
+        { row: 0, column: 0, text: "R07" },
+        { row: 1, column: 3, text: "3,5" },
+        { row: 1, column: 0, text: "R08" },
+      ],
+      newRows: 1,
+      skippedHeadLines: 1,
+      skippedComputedCells: 2,
+      skippedHeadings: ["Temp"],
+    });
+  });
+});
+
+describe("cells that one row works out", () => {
+  const rows: readonly GridRow[] = [
+    { id: "1", label: "R01", cells: { a: "1", b: "2" }, readOnly: ["a"] },
+    { id: "2", label: "R02", cells: { a: "3", b: "4" } },
+  ];
+  it("are neither emptied, filled nor pasted over, and pasting counts them", () => {
+    const both = { top: 0, bottom: 1, left: 1, right: 1 };
+    expect(clearStep(rows, columns, both)?.changes.map(({ rowId }) => rowId)).toEqual(["2"]);
+    const pasted = pasteStep(
+      rows,
+      columns,
+      { ...both, right: 3 },
+      [
+        ["7", "", "8"],
+        ["9", "", "10"],
+      ],
+      0,
+    );
+    if ("refused" in pasted) throw new Error(pasted.refused);
+    expect(pasted.step.changes.map(({ rowId, columnId }) => rowId + columnId)).toEqual(["1b", "2a", "2b"]);
+    expect(pasted.step.said).toContain("1 cell of computed columns skipped");
   });
 });

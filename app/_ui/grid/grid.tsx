@@ -3,7 +3,7 @@
 import { Fragment, memo, type ReactNode, useEffect, useId, useRef } from "react";
 import { Button } from "../button";
 import { SeverityMark } from "../check";
-import type { GridColumn, GridRow, GridStep } from "./grid-shape";
+import { type GridBand, type GridColumn, type GridRow, type GridStep, isReadOnly } from "./grid-shape";
 import { type EditedCell, type GridState, textAt, useGrid } from "./use-grid";
 
 /**
@@ -13,6 +13,7 @@ import { type EditedCell, type GridState, textAt, useGrid } from "./use-grid";
 export function Grid({
   label,
   columns,
+  bands,
   rows,
   editable,
   roomForNewRows = 0,
@@ -25,6 +26,8 @@ export function Grid({
 }: {
   label: string;
   columns: readonly GridColumn[];
+  /** Headings over several columns; together as many columns as there are. */
+  bands?: readonly GridBand[];
   rows: readonly GridRow[];
   editable: boolean;
   roomForNewRows?: number;
@@ -54,6 +57,20 @@ export function Grid({
           {...grid.attributes}
         >
           <thead>
+            {bands !== undefined && (
+              <tr className="band-row">
+                {bands.map((band) => (
+                  <th
+                    key={band.id}
+                    scope="colgroup"
+                    colSpan={band.columns}
+                    className={band.computed ? "computed" : undefined}
+                  >
+                    {band.head}
+                  </th>
+                ))}
+              </tr>
+            )}
             <tr>
               {columns.map((column) => (
                 <th
@@ -176,10 +193,16 @@ function DrawnRow({ row, index, columns, problemId, activeColumn, selected, edit
             }
             aria-colindex={position + 1}
             {...(isSelected ? SELECTED : NOT_SELECTED)}
-            {...(column.readOnly ? READ_ONLY : {})}
+            {...(isReadOnly(row, column) ? READ_ONLY : {})}
             aria-invalid={fault === undefined ? undefined : true}
-            aria-describedby={fault === undefined ? undefined : problemId}
-            className={cellClass(column, { fault: fault !== undefined, isEdited, isSelected, isActive })}
+            aria-describedby={fault === undefined || row.problem === undefined ? undefined : problemId}
+            className={cellClass(column, {
+              fault: fault !== undefined,
+              isComputed: isReadOnly(row, column),
+              isEdited,
+              isSelected,
+              isActive,
+            })}
           >
             {isEdited ? (
               <CellInput
@@ -210,11 +233,11 @@ function rowClass(row: GridRow): string {
 
 function cellClass(
   column: GridColumn,
-  state: { fault: boolean; isEdited: boolean; isSelected: boolean; isActive: boolean },
+  state: { fault: boolean; isComputed: boolean; isEdited: boolean; isSelected: boolean; isActive: boolean },
 ): string {
   return [
     column.kind === "number" ? "num" : "",
-    column.readOnly ? "computed" : "",
+    state.isComputed ? "computed" : "",
     state.fault ? "fault" : "",
     state.isEdited ? "edited" : "",
     state.isSelected && !state.isActive ? "selected" : "",

@@ -11,7 +11,14 @@ import {
 } from "react";
 import { parseBlock, printBlock } from "./clipboard-block";
 import { commandFor, type GridCommand, type KeyContext, moved } from "./grid-keys";
-import { type GridColumn, type GridPosition, type GridRow, type GridStep, rectangle } from "./grid-shape";
+import {
+  type GridColumn,
+  type GridPosition,
+  type GridRow,
+  type GridStep,
+  isReadOnly,
+  rectangle,
+} from "./grid-shape";
 import { clearStep, copiedBlock, editStep, fillDownStep, pasteStep } from "./grid-steps";
 
 export interface EditedCell {
@@ -79,7 +86,7 @@ export function useGrid(input: GridInput) {
   }
 
   function begin(text: string, how: EditedCell["how"]): void {
-    if (!editable || columns[at.column]?.readOnly) return;
+    if (!editable || isReadOnly(rows[at.row], columns[at.column])) return;
     setAnchor(at);
     setEdited({ text, how });
   }
@@ -131,7 +138,7 @@ export function useGrid(input: GridInput) {
     const column = columns[at.column];
     const command = commandFor(event, {
       editing: edited?.how ?? "no",
-      column: column?.readOnly ? "computed" : (column?.kind ?? "text"),
+      column: isReadOnly(rows[at.row], column) ? "computed" : (column?.kind ?? "text"),
     });
     if (command === null) return;
     if (run(command)) {
@@ -184,7 +191,7 @@ export function useGrid(input: GridInput) {
 
   function onDoubleClick(event: MouseEvent): void {
     const position = positionOf(event.target);
-    if (position === null || !editable || columns[position.column]?.readOnly) return;
+    if (position === null || !editable || isReadOnly(rows[position.row], columns[position.column])) return;
     if (open.current === null) setEdited({ text: textAt(rows, columns, position), how: "in-place" });
   }
 

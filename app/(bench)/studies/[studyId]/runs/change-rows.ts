@@ -1,8 +1,10 @@
+import { workedOut } from "@/app/_worksheet/worked-out";
 import type { Handle } from "@/db/database";
 import type { Actor } from "@/db/member/actor";
 import { type NewRun, type RunEdit, withRuns } from "@/db/run/run.commands";
-import { type ChangeResult, type ChangeTarget, changeStudy } from "@/db/study/change-study";
-import { newRunOf, type RowShape, readCells } from "./run-row";
+import type { SheetRun } from "@/db/sheet/sheet.schema";
+import { type Apply, type ChangeResult, type ChangeTarget, changeStudy } from "@/db/study/change-study";
+import type { Cells } from "./run-row";
 import type { RowEdit } from "./schema";
 
 /** By row key, then by column id: what is wrong. */
@@ -12,7 +14,13 @@ interface RowsWanted {
   readonly rows: readonly RowEdit[];
   /** Ids by row key; those of new rows are fresh. */
   readonly runIds: Readonly<Record<string, string>>;
-  readonly shape: RowShape;
+  readonly reader: RowReader;
+}
+
+/** How the texts of a row become a run: the run sheet and the mixing table read different columns. */
+export interface RowReader {
+  readonly edit: (cells: Cells, before: SheetRun) => { readonly faults: Cells; readonly edit: RunEdit };
+  readonly make: (row: RowEdit, id: string) => { readonly faults: Cells; readonly run: NewRun };
 }
 
 /** Edits rows and adds new ones as one change, or says which cells are not read. */
@@ -20,10 +28,10 @@ export async function changeRows(
   db: Handle,
   actor: Actor,
   target: ChangeTarget,
-  { rows, runIds, shape }: RowsWanted,
+  { rows, runIds, reader }: RowsWanted,
 ): Promise<ChangeResult | { readonly faults: RowsRefusal }> {
   let faults: Record<string, Readonly<Record<string, string>>> = {};
-  const result = await changeStudy(db, actor, target, noteOf(rows), (sheet) => {
+  const apply: Apply = (sheet) => {
     faults = {};
     const edits = new Map<string, RunEdit>();
     const added: NewRun[] = [];
@@ -34,11 +42,11 @@ export async function changeRows(
       }
       const id = runIds[row.key];
       if (before === null && id !== undefined) {
-        const made = newRunOf(row, id, shape);
+        const made = reader.make(row, id);
         added.push(made.run);
         if (Object.keys(made.faults).length > 0) faults[row.key] = made.faults;
       } else if (before !== null) {
-        const reading = readCells(row.cells, before, shape);
+        const reading = reader.edit(row.cells, before);
         edits.set(before.id, reading.edit);
         if (Object.keys(reading.faults).length > 0) faults[row.key] = reading.faults;
       }
@@ -46,7 +54,8 @@ export async function changeRows(
     if (Object.keys(faults).length > 0) return { refused: "Some cells are not read." };
     const edited = { ...sheet, runs: sheet.runs.map((run) => ({ ...run, ...edits.get(run.id) })) };
     return added.length === 0 ? edited : withRuns(added)(edited);
-  });
+  };
+  const result = await changeStudy(db, actor, target, noteOf(rows), apply, workedOut);
   return Object.keys(faults).length > 0 ? { faults } : result;
 }
 

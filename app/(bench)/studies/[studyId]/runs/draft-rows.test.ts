@@ -7,24 +7,27 @@ import {
   type Draft,
   draftFaults,
   emptyDraft,
+  type KeptRowTexts,
   keepableRows,
   restoreCells,
   rowOrder,
   withoutKept,
   withoutRows,
 } from "./draft-rows";
-import { type RunGridView, runGridView } from "./run-grid.view";
+import { runGridView } from "./run-grid.view";
+import { readCells } from "./run-row";
 
 const sheet = exampleSheet({
   runs: [exampleRun(0, { A: 1e-3, B: 2e-3 }), exampleRun(1, { A: 1e-3, B: 4e-3 })],
 });
-const view: RunGridView = runGridView(sheet, {
+const { rows, shape } = runGridView(sheet, {
   hash: "",
   rule: null,
   runs: [],
   law: { status: "no-law", missing: "", fit: null },
   checks: [],
 });
+const view: KeptRowTexts = { rows, faultsOf: (cells) => readCells(cells, null, shape).faults };
 
 function edit(rowId: string | null, columnId: string, text: string, newRow = -1): GridChange {
   return { rowId, newRow, columnId, text };

@@ -1,6 +1,5 @@
 import type { GridStep } from "@/app/_ui/grid/grid-shape";
-import type { RunGridView } from "./run-grid.view";
-import { nextLabel, readCells } from "./run-row";
+import { type Cells, nextLabel } from "./run-row";
 import type { RowEdit } from "./schema";
 
 /**
@@ -14,6 +13,13 @@ export interface Draft {
   /** Keys of new rows in order; the last one is blank and waits to be typed into. */
   readonly newKeys: readonly string[];
   readonly nextKey: number;
+}
+
+/** What a draft lies over: the rows as they were kept, and how the texts of one are read. */
+export interface KeptRowTexts {
+  readonly rows: readonly { readonly runId: string; readonly cells: Cells }[];
+  /** By column: what is wrong with these texts. */
+  readonly faultsOf: (cells: Cells) => Cells;
 }
 
 const NEW = "new-";
@@ -34,7 +40,7 @@ export interface AppliedStep {
 }
 
 /** One step of the grid laid over the draft. New rows without a label get the next one. */
-export function applyStep(draft: Draft, step: GridStep, view: RunGridView): AppliedStep {
+export function applyStep(draft: Draft, step: GridStep, kept: KeptRowTexts): AppliedStep {
   const texts: Record<string, Record<string, string>> = structuredClone(draft.texts) as Record<
     string,
     Record<string, string>
@@ -61,7 +67,7 @@ export function applyStep(draft: Draft, step: GridStep, view: RunGridView): Appl
   for (const key of newKeys) {
     const row = texts[key];
     if (!touched.has(key) || row === undefined || (row.label ?? "") !== "" || isBlank(row)) continue;
-    write(key, "label", nextLabel(labelsOf({ ...draft, texts, newKeys }, view)));
+    write(key, "label", nextLabel(labelsOf({ ...draft, texts, newKeys }, kept)));
   }
   const last = newKeys.at(-1);
   if (last === undefined || !isBlank(texts[last] ?? {})) {
@@ -118,11 +124,11 @@ export function adoptRows(draft: Draft, runIds: Readonly<Record<string, string>>
  */
 export function rowOrder(
   draft: Draft,
-  view: Pick<RunGridView, "rows">,
+  kept: Pick<KeptRowTexts, "rows">,
   runIds: Readonly<Record<string, string>>,
 ): readonly { readonly key: string; readonly runId: string | null }[] {
   const begun = new Map(Object.entries(runIds).map(([key, runId]) => [runId, key]));
-  const rows = view.rows.map(({ runId }) => ({ key: begun.get(runId) ?? runId, runId }));
+  const rows = kept.rows.map(({ runId }) => ({ key: begun.get(runId) ?? runId, runId }));
   const added = [
     ...rows.filter(({ runId }) => begun.has(runId)),
     ...draft.newKeys.map((key) => ({ key, runId: null })),
@@ -141,14 +147,14 @@ export function isBlank(cells: Readonly<Record<string, string>>): boolean {
 /** By row key and column: what stands against keeping a row. A blank new row has no faults and is not kept. */
 export function draftFaults(
   draft: Draft,
-  view: RunGridView,
+  kept: KeptRowTexts,
 ): Readonly<Record<string, Readonly<Record<string, string>>>> {
   const faults: Record<string, Record<string, string>> = {};
-  const owners = labelOwners(draft, view);
+  const owners = labelOwners(draft, kept);
   for (const [key, cells] of Object.entries(draft.texts)) {
     const isNew = draft.newKeys.includes(key);
     if (isNew && isBlank(cells)) continue;
-    const found = { ...readCells(isNew ? { label: "", ...cells } : cells, null, view.shape).faults };
+    const found = { ...kept.faultsOf(isNew ? { label: "", ...cells } : cells) };
     const label = cells.label?.trim();
     if (label !== undefined && label !== "" && (owners.get(label)?.length ?? 0) > 1) {
       found.label = `Another run is called ${label} already. Give one of them another label.`;
@@ -159,8 +165,8 @@ export function draftFaults(
 }
 
 /** The rows among `touched` that can be kept now. */
-export function keepableRows(draft: Draft, touched: readonly string[], view: RunGridView): RowEdit[] {
-  const faults = draftFaults(draft, view);
+export function keepableRows(draft: Draft, touched: readonly string[], kept: KeptRowTexts): RowEdit[] {
+  const faults = draftFaults(draft, kept);
   return touched.flatMap((key) => {
     const cells = draft.texts[key] ?? {};
     const isNew = draft.newKeys.includes(key);
@@ -169,16 +175,16 @@ export function keepableRows(draft: Draft, touched: readonly string[], view: Run
   });
 }
 
-function labelsOf(draft: Draft, view: RunGridView): string[] {
-  return [...labelOwners(draft, view).keys()];
+function labelsOf(draft: Draft, kept: KeptRowTexts): string[] {
+  return [...labelOwners(draft, kept).keys()];
 }
 
-function labelOwners(draft: Draft, view: RunGridView): Map<string, string[]> {
+function labelOwners(draft: Draft, kept: KeptRowTexts): Map<string, string[]> {
   const owners = new Map<string, string[]>();
   const add = (label: string, key: string) => {
     if (label !== "") owners.set(label, [...(owners.get(label) ?? []), key]);
   };
-  for (const row of view.rows)
+  for (const row of kept.rows)
     add((draft.texts[row.runId]?.label ?? row.cells.label ?? "").trim(), row.runId);
   for (const key of draft.newKeys) add((draft.texts[key]?.label ?? "").trim(), key);
   return owners;

@@ -1,6 +1,7 @@
 import type { RunMark, StudyAnalysis } from "@/app/_worksheet/analysis";
 import { concentrationDisplay, rateDisplay } from "@/app/_worksheet/display-units";
 import { lawSpecies, presentRuns } from "@/app/_worksheet/present-runs";
+import { isMixed, stockedSpecies } from "@/db/sheet/mixed-run";
 import type { Sheet } from "@/db/sheet/sheet.schema";
 import { CONCENTRATION, cellsOf, type RowShape } from "./run-row";
 
@@ -27,6 +28,8 @@ export interface RunGridRow {
   readonly mark: RunMark;
   readonly state: "standing" | "set-aside" | "without-rate";
   readonly cells: Readonly<Record<string, string>>;
+  /** Columns that follow from its volumes. */
+  readonly workedOut: readonly string[];
   /** Points of its trace; "" without one. */
   readonly points: string;
 }
@@ -34,10 +37,13 @@ export interface RunGridRow {
 export function runGridView(sheet: Sheet, analysis: StudyAnalysis): RunGridView {
   const species = lawSpecies(sheet);
   const rate = rateDisplay(sheet);
+  const stocked = stockedSpecies(sheet.stocks);
   const shape: RowShape = {
     species: species.map(({ id, symbol, unit }) => ({ id, symbol, unit })),
     rateFactor: rate.factor,
+    stocked: [...stocked],
   };
+  const worked = species.flatMap(({ id }) => (stocked.has(id) ? [CONCENTRATION + id] : []));
   const analysed = new Map(analysis.runs.map((run) => [run.runId, run]));
   return {
     shape,
@@ -64,6 +70,7 @@ export function runGridView(sheet: Sheet, analysis: StudyAnalysis): RunGridView 
         mark: found?.mark ?? { series: "base", level: 0, levels: 1, repeat: false },
         state: found?.state ?? "without-rate",
         cells: cellsOf(run, shape),
+        workedOut: isMixed(run) ? worked : [],
         points: run.trace === null ? "" : String(run.trace.points),
       };
     }),

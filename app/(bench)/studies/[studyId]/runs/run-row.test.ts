@@ -8,7 +8,20 @@ const shape: RowShape = {
     { id: "B", symbol: "B", unit: "mmol/L" },
   ],
   rateFactor: 1e6,
+  stocked: ["A"],
 };
+
+describe("a run with volumes", () => {
+  const mixed = exampleRun(0, { A: 5e-5, B: 2e-3 }, { volumes: { s: 100 } });
+  it("keeps what follows from them; what no stock holds is typed", () => {
+    const reading = readCells({ "c:A": "60", "c:B": "3" }, mixed, shape);
+    expect(reading.faults).toEqual({
+      "c:A": "[A]₀ of R01 follows from its volumes. Change them on the mixing table.",
+    });
+    expect(reading.edit.concentrations?.A?.molar).toBe(5e-5);
+    expect(reading.edit.concentrations?.B?.molar).toBeCloseTo(3e-3, 15);
+  });
+});
 
 describe("a run as a row of texts", () => {
   const run = exampleRun(

@@ -3,6 +3,7 @@ import { parseNumber } from "@/app/_worksheet/typed-number/parse-number";
 import { parseUncertain } from "@/app/_worksheet/typed-number/parse-uncertain";
 import { typedNumber, typedUncertain } from "@/app/_worksheet/typed-number/print-typed";
 import type { NewRun, RunEdit } from "@/db/run/run.commands";
+import { isMixed } from "@/db/sheet/mixed-run";
 import type { SheetRun, SheetSpecies } from "@/db/sheet/sheet.schema";
 import type { RowEdit } from "./schema";
 
@@ -14,6 +15,8 @@ export interface RowShape {
   readonly species: readonly Pick<SheetSpecies, "id" | "symbol" | "unit">[];
   /** From mol L⁻¹ s⁻¹ to the unit in which rates are shown. */
   readonly rateFactor: number;
+  /** Ids of species that some stock holds: where a run has volumes, their concentrations follow from those. */
+  readonly stocked: readonly string[];
 }
 
 export type Cells = Readonly<Record<string, string>>;
@@ -80,6 +83,10 @@ export function readCells(cells: Cells, before: SheetRun | null, shape: RowShape
     else {
       const species = shape.species.find(({ id }) => CONCENTRATION + id === column);
       if (species === undefined) fault("This column is not part of the sheet any more. Load the page again.");
+      else if (before !== null && isMixed(before) && shape.stocked.includes(species.id))
+        fault(
+          `[${species.symbol}]₀ of ${before.label} follows from its volumes. Change them on the mixing table.`,
+        );
       else readConcentration(text, species, concentrations, fault);
     }
   }

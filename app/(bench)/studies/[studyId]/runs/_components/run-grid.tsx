@@ -1,17 +1,17 @@
 "use client";
 
 import { headingFault } from "@/app/_import/heading-unit";
-import { Button } from "@/app/_ui/button";
-import { Dialog } from "@/app/_ui/dialog";
 import { Grid } from "@/app/_ui/grid/grid";
 import type { GridColumn, GridProblem, GridRow } from "@/app/_ui/grid/grid-shape";
 import { Prose } from "@/app/_ui/prose";
 import { RunMark } from "@/app/_ui/run-mark";
 import { Unit } from "@/app/_ui/unit";
-import { draftFaults, isBlank } from "../draft-rows";
+import { keepRows } from "../actions";
+import { draftFaults, isBlank, type KeptRowTexts } from "../draft-rows";
 import type { RunGridColumn, RunGridRow, RunGridView } from "../run-grid.view";
 import { readCells } from "../run-row";
-import { type RowConflict, useRunDraft } from "./use-run-draft";
+import { ConflictDialog } from "./conflict-dialog";
+import { useRunDraft } from "./use-run-draft";
 
 const MOST_RUNS = 2000;
 
@@ -27,12 +27,16 @@ export function RunGrid({
   view: RunGridView;
   canEdit: boolean;
 }) {
-  const sheet = useRunDraft({ studyId, revision, view });
-  const faults = draftFaults(sheet.draft, view);
+  const kept: KeptRowTexts = {
+    rows: view.rows,
+    faultsOf: (cells) => readCells(cells, null, view.shape).faults,
+  };
+  const sheet = useRunDraft({ studyId, revision, kept, keep: keepRows });
+  const faults = draftFaults(sheet.draft, kept);
   const keptById = new Map(view.rows.map((row) => [row.runId, row]));
   const rows = sheet.order.flatMap(({ key, runId }) => {
-    const kept = runId === null ? undefined : keptById.get(runId);
-    if (kept !== undefined) return [keptRow(key, kept, view, sheet, faults)];
+    const row = runId === null ? undefined : keptById.get(runId);
+    if (row !== undefined) return [keptRow(key, row, view, sheet, faults)];
     return canEdit ? [newRow(key, sheet, faults)] : [];
   });
   const columnOf = new Map(view.columns.map((column) => [column.id, column]));
@@ -104,6 +108,7 @@ function keptRow(id: string, row: RunGridRow, view: RunGridView, sheet: Sheet, f
     id,
     label,
     cells,
+    readOnly: row.workedOut,
     drawn: { label: <RunMark mark={row.mark} label={label} state={row.state} /> },
     ...(row.state === "set-aside" ? { tone: "set-aside" as const } : {}),
     ...faultsOf(faults[row.runId], view, label, {
@@ -145,72 +150,4 @@ function faultsOf(
 
 function plainUnit(unit: string): string {
   return unit.replaceAll("^-1", "⁻¹");
-}
-
-function ConflictDialog({
-  conflict,
-  columns,
-  onTakeTheirs,
-  onPutMineOver,
-}: {
-  conflict: RowConflict | null;
-  columns: readonly RunGridColumn[];
-  onTakeTheirs: () => void;
-  onPutMineOver: () => void;
-}) {
-  const cells = (conflict?.rows ?? []).flatMap((row) =>
-    Object.entries(row.cells).flatMap(([column, mine]) => {
-      const theirs = conflict?.theirs[row.runId ?? ""];
-      const head = columns.find(({ id }) => id === column)?.label ?? column;
-      const text = theirs?.[column];
-      return theirs === undefined || text === undefined || text === mine
-        ? []
-        : [
-            {
-              key: `${row.key} ${column}`,
-              run: theirs.label ?? row.cells.label ?? "",
-              head,
-              mine,
-              theirs: text,
-            },
-          ];
-    }),
-  );
-  return (
-    <Dialog
-      open={conflict !== null}
-      onOpenChange={(open) => !open && onTakeTheirs()}
-      title="Somebody else changed the same run"
-      lead="Your change was not kept yet. Whichever you choose, the other stays in the history."
-      actions={
-        <>
-          <Button onClick={onTakeTheirs}>Keep theirs</Button>
-          <Button kind="primary" onClick={onPutMineOver}>
-            Put mine over theirs
-          </Button>
-        </>
-      }
-    >
-      <table className="data-table mt-3">
-        <thead>
-          <tr>
-            <th scope="col">Run</th>
-            <th scope="col">Column</th>
-            <th scope="col">Theirs</th>
-            <th scope="col">Yours</th>
-          </tr>
-        </thead>
-        <tbody>
-          {cells.map((cell) => (
-            <tr key={cell.key}>
-              <th scope="row">{cell.run}</th>
-              <td>{cell.head}</td>
-              <td>{cell.theirs || "empty"}</td>
-              <td>{cell.mine || "empty"}</td>
-            </tr>
-          ))}
-        </tbody>
-      </table>
-    </Dialog>
-  );
 }

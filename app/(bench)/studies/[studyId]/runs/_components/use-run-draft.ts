@@ -2,22 +2,23 @@
 
 import { useRouter } from "next/navigation";
 import { useRef, useState } from "react";
+import type { ActionResult } from "@/app/_server/action-result";
 import type { GridStep } from "@/app/_ui/grid/grid-shape";
 import { useStudyChange } from "../../../_change/use-study-change";
-import { keepRows } from "../actions";
 import {
   adoptRows,
   applyStep,
   type CellBefore,
   type Draft,
   emptyDraft,
+  type KeptRowTexts,
   keepableRows,
   restoreCells,
   rowOrder,
   withoutKept,
   withoutRows,
 } from "../draft-rows";
-import type { RunGridView } from "../run-grid.view";
+import type { KeptRows } from "../kept-rows";
 import type { RowEdit } from "../schema";
 
 /** A step as undo sees it: cells that never left the page, and the revision that the others became. */
@@ -39,6 +40,13 @@ export interface RowConflict {
   readonly theirs: Readonly<Record<string, Readonly<Record<string, string>>>>;
 }
 
+/** The action that keeps edited and new rows as one revision. */
+export type KeepRows = (input: {
+  studyId: string;
+  base: number;
+  rows: readonly RowEdit[];
+}) => Promise<ActionResult<KeptRows>>;
+
 /**
  * Typing in the grid: each finished step is kept at once as one revision, as far as its rows are read; what is not
  * read stays in the draft. Undo takes back the whole step, in the sheet and on the page.
@@ -46,11 +54,13 @@ export interface RowConflict {
 export function useRunDraft({
   studyId,
   revision,
-  view,
+  kept,
+  keep,
 }: {
   studyId: string;
   revision: number;
-  view: RunGridView;
+  kept: KeptRowTexts;
+  keep: KeepRows;
 }) {
   const router = useRouter();
   const { announce, refuse, undo, redo, isOpen } = useStudyChange(studyId, { latestOnly: true });
@@ -69,7 +79,7 @@ export function useRunDraft({
   const made = useRef<MadeStep[]>([]);
   const undone = useRef<MadeStep[]>([]);
 
-  const onSheet = new Set(view.rows.map((row) => row.runId));
+  const onSheet = new Set(kept.rows.map((row) => row.runId));
   const landed = Object.fromEntries(
     Object.entries(runIds).filter(([key, id]) => onSheet.has(id) && draft.newKeys.includes(key)),
   );
@@ -101,7 +111,7 @@ export function useRunDraft({
     const rows = wanted.map((row) => ({ ...row, runId: row.runId ?? knownIds.current[row.key] ?? null }));
     setWaiting((count) => count + 1);
     try {
-      const result = await keepRows({ studyId, base: latest.current, rows });
+      const result = await keep({ studyId, base: latest.current, rows });
       if (!result.ok) {
         refuse(result.message);
         return null;
@@ -141,7 +151,7 @@ export function useRunDraft({
       change.rowId === null ? change : { ...change, rowId: keyIn(draft, change.rowId) },
     );
     const step = { ...drawn, changes };
-    const applied = applyStep(draft, step, view);
+    const applied = applyStep(draft, step, kept);
     setDraft(applied.draft);
     say(step.said);
     const after = applied.before.map(({ key, column }) => ({
@@ -149,7 +159,7 @@ export function useRunDraft({
       column,
       text: applied.draft.texts[key]?.[column],
     }));
-    const rows = keepableRows(applied.draft, applied.touched, view);
+    const rows = keepableRows(applied.draft, applied.touched, kept);
     const sent = new Set(rows.map(({ key }) => key));
     const onPage = (cells: readonly CellBefore[]) => cells.filter(({ key }) => !sent.has(key));
     const entry = { cells: onPage(applied.before), after: onPage(after) };
@@ -185,7 +195,7 @@ export function useRunDraft({
 
   return {
     draft,
-    order: rowOrder(draft, view, runIds),
+    order: rowOrder(draft, kept, runIds),
     said,
     say,
     conflict,
