@@ -1,5 +1,4 @@
-import { fitGlobal } from "kinetics-core/global-fit";
-import { bootstrapRuns } from "kinetics-core/inference";
+import { bootstrapGlobalFit, type GlobalFitInput } from "kinetics-core/global-fit";
 import type { BenchmarkStudy } from "./benchmark-study";
 import { fitOrThrow, inputOf } from "./our-fit";
 import { medianOf, timeOf } from "./stopwatch";
@@ -15,15 +14,14 @@ export interface Bootstrap {
 }
 
 const REFITS = 1000;
-/** Parts, each beside as many single fits, so that a busy moment strikes both. */
-const PARTS = 20;
+/** Parts, each beside as many single fits, so that a busy moment strikes both; each part fits the whole study once. */
+const PARTS = 10;
 const SEED = 7;
 const STOP_AFTER = 10;
 const PROGRESS = 200;
 
 export function measureBootstrap(study: BenchmarkStudy, progress: (message: string) => void): Bootstrap {
   const input = inputOf(study);
-  const request = { runs: input.runs.length, seed: SEED, refit: refitOf(input) };
   const size = REFITS / PARTS;
   const parts = Array.from({ length: PARTS }, (_, part) => {
     const single = timeOf(() => {
@@ -31,8 +29,8 @@ export function measureBootstrap(study: BenchmarkStudy, progress: (message: stri
     });
     let failed = 0;
     const time = timeOf(() => {
-      const result = bootstrapRuns({
-        ...request,
+      const result = bootstrapGlobalFit(input, {
+        seed: SEED,
         first: part * size,
         last: (part + 1) * size,
         onProgress: (done, of) => {
@@ -47,32 +45,17 @@ export function measureBootstrap(study: BenchmarkStudy, progress: (message: stri
   });
   return {
     refits: REFITS,
-    failed: parts.reduce((sum, { failed }) => sum + failed, 0),
+    failed: parts.reduce((sum, part) => sum + part.failed, 0),
     seconds: parts.reduce((sum, { time }) => sum + time, 0) / 1000,
     ratio: medianOf(parts.map(({ ratio }) => ratio)),
-    stoppedAfter: stoppedAfter(request),
+    stoppedAfter: stoppedAfter(input),
   };
 }
 
-type Refit = (indices: Int32Array) => readonly number[] | null;
-
-function refitOf(input: ReturnType<typeof inputOf>): Refit {
-  return (indices) => {
-    const runs = Array.from(indices).flatMap((run, draw) => {
-      const drawn = input.runs[run];
-      return drawn === undefined ? [] : [{ ...drawn, label: `draw ${draw + 1}` }];
-    });
-    const fit = fitGlobal({ ...input, runs });
-    if (fit.status !== "fitted") return null;
-    return [fit.logRateConstant, fit.orders.A, fit.orders.B].map((one) => one?.estimate ?? Number.NaN);
-  };
-}
-
-function stoppedAfter(request: { runs: number; seed: number; refit: Refit }): number {
+function stoppedAfter(input: GlobalFitInput): number {
   let done = 0;
-  const result = bootstrapRuns({
-    ...request,
-    first: 0,
+  const result = bootstrapGlobalFit(input, {
+    seed: SEED,
     last: REFITS,
     onProgress: (count) => {
       done = count;

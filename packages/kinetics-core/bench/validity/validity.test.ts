@@ -13,7 +13,7 @@ const REPLICATES = 8;
 const PARTS: readonly { readonly name: string; readonly every: number; readonly own: RegExp }[] = [
   { name: "initial-rates", every: 7, own: /^covered$/ },
   { name: "study-rule", every: 11, own: /^upper .* covered$/ },
-  { name: "orders", every: 4, own: / covered$/ },
+  { name: "orders", every: 4, own: /^rule .* covered$/ },
   { name: "global-fit", every: 7, own: /^random .* covered$/ },
   { name: "trace-order", every: 17, own: /^known covered$/ },
 ];
