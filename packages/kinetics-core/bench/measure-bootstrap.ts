@@ -62,6 +62,7 @@ function stoppedAfter(input: GlobalFitInput): number {
     },
     shouldStop: () => done >= STOP_AFTER,
   });
-  if (result.status !== "stopped") throw new Error(`The bootstrap did not stop when asked: ${result.status}`);
+  if (result.status !== "stopped" || !("next" in result))
+    throw new Error(`The bootstrap did not stop when asked: ${result.status}`);
   return result.next;
 }

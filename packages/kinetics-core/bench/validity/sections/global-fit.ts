@@ -1,4 +1,4 @@
-import { fitGlobal } from "kinetics-core/global-fit";
+import { fitGlobal, robustBeside } from "kinetics-core/global-fit";
 import type { RandomDraws } from "kinetics-core/random";
 import { progressTo, simulateTrace } from "kinetics-core/simulation";
 import { GLOBAL_FIT_CELLS, type GlobalFitCell } from "../grid";
@@ -10,7 +10,7 @@ import { countOnes, mean, rootMeanSquare, share } from "../statistics";
 
 /**
  * One law fitted to all traces of a study whose rate constants scatter from run to run: v = k·aⁿ·b with b a catalyst.
- * The rule (random ln k) beside the pooled fit that takes every reading for independent.
+ * The rule (random ln k) beside cluster-robust errors (CR2) and the pooled fit that takes every reading for independent.
  */
 export const globalFit: Section<GlobalFitCell> = {
   name: "global-fit",
@@ -46,8 +46,7 @@ const SPECIES = [
   { name: "B", stoichiometricNumber: 0 },
 ] as const;
 const QUANTITIES = ["A", "B", "ln k"] as const;
-const WAYS = ["random", "pooled"] as const;
-type Way = (typeof WAYS)[number];
+type Way = "random" | "robust" | "pooled";
 
 function prepare({ runs, order, fastest, scatter, autocorrelation }: GlobalFitCell) {
   const design = DESIGN.slice(0, runs);
@@ -70,6 +69,7 @@ function prepare({ runs, order, fastest, scatter, autocorrelation }: GlobalFitCe
       law: { orders: { A: "free", B: "free" } },
     });
     const found = fit.status === "fitted" ? fit : null;
+    const robust = found === null ? null : robustBeside(found);
     const logRateConstant = Math.log(rateConstant);
     return {
       failed: Number(found === null),
@@ -77,6 +77,9 @@ function prepare({ runs, order, fastest, scatter, autocorrelation }: GlobalFitCe
       ...outcomeOf("random A", found?.orders.A ?? null, order),
       ...outcomeOf("random B", found?.orders.B ?? null, 1),
       ...outcomeOf("random ln k", found?.logRateConstant ?? null, logRateConstant),
+      ...outcomeOf("robust A", robust?.parameters.A ?? null, order),
+      ...outcomeOf("robust B", robust?.parameters.B ?? null, 1),
+      ...outcomeOf("robust ln k", robust?.logRateConstant ?? null, logRateConstant),
       ...outcomeOf("pooled A", found?.pooled.orders.A ?? null, order),
       ...outcomeOf("pooled B", found?.pooled.orders.B ?? null, 1),
       ...outcomeOf("pooled ln k", found?.pooled.logRateConstant ?? null, logRateConstant),
@@ -97,6 +100,7 @@ function report(results: readonly CellResult<GlobalFitCell>[]): SectionReport {
     return {
       name: cell.name,
       random: measured("random"),
+      robust: measured("robust"),
       pooled: measured("pooled"),
       scatter: mean(columns.scatter),
       failed: share(columns.failed),
@@ -109,16 +113,18 @@ function report(results: readonly CellResult<GlobalFitCell>[]): SectionReport {
         "coverage % of n_A, n_B, ln k",
         "mean width",
         "RMSE",
+        "CR2: coverage %",
         "pooled: coverage %",
         "pooled: mean width",
         "mean τ",
         "no fit %",
       ],
-      rows.map(({ name, random, pooled, scatter, failed }) => [
+      rows.map(({ name, random, robust, pooled, scatter, failed }) => [
         name,
         random.map((one) => `${percent(one.coverage)}${one.failed ? " ✗" : ""}`).join(", "),
         random.map(({ width }) => significant(width)).join(", "),
         random.map(({ error }) => significant(error)).join(", "),
+        robust.map(({ coverage }) => percent(coverage)).join(", "),
         pooled.map(({ coverage }) => percent(coverage)).join(", "),
         pooled.map(({ width }) => significant(width, 2)).join(", "),
         significant(scatter, 2),
