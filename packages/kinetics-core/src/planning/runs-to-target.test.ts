@@ -25,7 +25,7 @@ describe("runs still to make", () => {
   it("begins from the half-width that the runs made give: t(0.975; 1) s/√Σ(ln c − mean)²", () => {
     const result = runsToTarget(request);
     const first = "steps" in result ? result.steps[0] : undefined;
-    expect(first?.halfWidths.n_A).toBeCloseTo((12.706205 * 0.05) / Math.sqrt(2 * Math.LN2 ** 2), 5);
+    expect(first?.precision.n_A).toBeCloseTo((12.706205 * 0.05) / Math.sqrt(2 * Math.LN2 ** 2), 5);
   });
 
   it("counts the runs at the ends of the range until the target is met, then stops", () => {
@@ -34,8 +34,8 @@ describe("runs still to make", () => {
     if (result.status !== "within-reach") return;
     const last = result.steps.at(-1);
     expect(last?.more).toBe(result.more);
-    expect(last?.halfWidths.n_A).toBeLessThanOrEqual(0.1);
-    expect(result.steps.at(-2)?.halfWidths.n_A).toBeGreaterThan(0.1);
+    expect(last?.precision.n_A).toBeLessThanOrEqual(0.1);
+    expect(result.steps.at(-2)?.precision.n_A).toBeGreaterThan(0.1);
     const made = [
       ...request.made,
       ...result.steps.flatMap(({ recipe }) => (recipe === null ? [] : [recipe])),
@@ -55,12 +55,25 @@ describe("runs still to make", () => {
     expect(more(0.05)).toBeGreaterThan(more(0.1));
   });
 
+  it("says that it goes beyond what was studied", () => {
+    const studied = { ...law, studied: { A: [0.5, 2] as const } };
+    const result = runsToTarget({ ...request, law: studied });
+    expect("flags" in result && result.flags.map((flag) => flag.code)).toEqual(["plan-beyond-studied"]);
+  });
+
   it("meets all targets together", () => {
     const result = runsToTarget({ ...request, targets: { n_A: 0.08, "ln k": 0.04 } });
     if (result.status !== "within-reach") throw new Error(result.status);
-    const widths = result.steps.at(-1)?.halfWidths;
+    const widths = result.steps.at(-1)?.precision;
     expect(widths?.n_A).toBeLessThanOrEqual(0.08);
     expect(widths?.["ln k"]).toBeLessThanOrEqual(0.04);
+  });
+
+  it("counts standard uncertainties where these are wanted: s/√Σ(ln c − mean)² from the first", () => {
+    const result = runsToTarget({ ...request, measure: "standard-uncertainty", targets: { n_A: 0.03 } });
+    if (result.status !== "within-reach") throw new Error(result.status);
+    expect(result.steps[0]?.precision.n_A).toBeCloseTo(0.05 / Math.sqrt(2 * Math.LN2 ** 2), 7);
+    expect(result.steps.at(-1)?.precision.n_A).toBeLessThanOrEqual(0.03);
   });
 
   it("says when no number of runs can reach it, and why", () => {
@@ -77,6 +90,7 @@ describe("runs still to make", () => {
 
   it.each([
     [{ targets: { n_X: 0.1 } }, "targets.n_X"],
+    [{ targets: {} }, "targets"],
     [{ targets: { n_A: 0 } }, "targets.n_A"],
     [{ scatter: -1 }, "scatter"],
     [{ feasible: { ranges: {}, stocks: {} } }, "feasible.ranges.A"],

@@ -1,7 +1,8 @@
 import { studentTFactor } from "kinetics-core/distributions";
 import type { FittedLaw } from "kinetics-core/prediction";
-import { inARow, numberInWords } from "kinetics-core/quantities";
+import { type Flag, inARow, numberInWords } from "kinetics-core/quantities";
 import { type FeasibleSet, isFeasible, type Recipe, recipeGrid } from "./feasible-set";
+import { cautionsOf } from "./planning-cautions";
 import {
   type Design,
   designOf,
@@ -19,8 +20,10 @@ export interface TargetRequest {
   readonly feasible: FeasibleSet;
   /** s of ln v of one run. */
   readonly scatter: number;
-  /** Half-width of the interval wanted for each parameter, "ln k" (0.05 is ± 5 % of k) or "n_A". */
+  /** Wanted for each parameter, "ln k" (0.05 is 5 % of k) or "n_A". */
   readonly targets: Readonly<Record<string, number>>;
+  /** What the targets are: half-widths of intervals at the law's level (default) or standard uncertainties. */
+  readonly measure?: "half-width" | "standard-uncertainty";
   /** Standard uncertainty of ln k that more runs do not lower: stocks, ε·l, temperature. Default 0. */
   readonly sharedRelative?: number;
   /** Further runs considered; default 50. */
@@ -32,7 +35,8 @@ export interface TargetStep {
   readonly more: number;
   /** The run that was added; null at `more: 0`. */
   readonly recipe: Recipe | null;
-  readonly halfWidths: Readonly<Record<string, number | null>>;
+  /** Half-width or standard uncertainty of every parameter; null where there is none yet. */
+  readonly precision: Readonly<Record<string, number | null>>;
 }
 
 export type TargetResult =
@@ -44,6 +48,7 @@ export type TargetResult =
       readonly more: number;
       readonly steps: readonly TargetStep[];
       readonly message: string;
+      readonly flags: readonly Flag[];
     }
   | {
       readonly status: "out-of-reach";
@@ -51,6 +56,7 @@ export type TargetResult =
       readonly more: null;
       readonly steps: readonly TargetStep[];
       readonly message: string;
+      readonly flags: readonly Flag[];
     }
   | { readonly status: "bad-input"; readonly place: string; readonly message: string };
 
@@ -73,19 +79,19 @@ export function runsToTarget(request: TargetRequest): TargetResult {
     return row === null ? [] : [{ recipe, row }];
   });
   let design = designOf(law, made);
-  const steps: TargetStep[] = [{ more: 0, recipe: null, halfWidths: halfWidthsOf(design, request) }];
+  const steps: TargetStep[] = [{ more: 0, recipe: null, precision: precisionOf(design, request) }];
   for (let more = 0; more <= most; more++) {
-    const current = steps.at(-1)?.halfWidths ?? {};
+    const current = steps.at(-1)?.precision ?? {};
     if (
       Object.entries(targets).every(([name, target]) => (current[name] ?? Number.POSITIVE_INFINITY) <= target)
     )
-      return reached(more, steps);
+      return reached(more, steps, law);
     if (floor !== null || more === most) break;
     const before = design;
     const best = bestFor(grid, before, targets, names);
     if (best === null) break;
     design = withRun(before, best.row);
-    steps.push({ more: more + 1, recipe: best.recipe, halfWidths: halfWidthsOf(design, request) });
+    steps.push({ more: more + 1, recipe: best.recipe, precision: precisionOf(design, request) });
   }
   return {
     status: "out-of-reach",
@@ -95,10 +101,16 @@ export function runsToTarget(request: TargetRequest): TargetResult {
     message:
       floor ??
       `Not even ${most} more runs within these ranges reach the wanted precision. Widen the ranges, lower the scatter of the runs, or ask for less.`,
+    flags: cautionsOf(law, recipesOf(steps)),
   };
 }
 
-function reached(more: number, steps: readonly TargetStep[]): TargetResult {
+function recipesOf(steps: readonly TargetStep[]): readonly Recipe[] {
+  return steps.flatMap(({ recipe }) => (recipe === null ? [] : [recipe]));
+}
+
+function reached(more: number, steps: readonly TargetStep[], law: FittedLaw): TargetResult {
+  const flags = cautionsOf(law, recipesOf(steps));
   if (more === 0)
     return {
       status: "reached",
@@ -106,6 +118,7 @@ function reached(more: number, steps: readonly TargetStep[]): TargetResult {
       more,
       steps,
       message: "The runs made reach the wanted precision: stop, or spend further runs on checking the law.",
+      flags,
     };
   return {
     status: "within-reach",
@@ -113,6 +126,7 @@ function reached(more: number, steps: readonly TargetStep[]): TargetResult {
     more,
     steps,
     message: `${more === 1 ? "One more run is" : `${more} more runs are`} expected to reach the wanted precision, if the scatter stays what it was. Ask again after ${more === 1 ? "it" : "each"}.`,
+    flags,
   };
 }
 
@@ -144,15 +158,16 @@ function bestFor(
 }
 
 /** Null where the design leaves a parameter open or no freedom is left for an interval. */
-function halfWidthsOf(
+function precisionOf(
   design: Design,
-  { scatter, sharedRelative = 0, law }: TargetRequest,
+  { scatter, sharedRelative = 0, law, measure = "half-width" }: TargetRequest,
 ): Readonly<Record<string, number | null>> {
   const freedom = design.runs - 1 - law.parameters.length;
   return Object.fromEntries(
     Object.entries(standardErrorsOf(design, scatter)).map(([name, standardError]) => {
       if (standardError === null || freedom < 1) return [name, null];
       const total = name === "ln k" ? Math.hypot(standardError, sharedRelative) : standardError;
+      if (measure === "standard-uncertainty") return [name, total];
       // Welch: the shared part is known, so degrees of freedom grow with its share.
       const effective = freedom * (total / standardError) ** 4;
       return [name, total * studentTFactor(law.level, effective)];
@@ -161,10 +176,16 @@ function halfWidthsOf(
 }
 
 /** What no number of runs lowers. */
-function floorFault({ law, targets, sharedRelative = 0 }: TargetRequest): string | null {
+function floorFault({
+  law,
+  targets,
+  sharedRelative = 0,
+  measure = "half-width",
+}: TargetRequest): string | null {
   const target = targets["ln k"];
   if (target === undefined) return null;
-  const floor = sharedRelative * studentTFactor(law.level, Number.POSITIVE_INFINITY);
+  const factor = measure === "half-width" ? studentTFactor(law.level, Number.POSITIVE_INFINITY) : 1;
+  const floor = sharedRelative * factor;
   return floor < target
     ? null
     : `What all runs share (stocks, ε·l, temperature) alone gives ln k ± ${numberInWords(Number(floor.toPrecision(2)))}, so no number of runs reaches ± ${numberInWords(target)}. Make a new stock, or calibrate better.`;
@@ -177,11 +198,13 @@ function faultOf(
   const bad = (place: string, message: string) => ({ status: "bad-input", place, message }) as const;
   if (!(scatter > 0) || !Number.isFinite(scatter))
     return bad("scatter", `The scatter of ln v is ${scatter}; it must be above 0, for example 0.03 for 3 %.`);
+  if (Object.keys(targets).length === 0)
+    return bad("targets", `No precision is wanted of anything; name one or more of ${inARow(names)}.`);
   for (const [name, target] of Object.entries(targets)) {
     if (!names.includes(name))
       return bad(`targets.${name}`, `${name} is not a parameter of the law; it has ${inARow(names)}.`);
     if (!(target > 0))
-      return bad(`targets.${name}`, `The half-width wanted for ${name} is ${target}; it must be above 0.`);
+      return bad(`targets.${name}`, `What is wanted for ${name} is ${target}; it must be above 0.`);
   }
   const missing = law.equation.species.find((name) => feasible.ranges[name] === undefined);
   if (missing !== undefined)
