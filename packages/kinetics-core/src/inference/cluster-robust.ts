@@ -2,6 +2,7 @@ import { studentTFactor } from "kinetics-core/distributions";
 import { type Matrix, singularValues } from "kinetics-core/linear-algebra";
 import type { Flag } from "kinetics-core/quantities";
 import { LEAST_FREE_PART, WIDER_THAN_MODEL } from "./constants";
+import { fixedParts, marginalFit } from "./marginal-model";
 import { lowerRoot } from "./positive-definite";
 import type { RandomRateInference } from "./random-rate-inference";
 import type { PriorInformation, RunInformation } from "./run-information";
@@ -48,18 +49,19 @@ export function clusterRobust(
   names: readonly string[],
 ): ClusterRobustResult {
   const p = inference.step.length;
-  const root = lowerRoot(Float64Array.from(inference.covariance.flat()), p);
+  const parts = partsOf(runs, inference.noiseVariances);
+  const working = marginalFit(parts, fixedParts(parts, priors), inference.weightVariance);
+  const bread = working.status === "fitted" ? working.covariance : new Float64Array(p * p);
+  const root = lowerRoot(bread, p);
   if (root === null)
     return {
       status: "undetermined",
       message:
         "The covariance of the parameters is singular to rounding, so no standard error can be made from the runs' scores. Hold a parameter or add a run that differs.",
     };
-  const clusters = partsOf(runs, inference.noiseVariances).map((part) =>
-    clusterOf(part, inference.betweenRunVariance, inference.step, root, p),
-  );
+  const clusters = parts.map((part) => clusterOf(part, inference.weightVariance, inference.step, root, p));
   const fromRuns = sandwich(clusters, root, p);
-  const fromPriors = priorPart(priors, inference.covariance, p);
+  const fromPriors = priorPart(priors, bread, p);
   const covariance = fromRuns.map((row, i) => row.map((value, j) => value + (fromPriors[i]?.[j] ?? 0)));
   const parameters = covariance.map((row, i) => {
     const variance = row[i] ?? 0;
@@ -94,12 +96,12 @@ interface Cluster {
 
 function clusterOf(
   part: RunParts,
-  betweenRunVariance: number,
+  weightVariance: number,
   step: Float64Array,
   root: Float64Array,
   p: number,
 ): Cluster {
-  const weight = part.ownVariance === null ? 0 : 1 / (part.ownVariance + betweenRunVariance);
+  const weight = part.ownVariance === null ? 0 : 1 / (part.ownVariance + weightVariance);
   const information = part.shapeInformation.slice();
   const score = new Float64Array(p);
   for (let i = 0; i < p; i++) {
@@ -187,7 +189,7 @@ function sandwich(clusters: readonly Cluster[], root: Float64Array, p: number): 
 /** C (Σ 1/u² at the prior's place) C. */
 function priorPart(
   priors: readonly PriorInformation[],
-  covariance: readonly (readonly number[])[],
+  covariance: Float64Array,
   p: number,
 ): readonly (readonly number[])[] {
   return Array.from({ length: p }, (_, i) =>
@@ -195,7 +197,8 @@ function priorPart(
       priors.reduce(
         (sum, { parameter, standardUncertainty }) =>
           sum +
-          ((covariance[i]?.[parameter] ?? 0) * (covariance[parameter]?.[j] ?? 0)) / standardUncertainty ** 2,
+          ((covariance[i * p + parameter] ?? 0) * (covariance[parameter * p + j] ?? 0)) /
+            standardUncertainty ** 2,
         0,
       ),
     ),

@@ -35,3 +35,6 @@ export const FEWEST_REPLICATES = 400;
 
 /** Part of the refits that may fail before their absence could bend the intervals. */
 export const MOST_FAILED_REFITS = 0.05;
+
+/** Effective degrees of freedom of the runs below which their scatter is rounding and says nothing. */
+export const LEAST_FREEDOM_LEFT = 1e-6;

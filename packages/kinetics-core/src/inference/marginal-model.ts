@@ -1,3 +1,4 @@
+import { LEAST_FREEDOM_LEFT } from "./constants";
 import { bilinear, factorisePositive, timesVector } from "./positive-definite";
 import type { PriorInformation } from "./run-information";
 import type { RunParts } from "./run-parts";
@@ -115,4 +116,43 @@ export function offsetAfter(part: RunParts, step: Float64Array): number {
   let offset = part.offset;
   for (let i = 0; i < step.length; i++) offset -= (part.direction[i] ?? 0) * (step[i] ?? 0);
   return offset;
+}
+
+/**
+ * s² of the runs about the law: Σ (z − uᵀδ)²/(h + variance) over its expectation where h + variance is right,
+ * Σ 1 − uᵀC u/(h + variance). That expectation is m less what the runs spent on parameters, whole or in part: a
+ * parameter that the shape of the runs determines as well costs less than one. 1 where nothing is left.
+ */
+export function runScaleOf(parts: readonly RunParts[], fit: MarginalFit, betweenRunVariance: number): number {
+  const p = fit.step.length;
+  let squares = 0;
+  let expected = 0;
+  for (const part of parts) {
+    if (part.ownVariance === null) continue;
+    const weight = 1 / (part.ownVariance + betweenRunVariance);
+    squares += weight * offsetAfter(part, fit.step) ** 2;
+    expected += 1 - weight * bilinear(part.direction, fit.covariance, part.direction, p);
+  }
+  return expected > LEAST_FREEDOM_LEFT ? squares / expected : 1;
+}
+
+/** C (Σ S/σ² + priors + s² Σ u uᵀ/(h + variance)) C = C + (s² − 1) Σ (C u)(C u)ᵀ/(h + variance). */
+export function scaledCovariance(
+  parts: readonly RunParts[],
+  fit: MarginalFit,
+  betweenRunVariance: number,
+  runScale: number,
+): Float64Array {
+  if (runScale === 1) return fit.covariance;
+  const p = fit.step.length;
+  const scaled = fit.covariance.slice();
+  for (const { ownVariance, direction } of parts) {
+    if (ownVariance === null) continue;
+    const excess = (runScale - 1) / (ownVariance + betweenRunVariance);
+    const effect = timesVector(fit.covariance, direction, p);
+    for (let i = 0; i < p; i++)
+      for (let j = 0; j < p; j++)
+        scaled[i * p + j] = (scaled[i * p + j] ?? 0) + excess * (effect[i] ?? 0) * (effect[j] ?? 0);
+  }
+  return scaled;
 }

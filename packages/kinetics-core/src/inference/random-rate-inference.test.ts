@@ -66,6 +66,18 @@ describe("run scatter in ln k, against V written out and inverted (NumPy, SciPy)
     });
   });
 
+  it("weighs by f and scales by s² as it says, the matrices written out", () => {
+    const { floored } = fixture;
+    expectClose(result.weightVariance, floored.weightVariance, 6);
+    expectClose(result.runScale, floored.runScale, 5);
+    floored.step.forEach((value, i) => {
+      expectClose(result.step[i], value, 5);
+    });
+    floored.covariance.flat().forEach((value, i) => {
+      expectClose(result.covariance.flat()[i], value, 5);
+    });
+  });
+
   it("has its pooled estimates, which are several times too sure", () => {
     const pooled = pooledInference(runs, priors);
     if (pooled.status !== "determined") throw new Error(pooled.message);
@@ -169,19 +181,20 @@ describe("what cannot be known", () => {
 
 describe("coverage of 95 % intervals, fixed seed", () => {
   const REPLICATES = 400;
-  it.each([
-    ["τ = 4 % against 1 % noise", linear, 11],
-    ["AR(1) noise of 0.8, ρ known", { ...linear, autocorrelation: 0.8 }, 12],
-    ["five runs", { ...linear, logConcentrations: [-1, 0, 1, 0.4, -0.3] }, 13],
-    ["runs that tell the order by their shape as well", { ...linear, shape: 0.3 }, 14],
-  ] as const)("%s: ln k and order covered, and not by the pooled fit", (_, study: LinearStudy, seed) => {
+  // 0.5 % point of a binomial of 400 at 92.5 % (computed with SciPy 1.17).
+  const LEAST = 356;
+
+  function coverage(study: LinearStudy, seed: number) {
     const draws = randomDraws(seed);
-    const covered = { logRate: 0, order: 0, pooled: 0 };
+    const covered = { logRate: 0, order: 0, pooled: 0, orderByVariance: 0 };
     for (let replicate = 0; replicate < REPLICATES; replicate++) {
       const given = simulateLinearRuns(study, draws).map((run) => informationOf(run, study.autocorrelation));
       // The stated scale errs by its own uncertainty.
       const stated = [{ ...scale, deviation: scale.standardUncertainty * draws.normal() }];
-      const random = determined(given, stated, { undetermined: parametersLeftToRuns([[0.05]]) });
+      const options = { undetermined: parametersLeftToRuns([[0.05]]) };
+      const random = determined(given, stated, options);
+      const { betweenRunVariance } = random;
+      const byVariance = determined(given, stated, { ...options, betweenRunVariance });
       const pooled = pooledInference(given, stated);
       const inside = (fit: typeof pooled, parameter: 0 | 1, factor: number) =>
         fit.status === "determined" &&
@@ -190,11 +203,30 @@ describe("coverage of 95 % intervals, fixed seed", () => {
       const factor = { 3: 3.1824463, 6: 2.4469119 }[random.degreesOfFreedom] ?? Number.NaN;
       if (inside(random, 0, factor)) covered.logRate += 1;
       if (inside(random, 1, factor)) covered.order += 1;
+      if (inside(byVariance, 1, factor)) covered.orderByVariance += 1;
       if (inside(pooled, 0, 1.96)) covered.pooled += 1;
     }
-    // 0.5 % point of a binomial of 400 at 92.5 %: 356 (computed with SciPy 1.17).
-    expect(covered.logRate).toBeGreaterThanOrEqual(356);
-    expect(covered.order).toBeGreaterThanOrEqual(356);
+    return covered;
+  }
+
+  const fiveRuns = { ...linear, logConcentrations: [-1, 0, 1, 0.4, -0.3] };
+  const cells: readonly (readonly [string, LinearStudy, number])[] = [
+    ["τ = 4 % against 1 % noise", linear, 11],
+    ["AR(1) noise of 0.8, ρ known", { ...linear, autocorrelation: 0.8 }, 12],
+    ["five runs", fiveRuns, 13],
+    ["runs that tell the order by their shape as well", { ...linear, shape: 0.3 }, 14],
+  ];
+  it.each(cells)("%s: ln k and order covered, and not by the pooled fit", (_, study, seed) => {
+    const covered = coverage(study, seed);
+    expect(covered.logRate).toBeGreaterThanOrEqual(LEAST);
+    expect(covered.order).toBeGreaterThanOrEqual(LEAST);
     expect(covered.pooled).toBeLessThan(0.9 * REPLICATES);
+  });
+
+  it("two of five runs ten times as noisy: covered, where weights by τ̂² alone leave the law to the others", () => {
+    const covered = coverage({ ...fiveRuns, noise: 0.03, noiseFactors: [10, 1, 1, 10, 1] }, 15);
+    expect(covered.logRate).toBeGreaterThanOrEqual(LEAST);
+    expect(covered.order).toBeGreaterThanOrEqual(LEAST);
+    expect(covered.orderByVariance).toBeLessThan(LEAST);
   });
 });

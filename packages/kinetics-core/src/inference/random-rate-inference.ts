@@ -1,7 +1,15 @@
 import { type Estimate, estimateOf, type Flag, noEstimate } from "kinetics-core/quantities";
 import { betweenRunVariance as restrictedVariance } from "./between-run-variance";
 import { informationProblem } from "./information-problem";
-import { type FixedParts, fixedParts, type MarginalFit, marginalFit, offsetAfter } from "./marginal-model";
+import {
+  type FixedParts,
+  fixedParts,
+  marginalFit,
+  offsetAfter,
+  runScaleOf,
+  scaledCovariance,
+} from "./marginal-model";
+import { bilinear } from "./positive-definite";
 import type { PriorInformation, RunInformation } from "./run-information";
 import { partsOf, type RunParts } from "./run-parts";
 
@@ -12,15 +20,21 @@ import { partsOf, type RunParts } from "./run-parts";
  * too narrow.
  *
  * At the θ of the linearisation run j contributes JᵀV_j⁻¹J and JᵀV_j⁻¹r with V_j = σ_j²I + τ² J e eᵀJᵀ (see
- * `RunParts`), a prior 1/u² and its deviation over u². τ² is found by restricted maximum likelihood, intervals are
- * Student's t with m − r degrees of freedom: m runs that say something of ln k, r parameters that only differences
- * between runs determine. By simulation these intervals cover 93.7 to 99.8 % at a nominal 95 %, those of a pooled fit
- * 13 to 75 %.
+ * `RunParts`), a prior 1/u² and its deviation over u². τ² is found by restricted maximum likelihood.
+ *
+ * As in the law from rates, the runs weigh by 1/(h_j + f) with f = max(τ̂², mean h_j), so that neither a τ̂² of 0 by
+ * chance nor a few precise runs carry the law alone, and s² = Σ (z_j − u_jᵀδ)²/(h_j + f) over its expectation, not
+ * truncated at 1, scales what they scatter:
+ *     Cov δ = C (Σ S_j/σ_j² + priors + s² Σ u_j u_jᵀ/(h_j + f)) C,   C the inverse of that sum with s² = 1.
+ * Intervals are Student's t with m − r degrees of freedom: m runs that say something of ln k, r parameters that only
+ * differences between runs determine. Simulated with 5 to 16 runs, τ of 0 to 4 % and noise even or uneven by factors of
+ * 3 and 10 (216 cells of a linear study), τ̂² alone as f covers as little as 81 %, this 91.8 to 100 %; a pooled fit
+ * covers 13 to 75 % at τ = 4 %. Where traces are precise, h_j ≪ τ², the two are the same.
  */
 export interface InferenceOptions {
   /** r ≥ 1: free parameters that the runs' own information leaves undetermined (`parametersLeftToRuns`). */
   readonly undetermined: number;
-  /** τ² where it is held; found by restricted maximum likelihood where absent. */
+  /** τ² where it is held; runs then weigh by it as it is, and s² is 1. Found by restricted likelihood where absent. */
   readonly betweenRunVariance?: number;
   /** σ_j² where they are held, in the order of the runs. */
   readonly noiseVariances?: readonly number[];
@@ -37,15 +51,19 @@ export interface RandomRateInference {
   readonly betweenRunVariance: number;
   /** τ, standard deviation of ln k between runs. */
   readonly betweenRunStandardDeviation: number;
+  /** f, which stands for τ² in the weights. */
+  readonly weightVariance: number;
+  /** s². */
+  readonly runScale: number;
   /** σ_j² in the order of the runs, with autocorrelation counted in. */
   readonly noiseVariances: readonly number[];
   /** m − r, not below 0; with 0 there is no interval. */
   readonly degreesOfFreedom: number;
-  /** rᵀV⁻¹r of runs and priors after the step. */
+  /** rᵀV⁻¹r of runs and priors after the step, at f. */
   readonly quadratic: number;
-  /** −2 log-likelihood of the linearised model but for a constant of the noise variances. */
+  /** −2 log-likelihood of the linearised model at f, but for a constant of the noise variances. */
   readonly marginalDeviance: number;
-  /** The same of the restricted likelihood, by which τ² is found. */
+  /** The same of the restricted likelihood at τ², by which τ² is found. */
   readonly restrictedDeviance: number;
   readonly runs: readonly RunRate[];
   readonly flags: readonly Flag[];
@@ -83,9 +101,10 @@ export function randomRateInference(
   const fixed = fixedParts(parts, priors);
   const telling = parts.filter((part) => part.ownVariance !== null).length;
   const degreesOfFreedom = Math.max(0, telling - options.undetermined);
-  const variance =
-    options.betweenRunVariance ?? (degreesOfFreedom > 0 ? restrictedVariance(parts, fixed) : 0);
-  return inferenceAt(parts, fixed, variance, degreesOfFreedom, options);
+  const held = options.betweenRunVariance;
+  const variance = held ?? (degreesOfFreedom > 0 ? restrictedVariance(parts, fixed) : 0);
+  const weightVariance = held ?? Math.max(variance, meanOwnVariance(parts));
+  return inferenceAt(parts, fixed, { variance, weightVariance, degreesOfFreedom }, options);
 }
 
 /**
@@ -105,37 +124,64 @@ export function pooledInference(
     (sum, run) => sum + (run.degreesOfFreedom * (1 - run.autocorrelation)) / (1 + run.autocorrelation),
     0,
   );
-  return inferenceAt(parts, fixed, 0, Math.max(0, readings - fixed.parameters), options);
+  const degreesOfFreedom = Math.max(0, readings - fixed.parameters);
+  return inferenceAt(
+    parts,
+    fixed,
+    { variance: 0, weightVariance: 0, degreesOfFreedom },
+    { ...options, betweenRunVariance: 0 },
+  );
+}
+
+interface Scatter {
+  readonly variance: number;
+  readonly weightVariance: number;
+  readonly degreesOfFreedom: number;
 }
 
 function inferenceAt(
   parts: readonly RunParts[],
   fixed: FixedParts,
-  variance: number,
-  degreesOfFreedom: number,
-  options: { readonly level?: number },
+  { variance, weightVariance, degreesOfFreedom }: Scatter,
+  options: { readonly level?: number; readonly betweenRunVariance?: number },
 ): InferenceResult {
-  const fit = marginalFit(parts, fixed, variance);
-  if (fit.status === "undetermined")
+  const fit = marginalFit(parts, fixed, weightVariance);
+  const restricted = weightVariance === variance ? fit : marginalFit(parts, fixed, variance);
+  if (fit.status === "undetermined" || restricted.status === "undetermined") {
+    const parameter = fit.status === "undetermined" ? fit.parameter : 0;
     return {
       status: "undetermined",
-      message: `The runs and what is stated beside them leave parameter ${fit.parameter + 1} of ${fixed.parameters} undetermined. Hold it, state it with its uncertainty, or add a run that differs in it.`,
+      message: `The runs and what is stated beside them leave parameter ${parameter + 1} of ${fixed.parameters} undetermined. Hold it, state it with its uncertainty, or add a run that differs in it.`,
     };
+  }
   const p = fixed.parameters;
+  const estimated = options.betweenRunVariance === undefined && degreesOfFreedom > 0;
+  const runScale = estimated ? runScaleOf(parts, fit, weightVariance) : 1;
+  const covariance = scaledCovariance(parts, fit, weightVariance, runScale);
   return {
     status: "determined",
     step: fit.step,
-    covariance: Array.from({ length: p }, (_, i) => Array.from(fit.covariance.subarray(i * p, (i + 1) * p))),
+    covariance: Array.from({ length: p }, (_, i) => Array.from(covariance.subarray(i * p, (i + 1) * p))),
     betweenRunVariance: variance,
     betweenRunStandardDeviation: Math.sqrt(variance),
+    weightVariance,
+    runScale,
     noiseVariances: parts.map((part) => part.noiseVariance),
     degreesOfFreedom,
     quadratic: fit.quadratic,
     marginalDeviance: fit.marginalDeviance,
-    restrictedDeviance: fit.restrictedDeviance,
-    runs: parts.map((part) => runRate(part, fit, variance, degreesOfFreedom, options.level ?? 0.95)),
+    restrictedDeviance: restricted.restrictedDeviance,
+    runs: parts.map((part) =>
+      runRate(part, fit.step, covariance, { variance, degreesOfFreedom, level: options.level ?? 0.95 }),
+    ),
     flags: freedomFlags(degreesOfFreedom),
   };
+}
+
+/** Mean h over the runs that say something of ln k. */
+function meanOwnVariance(parts: readonly RunParts[]): number {
+  const own = parts.flatMap(({ ownVariance }) => (ownVariance === null ? [] : [ownVariance]));
+  return own.length === 0 ? 0 : own.reduce((sum, value) => sum + value, 0) / own.length;
 }
 
 /**
@@ -144,31 +190,23 @@ function inferenceAt(
  */
 function runRate(
   part: RunParts,
-  fit: MarginalFit,
-  variance: number,
-  degreesOfFreedom: number,
-  level: number,
+  step: Float64Array,
+  covariance: Float64Array,
+  at: { readonly variance: number; readonly degreesOfFreedom: number; readonly level: number },
 ): RunRate {
-  const p = fit.step.length;
-  const noise = Math.sqrt(part.noiseVariance);
+  const p = step.length;
   const own = part.ownVariance;
-  const share = own === null ? 0 : variance / (own + variance);
-  let error = own === null ? variance : share * own;
-  for (let i = 0; i < p; i++) {
-    const first = (i === 0 ? 1 : 0) - share * (part.direction[i] ?? 0);
-    for (let j = 0; j < p; j++) {
-      const second = (j === 0 ? 1 : 0) - share * (part.direction[j] ?? 0);
-      error += first * (fit.covariance[i * p + j] ?? 0) * second;
-    }
-  }
-  const prediction = (fit.step[0] ?? 0) + share * offsetAfter(part, fit.step);
+  const share = own === null || at.variance === 0 ? 0 : at.variance / (own + at.variance);
+  const along = Float64Array.from(part.direction, (value, i) => (i === 0 ? 1 : 0) - share * value);
+  const error = bilinear(along, covariance, along, p) + (own === null ? at.variance : share * own);
+  const prediction = (step[0] ?? 0) + share * offsetAfter(part, step);
   return {
     label: part.label,
     logRateConstant: Number.isFinite(error)
-      ? estimateOf(prediction, Math.sqrt(Math.max(0, error)), degreesOfFreedom, level)
-      : noEstimate(level),
+      ? estimateOf(prediction, Math.sqrt(Math.max(0, error)), at.degreesOfFreedom, at.level)
+      : noEstimate(at.level),
     own: own === null ? null : { offset: part.offset, standardError: Math.sqrt(own) },
-    noise,
+    noise: Math.sqrt(part.noiseVariance),
   };
 }
 

@@ -21,6 +21,8 @@ export interface LinearStudy {
   /** Standard deviation of ln k between runs. */
   readonly scatter: number;
   readonly noise: number;
+  /** How many times the noise of each run is that; all 1 where absent. */
+  readonly noiseFactors?: readonly number[];
   readonly autocorrelation: number;
   /** True θ less the θ of the linearisation. */
   readonly truth: readonly [number, number, number];
@@ -42,7 +44,7 @@ export function simulateLinearRuns(study: LinearStudy, draws: RandomDraws): read
     const residuals = times.map((_, i) => {
       if (i > 0) error = autocorrelation * error + Math.sqrt(1 - autocorrelation ** 2) * draws.normal();
       const signal = derivatives.reduce((sum, column, k) => sum + (truth[k] ?? 0) * (column[i] ?? 0), 0);
-      return signal + departure * (byRate[i] ?? 0) + noise * error;
+      return signal + departure * (byRate[i] ?? 0) + noise * (study.noiseFactors?.[j] ?? 1) * error;
     });
     return { label: `R${j + 1}`, derivatives, residuals };
   });
