@@ -28,5 +28,7 @@ export function endConflict(
   const onReadings = stated.found.residuals.subarray(0, trace.time.length);
   const rise =
     (dot(onReadings, onReadings) - free.found.residualSquares) / variance + stated.endDeviation ** 2;
-  return Math.sign(free.found.problem.linear.end - end.value) * Math.sqrt(Math.max(rise, 0));
+  const z = Math.sign(free.found.problem.linear.end - end.value) * Math.sqrt(Math.max(rise, 0));
+  // Readings without any noise know their end without an error: there is no number of standard uncertainties.
+  return Number.isFinite(z) ? z : null;
 }

@@ -29,8 +29,15 @@ export interface TooFewReadings {
   readonly message: string;
 }
 
-/** Smaller signals, and larger ones than its reciprocal, leave no room for squares. */
+/** Smaller spans, and larger ones than its reciprocal, leave no room for squares. */
 const LEAST_RANGE = 1e-150;
+
+function isOfSomeSize(span: number): boolean {
+  return span >= LEAST_RANGE && span <= 1 / LEAST_RANGE;
+}
+
+/** An end known to less than this part of the range is exact beside readings that are doubles. */
+const EXACT_END = 1e-13;
 
 /** `needed`: as many readings as the fit has parameters. */
 export function scaledReadings(
@@ -53,11 +60,12 @@ export function scaledReadings(
     largest = Math.max(largest, Math.abs(value + offset));
   }
   const [duration, range] = [lastTime - firstTime, high - low];
-  if (!Number.isFinite(duration) || !Number.isFinite(range / LEAST_RANGE)) {
+  if (!isOfSomeSize(duration) || !Number.isFinite(range / LEAST_RANGE)) {
     return {
       status: "unusable",
       code: "not-finite",
-      message: "Times or signals are too large to be squared; check the power of ten and the unit.",
+      message:
+        "Times or signals are too large, or times too close together, to be squared; check the power of ten and the unit.",
     };
   }
   if (!(range > 2 * Number.EPSILON * largest) || range < LEAST_RANGE) {
@@ -87,7 +95,7 @@ function scaledEnd(endSignal: EndSignal, firstSignal: number, range: number): Sc
   if (endSignal.kind === "free") return { kind: "free" };
   const value = ((endSignal.kind === "known" ? endSignal.value : 0) - firstSignal) / range;
   const uncertainty = endSignal.kind === "known" ? endSignal.standardUncertainty / range : 0;
-  return uncertainty > 0
+  return uncertainty > EXACT_END
     ? { kind: "stated", value, standardUncertainty: uncertainty }
     : { kind: "fixed", value };
 }
