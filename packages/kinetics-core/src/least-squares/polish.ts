@@ -2,7 +2,13 @@ import { releaseFree } from "./bounded-step";
 import { compensatedDot } from "./compensated-dot";
 import { fillStep } from "./damped-step";
 import { factorise, wholePromise } from "./linearisation";
-import { evaluateAt, moveOn, type NonlinearSearch, residualVariance } from "./nonlinear-search";
+import {
+  evaluateAt,
+  moveOn,
+  type NonlinearSearch,
+  outOfEvaluations,
+  residualVariance,
+} from "./nonlinear-search";
 import { rescale } from "./rescale";
 
 /**
@@ -22,7 +28,7 @@ export function polish(search: NonlinearSearch): void {
   let before = Number.POSITIVE_INFINITY;
   let share = 1;
   for (let round = 0; round < MOST_ROUNDS; round++) {
-    if (search.options.shouldStop?.()) return;
+    if (outOfEvaluations(search) || search.options.shouldStop?.()) return;
     const length = proposePolish(search, share);
     if (length > before && before > NOTICEABLE * Math.sqrt(residualVariance(search))) {
       share /= 2;
