@@ -11,6 +11,8 @@ import { type EquationValue, equationValue, type RateEquation } from "./rate-equ
 import { reversibleEquation } from "./reversible-equation";
 import { saturatingEquation } from "./saturating-equation";
 
+fc.configureGlobal({ seed: 1864 });
+
 const free = (species: string): PowerTerm => ({ species, order: "free" });
 const held = (species: string, order: number): PowerTerm => ({ species, order });
 

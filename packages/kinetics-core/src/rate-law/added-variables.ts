@@ -25,13 +25,13 @@ export function addedVariables(
       species: name,
       held,
       slope: slopes[i] ?? null,
-      points: fit.runs.map((run, j) => ({
-        label: run.label,
-        concentration: run.concentrations[i] ?? 0,
-        rateAtCentre: run.rate * Math.exp(-partOfOthers(fit, i, j)),
-        x: x?.[j] ?? null,
-        y: y?.[j] ?? null,
-      })),
+      points: fit.runs.flatMap((run, j) => {
+        const rateAtCentre = run.rate * Math.exp(-partOfOthers(fit, i, j));
+        // Orders of a design that all but fixes none can carry a rate beyond what a double holds, or a drawing shows.
+        if (!Number.isFinite(rateAtCentre)) return [];
+        const concentration = run.concentrations[i] ?? 0;
+        return [{ label: run.label, concentration, rateAtCentre, x: x?.[j] ?? null, y: y?.[j] ?? null }];
+      }),
     };
   });
 }

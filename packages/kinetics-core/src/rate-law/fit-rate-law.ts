@@ -14,6 +14,7 @@ import { exactTableFlags, freedomFlags, readingFlags, scopeFlags } from "./law-f
 import { leaveOneOut } from "./leave-one-out";
 import { pairOrders } from "./pairs";
 import type { RateLawFit, RateLawInput, RateLawResult, SimpleOrderReading } from "./rate-law";
+import { refusedSize } from "./refused-sizes";
 import { lackOfFit, lackOfFitFlags, replicateFlags, residualFlags, residualRows } from "./residual-checks";
 import { separability, separation } from "./separability";
 import { sharedErrors } from "./shared-errors";
@@ -36,9 +37,10 @@ import { heldOrders, type UsableRun, usableRuns } from "./usable-runs";
  *
  * `too-few-runs`: one usable run while an order is free. `no-positive-rates`: no run with a usable rate.
  * `no-species`: a law needs at least one concentration. `beyond-precision`: sizes that no double can weigh against
- * each other.
+ * each other. Throws `RangeError` where `level` or `temperatureRelative`, which are settings and no data, are none.
  */
 export function fitRateLaw(input: RateLawInput): RateLawResult {
+  refuseSettings(input);
   if (input.species.length === 0)
     return {
       status: "no-species",
@@ -56,6 +58,8 @@ export function fitRateLaw(input: RateLawInput): RateLawResult {
           : "No run has a rate above zero with all its concentrations, so there is nothing to fit. Check the signs of the rates and the concentrations.",
       flags: usable.flags,
     };
+  const refused = refusedSize(input, usable.runs);
+  if (refused !== null) return { status: "beyond-precision", message: refused, flags: usable.flags };
   const free = held.filter((order) => order === null).length;
   if (usable.runs.length === 1 && free > 0)
     return {
@@ -75,6 +79,15 @@ export function fitRateLaw(input: RateLawInput): RateLawResult {
       flags: usable.flags,
     };
   }
+}
+
+function refuseSettings({ level = 0.95, temperatureRelative = 0 }: RateLawInput): void {
+  if (!(level > 0 && level < 1))
+    throw new RangeError(`level is ${level}; a confidence level lies between 0 and 1`);
+  if (!(temperatureRelative >= 0 && Number.isFinite(temperatureRelative)))
+    throw new RangeError(
+      `temperatureRelative is ${temperatureRelative}; a relative uncertainty is 0 or more`,
+    );
 }
 
 /** Settings every part of one analysis shares. */
@@ -98,7 +111,7 @@ function fitUsable(
     concentrationUnit: input.concentrationUnit ?? "mol/L",
     timeUnit: input.timeUnit ?? "s",
     level: input.level ?? 0.95,
-    temperatureRelative: Math.max(0, input.temperatureRelative ?? 0),
+    temperatureRelative: input.temperatureRelative ?? 0,
   };
   const shared = sharedErrors(input, runs);
   const design = designOf(runs, held);

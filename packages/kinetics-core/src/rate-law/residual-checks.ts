@@ -11,6 +11,8 @@ import type { UsableRun } from "./usable-runs";
 const LEVERAGE_BEYOND_CHECK = 0.99;
 const FAMILY_LEVEL = 0.05;
 const LACK_OF_FIT_LEVEL = 0.01;
+/** Replicates closer than this, relative, differ by rounding: their scatter is not known, however small it looks. */
+const ROUNDING_OF_A_RATE = 1e-12;
 
 export function residualRows(fit: OrdersFit): RateLawFit["residuals"] {
   const greatest = 1 / Math.min(...fit.ownVariances);
@@ -116,15 +118,17 @@ export function lackOfFit(fit: OrdersFit): LackOfFit | null {
   if (pureFreedom < 1 || lackFreedom < 1) return null;
   const place = new Map(fit.runs.map((run, j) => [run, j]));
   let pure = 0;
+  let rounding = 0;
   for (const group of recipes) {
     const members = group.map((run) => place.get(run) ?? 0);
     const weight = (j: number) => 1 / (fit.ownVariances[j] ?? 1);
     const total = members.reduce((sum, j) => sum + weight(j), 0);
     // Runs of one recipe have one fitted value, so residuals serve as well as ln v.
     const centre = members.reduce((sum, j) => sum + weight(j) * (fit.residuals[j] ?? 0), 0) / total;
+    rounding += total * ROUNDING_OF_A_RATE ** 2;
     pure += members.reduce((sum, j) => sum + weight(j) * ((fit.residuals[j] ?? 0) - centre) ** 2, 0);
   }
-  if (!(pure > 0)) return null;
+  if (!(pure > rounding)) return null;
   const lack = Math.max(0, fit.solution.weightedSumOfSquares - pure);
   const fStatistic = lack / lackFreedom / (pure / pureFreedom);
   return {

@@ -36,7 +36,7 @@ export interface UsableRuns {
 /** Held order of each species, null where it is free. A held order that is no number counts as free. */
 export function heldOrders(input: RateLawInput): readonly (number | null)[] {
   return input.species.map((name) => {
-    const order = input.orders?.[name] ?? "free";
+    const order = given(input.orders, name) ?? "free";
     return order === "free" || !Number.isFinite(order) ? null : order;
   });
 }
@@ -84,7 +84,7 @@ function hasUsableConcentrations(
   flags: Flag[],
 ): boolean {
   const wanted = species.filter((_, i) => held[i] !== 0);
-  const missing = wanted.filter((name) => !Number.isFinite(run.concentrations[name] ?? Number.NaN));
+  const missing = wanted.filter((name) => numberGiven(run.concentrations, name) === undefined);
   if (missing.length > 0) {
     flags.push({
       code: "concentration-missing",
@@ -93,7 +93,7 @@ function hasUsableConcentrations(
     });
     return false;
   }
-  const negative = wanted.filter((name) => (run.concentrations[name] ?? 0) < 0);
+  const negative = wanted.filter((name) => (numberGiven(run.concentrations, name) ?? 0) < 0);
   if (negative.length > 0) {
     flags.push({
       code: "concentration-negative",
@@ -102,7 +102,7 @@ function hasUsableConcentrations(
     });
     return false;
   }
-  const absent = wanted.filter((name) => run.concentrations[name] === 0);
+  const absent = wanted.filter((name) => numberGiven(run.concentrations, name) === 0);
   if (absent.length > 0) {
     flags.push({
       code: "concentration-zero",
@@ -118,12 +118,22 @@ function prepare(run: RateLawRun, species: readonly string[]): UsableRun {
   return {
     label: run.label,
     readings: [run.label],
-    concentrations: species.map((name) => run.concentrations[name] ?? 0),
+    concentrations: species.map((name) => numberGiven(run.concentrations, name) ?? 0),
     rate: run.rate,
     rateError: positiveOrZero(run.rateStandardError),
-    privateErrors: species.map((name) => positiveOrZero(run.relativeUncertainty?.[name])),
+    privateErrors: species.map((name) => positiveOrZero(numberGiven(run.relativeUncertainty, name))),
     block: run.block ?? null,
   };
+}
+
+/** What an object holds itself: every object answers to names such as "constructor". */
+function given<T>(record: Readonly<Record<string, T>> | undefined, name: string): T | undefined {
+  return record !== undefined && Object.hasOwn(record, name) ? record[name] : undefined;
+}
+
+function numberGiven(record: Readonly<Record<string, number>> | undefined, name: string): number | undefined {
+  const value = given(record, name);
+  return value !== undefined && Number.isFinite(value) ? value : undefined;
 }
 
 function positiveOrZero(value: number | undefined): number {
@@ -235,7 +245,7 @@ function ratePrecision(runs: readonly UsableRun[]): readonly Flag[] {
 }
 
 function precisionInWords(run: UsableRun): string {
-  return run.rate > 0
+  return run.rate > run.rateError
     ? `The rate of ${run.label} is known to ${percent(run.rateError / run.rate)}`
     : `The rate of ${run.label} cannot be told from zero`;
 }

@@ -7,6 +7,8 @@ import type { ExpressionFunction, ExpressionNode, ExpressionOperator } from "./e
 import { parseExpression } from "./parse-expression";
 import { printExpression } from "./print-expression";
 
+fc.configureGlobal({ seed: 1864 });
+
 const SPECIES = ["A", "B"];
 const PARAMETERS = ["a", "b"];
 const NAMES = [...SPECIES, ...PARAMETERS];

@@ -4,6 +4,8 @@ import type { ExpressionFaultCode } from "./expression-fault";
 import { parseExpression } from "./parse-expression";
 import { printExpression } from "./print-expression";
 
+fc.configureGlobal({ seed: 1864 });
+
 const SPECIES = ["A", "B", "P", "[Fe(CN)6]3-", "S₂O₈²⁻"];
 
 function printed(text: string): string {

@@ -1,0 +1,1 @@
+export { placesNotFinite } from "./places-not-finite";
