@@ -31,6 +31,7 @@ export interface SealRequest {
   readonly logarithm: number;
   /** Variance of ln for one new run, the law's with τ²; `newRunVariance` of a prediction. */
   readonly newRunVariance: number | null;
+  /** `newRunDegreesOfFreedom` of that prediction. */
   readonly degreesOfFreedom: number | null;
   /** Expected relative standard uncertainty of the measurement itself; default 0. */
   readonly measurementRelative?: number;

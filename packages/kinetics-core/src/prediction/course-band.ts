@@ -1,6 +1,6 @@
 import type { Flag } from "kinetics-core/quantities";
 import type { FittedLaw } from "./fitted-law";
-import { factorOf, logPrediction } from "./log-prediction";
+import { factors, type LogPrediction, logPrediction } from "./log-prediction";
 import { rangeFlags } from "./prediction-flags";
 import {
   type Course,
@@ -66,35 +66,50 @@ export function courseBand(
 interface CourseTable {
   readonly course: Course;
   readonly rows: readonly { readonly u: number; readonly sums: Float64Array }[];
+  readonly factor: ReturnType<typeof factors>;
 }
+
+/** The middle of the band, its late and its early edge. */
+type Side = 0 | 1 | -1;
 
 const STEP = 0.5;
 
 function tableOf(course: Course, lastTime: number): CourseTable {
   const { law } = course;
   const rows = [{ u: 0, sums: new Float64Array(2 + law.parameters.length) }];
-  const factor = factorOf(law) ?? 0;
+  const table: CourseTable = { course, rows, factor: factors(law.level) };
   for (let u = STEP; u <= course.lastU; u += STEP) {
     const sums = (rows.at(-1)?.sums ?? new Float64Array(0)).slice();
     if (!timeIntegrals(course, u - STEP, u, sums)) break;
     rows.push({ u, sums });
-    if (timeOf(course, sums, -factor, "newRun") > lastTime) break;
+    if (timeOf(table, sums, -1, "newRun") > lastTime) break;
   }
-  return { course, rows };
+  return table;
 }
 
 type Kind = "ofTheLaw" | "newRun";
 
-/** t·e^(z s) with s the standard deviation of ln t. */
-function timeOf(course: Course, sums: Float64Array, z: number, kind: Kind): number {
+/** t·e^(± half-width of ln t); t itself where there is no interval. */
+function timeOf({ course, factor }: CourseTable, sums: Float64Array, side: Side, kind: Kind): number {
   const { law } = course;
   const [scaledTime = Number.NaN] = sums;
   if (scaledTime === 0) return 0;
   const logTime = Math.log(scaledTime) - law.logRateConstant;
-  if (z === 0) return Math.exp(logTime);
-  const { variance, newRunVariance } = logPrediction(law, logTime, gradientOf(course, sums));
-  const own = kind === "newRun" ? (newRunVariance ?? variance) : variance;
-  return Math.exp(logTime + z * Math.sqrt(own ?? 0));
+  if (side === 0) return Math.exp(logTime);
+  const prediction = logPrediction(law, logTime, gradientOf(course, sums));
+  return Math.exp(logTime + side * (halfWidthOf(law, prediction, factor, kind) ?? 0));
+}
+
+function halfWidthOf(
+  law: FittedLaw,
+  { variance, newRunVariance, newRunDegreesOfFreedom }: LogPrediction,
+  factor: CourseTable["factor"],
+  kind: Kind,
+): number | null {
+  const withRun = kind === "newRun" && newRunVariance !== null;
+  const times = factor(withRun ? newRunDegreesOfFreedom : law.degreesOfFreedom);
+  const own = withRun ? newRunVariance : variance;
+  return times === null || own === null ? null : times * Math.sqrt(own);
 }
 
 function gradientOf({ law }: Course, sums: Float64Array): readonly number[] {
@@ -102,10 +117,10 @@ function gradientOf({ law }: Course, sums: Float64Array): readonly number[] {
   return [-1, ...law.parameters.map((_, j) => (sums[1 + j] ?? Number.NaN) / scaledTime)];
 }
 
-/** The course and its two edges as times against u: t·e^(z s) at every row of the table. */
+/** The course or an edge of its band as times at every row of the table. */
 interface Edge {
   readonly table: CourseTable;
-  readonly z: number;
+  readonly side: Side;
   readonly kind: Kind;
   readonly times: Float64Array;
 }
@@ -118,17 +133,15 @@ interface Edges {
 }
 
 function edgesOf(table: CourseTable): Edges {
-  const { course, rows } = table;
-  const { law } = course;
-  const edge = (z: number, kind: Kind): Edge => ({
+  const { law } = table.course;
+  const edge = (side: Side, kind: Kind): Edge => ({
     table,
-    z,
+    side,
     kind,
-    times: Float64Array.from(rows, ({ sums }) => timeOf(course, sums, z, kind)),
+    times: Float64Array.from(table.rows, ({ sums }) => timeOf(table, sums, side, kind)),
   });
-  const factor = law.covariance === null ? null : factorOf(law);
-  const pair = (kind: Kind) =>
-    factor === null ? null : ([edge(factor, kind), edge(-factor, kind)] as const);
+  const hasInterval = law.covariance !== null && table.factor(law.degreesOfFreedom) !== null;
+  const pair = (kind: Kind) => (hasInterval ? ([edge(1, kind), edge(-1, kind)] as const) : null);
   return {
     best: edge(0, "ofTheLaw"),
     ofTheLaw: pair("ofTheLaw"),
@@ -160,17 +173,17 @@ function intervalAt(pair: readonly [Edge, Edge] | null, time: number, best: Posi
   if (pair === null) return null;
   const [slow, fast] = pair;
   const { course } = slow.table;
-  if (course.end.kind === "equilibrium") return intervalOfExtent(course, best, slow.z, slow.kind);
+  if (course.end.kind === "equilibrium") return intervalOfExtent(slow.table, best, slow.kind);
   return [extentAt(course, solve(slow, time).u), extentAt(course, solve(fast, time).u)];
 }
 
-function intervalOfExtent(course: Course, { u, sums }: Position, factor: number, kind: Kind): Interval {
+function intervalOfExtent({ course, factor }: CourseTable, { u, sums }: Position, kind: Kind): Interval {
   const f = rateFactorAt(course, u) ?? 0;
   const value = extentAt(course, u);
   const [scaledTime = 0] = sums;
   const gradient = [scaledTime * f, ...course.law.parameters.map((_, j) => -f * (sums[1 + j] ?? 0))];
-  const { variance, newRunVariance } = logPrediction(course.law, value, gradient, scaledTime * f);
-  const half = factor * Math.sqrt((kind === "newRun" ? newRunVariance : variance) ?? 0);
+  const prediction = logPrediction(course.law, value, gradient, scaledTime * f);
+  const half = halfWidthOf(course.law, prediction, factor, kind) ?? 0;
   return [Math.max(0, value - half), value + half];
 }
 
@@ -202,8 +215,8 @@ const MOST_ITERATIONS = 100;
 /** Of the time, relative: far below what is drawn or printed. */
 const SETTLED = 1e-11;
 
-/** u at which t·e^(z s) is `time`, by regula falsi with the Illinois rule; the end where it is never so late. */
-function solve({ table, z, kind, times }: Edge, time: number): Position {
+/** u at which the edge reaches `time`, by regula falsi with the Illinois rule; the end where it is never so late. */
+function solve({ table, side, kind, times }: Edge, time: number): Position {
   const { course, rows } = table;
   const next = times.findIndex((reached) => reached >= time);
   const last = rows.at(-1);
@@ -219,7 +232,7 @@ function solve({ table, z, kind, times }: Edge, time: number): Position {
   };
   // ln t is nearly straight in u away from the start, t itself next to it.
   const miss = (sums: Float64Array) => {
-    const at = timeOf(course, sums, z, kind);
+    const at = timeOf(table, sums, side, kind);
     return lower.u === 0 ? at / time - 1 : Math.log(at / time);
   };
   let [a, fa] = [lower.u, miss(lower.sums)];

@@ -15,6 +15,11 @@ export interface FittedLaw {
   readonly covariance: readonly (readonly number[])[] | null;
   /** Behind the covariance; null where no interval can be given. */
   readonly degreesOfFreedom: number | null;
+  /**
+   * Behind τ: runs less parameters. Where stated errors carry most of the covariance its own degrees of freedom are
+   * many, yet τ is known from few runs. Absent: those of the covariance.
+   */
+  readonly runDegreesOfFreedom?: number | null;
   /** τ: standard deviation of ln k from run to run. Null where it is not known; a new run then has no interval. */
   readonly betweenRunStandardDeviation: number | null;
   /** Lowest and highest concentration of each species among the runs; empty where they are not known. */
@@ -59,6 +64,7 @@ function lawWithFreeOrders(fit: RateLawFit): LawOfFit {
           ? null
           : kept.map((row) => kept.map((column) => fit.covariance?.[row]?.[column] ?? Number.NaN)),
       degreesOfFreedom: fit.rateConstantDegreesOfFreedom,
+      runDegreesOfFreedom: fit.degreesOfFreedom > 0 ? fit.degreesOfFreedom : null,
       betweenRunStandardDeviation: fit.betweenRunStandardDeviation,
       studied: studiedIn(fit),
       level: fit.logRateConstant.level,

@@ -13,6 +13,8 @@ export interface LogPrediction {
   readonly variance: number | null;
   /** With τ²; null where τ is not known. */
   readonly newRunVariance: number | null;
+  /** Of `newRunVariance`; null where there is no interval. */
+  readonly newRunDegreesOfFreedom: number | null;
 }
 
 /** `gradient`: by ln k, then by each parameter. `scatterFactor`: how far the logarithm moves with ln k, ±1 mostly. */
@@ -23,38 +25,52 @@ export function logPrediction(
   scatterFactor = 1,
 ): LogPrediction {
   const { covariance, betweenRunStandardDeviation: between } = law;
-  if (covariance === null) return { logarithm, variance: null, newRunVariance: null };
+  if (covariance === null)
+    return { logarithm, variance: null, newRunVariance: null, newRunDegreesOfFreedom: null };
   const columns = covariance.map((row) => dot(gradient, row));
   const variance = Math.max(0, dot(columns, gradient));
+  if (between === null) return { logarithm, variance, newRunVariance: null, newRunDegreesOfFreedom: null };
+  const own = (scatterFactor * between) ** 2;
   return {
     logarithm,
     variance,
-    newRunVariance: between === null ? null : variance + (scatterFactor * between) ** 2,
+    newRunVariance: variance + own,
+    newRunDegreesOfFreedom: degreesWithScatter(law, variance, own),
   };
 }
 
-/** The quantity with its interval back-transformed from the logarithm; no interval without degrees of freedom. */
-export function estimateOfLogarithm(law: FittedLaw, logarithm: number, variance: number | null): Estimate {
-  const deviation = variance === null ? null : Math.sqrt(variance);
-  return exponentialOf(estimateOf(logarithm, deviation, law.degreesOfFreedom, law.level));
+/**
+ * Degrees of freedom of V + τ² by Welch and Satterthwaite (JCGM 100:2008, G.4.1). V has the law's effective ν_V where
+ * its scatter alone has ν, so that V√(ν/ν_V) of it is scatter and the rest is stated. That scatter and τ² come from the
+ * same residuals and add before they are squared: ν (V + τ²)²/(V√(ν/ν_V) + τ²)².
+ */
+export function degreesWithScatter(law: FittedLaw, variance: number, own: number): number | null {
+  const { degreesOfFreedom: whole, runDegreesOfFreedom: ofRuns = whole } = law;
+  if (whole === null || ofRuns === null || !(whole > 0) || !(ofRuns > 0)) return null;
+  const scatter = variance * Math.min(1, Math.sqrt(ofRuns / whole)) + own;
+  return scatter > 0 ? ofRuns * ((variance + own) / scatter) ** 2 : ofRuns;
 }
 
-/** Of the law and of one new run; the latter says nothing where τ is unknown. */
+/** Of the law and of one new run, intervals back-transformed; the latter says nothing where τ is unknown. */
 export function bothEstimates(
-  law: FittedLaw,
-  { logarithm, variance, newRunVariance }: LogPrediction,
+  { level, degreesOfFreedom }: FittedLaw,
+  { logarithm, variance, newRunVariance, newRunDegreesOfFreedom }: LogPrediction,
 ): { readonly ofTheLaw: Estimate; readonly newRun: Estimate } {
+  const estimated = (own: number | null, freedom: number | null) =>
+    exponentialOf(estimateOf(logarithm, own === null ? null : Math.sqrt(own), freedom, level));
   return {
-    ofTheLaw: estimateOfLogarithm(law, logarithm, variance),
-    newRun:
-      newRunVariance === null ? noEstimate(law.level) : estimateOfLogarithm(law, logarithm, newRunVariance),
+    ofTheLaw: estimated(variance, degreesOfFreedom),
+    newRun: newRunVariance === null ? noEstimate(level) : estimated(newRunVariance, newRunDegreesOfFreedom),
   };
 }
 
-/** Two-sided factor of the law's intervals; null where there is none. */
-export function factorOf(law: FittedLaw): number | null {
-  const { degreesOfFreedom } = law;
-  return degreesOfFreedom === null || !(degreesOfFreedom > 0)
-    ? null
-    : studentTFactor(law.level, degreesOfFreedom);
+/** Two-sided factor of an interval at the law's level; null where there is none. Remembers the last one. */
+export function factors(level: number): (degreesOfFreedom: number | null) => number | null {
+  let last = { degreesOfFreedom: Number.NaN, factor: Number.NaN };
+  return (degreesOfFreedom) => {
+    if (degreesOfFreedom === null || !(degreesOfFreedom > 0)) return null;
+    if (degreesOfFreedom !== last.degreesOfFreedom)
+      last = { degreesOfFreedom, factor: studentTFactor(level, degreesOfFreedom) };
+    return last.factor;
+  };
 }

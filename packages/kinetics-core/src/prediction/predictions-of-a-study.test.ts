@@ -114,7 +114,7 @@ describe("coverage of predictions for what is true and for a new run", () => {
         unit: "mol L^-1 s^-1",
         logarithm: rate.logRate.logarithm,
         newRunVariance: rate.logRate.newRunVariance,
-        degreesOfFreedom: law.degreesOfFreedom,
+        degreesOfFreedom: rate.logRate.newRunDegreesOfFreedom,
       });
       if (sealed.status !== "sealed") throw new Error(sealed.message);
       const judged = judgeConfirmation(sealed.sealed, { value: trueRate(0.03, 0.05) * own, relative: 0 });
@@ -124,6 +124,26 @@ describe("coverage of predictions for what is true and for a new run", () => {
     for (const count of Object.values(hits)) expect(count).toBeGreaterThanOrEqual(FEWEST);
     // A band that covered always would be no band.
     expect(Math.min(...Object.values(hits))).toBeLessThan(REPLICATES);
+  });
+});
+
+describe("coverage for a new run where a stated stock error makes up most of the law's variance", () => {
+  it("holds with five runs: τ is known from two degrees of freedom, whatever the stock says", () => {
+    let hits = 0;
+    const replicates = 300;
+    for (let seed = 0; seed < replicates; seed++) {
+      const fit = study(100 + seed, {
+        recipes: nineRecipes.slice(0, 5),
+        shared: [{ species: ["A", "B"], relative: 0.02 }],
+      });
+      const rate = predictRate(lawOf(fit), { A: 0.03, B: 0.018 });
+      if (rate.status !== "predicted") throw new Error(rate.message);
+      const made = trueRate(0.03, 0.018) * Math.exp(SCATTER * randomDraws(80_000 + seed).normal());
+      const [low = 0, high = 0] = rate.newRun.interval ?? [];
+      hits += Number(low <= made && made <= high);
+    }
+    // 0.5 % point of a binomial with 92.5 % in 300.
+    expect(hits).toBeGreaterThanOrEqual(265);
   });
 });
 

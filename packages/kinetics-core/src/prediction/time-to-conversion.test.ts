@@ -132,7 +132,7 @@ describe("uncertainty of a time", () => {
 
   it("has the gradient that finite differences give", () => {
     const at = (logK: number, order: number) =>
-      predicted(timeToConversion(power({ A: order }, Math.exp(logK)), aLone(0.2), 0.8)).logTime.value;
+      predicted(timeToConversion(power({ A: order }, Math.exp(logK)), aLone(0.2), 0.8)).logTime.logarithm;
     const h = 1e-5;
     const gradient = [
       (at(Math.log(0.3) + h, 1.5) - at(Math.log(0.3) - h, 1.5)) / (2 * h),

@@ -1,7 +1,7 @@
 import { studentTFactor } from "kinetics-core/distributions";
 import { type Flag, inARow, percent, printNumber } from "kinetics-core/quantities";
 import type { FittedLaw, Prediction } from "./fitted-law";
-import { bothEstimates, logPrediction } from "./log-prediction";
+import { bothEstimates, type LogPrediction, logPrediction } from "./log-prediction";
 import { rangeFlags } from "./prediction-flags";
 import {
   type Course,
@@ -20,12 +20,8 @@ export interface TimeToConversion extends Prediction {
   readonly species: string;
   /** In the time unit of the law. The symmetric interval of the delta method, beside the back-transformed one. */
   readonly symmetricInterval: readonly [number, number] | null;
-  /** ln t and its variances, for sealing and comparing. */
-  readonly logTime: {
-    readonly value: number;
-    readonly variance: number | null;
-    readonly newRunVariance: number | null;
-  };
+  /** ln t with its variances, for sealing and comparing. */
+  readonly logTime: LogPrediction;
   /**
    * ∂ ln t/∂ ln λ when all starting concentrations change by a factor λ: 1 − overall order for a power law. 0 means
    * that the time does not depend on how concentrated the mixture is.
@@ -97,11 +93,7 @@ function timeOnCourse(
     species,
     ...estimates,
     symmetricInterval: symmetric(law, estimates.ofTheLaw),
-    logTime: {
-      value: logTime,
-      variance: prediction.variance,
-      newRunVariance: prediction.newRunVariance,
-    },
+    logTime: prediction,
     concentrationExponent,
     flags: [...rangeFlags(law, mixture.concentrations), ...startFlags(conversion, concentrationExponent)],
   };

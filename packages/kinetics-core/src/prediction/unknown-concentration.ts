@@ -1,7 +1,7 @@
 import { fieller, type RatioSet } from "kinetics-core/calibration";
 import { type Estimate, type Flag, noEstimate, numberInWords } from "kinetics-core/quantities";
 import type { FittedLaw } from "./fitted-law";
-import { factorOf } from "./log-prediction";
+import { degreesWithScatter, factors } from "./log-prediction";
 import { rangeFlags } from "./prediction-flags";
 
 export interface UnknownMixture {
@@ -55,10 +55,16 @@ export function unknownConcentration(law: FittedLaw, mixture: UnknownMixture): U
     own += (order * known.relative) ** 2;
     if (parameter !== null) gradient[1 + parameter] = -Math.log(known.value);
   });
-  const factor = factorOf(law);
   const between = (a: ArrayLike<number>, b: ArrayLike<number>) => bilinear(covariance ?? [], a, b);
   const bySought = new Float64Array(1 + parameters.length);
   if (sought.parameter !== null) bySought[1 + sought.parameter] = 1;
+  const estimate = numerator / sought.order;
+  const atEstimate = gradient.map((value, i) => value - estimate * (bySought[i] ?? 0));
+  const ofTheLaw = between(atEstimate, atEstimate);
+  const scatter = (law.betweenRunStandardDeviation ?? 0) ** 2 / runs;
+  const factor = Number.isFinite(ofTheLaw)
+    ? factors(law.level)(degreesWithScatter(law, ofTheLaw, scatter))
+    : null;
   const known = covariance !== null && factor !== null;
   const ratio = fieller({
     numerator,
