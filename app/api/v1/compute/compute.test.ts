@@ -45,6 +45,16 @@ describe("initial-rate", () => {
     expect(rate.ok && rate.answer.rate.estimate).toBeCloseTo(1, 10);
   });
 
+  it("says where a burst makes the slope at mixing no initial rate", () => {
+    // S = 0.05 t + 0.2(1 − e^(−t)), with a tremor that no smooth course has.
+    const signal = TIME.map((time, i) => 0.05 * time - 0.2 * Math.expm1(-time) + 0.002 * Math.sin(7 * i * i));
+    const burst = compute({ time: TIME, signal, initialConcentration: 10 });
+    const codes = burst.ok ? burst.answer.flags.map((flag) => flag.code) : [];
+    expect(codes).toContain("burst");
+    const plain = compute({ time: TIME, signal: FALLING, initialConcentration: 100 });
+    expect(plain.ok && plain.answer.flags.map((flag) => flag.code)).not.toContain("burst");
+  });
+
   it("divides by the calibration factor and carries its uncertainty: u(v)/v = u(εl)/εl on an exact line", () => {
     const computed = compute({
       time: TIME,

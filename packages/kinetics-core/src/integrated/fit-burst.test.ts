@@ -4,6 +4,7 @@ import { describe, expect, it } from "vitest";
 import type { BurstFit } from "./burst";
 import { fitBurst } from "./fit-burst";
 import { fitIntegratedLaw } from "./fit-integrated-law";
+import { phaseFlag } from "./phase-flag";
 
 interface Truth {
   readonly steady: number;
@@ -76,6 +77,16 @@ describe("a burst or a lag", () => {
     const law = fitIntegratedLaw({ ...trace, order: 0 });
     if (law.status !== "fitted") throw new Error(law.message);
     expect(law.flags.map(({ code }) => code)).toEqual(expect.arrayContaining(["lack-of-fit", "burst"]));
+  });
+});
+
+describe("the flag of a long trace", () => {
+  it("names its burst, and nothing where there is none", () => {
+    const draws = randomDraws(15);
+    const error = () => 0.01 * draws.normal();
+    expect(phaseFlag(burstTrace(BURST, 5003, error))).toMatchObject({ code: "burst", severity: "weakens" });
+    expect(phaseFlag(burstTrace({ ...BURST, atMixing: 0.01 }, 5003, error))).toBeNull();
+    expect(phaseFlag({ time: [0, 1], signal: [1] })).toBeNull();
   });
 });
 

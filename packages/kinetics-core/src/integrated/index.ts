@@ -23,6 +23,7 @@ export {
   orderOfTrace,
 } from "./order-of-trace";
 export { orderResolution, orderStandardDeviation } from "./order-resolution";
+export { phaseFlag } from "./phase-flag";
 export { reversibleCourse } from "./reversible-course";
 export { type AxisLine, straightestAxisOrder } from "./straightest-axis";
 export { unequalSecondOrderCourse } from "./unequal-second-order-course";

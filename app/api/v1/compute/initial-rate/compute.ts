@@ -5,6 +5,7 @@ import {
   type InitialRateOptions,
   type Trace,
 } from "kinetics-core/initial-rate";
+import { phaseFlag } from "kinetics-core/integrated";
 import type { Estimate } from "kinetics-core/quantities";
 import type { Computed } from "../estimate.schema";
 import type { InitialRateRequest, InitialRateResponse } from "./schema";
@@ -83,9 +84,15 @@ export function initialRateAnswer(
         rate: scaled(one.slope, one.standardError),
         window: [...one.window],
       })),
-      flags: [...result.flags],
+      flags: [...result.flags, ...phaseFlagsOf(request)],
     },
   };
+}
+
+/** A window by hand is the asker's own choice of what is initial. */
+function phaseFlagsOf({ time, signal, timeZero, window }: InitialRateRequest) {
+  const flag = window === undefined ? phaseFlag({ time, signal }, { timeZero }) : null;
+  return flag === null ? [] : [{ ...flag }];
 }
 
 const FAULT_PLACES = {
