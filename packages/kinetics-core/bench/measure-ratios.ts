@@ -31,6 +31,8 @@ export interface PeerRatio {
   readonly ratio: number;
   readonly milliseconds: number;
   readonly fits: number;
+  /** Part of the time in which it waited for a processor: on a busy machine longer fits wait more, and ratios rise. */
+  readonly waiting: number;
   readonly agreement: Agreement;
 }
 
@@ -123,6 +125,7 @@ function peerRatio(name: PeerName, rounds: readonly Round[], ours: Answer): Peer
     ratio: medianOf(fits.map(({ milliseconds, time }) => milliseconds / time)),
     milliseconds: medianOf(fits.map(({ milliseconds }) => milliseconds)),
     fits: fits.length,
+    waiting: medianOf(fits.map(({ fit }) => Math.max(0, 1 - fit.processorSeconds / fit.seconds))),
     agreement: agreementOf(ours, answerOfPeer(last.fit)),
   };
 }

@@ -7,6 +7,8 @@ import type { BenchmarkStudy } from "./benchmark-study";
 /** What another implementation found, and how long its fit alone took by its own clock. */
 export interface PeerFit {
   readonly seconds: number;
+  /** Of these, the time in which it had a processor. */
+  readonly processorSeconds: number;
   readonly logRateConstant: number;
   readonly orders: readonly number[];
   readonly scale: number;
@@ -77,6 +79,8 @@ function isPeerFit(value: unknown): value is PeerFit {
     value !== null &&
     "seconds" in value &&
     typeof value.seconds === "number" &&
+    "processorSeconds" in value &&
+    typeof value.processorSeconds === "number" &&
     "logRateConstant" in value &&
     typeof value.logRateConstant === "number" &&
     "orders" in value &&

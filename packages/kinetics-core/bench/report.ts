@@ -16,6 +16,10 @@ export interface Benchmark {
   readonly absent: string | null;
 }
 
+/** Above this part of the time spent waiting the ratios are those of a busy machine. */
+const MOST_WAITING = 0.1;
+const BUSY = "the machine is busy and longer fits wait more, so the ratios are too high; peers waited up to";
+
 const PEER_TITLES: Readonly<Record<PeerName, string>> = {
   numpy: "same algorithm, NumPy over all runs (same_model_numpy.py)",
   lsoda: "same algorithm, LSODA by solve_ivp (same_model_lsoda.py)",
@@ -56,6 +60,9 @@ export function jsonOf({ ratios, growth, ...rest }: Benchmark) {
         Object.entries(ratios.peers ?? {}).map(([name, peer]) => [name, peer.milliseconds]),
       ),
     },
+    waiting: Object.fromEntries(
+      Object.entries(ratios.peers ?? {}).map(([name, peer]) => [name, peer.waiting]),
+    ),
     agreement: {
       tolerance: TOLERANCE,
       toleranceOfErrors: TOLERANCE_OF_ERRORS,
@@ -76,7 +83,7 @@ export function tableOf({
 }: Benchmark): string {
   const { node, python, numpy, scipy } = versions;
   const python3 = python === null ? (absent ?? "") : `Python ${python}, NumPy ${numpy}, SciPy ${scipy}`;
-  const rows: readonly (readonly [string, string, string])[] = [
+  const rows: (readonly [string, string, string])[] = [
     ["one fit", `${ratios.milliseconds.toFixed(2)} ms`, ""],
     ["six exponentials a point, times slower than", ratios.floor.toFixed(2), "at most 2.5"],
     ...Object.entries(ratios.peers ?? {}).map(([name, peer]) => peerRow(name, peer)),
@@ -98,6 +105,8 @@ export function tableOf({
     ),
   ];
   const head = `Global fit of 12 runs of 1,000 readings, k and two free orders: medians of ${ratios.rounds} interleaved rounds.\nNode ${node}; ${python3}\n`;
+  const waiting = Math.max(0, ...Object.values(ratios.peers ?? {}).map((peer) => peer.waiting));
+  if (waiting > MOST_WAITING) rows.push([BUSY, `${(100 * waiting).toFixed(0)} %`, ""]);
   const width = Math.max(...rows.map(([title]) => title.length));
   const second = Math.max(...rows.map(([, value]) => value.length));
   const lines = rows.map(([title, value, bound]) =>
