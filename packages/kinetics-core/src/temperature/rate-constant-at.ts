@@ -48,7 +48,7 @@ export function rateConstantAt(fit: TemperatureFit, temperatureKelvin: number): 
   };
 }
 
-/** k(T) over the studied range and `beyondKelvin` to either side, evenly in T; for drawing. */
+/** k(T) over the studied range and `beyondKelvin` to either side, evenly in T, at `steps` + 1 ≥ 2 places; for drawing. */
 export function rateConstantBand(
   fit: TemperatureFit,
   steps: number,

@@ -1,3 +1,4 @@
+import fc from "fast-check";
 import { describe, expect, it } from "vitest";
 import { runComputation, temperatureComputation } from "../registry";
 import { temperatureResponse } from "./schema";
@@ -105,5 +106,28 @@ describe("temperature", () => {
     expect(computed.ok).toBe(false);
     expect(computed.ok || computed.errors[0]?.path).toBe(place);
     expect(computed.ok || computed.errors[0]?.message).toMatch(/\w/);
+  });
+});
+
+describe("any request that the schema lets through", () => {
+  const point = fc.record(
+    {
+      temperature: fc.double({ min: 1e-3, max: 1e5, noNaN: true }),
+      k: fc.double({ min: 1e-20, max: 1e20, noNaN: true }),
+      kStandardError: fc.double({ min: 1e-20, max: 1e20, noNaN: true }),
+      temperatureStandardError: fc.double({ min: 0, max: 100, noNaN: true }),
+    },
+    { requiredKeys: ["temperature", "k"] },
+  );
+
+  it("gets an answer in the described shape or the place at fault", () => {
+    fc.assert(
+      fc.property(fc.array(point, { minLength: 1, maxLength: 8 }), (points) => {
+        const computed = compute({ points, at: [1e-3, 300, 1e5] });
+        if (computed.ok) expect(temperatureResponse.safeParse(computed.answer).success).toBe(true);
+        else expect(computed.errors[0]?.path).toMatch(/^points/);
+      }),
+      { numRuns: 200 },
+    );
   });
 });
