@@ -66,6 +66,26 @@ describe("temperature", () => {
     expect(answer.logPreExponential.estimate).toBeCloseTo(25.203822 + Math.log(60 / 1000), 5);
   });
 
+  it("weights by stated errors alone where that is asked for: ln k of three points by hand", () => {
+    const points = [
+      { temperature: 300, k: 1, kStandardError: 0.01 },
+      { temperature: 310, k: 2.1, kStandardError: 0.021 },
+      { temperature: 320, k: 4, kStandardError: 0.4 },
+    ];
+    const weights = points.map(({ k, kStandardError }) => (k / kStandardError) ** 2);
+    const x = points.map(({ temperature }) => 1 / temperature);
+    const y = points.map(({ k }) => Math.log(k));
+    const mean = (values: readonly number[]) =>
+      values.reduce((sum, value, j) => sum + value * (weights[j] ?? 0), 0) /
+      weights.reduce((sum, weight) => sum + weight, 0);
+    const covered = (a: readonly number[], b: readonly number[]) =>
+      a.reduce((sum, value, j) => sum + (weights[j] ?? 0) * (value - mean(a)) * ((b[j] ?? 0) - mean(b)), 0);
+    const expected = (-8.31446261815324 * covered(x, y)) / covered(x, x);
+    const stated = answerTo({ points, weighting: "stated" });
+    expect(Number(stated.activationEnergy.estimate) / expected).toBeCloseTo(1, 9);
+    expect(answerTo({ points }).activationEnergy.estimate).not.toBeCloseTo(expected, -1);
+  });
+
   it("says null, not zero, where two temperatures leave no uncertainty, and flags it", () => {
     const answer = answerTo({ points: HYDROGEN_IODIDE.points.slice(0, 2) });
     expect(answer.activationEnergy).toMatchObject({ standardError: null, interval: null });

@@ -20,7 +20,7 @@ export function computeTemperature(request: TemperatureRequest): Computed<Temper
 }
 
 function inputOf(request: TemperatureRequest): TemperatureInput {
-  const { points, shared, overallOrder, concentrationUnit, timeUnit, level } = request;
+  const { points, shared, overallOrder, concentrationUnit, timeUnit, weighting, level } = request;
   const zero = zeroOf(request);
   return {
     points: points.map((point) => ({
@@ -43,6 +43,7 @@ function inputOf(request: TemperatureRequest): TemperatureInput {
         }),
     // In mol/L the order is not needed: its factor is 1.
     unit: { overallOrder: overallOrder ?? 1, concentrationUnit, timeUnit },
+    ...(weighting === undefined ? {} : { weighting }),
     ...(level === undefined ? {} : { level }),
   };
 }

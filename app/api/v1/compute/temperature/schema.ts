@@ -46,6 +46,10 @@ export const temperatureRequest = z
     }),
     concentrationUnit: z.enum(["mol/L", "mmol/L", "umol/L", "mmHg"]).default("mol/L"),
     timeUnit: z.enum(["s", "min", "h"]).default("s"),
+    weighting: z.enum(["scatter", "stated"]).optional().meta({
+      description:
+        "`scatter` (default): 1/(u² + f), f the scatter between points or the mean of u², whichever is greater. `stated`: 1/u² alone with errors from residuals, as textbooks do; it undercovers where the stated u are uneven.",
+    }),
     at: z.array(temperature).max(500).optional().meta({
       description: "Temperatures at which k is wanted, in `temperatureUnit`.",
     }),
