@@ -15,6 +15,8 @@ export interface Linearisation {
   readonly scale: Float64Array;
   /** Householder vectors, column after column. */
   readonly reflectors: Float64Array;
+  /** 2/|v|² of each. */
+  readonly strengths: Float64Array;
   /** R, n by n, column after column. */
   readonly triangle: Float64Array;
   /** First n elements of Qᵀr. */
@@ -38,7 +40,7 @@ const MOST_SWEEPS = 40;
 export type Take = (length: number) => Float64Array;
 
 export function linearisationSize(points: number, parameters: number): number {
-  return points * (parameters + 1) + 3 * parameters * parameters + 4 * parameters;
+  return points * (parameters + 1) + 3 * parameters * parameters + 5 * parameters;
 }
 
 export function newLinearisation(points: number, parameters: number, take: Take): Linearisation {
@@ -47,6 +49,7 @@ export function newLinearisation(points: number, parameters: number, take: Take)
     parameters,
     scale: take(parameters),
     reflectors: take(points * parameters),
+    strengths: take(parameters),
     triangle: take(parameters * parameters),
     projected: take(parameters),
     rotated: take(parameters * parameters),
@@ -57,28 +60,27 @@ export function newLinearisation(points: number, parameters: number, take: Take)
   };
 }
 
-/** Length of one column of the Jacobian. */
+/** Below this a column's inverse square leaves the range of a double; what moves the residuals so little moves nothing. */
+const SHORTEST = 1e-150;
+
+/** Length of one column of the Jacobian; 0 for one of no consequence. */
 export function lengthOf(column: Float64Array): number {
-  let sum = 0;
-  for (let i = 0; i < column.length; i++) {
-    const value = column[i] ?? 0;
-    sum += value * value;
-  }
-  return Math.sqrt(sum);
+  const length = Math.sqrt(stretchDot(column, 0, column.length, column, 0));
+  return length < SHORTEST ? 0 : length;
 }
 
-/** Fills R and Qᵀr for the scales in `into.scale`. */
+/** Fills R and Qᵀr for the scales in `into.scale`; no division is left in the passes over the points. */
 export function factorise(
   jacobian: readonly Float64Array[],
   residuals: Float64Array,
   into: Linearisation,
 ): void {
-  const { points: m, parameters: n, scale, reflectors, triangle, projected, work } = into;
-  for (let j = 0; j < n; j++) {
-    const column = jacobian[j];
-    const divisor = scale[j] ?? 1;
-    for (let i = 0; i < m; i++) reflectors[j * m + i] = (column?.[i] ?? 0) / divisor;
-  }
+  const { points: m, parameters: n, scale, reflectors, strengths, triangle, projected, work } = into;
+  jacobian.forEach((column, j) => {
+    const factor = 1 / (scale[j] ?? 1);
+    const at = j * m;
+    for (let i = 0; i < m; i++) reflectors[at + i] = factor * (column[i] ?? 0);
+  });
   work.set(residuals);
   triangle.fill(0);
   projected.fill(0);
@@ -86,47 +88,52 @@ export function factorise(
   for (let k = 0; k < n; k++) {
     for (let i = 0; i < Math.min(k, last); i++) triangle[k * n + i] = reflectors[k * m + i] ?? 0;
     if (k >= last) continue;
-    triangle[k * n + k] = makeReflector(reflectors, k * m + k, k * m + m);
-    for (let j = k + 1; j < n; j++) reflect(reflectors, k * m + k, k * m + m, reflectors, j * m + k);
-    reflect(reflectors, k * m + k, k * m + m, work, k);
+    const start = k * m + k;
+    const end = k * m + m;
+    const diagonal = reflectedLength(reflectors, start, end);
+    const first = reflectors[start] ?? 0;
+    // v = x − d e₁ with |v|² = 2 d (d − x₁); H = I − (2/|v|²) v vᵀ.
+    strengths[k] = diagonal === 0 ? 0 : 1 / (diagonal * (diagonal - first));
+    reflectors[start] = first - diagonal;
+    triangle[k * n + k] = diagonal;
+    for (let j = k + 1; j < n; j++) reflect(into, k, reflectors, j * m + k);
+    reflect(into, k, work, k);
   }
   for (let k = 0; k < last; k++) projected[k] = work[k] ?? 0;
 }
 
 /** Turns `work` into Qᵀ·work by the reflectors of the last factorisation. */
-export function applyReflectors({ points: m, parameters: n, reflectors, work }: Linearisation): void {
-  for (let k = 0; k < Math.min(m, n); k++) reflect(reflectors, k * m + k, k * m + m, work, k);
+export function applyReflectors(linear: Linearisation): void {
+  for (let k = 0; k < Math.min(linear.points, linear.parameters); k++) reflect(linear, k, linear.work, k);
 }
 
-/** Turns a stretch into the unit vector v of H = I − 2 v vᵀ that maps it on its first axis; the new first element. */
-function makeReflector(values: Float64Array, start: number, end: number): number {
-  let sum = 0;
-  for (let i = start; i < end; i++) sum += (values[i] ?? 0) ** 2;
-  const norm = Math.sqrt(sum);
-  if (norm === 0) return 0;
-  const first = values[start] ?? 0;
-  const diagonal = first > 0 ? -norm : norm;
-  values[start] = first - diagonal;
-  // |x − d e₁|² = 2 d (d − x₁), without a second pass.
-  const length = Math.sqrt(2 * diagonal * (diagonal - first));
-  for (let i = start; i < end; i++) values[i] = (values[i] ?? 0) / length;
-  return diagonal;
+/** Length of a stretch with the sign that its first element has not, so that nothing cancels. */
+function reflectedLength(values: Float64Array, start: number, end: number): number {
+  const length = Math.sqrt(stretchDot(values, start, end, values, 0));
+  return (values[start] ?? 0) > 0 ? -length : length;
 }
 
+/** Applies reflector k to the stretch of `target` that begins at `at`. */
 function reflect(
-  vector: Float64Array,
-  start: number,
-  end: number,
+  { points, reflectors, strengths }: Linearisation,
+  k: number,
   target: Float64Array,
-  targetStart: number,
+  at: number,
 ): void {
-  const shift = targetStart - start;
-  let projection = 0;
-  for (let i = start; i < end; i++) projection += (vector[i] ?? 0) * (target[i + shift] ?? 0);
-  projection *= 2;
+  const start = k * points + k;
+  const end = k * points + points;
+  const shift = at - start;
+  const projection = (strengths[k] ?? 0) * stretchDot(reflectors, start, end, target, shift);
   if (projection === 0) return;
   for (let i = start; i < end; i++)
-    target[i + shift] = (target[i + shift] ?? 0) - projection * (vector[i] ?? 0);
+    target[i + shift] = (target[i + shift] ?? 0) - projection * (reflectors[i] ?? 0);
+}
+
+/** Σ aᵢ b_(i + shift) from `start` up to `end`. */
+function stretchDot(a: Float64Array, start: number, end: number, b: Float64Array, shift: number): number {
+  let sum = 0;
+  for (let i = start; i < end; i++) sum += (a[i] ?? 0) * (b[i + shift] ?? 0);
+  return sum;
 }
 
 /** Decomposes the columns of R that are free and fills h for the right-hand side `projected`. */
