@@ -101,7 +101,7 @@ class Refits {
     pass.at(fitted.theta, tolerance);
     this.stands = pass.runs.map((run, j) => {
       const { deviation, timeZero, scaleRatio, noise, firstStep } = run;
-      const information = informationOf(run, study.runs[j]?.label ?? "");
+      const information = informationOf(run, study.runs[j]?.label ?? "", fitted.noise[j]);
       return {
         deviation,
         timeZero,
@@ -138,7 +138,7 @@ class Refits {
       this.move(drawn, indices, inference, step);
       for (const j of drawn) if (!pass.one(j, theta, tolerance)) return null;
       const anew = pass.runs.map((run, j) =>
-        drawn.includes(j) ? informationOf(run, stands[j]?.information.label ?? "") : null,
+        drawn.includes(j) ? informationOf(run, stands[j]?.information.label ?? "", fitted.noise[j]) : null,
       );
       told = Array.from(indices).flatMap((j) => anew[j] ?? []);
       variance = undefined;

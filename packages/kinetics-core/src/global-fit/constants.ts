@@ -54,6 +54,9 @@ export const MOST_LINEARISATIONS = 25;
 /** Linearisation from which on the loop goes half the way. */
 export const FIRST_HALVED = 5;
 
+/** Linearisation from which on τ² is held. */
+export const FIRST_HELD = 10;
+
 /** Largest change of a run's own ln k before the loop has settled: farther away its course is no straight line. */
 export const LARGEST_OWN_STEP = 1;
 

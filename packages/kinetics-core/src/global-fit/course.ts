@@ -97,11 +97,6 @@ export class Course {
     return this.nearlyExhausted() ? this.rest() : "failed";
   }
 
-  /** ξ at the end of the last piece. */
-  get extent(): number {
-    return this.step.y[0] ?? 0;
-  }
-
   /** A tenth of the span at the starting rate, or the whole time where that is less. */
   private guess(): number {
     const rate = Math.abs(this.step.k1[0] ?? 0);

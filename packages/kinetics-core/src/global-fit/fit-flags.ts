@@ -2,7 +2,7 @@ import type { Flag } from "kinetics-core/quantities";
 import type { FittedStudy } from "./fitted-study";
 import type { GlobalFitInput } from "./global-fit";
 import { scalePlace } from "./prepared-study";
-import { autocorrelation } from "./random-rate-search";
+import { ownAutocorrelation } from "./reading-noise";
 
 /** Above this autocorrelation few independent readings stand behind a trace; the constant of the initial rates. */
 const HIGH_AUTOCORRELATION = 0.9;
@@ -32,7 +32,7 @@ function runFlags({ pass, study }: FittedStudy): Flag[] {
   const silent = study.runs.flatMap(({ label }, j) => ((pass.runs[j]?.gram[0] ?? 0) > 0 ? [] : [label]));
   const smooth = study.runs.flatMap(({ label }, j) => {
     const run = pass.runs[j];
-    return run !== undefined && autocorrelation(run) > HIGH_AUTOCORRELATION ? [label] : [];
+    return run !== undefined && ownAutocorrelation(run) > HIGH_AUTOCORRELATION ? [label] : [];
   });
   const flags: Flag[] = [];
   if (silent.length > 0)

@@ -11,10 +11,10 @@ import {
   STEP_TOLERANCE,
 } from "./constants";
 import { failure, type GlobalFitFailure, type GlobalFitOptions } from "./global-fit";
-import { leftToRuns } from "./left-to-runs";
 import { PooledSearch, type SearchEnd } from "./pooled-search";
 import { type PreparedStudy, scalePlace, thinned } from "./prepared-study";
 import { randomRateSearch } from "./random-rate-search";
+import type { ReadingNoise } from "./reading-noise";
 import { earlyRates, meanLogRateDerivatives, startFromRates } from "./starting-values";
 import { StudyPass } from "./study-pass";
 import { undeterminedCombinations } from "./undetermined";
@@ -30,6 +30,7 @@ export interface FittedStudy {
   readonly linearisedAt: Float64Array;
   readonly inference: RandomRateInference;
   readonly information: readonly RunInformation[];
+  readonly noise: readonly ReadingNoise[];
   readonly priors: readonly PriorInformation[];
   readonly undetermined: number;
   readonly pooled: PooledNumbers;
@@ -82,10 +83,8 @@ export function fitStudy(study: PreparedStudy, level: number, options: GlobalFit
     const own = information > 0 ? (run.gradient[0] ?? 0) / information : 0;
     run.deviation = study.runs.length > 1 ? Math.max(-1, Math.min(1, own)) : 0;
   }
-  const undetermined = leftToRuns(study, pass);
   const outcome = randomRateSearch(pass, theta, search.bounds, logRate, {
     tolerance,
-    undetermined,
     level,
     shouldStop,
   });
@@ -100,11 +99,12 @@ export function fitStudy(study: PreparedStudy, level: number, options: GlobalFit
       linearisedAt: outcome.linearisedAt,
       inference: outcome.inference,
       information: outcome.information,
+      noise: outcome.noise,
       priors: outcome.priors,
       study,
       names,
       theta,
-      undetermined,
+      undetermined: outcome.undetermined,
       pooled,
       pass,
       bounds: search.bounds,
@@ -180,15 +180,21 @@ function* starts(
   }
 }
 
+/** Second differences of a run that are asked for its noise. */
+const MOST_BENDS = 200;
+
 /** Variance of one reading from second differences in time order, in the median of the runs: no model is asked. */
 function pointNoise(study: PreparedStudy): number {
   const variances = study.runs.map(({ signal }) => {
+    const stride = Math.max(1, Math.floor(signal.length / MOST_BENDS));
     let sum = 0;
-    for (let i = 1; i + 1 < signal.length; i++) {
+    let count = 0;
+    for (let i = 1; i + 1 < signal.length; i += stride) {
       const bend = (signal[i - 1] ?? 0) - 2 * (signal[i] ?? 0) + (signal[i + 1] ?? 0);
       sum += bend * bend;
+      count++;
     }
-    return sum / 6 / (signal.length - 2);
+    return sum / 6 / count;
   });
   variances.sort((a, b) => a - b);
   return Math.max(variances[variances.length >> 1] ?? 0, Number.MIN_VALUE);

@@ -19,17 +19,14 @@ export function prepareStudy(input: GlobalFitInput): Preparation {
   const followed = input.species.findIndex(({ name }) => name === input.followed);
   const followedNumber = input.species[followed]?.stoichiometricNumber ?? 0;
   const { value, standardUncertainty } = input.signalPerConcentration;
-  const law = lawOf(input);
   const study: PreparedStudy = {
-    law,
+    law: lawOf(input),
     runs: input.runs.map((run) => preparedRun(run, input.species, followed, followedNumber, value)),
     followedNumber,
     scale: value,
     scaleVariance: (standardUncertainty / value) ** 2,
     scaleDeviationVariance: (input.scaleDeviation ?? 0) ** 2,
     hasTimeZero: input.runs.some((run) => (run.timeZero?.standardUncertainty ?? 0) > 0),
-    stoichiometricNumbers: input.species.map(({ stoichiometricNumber }) => stoichiometricNumber),
-    changing: law.free.map((parameter) => placesOf(parameter, input)),
   };
   return { status: "prepared", study };
 }
@@ -38,14 +35,6 @@ function lawOf({ law, species }: GlobalFitInput): CourseLaw {
   return "orders" in law
     ? powerCourse(species, law.orders)
     : equationCourse(species, law.equation, law.held ?? {});
-}
-
-/** An order is named by its species, alone or after "n_"; any other parameter belongs to the whole law. */
-function placesOf(parameter: string, { species, law }: GlobalFitInput): readonly number[] {
-  const own = species.findIndex(({ name }) => parameter === name || parameter === `n_${name}`);
-  if (own >= 0) return [own];
-  const named = "orders" in law ? species.map(({ name }) => name) : law.equation.species;
-  return named.map((name) => species.findIndex((one) => one.name === name));
 }
 
 function inputFault(input: GlobalFitInput): GlobalFitFailure | null {

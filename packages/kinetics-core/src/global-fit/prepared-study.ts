@@ -35,9 +35,6 @@ export interface PreparedStudy {
   /** Relative variance of a run's own departure from ε·l; 0 where runs share it exactly. */
   readonly scaleDeviationVariance: number;
   readonly hasTimeZero: boolean;
-  readonly stoichiometricNumbers: readonly number[];
-  /** For each free parameter of the law the places of the species by whose change a run tells about it. */
-  readonly changing: readonly (readonly number[])[];
 }
 
 /** Parameters θ: ln k, the free parameters of the law, then the scale's ratio to the stated one if it is free. */

@@ -63,7 +63,7 @@ function leastDeviance(
     if (!pass.at(theta, tolerance)) return null;
     const hold = { parameter: place, deviation: 0, standardUncertainty: HELD_WITHIN * standardError };
     const inference = randomRateInference(
-      pass.runs.map((run, j) => informationOf(run, study.runs[j]?.label ?? "")),
+      pass.runs.map((run, j) => informationOf(run, study.runs[j]?.label ?? "", fitted.noise[j])),
       [...scalePrior(pass, theta), hold],
       {
         undetermined: fitted.undetermined,

@@ -7,13 +7,16 @@ import {
 } from "kinetics-core/inference";
 import {
   FIRST_HALVED,
+  FIRST_HELD,
   LARGEST_LOG_STEP,
   LARGEST_OWN_STEP,
   MOST_LINEARISATIONS,
   OUTER_SETTLED,
 } from "./constants";
+import { leftToRuns } from "./left-to-runs";
 import { scalePlace } from "./prepared-study";
 import { updateNuisances } from "./project-run";
+import { type ReadingNoise, readingNoise } from "./reading-noise";
 import type { RunLinearisation } from "./run-linearisation";
 import type { StudyPass } from "./study-pass";
 
@@ -29,13 +32,12 @@ import type { StudyPass } from "./study-pass";
  *
  * The loop is Gauss and Newton's: its error after a step is of the second order in b_j's own error, so two or three
  * passes settle it. Where a reactant is used up with a kink in the course (order 0), the linear model changes as a
- * reading passes the kink and the loop may turn about its end; after a few passes it goes half the way.
+ * reading passes the kink and the loop may turn about its end; after a few passes it goes half the way. Where τ² is 0
+ * at one linearisation and not at the next, it is held at the greater of the last two after some more.
  * A fixed point is the least of the penalised sum of squares at its own τ², whatever the way there.
  */
 export interface RandomRateSettings {
   readonly tolerance: number;
-  /** r of `randomRateInference`. */
-  readonly undetermined: number;
   readonly level: number;
   readonly shouldStop: () => boolean;
 }
@@ -46,10 +48,12 @@ export type RandomRateOutcome =
       readonly settled: boolean;
       readonly inference: RandomRateInference;
       readonly information: readonly RunInformation[];
+      readonly noise: readonly ReadingNoise[];
       readonly priors: readonly PriorInformation[];
       /** θ of the last linearisation, from which `inference.step` has been taken. */
       readonly linearisedAt: Float64Array;
-      readonly linearisations: number;
+      /** r of `randomRateInference`. */
+      readonly undetermined: number;
     }
   | { readonly status: "failed"; readonly inference: InferenceFailure }
   | { readonly status: "no-course" }
@@ -64,18 +68,31 @@ export function randomRateSearch(
   settings: RandomRateSettings,
 ): RandomRateOutcome {
   const linearisedAt = theta.slice();
+  let undetermined = 1;
+  let variance = 0;
   for (let linearisations = 1; ; linearisations++) {
     if (settings.shouldStop()) return { status: "stopped" };
     if (!pass.at(theta, settings.tolerance)) return { status: "no-course" };
     linearisedAt.set(theta);
-    const information = pass.runs.map((run, j) => informationOf(run, pass.study.runs[j]?.label ?? ""));
+    const noise = readingNoise(pass.runs, pass.parameters - 1);
+    const information = pass.runs.map((run, j) =>
+      informationOf(run, pass.study.runs[j]?.label ?? "", noise[j]),
+    );
     const priors = scalePrior(pass, theta);
     const inference = randomRateInference(information, priors, {
-      undetermined: settings.undetermined,
+      undetermined,
       level: settings.level,
       ...(linearisations === 1 ? { betweenRunVariance: spreadOfOwn(information) } : {}),
+      ...(linearisations >= FIRST_HELD ? { betweenRunVariance: variance } : {}),
     });
     if (inference.status !== "determined") return { status: "failed", inference };
+    if (linearisations < FIRST_HELD)
+      variance =
+        linearisations === FIRST_HELD - 1
+          ? Math.max(variance, inference.betweenRunVariance)
+          : inference.betweenRunVariance;
+    if (linearisations === 1)
+      undetermined = leftToRuns(information, priors, inference, pass.study.law.free.length);
     const turn = linearisations < FIRST_HALVED ? 1 : 0.5;
     take(pass, theta, bounds, inference, turn * partOfStep(inference.step, logRate), turn);
     const settled = linearisations > 1 && isSettled(inference, linearisedAt, theta);
@@ -85,9 +102,10 @@ export function randomRateSearch(
         settled,
         inference,
         information,
+        noise,
         priors,
         linearisedAt,
-        linearisations,
+        undetermined,
       };
   }
 }
@@ -96,7 +114,11 @@ export function randomRateSearch(
  * A run as `kinetics-core/inference` reads it: about the shared ln k, though linearised at its own. Its arrays are those
  * of the run and hold until the next pass.
  */
-export function informationOf(run: RunLinearisation, label: string): RunInformation {
+export function informationOf(
+  run: RunLinearisation,
+  label: string,
+  noise: ReadingNoise = { autocorrelation: 0, freedom: run.points - 2 },
+): RunInformation {
   const { gram, gradient, shifted, deviation, points, residualSquares } = run;
   const p = gradient.length;
   for (let i = 0; i < p; i++) shifted[i] = (gradient[i] ?? 0) + deviation * (gram[i * p] ?? 0);
@@ -109,19 +131,10 @@ export function informationOf(run: RunLinearisation, label: string): RunInformat
       residualSquares + 2 * deviation * (gradient[0] ?? 0) + deviation * deviation * (gram[0] ?? 0),
     ),
     points,
-    degreesOfFreedom: points - 1,
-    autocorrelation: autocorrelation(run),
+    // Of which the inference takes one for the run's ln k, that is spent here already.
+    degreesOfFreedom: Math.min(points, noise.freedom + 1),
+    autocorrelation: noise.autocorrelation,
   };
-}
-
-/** Coefficients that a run spends on its own: offset and ln k. */
-const OWN_COEFFICIENTS = 2;
-
-/** Bias-corrected ρ of the run's residuals, by the rule of the initial rates. */
-export function autocorrelation({ lagOne, points }: RunLinearisation): number {
-  const spare = points - OWN_COEFFICIENTS - 2;
-  if (spare <= 0) return 0;
-  return Math.min(0.97, Math.max(0, (points * lagOne + OWN_COEFFICIENTS) / spare));
 }
 
 export function scalePrior(pass: StudyPass, theta: Float64Array): readonly PriorInformation[] {

@@ -10,7 +10,7 @@ import type { FittedStudy } from "./fitted-study";
 import type { FittedRun, GlobalFit, GlobalFitInput, PooledEstimates } from "./global-fit";
 import { NormalStep } from "./normal-step";
 import { scalePlace } from "./prepared-study";
-import { autocorrelation } from "./random-rate-search";
+import { ownAutocorrelation } from "./reading-noise";
 
 /** Gives the numbers of a fitted study their names, units and intervals. */
 export function report(input: GlobalFitInput, fitted: FittedStudy): GlobalFit {
@@ -120,8 +120,8 @@ function fittedRun(fitted: FittedStudy, index: number, level: number): FittedRun
   if (run === undefined || linearisation === undefined || told === undefined)
     throw new RangeError(`no run number ${index}`);
   const ratio = scalePlace(study) < 0 ? 1 : (linearisedAt[scalePlace(study)] ?? 1);
-  const rho = autocorrelation(linearisation);
-  const freedom = told.points - 2;
+  const { autocorrelation: rho, degreesOfFreedom } = told;
+  const freedom = degreesOfFreedom - 1;
   const independent = roundedFreedom((freedom * (1 - rho)) / (1 + rho));
   const g = told.gram[0] ?? 0;
   const squares = Math.max(0, told.residualSquares - (g > 0 ? (told.gradient[0] ?? 0) ** 2 / g : 0));
@@ -135,7 +135,7 @@ function fittedRun(fitted: FittedStudy, index: number, level: number): FittedRun
         : estimateOf((linearisedAt[0] ?? 0) + own.offset, own.standardError, independent, level),
     offset: Number.isFinite(offset) ? offset : null,
     residualStandardDeviation: freedom > 0 ? Math.sqrt(squares / freedom) : null,
-    autocorrelation: rho,
+    autocorrelation: ownAutocorrelation(linearisation),
     points: run.time.length,
   };
 }
@@ -143,13 +143,12 @@ function fittedRun(fitted: FittedStudy, index: number, level: number): FittedRun
 function residualDeviation({ information }: FittedStudy): number | null {
   let squares = 0;
   let freedom = 0;
-  for (const { gram, gradient, residualSquares, points } of information) {
+  for (const { gram, gradient, residualSquares, degreesOfFreedom } of information) {
     const g = gram[0] ?? 0;
     squares += Math.max(0, residualSquares - (g > 0 ? (gradient[0] ?? 0) ** 2 / g : 0));
-    freedom += points - 2;
+    freedom += degreesOfFreedom - 1;
   }
-  const parameters = (information[0]?.gradient.length ?? 1) - 1;
-  return freedom > parameters ? Math.sqrt(squares / (freedom - parameters)) : null;
+  return freedom > 0 ? Math.sqrt(squares / freedom) : null;
 }
 
 /** Degrees of freedom beyond which Student's quantile is the normal one to half a per cent. */

@@ -15,8 +15,6 @@ export interface RunLinearisation {
   lagOne: number;
   /** Signal at the mixing time, with the offset. */
   startSignal: number;
-  /** Extent at the last reading. */
-  lastExtent: number;
 
   /** Where the run stands: its own ln k less the shared one, time zero, ratio of its scale to the shared one. */
   deviation: number;
@@ -56,7 +54,6 @@ export function runLinearisations(
     points: count,
     lagOne: 0,
     startSignal: 0,
-    lastExtent: 0,
     deviation: 0,
     timeZero: 0,
     scaleRatio: 1,

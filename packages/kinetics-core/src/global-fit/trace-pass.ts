@@ -98,7 +98,6 @@ export class TracePass {
       point = until;
     }
     into.firstStep = course.firstStep;
-    into.lastExtent = course.extent;
     return true;
   }
 
