@@ -31,6 +31,8 @@ export interface PeerRatio {
   readonly ratio: number;
   readonly milliseconds: number;
   readonly fits: number;
+  /** The same of the peer's processor time alone, to the least time of ours: what a busy machine leaves of the ratio. */
+  readonly processorRatio: number;
   /** Part of the time in which it waited for a processor: on a busy machine longer fits wait more, and ratios rise. */
   readonly waiting: number;
   readonly agreement: Agreement;
@@ -117,7 +119,7 @@ function peerRatio(name: PeerName, rounds: readonly Round[], ours: Answer): Peer
   const fits = rounds.flatMap((round) => {
     const fit = round.peers.get(name);
     const time = PEERS[name].repeats > 1 ? round.ours : round.oursOnAverage;
-    return fit === undefined ? [] : [{ fit, milliseconds: 1000 * fit.seconds, time }];
+    return fit === undefined ? [] : [{ fit, milliseconds: 1000 * fit.seconds, time, least: round.ours }];
   });
   const last = fits.at(-1);
   if (last === undefined) throw new Error(`${name} was never asked for a fit`);
@@ -125,6 +127,7 @@ function peerRatio(name: PeerName, rounds: readonly Round[], ours: Answer): Peer
     ratio: medianOf(fits.map(({ milliseconds, time }) => milliseconds / time)),
     milliseconds: medianOf(fits.map(({ milliseconds }) => milliseconds)),
     fits: fits.length,
+    processorRatio: medianOf(fits.map(({ fit, least }) => (1000 * fit.processorSeconds) / least)),
     waiting: medianOf(fits.map(({ fit }) => Math.max(0, 1 - fit.processorSeconds / fit.seconds))),
     agreement: agreementOf(ours, answerOfPeer(last.fit)),
   };

@@ -6,7 +6,14 @@ import { type Benchmark, failuresOf, jsonOf, tableOf } from "./report";
 const ours: Answer = { estimates: [-0.2, 1, 1], standardErrors: [0.04, 0.006, 0.006], betweenRuns: 0.03 };
 
 function peer(answer: Answer): PeerRatio {
-  return { ratio: 12, milliseconds: 20, fits: 15, waiting: 0, agreement: agreementOf(ours, answer) };
+  return {
+    ratio: 12,
+    milliseconds: 20,
+    fits: 15,
+    processorRatio: 12,
+    waiting: 0,
+    agreement: agreementOf(ours, answer),
+  };
 }
 
 function benchmarkWith(numpy: Answer): Benchmark {

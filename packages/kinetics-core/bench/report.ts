@@ -56,13 +56,10 @@ export function jsonOf({ ratios, growth, ...rest }: Benchmark) {
     milliseconds: {
       fit: ratios.milliseconds,
       floor: ratios.floorMilliseconds,
-      ...Object.fromEntries(
-        Object.entries(ratios.peers ?? {}).map(([name, peer]) => [name, peer.milliseconds]),
-      ),
+      ...ofPeers(ratios, ({ milliseconds }) => milliseconds),
     },
-    waiting: Object.fromEntries(
-      Object.entries(ratios.peers ?? {}).map(([name, peer]) => [name, peer.waiting]),
-    ),
+    waiting: ofPeers(ratios, ({ waiting }) => waiting),
+    processorRatio: ofPeers(ratios, ({ processorRatio }) => processorRatio),
     agreement: {
       tolerance: TOLERANCE,
       toleranceOfErrors: TOLERANCE_OF_ERRORS,
@@ -70,6 +67,10 @@ export function jsonOf({ ratios, growth, ...rest }: Benchmark) {
     },
     ...rest,
   };
+}
+
+function ofPeers<T>({ peers }: Ratios, of: (peer: PeerRatio) => T): Readonly<Record<string, T>> {
+  return Object.fromEntries(Object.entries(peers ?? {}).map(([name, peer]) => [name, of(peer)]));
 }
 
 export function tableOf({
@@ -106,7 +107,13 @@ export function tableOf({
   ];
   const head = `Global fit of 12 runs of 1,000 readings, k and two free orders: medians of ${ratios.rounds} interleaved rounds.\nNode ${node}; ${python3}\n`;
   const waiting = Math.max(0, ...Object.values(ratios.peers ?? {}).map((peer) => peer.waiting));
-  if (waiting > MOST_WAITING) rows.push([BUSY, `${(100 * waiting).toFixed(0)} %`, ""]);
+  if (waiting > MOST_WAITING) {
+    rows.push([BUSY, `${(100 * waiting).toFixed(0)} %`, ""]);
+    const each = Object.entries(ratios.peers ?? {}).map(
+      ([name, peer]) => `${name} ${peer.processorRatio.toFixed(0)}`,
+    );
+    rows.push(["by the processor time of the peers alone", each.join(", "), ""]);
+  }
   const width = Math.max(...rows.map(([title]) => title.length));
   const second = Math.max(...rows.map(([, value]) => value.length));
   const lines = rows.map(([title, value, bound]) =>
