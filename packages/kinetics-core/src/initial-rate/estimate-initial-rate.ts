@@ -12,11 +12,15 @@ import { pairsIn, type Scope, scopeOf } from "./window-scope";
  * the noise of neighbouring readings as correlated and the curvature of the trace as a possible bias.
  *
  * `trace`: times strictly increasing, 5 readings or more at or after `timeZero`; any units, which come back in
- * the slope. Never throws on data: `unusable` names the reading at fault, `too-few-points` what is needed.
+ * the slope. Never throws on data: `unusable` names the reading at fault, `too-few-points` what is needed. Throws
+ * `RangeError` where a level, window or time of mixing is none.
  */
 export function estimateInitialRate(trace: Trace, options: InitialRateOptions = {}): InitialRate {
   const level = options.level ?? 0.95;
-  if (!(level > 0 && level < 1)) throw new RangeError("A confidence level lies between 0 and 1");
+  if (!(level > 0 && level < 1))
+    throw new RangeError(`level is ${level}; a confidence level lies between 0 and 1`);
+  if (options.window?.some(Number.isNaN))
+    throw new RangeError(`window is ${options.window.join(" to ")}; its ends are two numbers`);
   const prepared = prepareTrace(trace, options);
   if (prepared.status === "too-few-points") return tooFew(prepared);
   if (prepared.status === "unusable") return prepared;

@@ -16,6 +16,10 @@ export interface PreparedTrace {
 /** Readings that even a straight line by hand needs: two parameters and two to spare. */
 const LEAST_READINGS = 4;
 
+/** Of signals up to 1e60 these leave a conversion that is a number; a span outside counts as not known. */
+const SMALLEST_SPAN = 1e-60;
+const LARGEST_SPAN = 1e60;
+
 export function prepareTrace(
   trace: Trace,
   options: Pick<InitialRateOptions, "timeZero" | "signalSpan">,
@@ -28,7 +32,7 @@ export function prepareTrace(
   const got = readings.time.length;
   if (got < LEAST_READINGS) return { status: "too-few-points", needed: LEAST_READINGS, got };
   const span = options.signalSpan;
-  const known = span !== undefined && Number.isFinite(span) && span > 0;
+  const known = span !== undefined && span >= SMALLEST_SPAN && span <= LARGEST_SPAN;
   return {
     status: "prepared",
     readings,

@@ -20,14 +20,15 @@ export type RefusedTrace = Extract<InitialRate, { status: "unusable" }>;
 
 /**
  * Checks a trace and puts it on the clock of mixing. Returns `unusable` with a sentence that names the reading
- * (counted from 1) for lengths that differ, numbers that are not finite and times that do not increase.
- * Readings before `timeZero` are left out and counted.
+ * (counted from 1) for lengths that differ, numbers that are not finite or beyond 1e60, and times that do not
+ * increase by 1e-9 of the trace at least. Readings before `timeZero` are left out and counted.
  */
 export function readingsOf(
   trace: Trace,
   timeZero: number,
 ): ({ readonly status: "usable" } & Readings) | RefusedTrace {
-  if (!Number.isFinite(timeZero)) throw new RangeError("The time of mixing must be a finite number");
+  if (!(Math.abs(timeZero) <= LARGEST_SIZE))
+    throw new RangeError(`timeZero is ${timeZero}; the time of mixing is a finite number`);
   const { time, signal } = trace;
   if (time.length !== signal.length) {
     return refused(
@@ -51,36 +52,73 @@ export function readingsOf(
   return { status: "usable", time: shifted, signal: values, offset, before, timeZero };
 }
 
+/** Squares of signals over squares of times, and what is summed of them, stay within a double (1e308). */
+const LARGEST_SIZE = 1e60;
+const SHORTEST_TRACE = 1e-60;
+/** Of the whole trace: readings closer than this are one for every curve, and fix no slope between them. */
+const SHORTEST_STEP = 1e-9;
+
 function faultOf(time: ArrayLike<number>, signal: ArrayLike<number>): RefusedTrace | null {
   for (let i = 0; i < time.length; i++) {
     const t = time[i] ?? Number.NaN;
     const s = signal[i] ?? Number.NaN;
-    if (!Number.isFinite(t)) {
+    if (!(Math.abs(t) <= LARGEST_SIZE)) {
       return refused(
         "not-finite",
-        `The time of reading ${i + 1} is not a number; correct it or leave it out.`,
+        `The time of reading ${i + 1} is ${asFound(t)}; correct it or leave it out.`,
       );
     }
-    if (!Number.isFinite(s)) {
+    if (!(Math.abs(s) <= LARGEST_SIZE)) {
       return refused(
         "not-finite",
-        `The signal of reading ${i + 1}, at time ${t}, is not a number; correct it or leave the reading out.`,
+        `The signal of reading ${i + 1}, at time ${t}, is ${asFound(s)}; correct it or leave the reading out.`,
       );
     }
-    if (i === 0) continue;
-    const previous = time[i - 1] ?? Number.NaN;
-    if (t > previous) continue;
-    if (time.length > 1 && t === previous && isConstant(time)) {
-      return refused("flat-time", `All ${time.length} readings have the time ${t}; check the time column.`);
-    }
+    const order = i === 0 ? null : orderFault(time, i);
+    if (order) return order;
+  }
+  return spacingFault(time);
+}
+
+function spacingFault(time: ArrayLike<number>): RefusedTrace | null {
+  const span = (time[time.length - 1] ?? 0) - (time[0] ?? 0);
+  if (time.length < 2) return null;
+  if (!(span >= SHORTEST_TRACE)) {
+    return refused(
+      "flat-time",
+      `All ${time.length} readings lie within ${span} of each other in time; check the unit of the time column.`,
+    );
+  }
+  for (let i = 1; i < time.length; i++) {
+    const step = (time[i] ?? Number.NaN) - (time[i - 1] ?? Number.NaN);
+    if (step >= SHORTEST_STEP * span) continue;
     return refused(
       "not-increasing",
-      t === previous
-        ? `Readings ${i} and ${i + 1} both have the time ${t}; average them or leave one out.`
-        : `Reading ${i + 1}, at time ${t}, comes after time ${previous}; put the readings in order of time.`,
+      `Readings ${i} and ${i + 1}, at times ${time[i - 1]} and ${time[i]}, cannot be told apart in a trace of length ${span}; look for a wrong power of ten among the times.`,
     );
   }
   return null;
+}
+
+function asFound(value: number): string {
+  return Number.isFinite(value)
+    ? `${value} and so beyond what is computed with, ${LARGEST_SIZE.toExponential()}`
+    : "not a number";
+}
+
+function orderFault(time: ArrayLike<number>, i: number): RefusedTrace | null {
+  const t = time[i] ?? Number.NaN;
+  const previous = time[i - 1] ?? Number.NaN;
+  if (t > previous) return null;
+  if (t === previous && isConstant(time)) {
+    return refused("flat-time", `All ${time.length} readings have the time ${t}; check the time column.`);
+  }
+  return refused(
+    "not-increasing",
+    t === previous
+      ? `Readings ${i} and ${i + 1} both have the time ${t}; average them or leave one out.`
+      : `Reading ${i + 1}, at time ${t}, comes after time ${previous}; put the readings in order of time.`,
+  );
 }
 
 function isConstant(values: ArrayLike<number>): boolean {
