@@ -22,8 +22,7 @@ export function endConflict(
   const free = stated.freeEnd ?? fitCourse(law, trace, { kind: "free" });
   if (free.status !== "fitted" || free.cornered || free.stopped.includes(true)) return null;
   if (free.noise.degreesOfFreedom === 0) return null;
-  const error = free.standardErrorOf({ theta: [], scales: [], end: 1 });
-  if (error === null || error === "undetermined") return null;
+  if (free.errorOf({ theta: [], scales: [], end: 1 }) === "undetermined") return null;
   const variance = effectiveDeviation(free.noise) ** 2;
   const onReadings = stated.found.residuals.subarray(0, trace.time.length);
   const rise =

@@ -1,17 +1,12 @@
 import { fSurvival } from "kinetics-core/distributions";
-import {
-  type Estimate,
-  estimateOf,
-  exponentialOf,
-  noEstimate,
-  numberInWords,
-} from "kinetics-core/quantities";
+import { exponentialOf, numberInWords } from "kinetics-core/quantities";
 import { decayRatio, decayRatioSlope } from "kinetics-core/smooth-ratios";
 import type { BurstFit, BurstInput, BurstResult } from "./burst";
 import { BURST_LEVEL, LEAST_BURST_READINGS, LEAST_PHASE_DECAYS, READINGS_IN_PHASE } from "./constants";
 import { type CourseLaw, rateParameter } from "./course-law";
 import { freeOrderLaw } from "./course-laws";
 import { type CourseFit, effectiveDeviation, fitCourse, type Gradient } from "./fit-course";
+import { estimateQuantity } from "./quantity";
 import { type ScaledReadings, scaledReadings } from "./scaled-reading";
 
 /** Steady and first slope of a trace with a burst or a lag, or the named reason why none is seen. Never throws on data. */
@@ -118,10 +113,7 @@ function reportOf(fit: CourseFit, scaled: ScaledReadings, level: number): BurstF
   const stronger = Math.exp(before);
   const reach = (firstTime / duration) * decayRatio(-before);
   const freedom = fit.noise.degreesOfFreedom;
-  const estimate = (value: number, gradient: Gradient): Estimate => {
-    const error = fit.standardErrorOf(gradient);
-    return error === "undetermined" ? noEstimate(level) : estimateOf(value, error, freedom, level);
-  };
+  const estimate = (value: number, gradient: Gradient) => estimateQuantity(fit, { value, gradient }, level);
   const logRate = estimate((theta[0] ?? Number.NaN) - Math.log(duration), { theta: [1], scales: [], end: 0 });
   const kind =
     Math.abs(steady + excess) > Math.abs(steady) && (steady + excess) * steady >= 0 ? "burst" : "lag";

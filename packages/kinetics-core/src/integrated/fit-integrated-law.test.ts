@@ -171,6 +171,17 @@ describe("with noise", () => {
     expect(flagOf(free, "end-signal-free")?.severity).toBe("weakens");
   });
 
+  it("what the stated end decides has its degrees of freedom, which are many", () => {
+    const trace = { time: [0, 75, 119, 185], signal: [9.62, 12.1, 13.1, 14.75], order: 1 } as const;
+    const fit = fitted({ ...trace, endSignal: { kind: "known", value: 21.05, standardUncertainty: 0.05 } });
+    expect(fit.degreesOfFreedom).toBeCloseTo(2, 2);
+    const [low, high] = fit.endSignal.interval ?? [0, 0];
+    expect((high - low) / 2 / 0.05).toBeCloseTo(1.96, 2);
+    // k is decided by both.
+    const [least, most] = fit.logRateConstant.interval ?? [0, 0];
+    expect((most - least) / 2 / (fit.logRateConstant.standardError ?? 1)).toBeLessThan(4.3);
+  });
+
   it("an end that the readings contradict is flagged, and blocks from three standard uncertainties on", () => {
     const trace = noisy(1, 0, randomDraws(9).normal, 200);
     const fitAt = (value: number) =>

@@ -1,12 +1,12 @@
 import { dot } from "kinetics-core/linear-algebra";
-import { type Estimate, estimateOf, exponentialOf, type Flag, noEstimate } from "kinetics-core/quantities";
+import { type Estimate, exponentialOf, type Flag, noEstimate } from "kinetics-core/quantities";
 import { LACK_OF_FIT_LEVEL } from "./constants";
 import type { CourseLaw } from "./course-law";
 import { freeOrderLaw, heldOrderLaw, ORDER_BOUNDS } from "./course-laws";
 import { endConflict } from "./end-conflict";
 import type { EndSignal } from "./end-signal";
 import { fitBurst } from "./fit-burst";
-import { type CourseFit, fitCourse, type Gradient } from "./fit-course";
+import { type CourseFit, fitCourse } from "./fit-course";
 import type { IntegratedLawFit, IntegratedLawInput, IntegratedLawResult } from "./integrated-law";
 import { integratedLawFlags } from "./integrated-law-flags";
 import type { LackOfFit } from "./lack-of-fit";
@@ -18,8 +18,8 @@ import {
   logHalfLifeOf,
   logRateConstantOf,
   type OrderCourseState,
-  type Quantity,
 } from "./order-quantities";
+import { estimateQuantity, type Quantity } from "./quantity";
 import { type ScaledReadings, scaledReadings } from "./scaled-reading";
 import { signalRateConstantUnit } from "./signal-rate-constant-unit";
 
@@ -89,7 +89,7 @@ function reportOf(
   // A search that stopped at a bound has found no course of its own.
   const settled = !fit.stopped.includes(true) && !fit.cornered;
   const estimated = (quantity: Quantity | null): Estimate =>
-    quantity === null || !settled ? noEstimate(level) : estimateFor(fit, quantity, freedom, level);
+    quantity === null || !settled ? noEstimate(level) : estimateQuantity(fit, quantity, level);
   const logRateConstant = estimated(logRateConstantOf(state));
   const check = settled ? orderCheck(input.order, fit, scaled) : null;
   const order =
@@ -163,25 +163,8 @@ function stateOf(order: number | "free", scaled: ScaledReadings, { found }: Cour
   };
 }
 
-function estimateFor(
-  fit: CourseFit,
-  { value, gradient }: Quantity,
-  freedom: number,
-  level: number,
-): Estimate {
-  const error = fit.standardErrorOf(heldOut(fit, gradient));
-  if (error === "undetermined") return noEstimate(level);
-  return estimateOf(value, error, freedom, level);
-}
-
-/** A parameter that is not searched for, or that stopped at its bound, does not move. */
-function heldOut({ found }: CourseFit, gradient: Gradient): Gradient {
-  return { ...gradient, theta: gradient.theta.slice(0, found.theta.length) };
-}
-
 function conversionOf(state: OrderCourseState, fit: CourseFit): number | null {
-  const lengthOfStep = fit.standardErrorOf({ theta: [], scales: [1], end: 0 });
-  if (lengthOfStep === "undetermined") return null;
+  if (fit.errorOf({ theta: [], scales: [1], end: 0 }) === "undetermined") return null;
   const left = fit.found.problem.parts[0]?.at(-1) ?? Number.NaN;
   const start = initialSignalOf({ ...state, range: 1, firstSignal: 0 });
   if (start === null) return null;

@@ -1,12 +1,5 @@
 import type { RefusedTrace, Trace } from "kinetics-core/initial-rate";
-import {
-  type Estimate,
-  estimateOf,
-  exponentialOf,
-  type Flag,
-  inARow,
-  noEstimate,
-} from "kinetics-core/quantities";
+import { type Estimate, exponentialOf, type Flag, inARow, noEstimate } from "kinetics-core/quantities";
 import { AUTOCORRELATION_WEAKENS, LACK_OF_FIT_LEVEL } from "./constants";
 import type { CourseLaw } from "./course-law";
 import {
@@ -20,6 +13,7 @@ import type { EndSignal } from "./end-signal";
 import { type CourseFit, fitCourse, type Gradient } from "./fit-course";
 import type { LackOfFit } from "./lack-of-fit";
 import { courseLackOfFit } from "./order-check";
+import { estimateQuantity } from "./quantity";
 import { type ScaledReadings, scaledReadings } from "./scaled-reading";
 
 /**
@@ -112,12 +106,7 @@ function reportOf(
 ): SignalCourseFit {
   const { theta, problem } = fit.found;
   const { noise } = fit;
-  const estimate = (value: number, gradient: Gradient): Estimate => {
-    const error = fit.standardErrorOf(gradient);
-    return error === "undetermined"
-      ? noEstimate(level)
-      : estimateOf(value, error, noise.degreesOfFreedom, level);
-  };
+  const estimate = (value: number, gradient: Gradient) => estimateQuantity(fit, { value, gradient }, level);
   const parameters = Object.fromEntries(
     law.parameters.map(({ name, kind }, j) => {
       if (fit.stopped[j]) return [name, noEstimate(level)];

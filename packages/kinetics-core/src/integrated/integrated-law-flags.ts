@@ -164,7 +164,7 @@ function fitFlags({ report, held, heldOrder, cornered }: FlagContext): Flag[] {
   return flags;
 }
 
-function pointFlags({ report, parameters, before, timeZero }: FlagContext): Flag[] {
+function pointFlags({ report, parameters, before, timeZero, endSignal }: FlagContext): Flag[] {
   const flags: Flag[] = [];
   if (before > 0) {
     flags.push({
@@ -173,13 +173,16 @@ function pointFlags({ report, parameters, before, timeZero }: FlagContext): Flag
       message: `${before === 1 ? "1 reading" : `${before} readings`} before mixing, at time ${numberInWords(timeZero)}, ${before === 1 ? "is" : "are"} not used.`,
     });
   }
-  if (report.points < parameters + SPARE_POINTS) {
+  // An end with an uncertainty of its own is an unknown and an observation.
+  const isObserved = endSignal?.kind === "known" && endSignal.standardUncertainty > 0;
+  const needed = parameters + SPARE_POINTS - (isObserved ? 1 : 0);
+  if (report.points < needed) {
     flags.push({
       code: "few-points",
       severity: "blocks",
       message:
-        `${report.points} readings for ${parameters} unknowns leave ${report.degreesOfFreedom > 0 ? "hardly anything" : "nothing"} ` +
-        `to judge the fit by; take at least ${parameters + SPARE_POINTS}.`,
+        `${report.points} readings leave ${report.degreesOfFreedom > 0 ? "hardly anything" : "nothing"} to judge a fit of this kind by; ` +
+        `take at least ${needed}.`,
     });
   } else if (report.effectivePoints < EFFECTIVE_POINTS_WEAKEN) {
     flags.push({

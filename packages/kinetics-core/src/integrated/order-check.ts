@@ -27,12 +27,12 @@ export function orderCheck(
   if (freed === null || freed.noise.degreesOfFreedom === 0) return null;
   const { degreesOfFreedom } = freed.noise;
   const error = freed.stopped.includes(true)
-    ? null
-    : freed.standardErrorOf({ theta: [0, 1], scales: [], end: 0 });
+    ? "undetermined"
+    : freed.errorOf({ theta: [0, 1], scales: [], end: 0 });
   const rise = Math.max(fit.found.residualSquares - freed.found.residualSquares, 0);
   return {
-    standardError: typeof error === "number" ? error : null,
-    degreesOfFreedom,
+    standardError: error === "undetermined" ? null : error.standardError,
+    degreesOfFreedom: error === "undetermined" ? degreesOfFreedom : error.degreesOfFreedom,
     shift: order === "free" ? 0 : (freed.found.theta[1] ?? Number.NaN) - order,
     pValue: fSurvival(rise / effectiveDeviation(freed.noise) ** 2, 1, degreesOfFreedom),
   };

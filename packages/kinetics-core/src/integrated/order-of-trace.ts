@@ -1,4 +1,4 @@
-import { fSurvival, studentTFactor } from "kinetics-core/distributions";
+import { fSurvival } from "kinetics-core/distributions";
 import type { Trace } from "kinetics-core/initial-rate";
 import { type Estimate, type Flag, inARow, numberInWords } from "kinetics-core/quantities";
 import { CONFLICT_BLOCKS, LACK_OF_FIT_LEVEL, ORDER_HALF_WIDTH_WEAKENS } from "./constants";
@@ -78,7 +78,7 @@ export function orderOfTrace(input: OrderOfTraceInput): OrderOfTrace {
       message: `None of the orders ${inARow(orders.map(numberInWords))} could be fitted to this trace; check its time and signal columns.`,
     };
   }
-  const verdict = verdictOf(report, candidates, level);
+  const verdict = verdictOf(report, candidates);
   return {
     status: "read",
     ...verdict,
@@ -113,9 +113,8 @@ function candidateOf(
 function verdictOf(
   report: IntegratedLawFit,
   candidates: readonly OrderCandidate[],
-  level: number,
 ): { readonly reading: OrderReading; readonly order: number | null; readonly reason: string } {
-  const { lackOfFit, endConflict, orderStandardError, degreesOfFreedom } = report;
+  const { lackOfFit, endConflict } = report;
   const open = candidates.filter(({ excluded }) => !excluded).map(({ order }) => order);
   const none = (reason: string) => ({ reading: "none", order: null, reason }) as const;
   if (endConflict !== null && Math.abs(endConflict) >= CONFLICT_BLOCKS)
@@ -133,10 +132,8 @@ function verdictOf(
     return consistent(
       `Orders ${names} are all consistent with this trace; follow it further or state the end signal.`,
     );
-  const halfWidth =
-    orderStandardError === null
-      ? Number.POSITIVE_INFINITY
-      : orderStandardError * studentTFactor(level, degreesOfFreedom);
+  const { interval } = report.order;
+  const halfWidth = interval === null ? Number.POSITIVE_INFINITY : (interval[1] - interval[0]) / 2;
   if (!(halfWidth <= ORDER_HALF_WIDTH_WEAKENS))
     return consistent(
       `The trace is consistent with order ${names}, yet tells its order too poorly to show it.`,

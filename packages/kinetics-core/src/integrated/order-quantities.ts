@@ -1,13 +1,7 @@
 import { decayRatio, decayRatioSlope } from "kinetics-core/smooth-ratios";
 import { coursePoint } from "./course-point";
-import type { Gradient } from "./fit-course";
 import { orderCourse } from "./order-course";
-
-/** A quantity of a fitted course and how it moves with the fitted parameters. */
-export interface Quantity {
-  readonly value: number;
-  readonly gradient: Gradient;
-}
+import type { Quantity } from "./quantity";
 
 /** A fitted course of one order, and the way back from its scales. */
 export interface OrderCourseState {
