@@ -26,7 +26,10 @@ export function cellIssues(found: Gathered, places: CellPlaces, corrections: Cor
     const silent = cells.filter((cell) => cell.reading.kind === "no-reading");
     if (silent.length > 0) issues.push(noReading(silent, countOf("no-reading"), places));
 
-    const bad = cells.filter((cell) => cell.reading.kind !== "no-reading");
+    const doubtful = cells.filter((cell) => cell.reading.kind === "flagged");
+    if (doubtful.length > 0) issues.push(withFlags(doubtful, countOf("flagged"), places));
+
+    const bad = cells.filter(({ reading: { kind } }) => kind !== "no-reading" && kind !== "flagged");
     const badCount = countOf("text") + countOf("out-of-range") + countOf("ambiguous");
     if (bad.length === 0) continue;
     const isTime = column.role === "time";
@@ -190,6 +193,29 @@ function allLeftOut(
     place: places.nameOf(column.index),
     message: `${counted(count, "cell")} that cannot be read ${count === 1 ? "is" : "are"} left out: ${samples(bad, count)}. The raw file keeps ${count === 1 ? "it" : "them"}.`,
     repairs: [],
+  };
+}
+
+function withFlags(cells: readonly CellFinding[], count: number, places: CellPlaces): Issue {
+  const first = cells[0];
+  const column = first?.column ?? 0;
+  return {
+    code: "flagged-cells",
+    severity: "blocks",
+    line: first?.line ?? null,
+    column,
+    place: `line ${first?.line}, ${places.nameOf(column)}`,
+    message: `${counted(count, "cell")} ${count === 1 ? "carries" : "carry"} a mark beside the number: ${samples(cells, count)}. Whoever set it doubted the reading, or could not measure it.`,
+    repairs: [
+      {
+        label: count === 1 ? "Leave the cell out" : "Leave these cells out",
+        change: { kind: "set", values: { flaggedCells: "left-out" } },
+      },
+      {
+        label: count === 1 ? "Read the number" : "Read the numbers",
+        change: { kind: "set", values: { flaggedCells: "read" } },
+      },
+    ],
   };
 }
 

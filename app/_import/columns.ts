@@ -201,6 +201,7 @@ function sampleOf(frame: Frame, format: NumberFormat, index: number): ColumnSamp
     const reading = readCell(cell, format);
     if (reading.kind === "number") numbers.push(reading.value);
     else if (reading.kind === "ambiguous") numbers.push(reading.asDecimal);
+    else if (reading.kind === "flagged") numbers.push(reading.asNumber);
     else if (reading.kind === "empty") empty += 1;
     else if (reading.kind === "text") texts += 1;
     if (cell !== "") {

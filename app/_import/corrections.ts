@@ -45,6 +45,7 @@ export const corrections = z.object({
   temperatureUnit: z.enum(["degC", "K"]).optional(),
   cells: z.array(cellCorrection).max(2000).optional(),
   unreadableCells: z.literal("left-out").optional(),
+  flaggedCells: z.enum(["read", "left-out"]).optional(),
   linesLeftOut: z.array(line).max(2000).optional(),
   repeatedTimes: z.enum(["first", "mean"]).optional(),
   timeOrder: z.literal("sorted").optional(),

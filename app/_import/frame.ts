@@ -96,7 +96,7 @@ function guessStart(
   const isWords = (row: Row) => isUnitRow(row) || isRecipeRow(row, species);
   const isNumber = (cell: string) => {
     const { kind } = readCell(cell, format);
-    return kind === "number" || kind === "ambiguous" || kind === "out-of-range";
+    return kind === "number" || kind === "ambiguous" || kind === "flagged" || kind === "out-of-range";
   };
   const numeric = sample.map((row) => {
     const words = isWords(row);
@@ -133,7 +133,7 @@ function leadingColumn(numeric: readonly (readonly boolean[])[]): number | null 
   const counts: number[] = [];
   for (const row of numeric)
     for (const [j, flag] of row.entries()) counts[j] = (counts[j] ?? 0) + (flag ? 1 : 0);
-  const most = Math.max(0, ...counts.map((count) => count ?? 0));
+  const most = counts.reduce((highest, count) => Math.max(highest, count ?? 0), 0);
   if (most === 0) return null;
   return counts.findIndex((count) => (count ?? 0) >= 0.9 * most);
 }

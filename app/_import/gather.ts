@@ -145,7 +145,11 @@ class Pass {
       if (reading.kind === "number") this.values[column] = reading.value;
       else this.oddities[column] = reading;
       // A line whose words are all 'no reading' is still a line of data.
-      isData ||= reading.kind === "number" || reading.kind === "ambiguous" || reading.kind === "no-reading";
+      isData ||=
+        reading.kind === "number" ||
+        reading.kind === "ambiguous" ||
+        reading.kind === "flagged" ||
+        reading.kind === "no-reading";
     }
     return isData;
   }
@@ -163,7 +167,11 @@ class Pass {
     const cell = row.cells[column] ?? "";
     const form = this.options.clocks[column];
     const clock = form ? readClock(cell, form) : null;
-    return clock === null ? readCell(cell, this.options.numberFormat) : { kind: "number", value: clock };
+    if (clock !== null) return { kind: "number", value: clock };
+    const reading = readCell(cell, this.options.numberFormat);
+    const { flaggedCells } = this.options.corrections;
+    if (reading.kind !== "flagged" || flaggedCells === undefined) return reading;
+    return flaggedCells === "read" ? { kind: "number", value: reading.asNumber } : { kind: "empty" };
   }
 
   private take(row: Row): void {

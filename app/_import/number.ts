@@ -16,6 +16,8 @@ export type CellReading =
   | { readonly kind: "no-reading" }
   /** One mark and three digits where the mark is not the decimal mark: 1 234 or 1.234. */
   | { readonly kind: "ambiguous"; readonly asDecimal: number; readonly asGrouped: number }
+  /** A number with a mark of doubt: 0.214*, <0.4, 0.31 (sat). Never read without being asked about. */
+  | { readonly kind: "flagged"; readonly asNumber: number }
   /** Larger than any reading, or too small for a double. */
   | { readonly kind: "out-of-range" }
   | { readonly kind: "text" };
@@ -55,7 +57,18 @@ export function readCell(cell: string, format: NumberFormat): CellReading {
     return { kind: "ambiguous", asDecimal, asGrouped };
   }
   if (literal !== null && PLAIN.test(literal)) return fromLiteral(sign + literal);
-  return NO_READING.test(trimmed) ? { kind: "no-reading" } : { kind: "text" };
+  return NO_READING.test(trimmed) ? { kind: "no-reading" } : (flagged(trimmed, format) ?? { kind: "text" });
+}
+
+/** Below or above a limit, or a mark behind a blank, in brackets, or of signs that belong to no number. */
+const FLAGGED = /^([<>≤≥~]\s*)?(\S+?)(\s*(?:[*†‡#!?]{1,3}|\([^()]{1,16}\)|\[[^[\]]{1,16}\])|\s+[A-Z]{1,4})?$/;
+
+function flagged(text: string, format: NumberFormat): CellReading | null {
+  if (text.length > 60) return null;
+  const [, limit, inner = "", mark] = FLAGGED.exec(text) ?? [];
+  if (limit === undefined && mark === undefined) return null;
+  const reading = readCell(inner, format);
+  return reading.kind === "number" ? { kind: "flagged", asNumber: reading.value } : null;
 }
 
 /** The number in JavaScript's own notation, a lone ambiguous mark, or null where the marks make no number. */

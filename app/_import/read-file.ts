@@ -305,15 +305,32 @@ function columnIssues(guessed: ColumnGuess): Issue[] {
 }
 
 function cellsCorrected(corrections: Corrections, nameOf: (column: number) => string): Issue[] {
-  return (corrections.cells ?? []).map((cell) => ({
-    code: "cell-corrected",
-    severity: "settled",
-    line: cell.line,
-    column: cell.column,
-    place: `line ${cell.line}, ${nameOf(cell.column)}`,
-    message: `${cell.as === null ? "Left out" : `Read as ${cell.as}`}, by hand; the raw file keeps what stands there.`,
-    repairs: [{ label: "Undo", change: { kind: "forget-cell", line: cell.line, column: cell.column } }],
-  }));
+  const flags: Issue[] =
+    corrections.flaggedCells === undefined
+      ? []
+      : [
+          {
+            code: "flags-settled",
+            severity: "settled",
+            line: null,
+            column: null,
+            place: "file",
+            message: `Cells with a mark beside the number are ${corrections.flaggedCells === "read" ? "read without it" : "left out"}, by hand; the raw file keeps them.`,
+            repairs: [],
+          },
+        ];
+  const cells = (corrections.cells ?? []).map(
+    (cell): Issue => ({
+      code: "cell-corrected",
+      severity: "settled",
+      line: cell.line,
+      column: cell.column,
+      place: `line ${cell.line}, ${nameOf(cell.column)}`,
+      message: `${cell.as === null ? "Left out" : `Read as ${cell.as}`}, by hand; the raw file keeps what stands there.`,
+      repairs: [{ label: "Undo", change: { kind: "forget-cell", line: cell.line, column: cell.column } }],
+    }),
+  );
+  return [...flags, ...cells];
 }
 
 function preambleIssues(frame: Frame, sample: readonly Row[], recipes: readonly RecipeLine[]): Issue[] {
