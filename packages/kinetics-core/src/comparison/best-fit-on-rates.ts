@@ -63,6 +63,11 @@ function fitFrom(
   start: ArrayLike<number>,
   runs: readonly CandidateRun[],
 ): RateFitResult {
+  if (problem.parameters > 0 && isFlat(problem, start))
+    return {
+      message:
+        "The runs do not differ in what its parameters depend on, so nothing can be fitted. Vary a concentration, or hold the parameters.",
+    };
   const fit = problem.parameters === 0 ? withoutParameters(problem) : fitNonlinear(problem, start);
   if (fit.status !== "converged") return { message: fit.message };
   const level = problem.level(fit.parameters);
@@ -77,6 +82,13 @@ function fitFrom(
     unscaledCovariance: withLogConstant(fit.unscaledCovariance, level.slopes, weight),
     held: fit.held,
   };
+}
+
+/** No parameter moves any run, as where all recipes are one. */
+function isFlat(problem: RateProblem, start: ArrayLike<number>): boolean {
+  const columns = Array.from({ length: problem.parameters }, () => new Float64Array(problem.residuals));
+  const hasValue = problem.evaluate(Float64Array.from(start), new Float64Array(problem.residuals), columns);
+  return hasValue && columns.every((column) => column.every((value) => value === 0));
 }
 
 /** Nothing to search for: ln k is a mean. */

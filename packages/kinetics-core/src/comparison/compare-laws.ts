@@ -87,7 +87,9 @@ export interface JudgedLaw {
   readonly aicc: number | null;
   readonly deltaAicc: number | null;
   readonly f: { readonly fStatistic: number; readonly pValue: number } | null;
-  /** `pValue` times the number of compared laws with more parameters, where these are more than one; at most 1. */
+  /** Compared laws with more parameters. */
+  readonly richer: number;
+  /** `pValue` times `richer` where that is above 1; at most 1. */
   readonly familyPValue: number | null;
 }
 
@@ -172,6 +174,7 @@ function judge(fitted: readonly FittedCandidate[], runs: number): readonly Judge
       aicc,
       deltaAicc: compared ? aicc - (criteria[best] ?? 0) : null,
       f,
+      richer,
       familyPValue: f === null ? null : Math.min(1, f.pValue * Math.max(1, richer)),
     };
   });

@@ -68,12 +68,13 @@ function speciesOf(runs: readonly CandidateRun[]): readonly string[] {
   return [...new Set(runs.flatMap((run) => Object.keys(run.concentrations)))].sort();
 }
 
-/** Refitted without each run in turn, weights kept. */
+/** Refitted without each run in turn, weights kept; null where the others leave no freedom to fit with. */
 function leaveOneOut(
   equation: RateEquation,
   runs: readonly CandidateRun[],
   fit: RateFit,
 ): readonly (number | null)[] {
+  if (runs.length - 1 <= fit.theta.length + 1) return runs.map(() => null);
   return runs.map((run, j) => {
     const others = runs.filter((_, i) => i !== j);
     const without = bestFitOnRates(equation, others, fit.theta);

@@ -7,7 +7,9 @@ export type Reason =
       readonly kind: "fits-worse";
       readonly than: string;
       readonly fStatistic: number;
+      /** Times the number of richer laws. */
       readonly pValue: number;
+      readonly richer: number;
       readonly deltaAicc: number;
     }
   | { readonly kind: "misses-replicates"; readonly fStatistic: number; readonly pValue: number }
@@ -48,7 +50,7 @@ export function readingsOf(judged: readonly JudgedLaw[]): readonly ReadLaw[] {
 }
 
 function reasonsAgainst(
-  { candidate, deltaAicc, f, familyPValue }: JudgedLaw,
+  { candidate, deltaAicc, f, richer, familyPValue }: JudgedLaw,
   best: JudgedLaw | undefined,
 ): Reason[] {
   const reasons: Reason[] = [];
@@ -65,6 +67,7 @@ function reasonsAgainst(
       than: best.candidate.law,
       fStatistic: f.fStatistic,
       pValue: familyPValue,
+      richer,
       deltaAicc,
     });
   const { lackOfFit } = candidate;

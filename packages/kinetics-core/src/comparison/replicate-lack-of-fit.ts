@@ -1,10 +1,10 @@
 import { fSurvival } from "kinetics-core/distributions";
 import type { LackOfFitTest } from "./candidate";
-import { SAME_CONCENTRATION } from "./constants";
+import { EXACT_RELATIVE, SAME_CONCENTRATION } from "./constants";
 
 /**
- * F-test of a law against the scatter of repeated recipes, with the common weights. Null without repeats, or with as
- * many parameters as recipes. `recipes`: concentrations of every run in one order of species.
+ * F-test of a law against the scatter of repeated recipes, with the common weights. Null without repeats, where repeats
+ * agree to the last digit, or with as many parameters as recipes. `recipes`: concentrations of every run in one order of species.
  */
 export function replicateLackOfFit(
   recipes: readonly (readonly number[])[],
@@ -18,14 +18,18 @@ export function replicateLackOfFit(
   if (pureFreedom < 1 || lackFreedom < 1) return null;
   let pure = 0;
   let total = 0;
+  let weightOfAll = 0;
   for (const members of groups) {
     const weight = members.reduce((sum, j) => sum + (weights[j] ?? 0), 0);
     const centre = members.reduce((sum, j) => sum + (weights[j] ?? 0) * (residuals[j] ?? 0), 0) / weight;
     for (const j of members) {
       pure += (weights[j] ?? 0) * ((residuals[j] ?? 0) - centre) ** 2;
       total += (weights[j] ?? 0) * (residuals[j] ?? 0) ** 2;
+      weightOfAll += weights[j] ?? 0;
     }
   }
+  // Rates entered twice differ by nothing: they are one reading, and no replicates.
+  if (!(pure > EXACT_RELATIVE ** 2 * weightOfAll)) return null;
   const fStatistic = Math.max(0, total - pure) / lackFreedom / (pure / pureFreedom);
   if (!Number.isFinite(fStatistic)) return null;
   return {

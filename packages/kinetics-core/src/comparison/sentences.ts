@@ -27,9 +27,9 @@ const IN_WORDS = {
 function reasonInWords(reason: Reason): string {
   switch (reason.kind) {
     case "fits-worse":
-      return `it fits the runs worse than ${reason.than} (F = ${statistic(reason.fStatistic)}, ${pInWords(reason.pValue)}, AICc ${statistic(reason.deltaAicc)} higher)`;
+      return `it fits the runs worse than ${reason.than} (${fInWords(reason.fStatistic)}, ${pInWords(reason.pValue)}${countedOver(reason.richer)}, AICc ${statistic(reason.deltaAicc)} higher)`;
     case "misses-replicates":
-      return `it misses the runs by more than replicates differ among themselves (F = ${statistic(reason.fStatistic)}, ${pInWords(reason.pValue)})`;
+      return `it misses the runs by more than replicates differ among themselves (${fInWords(reason.fStatistic)}, ${pInWords(reason.pValue)})`;
     case "impossible-parameter":
       return `the whole interval of ${reason.parameter} lies beyond what it can be`;
     case "adds-nothing":
@@ -113,6 +113,15 @@ function boundFlags(verdict: Verdict, laws: readonly ComparedLaw[]): readonly Fl
 
 function statistic(value: number): string {
   return value >= 1000 ? "over 1000" : value.toFixed(1);
+}
+
+function fInWords(value: number): string {
+  return value >= 1000 ? "F over 1000" : `F = ${statistic(value)}`;
+}
+
+/** The best of several richer laws fits better by chance more often than one. */
+function countedOver(richer: number): string {
+  return richer > 1 ? ` counted over ${richer} laws with more parameters` : "";
 }
 
 function pInWords(pValue: number): string {

@@ -130,6 +130,19 @@ describe("the parts of a report", () => {
     expect(fit.lackOfFit?.pValue).toBeGreaterThan(0.01);
   });
 
+  it("rates entered twice are no replicates", () => {
+    const levels = [0.01, 0.01, 0.03, 0.03, 0.1, 0.1, 0.3, 0.3];
+    const twice = law({
+      species: ["S"],
+      runs: levels.map((c, j) => ({
+        label: labelOf(j),
+        concentrations: { S: c },
+        rate: c * (1 + 0.02 * Math.cos(Math.floor(j / 2))),
+      })),
+    });
+    expect(twice.lackOfFit).toBeNull();
+  });
+
   it("a curved law is caught by replicates", () => {
     const levels = [0.01, 0.01, 0.03, 0.03, 0.1, 0.1, 0.3, 0.3];
     const saturating = law({
