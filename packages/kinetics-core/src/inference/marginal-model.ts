@@ -136,23 +136,27 @@ export function runScaleOf(parts: readonly RunParts[], fit: MarginalFit, between
   return expected > LEAST_FREEDOM_LEFT ? squares / expected : 1;
 }
 
-/** C (Σ S/σ² + priors + s² Σ u uᵀ/(h + variance)) C = C + (s² − 1) Σ (C u)(C u)ᵀ/(h + variance). */
-export function scaledCovariance(
+/**
+ * C (Σ S/σ² + priors + Σ w² v u uᵀ) C with w = 1/(h + f), the weights of the fit, and v what the run's ln k varies by:
+ * C itself where v = h + f.
+ */
+export function sandwichedCovariance(
   parts: readonly RunParts[],
   fit: MarginalFit,
-  betweenRunVariance: number,
-  runScale: number,
+  weightVariance: number,
+  varianceOf: (ownVariance: number) => number,
 ): Float64Array {
-  if (runScale === 1) return fit.covariance;
   const p = fit.step.length;
-  const scaled = fit.covariance.slice();
+  const covariance = fit.covariance.slice();
   for (const { ownVariance, direction } of parts) {
     if (ownVariance === null) continue;
-    const excess = (runScale - 1) / (ownVariance + betweenRunVariance);
+    const weight = 1 / (ownVariance + weightVariance);
+    const excess = weight * (weight * varianceOf(ownVariance) - 1);
+    if (excess === 0) continue;
     const effect = timesVector(fit.covariance, direction, p);
     for (let i = 0; i < p; i++)
       for (let j = 0; j < p; j++)
-        scaled[i * p + j] = (scaled[i * p + j] ?? 0) + excess * (effect[i] ?? 0) * (effect[j] ?? 0);
+        covariance[i * p + j] = (covariance[i * p + j] ?? 0) + excess * (effect[i] ?? 0) * (effect[j] ?? 0);
   }
-  return scaled;
+  return covariance;
 }

@@ -66,15 +66,18 @@ describe("run scatter in ln k, against V written out and inverted (NumPy, SciPy)
     });
   });
 
-  it("weighs by f and scales by s² as it says, the matrices written out", () => {
+  it("weighs uneven runs by f and lets them vary by v as it says, the matrices written out", () => {
     const { floored } = fixture;
-    expectClose(result.weightVariance, floored.weightVariance, 6);
-    expectClose(result.runScale, floored.runScale, 5);
+    const uneven = determined(runs, priors, { undetermined: 2, noiseVariances: floored.noiseVariances });
+    expectClose(uneven.betweenRunVariance, floored.betweenRunVariance, 5);
+    expectClose(uneven.weightVariance, floored.weightVariance, 11);
+    expect(uneven.weightVariance).toBeGreaterThan(2 * uneven.betweenRunVariance);
+    expectClose(uneven.runScale, floored.runScale, 9);
     floored.step.forEach((value, i) => {
-      expectClose(result.step[i], value, 5);
+      expectClose(uneven.step[i], value, 9);
     });
     floored.covariance.flat().forEach((value, i) => {
-      expectClose(result.covariance.flat()[i], value, 5);
+      expectClose(uneven.covariance.flat()[i], value, 6);
     });
   });
 
