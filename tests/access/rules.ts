@@ -41,6 +41,7 @@ export const rules: Readonly<Record<string, Rule>> = {
   "page /studies/[studyId]/set-up": group(),
   "page /studies/[studyId]/runs": group(),
   "page /studies/[studyId]/runs/import": group(),
+  "page /studies/[studyId]/runs/mixing": group(),
   "page /studies/[studyId]/rates": group(),
   "page /studies/[studyId]/rate-law": group(),
   "page /studies/[studyId]/share": group(),
@@ -103,6 +104,44 @@ export const rules: Readonly<Record<string, Rule>> = {
     base: revision,
     rows: [{ key: runId, runId, cells: { remark: "typed" } }],
   })),
+  "action app/(bench)/studies/[studyId]/runs/mixing/actions.ts#keepVolumes": group(
+    ({ studyId, revision, runId }) => ({
+      studyId,
+      base: revision,
+      rows: [{ key: runId, runId, cells: { remark: "typed" } }],
+    }),
+  ),
+  "action app/(bench)/studies/[studyId]/runs/mixing/actions.ts#keepStock": group(({ studyId, revision }) => ({
+    studyId,
+    base: revision,
+    stockId: null,
+    form: {
+      symbol: "",
+      name: "water",
+      unit: "mmol/L",
+      contents: {},
+      fromStockId: "",
+      taken: "",
+      mark: "",
+      lot: "",
+      madeOn: "",
+      howKnown: "",
+    },
+  })),
+  "action app/(bench)/studies/[studyId]/runs/mixing/actions.ts#removeStock": group(
+    ({ studyId, revision }) => ({
+      studyId,
+      base: revision,
+      stockId: "no-such-stock",
+    }),
+  ),
+  "action app/(bench)/studies/[studyId]/runs/mixing/actions.ts#keepDispensing": group(
+    ({ studyId, revision }) => ({
+      studyId,
+      base: revision,
+      form: { unit: "mL", mark: "3", upTo: "", absolute: "", percent: "0.5" },
+    }),
+  ),
   "action app/(bench)/studies/[studyId]/runs/import/actions.ts#storeTraces": group(
     ({ studyId, revision, uploadId }) => ({
       studyId,

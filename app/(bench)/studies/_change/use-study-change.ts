@@ -99,6 +99,8 @@ export function useStudyChange(studyId: string, { latestOnly = false }: { latest
   useEffect(() => {
     function onKeyDown(event: KeyboardEvent) {
       if (!(event.ctrlKey || event.metaKey) || event.altKey || event.key.toLowerCase() !== "z") return;
+      // A grid has taken it, and undoes its own step.
+      if (event.defaultPrevented) return;
       if (
         event.target instanceof HTMLElement &&
         event.target.closest("input, textarea, select, [role=dialog]")

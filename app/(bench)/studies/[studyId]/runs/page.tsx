@@ -58,18 +58,21 @@ export default async function RunsPage({ params, searchParams }: Props) {
       showsKeys={edits && canEdit}
     />
   );
-  const actions = canEdit && (
+  const actions = canEdit ? (
     <>
       {edits ? (
         !empty && <ButtonLink href={here}>Back to the run sheet</ButtonLink>
       ) : (
         <ButtonLink href={`${here}?edit`}>Edit values</ButtonLink>
       )}
+      <ButtonLink href={`${here}/mixing`}>Mixing table</ButtonLink>
       <ButtonLink href={`${here}/import#paste`}>Paste columns</ButtonLink>
       <ButtonLink kind="primary" href={`${here}/import`}>
         Add traces
       </ButtonLink>
     </>
+  ) : (
+    <ButtonLink href={`${here}/mixing`}>Mixing table</ButtonLink>
   );
   if (edits) {
     return (

@@ -6,6 +6,7 @@ import type { GridColumn, GridProblem, GridRow } from "@/app/_ui/grid/grid-shape
 import { Prose } from "@/app/_ui/prose";
 import { RunMark } from "@/app/_ui/run-mark";
 import { Unit } from "@/app/_ui/unit";
+import { useStudyChange } from "../../../_change/use-study-change";
 import { keepRows } from "../actions";
 import { draftFaults, isBlank, type KeptRowTexts } from "../draft-rows";
 import type { RunGridColumn, RunGridRow, RunGridView } from "../run-grid.view";
@@ -31,7 +32,13 @@ export function RunGrid({
     rows: view.rows,
     faultsOf: (cells) => readCells(cells, null, view.shape).faults,
   };
-  const sheet = useRunDraft({ studyId, revision, kept, keep: keepRows });
+  const sheet = useRunDraft({
+    studyId,
+    revision,
+    kept,
+    keep: keepRows,
+    change: useStudyChange(studyId, { latestOnly: true }),
+  });
   const faults = draftFaults(sheet.draft, kept);
   const keptById = new Map(view.rows.map((row) => [row.runId, row]));
   const rows = sheet.order.flatMap(({ key, runId }) => {

@@ -4,7 +4,7 @@ import { useRouter } from "next/navigation";
 import { useRef, useState } from "react";
 import type { ActionResult } from "@/app/_server/action-result";
 import type { GridStep } from "@/app/_ui/grid/grid-shape";
-import { useStudyChange } from "../../../_change/use-study-change";
+import type { useStudyChange } from "../../../_change/use-study-change";
 import {
   adoptRows,
   applyStep,
@@ -56,14 +56,17 @@ export function useRunDraft({
   revision,
   kept,
   keep,
+  change,
 }: {
   studyId: string;
   revision: number;
   kept: KeptRowTexts;
   keep: KeepRows;
+  /** The history of changes that the page has made. */
+  change: ReturnType<typeof useStudyChange>;
 }) {
   const router = useRouter();
-  const { announce, refuse, undo, redo, isOpen } = useStudyChange(studyId, { latestOnly: true });
+  const { announce, refuse, undo, redo, isOpen } = change;
   const [draft, setDraft] = useState<Draft>(emptyDraft);
   const [said, say] = useState("");
   const [conflict, setConflict] = useState<RowConflict | null>(null);
