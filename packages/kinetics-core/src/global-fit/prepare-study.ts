@@ -8,6 +8,8 @@ import { type PreparedRun, type PreparedStudy, spacingOf } from "./prepared-stud
 
 /** A run with fewer readings has nothing left when its offset and its own ln k are taken out. */
 const FEWEST_POINTS = 4;
+/** Relative to the value: a scale that is known no better is not known, and its square must stay a number. */
+const LARGEST_SCALE_UNCERTAINTY = 1e6;
 
 export type Preparation =
   | { readonly status: "prepared"; readonly study: PreparedStudy }
@@ -73,6 +75,12 @@ function inputFault(input: GlobalFitInput): GlobalFitFailure | null {
       "bad-input",
       "signalPerConcentration.standardUncertainty",
       `The standard uncertainty of the signal per concentration is ${standardUncertainty}; a number from 0 on is needed, 0 if it is exact.`,
+    );
+  if (standardUncertainty > LARGEST_SCALE_UNCERTAINTY * Math.abs(value))
+    return failure(
+      "bad-input",
+      "signalPerConcentration.standardUncertainty",
+      `The signal per concentration is ${value} with a standard uncertainty of ${standardUncertainty}, more than a million times itself; look for a wrong power of ten.`,
     );
   if (!(scaleDeviation >= 0 && Number.isFinite(scaleDeviation)))
     return failure(
