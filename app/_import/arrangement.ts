@@ -101,6 +101,47 @@ export function blocksInOne(
   };
 }
 
+/**
+ * Where the first of several blocks begins, told from the first rows of the file; null where they show one table. The
+ * longest stretch of numbers is not asked for: it may be the third block, and those above it are no preamble.
+ */
+export function firstBlock(
+  rows: readonly Row[],
+  format: NumberFormat,
+): { readonly firstDataLine: number; readonly headerLine: number | null } | null {
+  const stretches: { start: number; first: number; last: number; count: number }[] = [];
+  let isOpen = false;
+  for (const [i, { cells }] of rows.entries()) {
+    const filled = cells.filter((cell) => cell !== "");
+    const value =
+      filled.length >= 2 && filled.every((cell) => isNumber(cell, format)) ? leadOf(filled, format) : null;
+    if (value === null) isOpen = false;
+    else if (isOpen) {
+      const stretch = stretches.at(-1);
+      if (stretch !== undefined) {
+        stretch.last = value;
+        stretch.count += 1;
+      }
+    } else {
+      stretches.push({ start: i, first: value, last: value, count: 1 });
+      isOpen = true;
+    }
+  }
+  const long = stretches.filter(({ count }) => count >= 2);
+  const [first] = long;
+  const restarts = long.slice(1).every((one, i) => one.first < (long[i]?.last ?? Number.NEGATIVE_INFINITY));
+  if (first === undefined || long.length < 2 || !restarts) return null;
+  const header = rows
+    .slice(0, first.start)
+    .findLast(({ cells }) => cells.filter((cell) => cell !== "").length > 1);
+  return { firstDataLine: rows[first.start]?.line ?? 1, headerLine: header?.line ?? null };
+}
+
+function leadOf(filled: readonly string[], format: NumberFormat): number | null {
+  const reading = readCell(filled[0] ?? "", format);
+  return reading.kind === "number" ? reading.value : null;
+}
+
 function blocksOf(
   text: string,
   rowFormat: RowFormat,

@@ -1,5 +1,5 @@
 import { POINTS_PER_STUDY } from "@/db/limits";
-import { type Arranged, blocksInOne, turnedTable } from "./arrangement";
+import { type Arranged, blocksInOne, firstBlock, turnedTable } from "./arrangement";
 import { cellIssues } from "./cell-issues";
 import { clockColumns } from "./clock-columns";
 import { type ColumnGuess, guessColumns } from "./columns";
@@ -12,6 +12,7 @@ import type { Gathered } from "./gathered";
 import { brokenQuotes, lineIssues } from "./line-issues";
 import type { DecimalMark, NumberFormat } from "./number";
 import type { FileReading, Guess, Issue, IssueSeverity, Reading, StudyContext } from "./reading";
+import { cellsCorrected, columnIssues, preambleIssues } from "./reading-notes";
 import { type RecipeLine, readRecipeRow, speciesKey } from "./recipes";
 import { firstRows, type Row, type RowFormat, SEPARATOR_NAMES, type Separator } from "./rows";
 import { guessSeparator } from "./separator";
@@ -20,7 +21,7 @@ import { tableText } from "./table-text";
 import { signalUnitOfTable, timeUnitOfTable } from "./table-units";
 import { traceChecks } from "./trace-checks";
 import { buildTraces } from "./traces";
-import { columnName, joined, lines, quoted } from "./words";
+import { columnName, joined, quoted } from "./words";
 
 /**
  * A file or a paste into traces of runs. Reading is a pure function of the bytes, the study and the corrections, so
@@ -68,6 +69,11 @@ export function readTable(table: TableTextReading, context: StudyContext, correc
   if (corrections.arrangement === "turned" || (isOpen && sample.length < SAMPLE_ROWS)) {
     const turned = turnedTable(sample, numberFormat, corrections.arrangement === "turned");
     if (turned !== null) return rearranged(turned);
+  }
+  const block = isOpen ? firstBlock(sample, numberFormat) : null;
+  if (block !== null) {
+    const blocks = blocksInOne(text, rowFormat, numberFormat, { ...block, forced: false });
+    if (blocks !== null) return rearranged(blocks);
   }
   const frame = findFrame(sample, numberFormat, context.species, corrections);
   if (frame === null) return refused(sample);
@@ -278,82 +284,6 @@ function speciesColumns(guessed: ColumnGuess, context: StudyContext) {
       return [[id, named ?? { species, unit: species.unit, unitInFile: false, explicit: false }] as const];
     }),
   );
-}
-
-/** Columns that were left out or read as something else than a signal, said so that nobody misses one. */
-function columnIssues(guessed: ColumnGuess): Issue[] {
-  return guessed.columns.flatMap((column): Issue[] => {
-    if (column.basis === "stated" || column.reason === "empty") return [];
-    if (column.role !== "left-out" && column.role !== "temperature") return [];
-    const isTemperature = column.role === "temperature";
-    return [
-      {
-        code: isTemperature ? "temperature-column" : "column-left-out",
-        severity: "note",
-        line: null,
-        column: column.index,
-        place: `column ${column.index + 1}`,
-        message: isTemperature
-          ? `Read as cell temperature and stored with each run as its mean: ${column.reason}.`
-          : `${column.name === "" ? "This column is" : `“${column.name}” is`} left out: ${column.reason}. The raw file keeps it.`,
-        repairs: [
-          { label: "Read as a signal", change: { kind: "column", column: column.index, role: "signal" } },
-        ],
-      },
-    ];
-  });
-}
-
-function cellsCorrected(corrections: Corrections, nameOf: (column: number) => string): Issue[] {
-  const flags: Issue[] =
-    corrections.flaggedCells === undefined
-      ? []
-      : [
-          {
-            code: "flags-settled",
-            severity: "settled",
-            line: null,
-            column: null,
-            place: "file",
-            message: `Cells with a mark beside the number are ${corrections.flaggedCells === "read" ? "read without it" : "left out"}, by hand; the raw file keeps them.`,
-            repairs: [],
-          },
-        ];
-  const cells = (corrections.cells ?? []).map(
-    (cell): Issue => ({
-      code: "cell-corrected",
-      severity: "settled",
-      line: cell.line,
-      column: cell.column,
-      place: `line ${cell.line}, ${nameOf(cell.column)}`,
-      message: `${cell.as === null ? "Left out" : `Read as ${cell.as}`}, by hand; the raw file keeps what stands there.`,
-      repairs: [{ label: "Undo", change: { kind: "forget-cell", line: cell.line, column: cell.column } }],
-    }),
-  );
-  return [...flags, ...cells];
-}
-
-function preambleIssues(frame: Frame, sample: readonly Row[], recipes: readonly RecipeLine[]): Issue[] {
-  const top = Math.min(frame.headerLine.value ?? Number.POSITIVE_INFINITY, frame.firstDataLine.value);
-  const preamble = sample.filter(
-    (row) =>
-      row.line < top &&
-      !recipes.some((line) => line.line === row.line) &&
-      row.cells.some((cell) => cell !== ""),
-  );
-  const first = preamble[0];
-  if (!first) return [];
-  return [
-    {
-      code: "preamble",
-      severity: "settled",
-      line: first.line,
-      column: null,
-      place: lines(first.line, preamble.at(-1)?.line ?? first.line),
-      message: `Preamble, kept with the raw file: ${quoted(first.cells.filter((cell) => cell !== "").join(" "))}.`,
-      repairs: [],
-    },
-  ];
 }
 
 function dataLines(frame: Frame, found: Gathered, corrections: Corrections): FileReading["dataLines"] {
