@@ -21,3 +21,4 @@ export type {
 } from "./global-fit";
 export { type GlobalProfile, profileGlobalFit } from "./profile-global-fit";
 export { type RobustBeside, robustBeside } from "./robust-beside";
+export { type GlobalSecondOpinion, secondOpinionOnFit } from "./second-opinion-on-fit";

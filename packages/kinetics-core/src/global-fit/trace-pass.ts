@@ -153,18 +153,24 @@ export class TracePass {
   private takeEndSignal(run: PreparedRun, noise: number): number {
     const { endRow, layout } = this;
     endRow.fill(0);
-    const end = run.endSignal;
-    // Where a law comes to equilibrium, the extent at the end is no constant of the design.
-    if (end === null || run.most === Number.MAX_VALUE || this.study.law.sensitivity === "variation") return 0;
-    endRow[0] = end.value - (run.signal[0] ?? 0) - this.factor * run.most;
+    const weight = endWeightOf(this.study, run, noise);
+    if (weight === 0) return 0;
+    endRow[0] = (run.endSignal?.value ?? 0) - (run.signal[0] ?? 0) - this.factor * run.most;
     if (layout.scaleColumn >= 0) endRow[layout.scaleColumn] = this.statedFactor * run.most;
-    if (end.variance === null) return 1;
-    return end.variance > noise / MOST_END_WEIGHT ? noise / end.variance : MOST_END_WEIGHT;
+    return weight;
   }
 }
 
 /** An exact end reading counts as this many readings: more would leave no digits for the others. */
 const MOST_END_WEIGHT = 1e8;
+
+/** Weight of a run's end reading in readings of variance `noise`; 0 where there is none that could be used. */
+export function endWeightOf({ law }: PreparedStudy, { endSignal, most }: PreparedRun, noise: number): number {
+  // Where a law comes to equilibrium, the extent at the end is no constant of the design.
+  if (endSignal === null || most === Number.MAX_VALUE || law.sensitivity === "variation") return 0;
+  if (endSignal.variance === null) return 1;
+  return endSignal.variance > noise / MOST_END_WEIGHT ? noise / endSignal.variance : MOST_END_WEIGHT;
+}
 
 export interface ColumnLayout {
   readonly width: number;
