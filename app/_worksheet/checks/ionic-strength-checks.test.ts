@@ -45,10 +45,10 @@ function checked(charges: readonly [number, number], volumes: readonly number[])
 
 describe("ionic strength between runs", () => {
   it("weakens where the primary salt effect passes 1 %, and says by how much", () => {
-    // I from 0.0011 to 0.0101 mol/L, z_A·z_B = 1: 4.605·0.51·(√I/(1+√I) taken between) = 0.14.
+    // I from 1.10 × 10⁻³ to 0.0101 mol/L, z_A·z_B = 1: 4.605·0.51·(√I/(1+√I) taken between) = 0.14.
     const [check] = checked([-1, -1], [100, 1000]);
     expect(check).toMatchObject({ severity: "weakens", station: "runs", code: "ionic-strength-spread" });
-    expect(check?.message).toContain("from 0.0011 to 0.0101 mol L^-1");
+    expect(check?.message).toContain("from 1.10 × 10⁻³ to 0.0101 mol L^-1");
     const moved = Number(/by (\d+) %/.exec(check?.message ?? "")?.[1]);
     const g = (strength: number) => Math.sqrt(strength) / (1 + Math.sqrt(strength));
     expect(moved).toBeCloseTo(100 * Math.expm1(2 * Math.LN10 * 0.51 * (g(0.0101) - g(0.0011))), -0.5);

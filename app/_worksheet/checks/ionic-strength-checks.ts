@@ -1,5 +1,6 @@
 import { LARGEST_IONIC_STRENGTH, saltEffect } from "kinetics-core/ionic-strength";
 import { mixRuns } from "kinetics-core/mixing";
+import { printNumber } from "kinetics-core/quantities";
 import { isMixed } from "@/db/sheet/mixed-run";
 import type { Sheet } from "@/db/sheet/sheet.schema";
 import type { Check } from "../analysis";
@@ -91,5 +92,5 @@ function chargeProduct(sheet: Sheet): number {
 }
 
 function strength(molar: number): string {
-  return String(Number(molar.toPrecision(3)));
+  return printNumber(molar, 3);
 }

@@ -16,6 +16,7 @@ import { analyseStudy } from "@/app/_worksheet/analyse-study";
 import { gatherNotes } from "@/app/_worksheet/checks/gather-notes";
 import { presentRuns } from "@/app/_worksheet/present-runs";
 import { listMembers } from "@/db/member/member.queries";
+import { isMixed } from "@/db/sheet/mixed-run";
 import { RunGrid } from "./_components/run-grid";
 import { RunMargin } from "./_components/run-margin";
 import { RunTable } from "./_components/run-table";
@@ -81,7 +82,7 @@ export default async function RunsPage({ params, searchParams }: Props) {
         lead={
           empty
             ? "Bring four runs with two levels of each reactant. That is enough for a first law."
-            : "Each change here refits the law and can be undone. Values with their standard uncertainty: 50.0 ± 0.4."
+            : `Each change here refits the law and can be undone. ${sheet.runs.some(isMixed) ? "Shaded concentrations follow from volumes: change those on the mixing table." : "Values with their standard uncertainty: 50.0 ± 0.4."}`
         }
         actions={actions}
         margin={margin}

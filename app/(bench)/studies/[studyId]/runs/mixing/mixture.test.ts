@@ -33,7 +33,7 @@ describe("what a row of volumes comes to", () => {
       total: "3294",
       refusal: {
         title: "R02 adds to 3294 µL, 294 over the mark of 3000",
-        detail: "That is the volume of B: water may have been worked out without it.",
+        detail: "That is the volume of stock B: water may have been worked out without it.",
         columns: ["total", "v:w"],
         repairs: [
           { label: "Set water to 2700", columnId: "v:w", text: "2700" },

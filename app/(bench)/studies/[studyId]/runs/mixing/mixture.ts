@@ -124,7 +124,7 @@ function overfullRow({ stocks, mixing }: Preparation, run: Volumes): Refusal {
     detail:
       forgotten === undefined || medium === undefined
         ? ""
-        : `That is the volume of ${stockName(forgotten.stock)}: ${stockName(medium.stock)} may have been worked out without it.`,
+        : `That is the volume of ${forgotten.stock.symbol === "" ? forgotten.stock.name : `stock ${forgotten.stock.symbol}`}: ${stockName(medium.stock)} may have been worked out without it.`,
     columns: [TOTAL, ...(medium === undefined ? [] : [VOLUME + medium.stock.id])],
     repairs: [
       ...(medium === undefined

@@ -230,11 +230,20 @@ function deliveryNotes(sheet: Sheet): MixingNote[] {
   ];
 }
 
+/** The medium that fills mixtures up: the one that most was taken of; the only one where nothing was taken yet. */
+function mainMedium(sheet: Sheet): SheetStock | null {
+  const taken = (stock: SheetStock) =>
+    presentRuns(sheet).reduce((sum, run) => sum + (run.volumes[stock.id] ?? 0), 0);
+  const media = sheet.stocks.filter(isMedium).toSorted((a, b) => taken(b) - taken(a));
+  const [first] = media;
+  return first !== undefined && (media.length === 1 || taken(first) > 0) ? first : null;
+}
+
 function volumeFacts(sheet: Sheet): { name: string; value: string }[] {
   const { volumeUnit, markMicrolitre, deliveries } = sheet.mixing;
   const unit = VOLUME_UNITS[volumeUnit];
   const written = (microlitre: number) => `${volumeText(microlitre, volumeUnit)} ${unit}`;
-  const media = sheet.stocks.filter(isMedium).map(stockName);
+  const filler = mainMedium(sheet);
   const small = deliveries.find(({ upToMicrolitre }) => upToMicrolitre !== null);
   const large = deliveries.find(({ upToMicrolitre }) => upToMicrolitre === null);
   return [
@@ -243,7 +252,7 @@ function volumeFacts(sheet: Sheet): { name: string; value: string }[] {
       value:
         markMicrolitre === null
           ? "none: a mixture is the sum of its volumes"
-          : `${written(markMicrolitre)}, made up with ${media.length > 0 ? inARow(media) : "solvent"}`,
+          : `${written(markMicrolitre)}, made up with ${filler === null ? "solvent" : stockName(filler)}`,
     },
     ...(small?.upToMicrolitre == null
       ? []

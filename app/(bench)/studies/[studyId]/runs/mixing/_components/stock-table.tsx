@@ -35,7 +35,7 @@ export function StockTable({
   return (
     <section>
       {stocks.length > 0 && (
-        <DataTable caption="Stocks">
+        <DataTable caption="Stocks" className="min-w-[720px]">
           <thead>
             <tr>
               <ColumnHead>Stock</ColumnHead>
@@ -44,7 +44,7 @@ export function StockTable({
               <ColumnHead numeric unit="%">
                 Relative <i>u</i>
               </ColumnHead>
-              <ColumnHead>Lot, made</ColumnHead>
+              <ColumnHead className="pl-5">Lot, made</ColumnHead>
               <ColumnHead>How known</ColumnHead>
               {canEdit && (
                 <th scope="col">
@@ -68,7 +68,7 @@ export function StockTable({
                   ))}
                 </td>
                 <td className="num">{stock.relative}</td>
-                <td>{stock.lot}</td>
+                <td className="whitespace-nowrap pl-5">{stock.lot}</td>
                 <td>{stock.howKnown}</td>
                 {canEdit && (
                   <td className="whitespace-nowrap text-right">
