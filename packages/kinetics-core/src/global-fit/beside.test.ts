@@ -60,9 +60,15 @@ describe("beside the intervals of a global fit", () => {
     );
   });
 
-  it("a profile is the interval of the model where the problem is nearly linear", () => {
-    const fit = fitGlobal(input);
-    const profile = profileGlobalFit(input, "B");
+  it.each([
+    ["with scatter between runs", input],
+    [
+      "where the runs show none, so that their weights rest on the noise",
+      simulateStudy({ ...study, betweenRuns: 0 }),
+    ],
+  ])("a profile is the interval of the model where the problem is nearly linear, %s", (_, given) => {
+    const fit = fitGlobal(given);
+    const profile = profileGlobalFit(given, "B");
     if (profile.status !== "profiled" || fit.status !== "fitted") throw new Error(profile.status);
     const [low, high] = fit.orders.B?.interval ?? [0, 0];
     expect(Math.abs((profile.lower ?? 0) - low)).toBeLessThan(0.1 * (high - low));

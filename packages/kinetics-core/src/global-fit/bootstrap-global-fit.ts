@@ -125,7 +125,7 @@ class Refits {
     theta.set(fitted.theta);
     const drawn = [...new Set(indices)];
     let told = this.begin(indices);
-    let variance: number | undefined = whole.betweenRunVariance;
+    let variance: number | undefined = whole.weightVariance;
     for (let linearisations = 0; linearisations <= MOST_REFIT_LINEARISATIONS; linearisations++) {
       const inference = randomRateInference(told, scalePrior(pass, theta), {
         undetermined: fitted.undetermined,

@@ -5,10 +5,10 @@ import { prepareStudy } from "./prepare-study";
 import { informationOf, isSettled, moveRun, partOfStep, scalePrior, takeStep } from "./random-rate-search";
 
 /**
- * Interval of one parameter of a global fit by profile of the marginal likelihood, σ_j² and τ² held at their
- * estimates. At each value tried the other parameters are fitted anew, relinearised like the fit itself. A parameter is
- * held by one more observation of it, a millionth of its standard error wide, since ln k cannot leave θ: its direction
- * is that of the scatter between runs.
+ * Interval of one parameter of a global fit by profile of the marginal likelihood, σ_j² and the variance in the weights
+ * held, its deviance per variance of the fit, so that on a linear model it is the Wald interval. At each value tried the
+ * other parameters are fitted anew, relinearised like the fit itself. A parameter is held by one more observation of it,
+ * a millionth of its standard error wide, since ln k cannot leave θ: its direction is that of the scatter between runs.
  */
 export type GlobalProfile = ({ readonly status: "profiled" } & ProfileInterval) | GlobalFitFailure;
 
@@ -57,6 +57,8 @@ function leastDeviance(
   standardError: number,
 ): number | null {
   const { pass, inference: whole, bounds, logRate, tolerance, study } = fitted;
+  // The weights of the fit take the runs to vary by h + f, its covariance by what they show.
+  const perVariance = (whole.workingCovariance[place]?.[place] ?? 0) / (standardError * standardError);
   const theta = fitted.theta.slice();
   theta[place] = value;
   for (let linearisations = 0; linearisations < MOST_LINEARISATIONS_HELD; linearisations++) {
@@ -67,7 +69,7 @@ function leastDeviance(
       [...scalePrior(pass, theta), hold],
       {
         undetermined: fitted.undetermined,
-        betweenRunVariance: whole.betweenRunVariance,
+        betweenRunVariance: whole.weightVariance,
         noiseVariances: whole.noiseVariances,
       },
     );
@@ -79,7 +81,7 @@ function leastDeviance(
       moveRun(pass, run, inference, j, step, 1);
     });
     if (linearisations > 0 && isSettled({ ...inference, covariance: whole.covariance }, from, theta))
-      return inference.marginalDeviance - 2 * Math.log(hold.standardUncertainty);
+      return perVariance * (inference.marginalDeviance - 2 * Math.log(hold.standardUncertainty));
   }
   return null;
 }

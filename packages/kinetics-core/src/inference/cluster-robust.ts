@@ -2,7 +2,6 @@ import { studentTFactor } from "kinetics-core/distributions";
 import { type Matrix, singularValues } from "kinetics-core/linear-algebra";
 import type { Flag } from "kinetics-core/quantities";
 import { LEAST_FREE_PART, WIDER_THAN_MODEL } from "./constants";
-import { fixedParts, marginalFit } from "./marginal-model";
 import { lowerRoot } from "./positive-definite";
 import type { RandomRateInference } from "./random-rate-inference";
 import type { PriorInformation, RunInformation } from "./run-information";
@@ -49,9 +48,7 @@ export function clusterRobust(
   names: readonly string[],
 ): ClusterRobustResult {
   const p = inference.step.length;
-  const parts = partsOf(runs, inference.noiseVariances);
-  const working = marginalFit(parts, fixedParts(parts, priors), inference.weightVariance);
-  const bread = working.status === "fitted" ? working.covariance : new Float64Array(p * p);
+  const bread = Float64Array.from(inference.workingCovariance.flat());
   const root = lowerRoot(bread, p);
   if (root === null)
     return {
@@ -59,7 +56,9 @@ export function clusterRobust(
       message:
         "The covariance of the parameters is singular to rounding, so no standard error can be made from the runs' scores. Hold a parameter or add a run that differs.",
     };
-  const clusters = parts.map((part) => clusterOf(part, inference.weightVariance, inference.step, root, p));
+  const clusters = partsOf(runs, inference.noiseVariances).map((part) =>
+    clusterOf(part, inference.weightVariance, inference.step, root, p),
+  );
   const fromRuns = sandwich(clusters, root, p);
   const fromPriors = priorPart(priors, bread, p);
   const covariance = fromRuns.map((row, i) => row.map((value, j) => value + (fromPriors[i]?.[j] ?? 0)));

@@ -49,6 +49,8 @@ export interface RandomRateInference {
   readonly step: Float64Array;
   /** Of θ, p by p. */
   readonly covariance: readonly (readonly number[])[];
+  /** C, the covariance if the runs varied by h_j + f: what the marginal likelihood at f alone would say. */
+  readonly workingCovariance: readonly (readonly number[])[];
   readonly betweenRunVariance: number;
   /** τ, standard deviation of ln k between runs. */
   readonly betweenRunStandardDeviation: number;
@@ -166,7 +168,8 @@ function inferenceAt(
   return {
     status: "determined",
     step: fit.step,
-    covariance: Array.from({ length: p }, (_, i) => Array.from(covariance.subarray(i * p, (i + 1) * p))),
+    covariance: inRows(covariance, p),
+    workingCovariance: inRows(fit.covariance, p),
     betweenRunVariance: variance,
     betweenRunStandardDeviation: Math.sqrt(variance),
     weightVariance,
@@ -181,6 +184,10 @@ function inferenceAt(
     ),
     flags: freedomFlags(degreesOfFreedom),
   };
+}
+
+function inRows(matrix: Float64Array, p: number): readonly (readonly number[])[] {
+  return Array.from({ length: p }, (_, i) => Array.from(matrix.subarray(i * p, (i + 1) * p)));
 }
 
 /** Mean h over the runs that say something of ln k. */
