@@ -3,7 +3,7 @@
 With J the derivatives of one run for (ln k, m, n, l), means removed because of the run's own offset, e the ln k column
 and r the residuals at the run's present b_j, the linear model has r + J_e b_j at b_j = 0. Let G = J'J and g = J'r of
 those. The run's own ln k would move by z = g_e / G_ee; the residuals that this leaves have variance s^2 and lag-one
-autocorrelation rho, and sigma^2 = s^2 (1 + rho)/(1 - rho). With h = sigma^2 / G_ee and u = G e / G_ee
+autocorrelation rho, read from all runs together, and sigma^2 = s^2 (1 + rho)/(1 - rho). With h = sigma^2 / G_ee and u = G e / G_ee
 
     J'V^-1 J = S / sigma^2 + u u' / (h + tau^2),   J'V^-1 r = s / sigma^2 + u z / (h + tau^2),
 
@@ -19,6 +19,9 @@ from scipy.optimize import minimize_scalar
 LARGEST_AUTOCORRELATION = 0.97
 # Coefficients that a run spends on itself: offset and ln k.
 OWN = 2
+# What a short trace takes from the gain (1 + rho)/(1 - rho) of a smooth direction, and the least part of freedom left.
+SHORT = 2.5
+LEAST_FREEDOM = 0.2
 
 
 @dataclass(frozen=True)
@@ -34,6 +37,21 @@ class ScatterStep:
         return bool(np.all(np.abs(self.step) <= part * np.sqrt(np.diag(self.covariance))))
 
 
+def taken(rho, spent, readings):
+    """Variances of autoregressive noise that the fit takes out of a trace with `spent` smooth coefficients."""
+    gain = (1 + rho) / (1 - rho)
+    return spent * gain / (1 + SHORT * gain / readings)
+
+
+def corrected(lag, spent, readings):
+    """rho from the lag-one autocorrelation of residuals, which lack what the fit has taken."""
+    rho = lag
+    for _ in range(30):
+        part = np.minimum(taken(rho, spent, readings) / readings, 1 - LEAST_FREEDOM)
+        rho = np.clip(lag + (1 - lag) * part, -LARGEST_AUTOCORRELATION, LARGEST_AUTOCORRELATION)
+    return rho
+
+
 def scatter_step(jacobian, residuals, deviations, scale_deviation, scale_error):
     """`jacobian` runs x parameters x readings, `residuals` runs x readings, means removed; ln k first, l last."""
     runs, _, readings = jacobian.shape
@@ -47,8 +65,12 @@ def scatter_step(jacobian, residuals, deviations, scale_deviation, scale_error):
     own = residuals - offset[:, None] * jacobian[:, 0]
     squares = (own**2).sum(axis=1)
     lag = (own[:, 1:] * own[:, :-1]).sum(axis=1) / squares
-    rho = np.clip((readings * lag + OWN) / (readings - OWN - 2), 0, LARGEST_AUTOCORRELATION)
-    noise = squares / (readings - OWN) * (1 + rho) / (1 - rho)
+    spent = OWN + (jacobian.shape[1] - 1) / runs
+    alone = corrected(lag, spent, readings)
+    least = alone - 2 * np.sqrt((1 - alone**2) / readings)
+    rho = np.clip(np.maximum(corrected(lag.mean(), spent, readings), least), 0, LARGEST_AUTOCORRELATION)
+    freedom = np.maximum(readings - taken(rho, spent, readings), LEAST_FREEDOM * readings)
+    noise = squares / freedom * (1 + rho) / (1 - rho)
     precision = noise / information
 
     shape = gram - information[:, None, None] * direction[:, :, None] * direction[:, None, :]
