@@ -68,7 +68,7 @@ describe("a change of units", () => {
         expectMoved(after.logRateConstant, before.logRateConstant, (1 - overall) * Math.log(scale), null);
         expectMoved(logOf(after.centre.rate), logOf(before.centre.rate), Math.log(scale), 1e-7);
       }),
-      { numRuns: 12 },
+      { numRuns: 8 },
     );
   });
 
@@ -81,7 +81,7 @@ describe("a change of units", () => {
         expectMoved(after.logRateConstant, before.logRateConstant, Math.log(scale), 1e-7);
         expect(after.budget.map(({ source }) => source)).toEqual(before.budget.map(({ source }) => source));
       }),
-      { numRuns: 12 },
+      { numRuns: 8 },
     );
   });
 });
@@ -103,7 +103,7 @@ describe("the order in which runs and species stand", () => {
         expectSameOrders(turned, before);
         expectMoved(turned.logRateConstant, before.logRateConstant, 0, 1e-7);
       }),
-      { numRuns: 12 },
+      { numRuns: 8 },
     );
   });
 });
@@ -169,7 +169,7 @@ describe("whatever is given", () => {
           expect(message).not.toMatch(/NaN|Infinity|undefined|null/);
         }
       }),
-      { numRuns: 250 },
+      { numRuns: 150 },
     );
     expect([...statuses]).toEqual(expect.arrayContaining(["fitted", "no-positive-rates", "no-species"]));
   });
