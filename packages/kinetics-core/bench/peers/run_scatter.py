@@ -2,13 +2,16 @@
 
 With J the derivatives of one run for (ln k, m, n, l), means removed because of the run's own offset, e the ln k column
 and r the residuals at the run's present b_j, the linear model has r + J_e b_j at b_j = 0. Let G = J'J and g = J'r of
-those. The run's own ln k would move by z = g_e / G_ee; the residuals that this leaves have variance s^2 and lag-one
-autocorrelation rho, read from all runs together, and sigma^2 = s^2 (1 + rho)/(1 - rho). With h = sigma^2 / G_ee and u = G e / G_ee
+those. The run's own ln k would move by z = g_e / G_ee; the residuals that this leaves have variance s_j^2, and all of them
+together an autocorrelation rho, so that sigma_j^2 = s_j^2 (1 + rho)/(1 - rho). Then with h = sigma^2 / G_ee and
+u = G e / G_ee
 
-    J'V^-1 J = S / sigma^2 + u u' / (h + tau^2),   J'V^-1 r = s / sigma^2 + u z / (h + tau^2),
+    J'V^-1 J = S / sigma^2 + u u' / (h + t),   J'V^-1 r = s / sigma^2 + u z / (h + t),   S = G - G e e'G / G_ee.
 
-S = G - G e e'G / G_ee. tau^2 by restricted maximum likelihood, in one dimension; then the step d in the parameters, and
-b_j = tau^2 / (h + tau^2) (z - u'd).
+tau^2 is found by restricted maximum likelihood with t = tau^2, in one dimension. The runs weigh with
+t = f = max(tau^2, mean h); d is the step and C the inverse of the sum at f. With s^2 the mean square of (z - u'd) against
+h + f, a run counts as varying by v = max(s^2 (h + f), h + tau^2), which gives the covariance
+C (sum S / sigma^2 + prior + sum v u u' / (h + f)^2) C. The new b_j is tau^2 / (h + tau^2) (z - u'd).
 """
 
 from dataclasses import dataclass
@@ -16,12 +19,11 @@ from dataclasses import dataclass
 import numpy as np
 from scipy.optimize import minimize_scalar
 
-LARGEST_AUTOCORRELATION = 0.97
+LARGEST = 0.97
+# What a short trace takes from the variances that a smooth direction takes out of autocorrelated noise.
+SHORT = 2.5
 # Coefficients that a run spends on itself: offset and ln k.
 OWN = 2
-# What a short trace takes from the gain (1 + rho)/(1 - rho) of a smooth direction, and the least part of freedom left.
-SHORT = 2.5
-LEAST_FREEDOM = 0.2
 
 
 @dataclass(frozen=True)
@@ -37,21 +39,6 @@ class ScatterStep:
         return bool(np.all(np.abs(self.step) <= part * np.sqrt(np.diag(self.covariance))))
 
 
-def taken(rho, spent, readings):
-    """Variances of autoregressive noise that the fit takes out of a trace with `spent` smooth coefficients."""
-    gain = (1 + rho) / (1 - rho)
-    return spent * gain / (1 + SHORT * gain / readings)
-
-
-def corrected(lag, spent, readings):
-    """rho from the lag-one autocorrelation of residuals, which lack what the fit has taken."""
-    rho = lag
-    for _ in range(30):
-        part = np.minimum(taken(rho, spent, readings) / readings, 1 - LEAST_FREEDOM)
-        rho = np.clip(lag + (1 - lag) * part, -LARGEST_AUTOCORRELATION, LARGEST_AUTOCORRELATION)
-    return rho
-
-
 def scatter_step(jacobian, residuals, deviations, scale_deviation, scale_error):
     """`jacobian` runs x parameters x readings, `residuals` runs x readings, means removed; ln k first, l last."""
     runs, _, readings = jacobian.shape
@@ -64,12 +51,8 @@ def scatter_step(jacobian, residuals, deviations, scale_deviation, scale_error):
 
     own = residuals - offset[:, None] * jacobian[:, 0]
     squares = (own**2).sum(axis=1)
-    lag = (own[:, 1:] * own[:, :-1]).sum(axis=1) / squares
-    spent = OWN + (jacobian.shape[1] - 1) / runs
-    alone = corrected(lag, spent, readings)
-    least = alone - 2 * np.sqrt((1 - alone**2) / readings)
-    rho = np.clip(np.maximum(corrected(lag.mean(), spent, readings), least), 0, LARGEST_AUTOCORRELATION)
-    freedom = np.maximum(readings - taken(rho, spent, readings), LEAST_FREEDOM * readings)
+    lags = (own[:, 1:] * own[:, :-1]).sum(axis=1) / squares
+    rho, freedom = reading_noise(lags, readings, OWN + (jacobian.shape[1] - 1) / runs)
     noise = squares / freedom * (1 + rho) / (1 - rho)
     precision = noise / information
 
@@ -98,8 +81,39 @@ def scatter_step(jacobian, residuals, deviations, scale_deviation, scale_error):
     spread = np.log(max(np.var(offset), 1e-12))
     found = minimize_scalar(deviance, bracket=(spread - 1, spread), method="brent", options={"xtol": 1e-5})
     variance = float(np.exp(found.x))
-    left, right, _ = normal_equations(variance)
-    covariance = np.linalg.inv(left)
-    step = covariance @ right
-    share = variance / (precision + variance)
-    return ScatterStep(step, covariance, variance, share * (offset - direction @ step), noise)
+    spread = max(variance, precision.mean())
+    left, right, weight = normal_equations(spread)
+    inverse = np.linalg.inv(left)
+    step = inverse @ right
+    effects = direction @ inverse
+    rest = offset - direction @ step
+    expected = (1 - weight * (effects * direction).sum(axis=1)).sum()
+    excess = (weight * rest**2).sum() / expected
+    varies = np.maximum(excess / weight, precision + variance)
+    covariance = inverse + (effects * (weight * (weight * varies - 1))[:, None]).T @ effects
+    deviations = variance / (precision + variance) * rest
+    return ScatterStep(step, covariance, variance, deviations, noise)
+
+
+def reading_noise(lags, readings, spent):
+    """Autocorrelation of each run and the freedom of its residuals.
+
+    `spent` smooth directions take `taken` variances out of autoregressive noise, which lowers both the lag-one
+    autocorrelation and the sum of squares. All runs are read by one instrument: a run has an autocorrelation of its own
+    only where it lies above that of all together by more than twice its error.
+    """
+
+    def taken(rho):
+        gain = (1 + rho) / (1 - rho)
+        return spent * gain / (1 + SHORT * gain / readings)
+
+    def corrected(lag):
+        rho = lag
+        for _ in range(30):
+            rho = np.clip(lag + (1 - lag) * np.minimum(taken(rho) / readings, 0.8), -LARGEST, LARGEST)
+        return rho
+
+    own = corrected(lags)
+    least = own - 2 * np.sqrt((1 - own**2) / readings)
+    rho = np.clip(np.maximum(corrected(lags.mean()), least), 0, LARGEST)
+    return rho, np.maximum(readings - taken(rho), 0.2 * readings)
