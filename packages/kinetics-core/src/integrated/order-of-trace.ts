@@ -4,9 +4,10 @@ import { type Estimate, type Flag, inARow, numberInWords } from "kinetics-core/q
 import { CONFLICT_BLOCKS, LACK_OF_FIT_LEVEL, ORDER_HALF_WIDTH_WEAKENS } from "./constants";
 import { heldOrderLaw } from "./course-laws";
 import type { EndSignal } from "./end-signal";
-import { type CourseFit, effectiveDeviation } from "./fit-course";
+import { type CourseFit, courseJacobian, effectiveDeviation, fitCourse } from "./fit-course";
 import { fitWithWorking } from "./fit-integrated-law";
 import type { IntegratedLawFit, IntegratedLawResult } from "./integrated-law";
+import { linearInformation } from "./linear-information";
 import type { ScaledReadings } from "./scaled-reading";
 import { searchCourse } from "./search-course";
 
@@ -65,13 +66,12 @@ export function orderOfTrace(input: OrderOfTraceInput): OrderOfTrace {
   const free = fitWithWorking({ ...input, order: "free" });
   if (free.status !== "fitted") return free;
   const { report, fit, scaled } = free;
-  const candidates = orders
-    .map((order) => candidateOf(order, fit, scaled, level))
-    .filter((candidate) => candidate !== null);
-  const nearest = candidates.reduce<OrderCandidate | null>(
-    (best, one) => (best === null || one.excess < best.excess ? one : best),
-    null,
-  );
+  const held = orders.flatMap((order) => {
+    const course = heldCourse(order, fit, scaled);
+    return course === null ? [] : [{ order, ...course }];
+  });
+  const candidates = candidatesOf(held, fit, level);
+  const nearest = nearestOf(held, fit);
   if (nearest === null) {
     return {
       status: "not-converged",
@@ -82,7 +82,7 @@ export function orderOfTrace(input: OrderOfTraceInput): OrderOfTrace {
   return {
     status: "read",
     ...verdict,
-    nearest: nearest.order,
+    nearest,
     candidates,
     freeOrder: report.order,
     freeFit: report,
@@ -90,24 +90,52 @@ export function orderOfTrace(input: OrderOfTraceInput): OrderOfTrace {
   };
 }
 
+interface HeldCourse {
+  readonly residualSquares: number;
+  /** Parameters that the readings determine: a straight line has two, whatever end its law might have. */
+  readonly determined: number;
+}
+
 /** The same rows and the same weight of the end for every order, so that sums of squares compare. */
-function candidateOf(
-  order: number,
-  { found, condition, noise }: CourseFit,
-  { trace }: ScaledReadings,
+function heldCourse(order: number, { condition }: CourseFit, { trace }: ScaledReadings): HeldCourse | null {
+  const law = heldOrderLaw(order);
+  // A free end must not follow the noise of the last reading here either.
+  const free = condition.kind === "free" ? fitCourse(law, trace, condition) : null;
+  const found =
+    free === null ? searchCourse(law, trace, condition) : free.status === "fitted" ? free.found : null;
+  if (found === null || found.status !== "found") return null;
+  const { basis } = linearInformation(courseJacobian(found, condition));
+  return { residualSquares: found.residualSquares, determined: basis.length };
+}
+
+function candidatesOf(
+  held: readonly (HeldCourse & { readonly order: number })[],
+  fit: CourseFit,
   level: number,
-): OrderCandidate | null {
-  const held = searchCourse(heldOrderLaw(order), trace, condition);
-  if (held.status !== "found") return null;
-  const rise = Math.max(held.residualSquares - found.residualSquares, 0);
-  const effective = effectiveDeviation(noise);
-  if (noise.degreesOfFreedom === 0 || effective === 0) {
-    // Nothing to judge a difference by: the sums of squares only rank.
-    return { order, excess: rise, pValue: 1, excluded: false };
-  }
-  const excess = rise / effective ** 2;
-  const pValue = fSurvival(excess, 1, noise.degreesOfFreedom);
-  return { order, excess, pValue, excluded: pValue < 1 - level };
+): OrderCandidate[] {
+  const { found, noise } = fit;
+  const least = Math.min(...held.map(({ residualSquares }) => residualSquares));
+  // A free order that follows a corner of noise, or ran to a bound, is no measure of the others.
+  const settled = !fit.cornered && !fit.stopped.includes(true);
+  const base = settled ? Math.min(found.residualSquares, least) : least;
+  const variance = effectiveDeviation(noise) ** 2;
+  return held.map(({ order, residualSquares }) => {
+    const rise = residualSquares - base;
+    // Without a degree of freedom nothing judges a difference, and sums of squares only rank.
+    if (noise.degreesOfFreedom === 0) return { order, excess: rise, pValue: 1, excluded: false };
+    const pValue = fSurvival(rise / variance, 1, noise.degreesOfFreedom);
+    return { order, excess: rise / variance, pValue, excluded: pValue < 1 - level };
+  });
+}
+
+/** Least sum of squares, with the two units of variance that a determined parameter takes up by chance (Akaike). */
+function nearestOf(
+  held: readonly (HeldCourse & { readonly order: number })[],
+  { noise }: CourseFit,
+): number | null {
+  const price = noise.degreesOfFreedom === 0 ? 0 : 2 * effectiveDeviation(noise) ** 2;
+  const scores = held.map(({ residualSquares, determined }) => residualSquares + price * determined);
+  return held[scores.indexOf(Math.min(...scores))]?.order ?? null;
 }
 
 function verdictOf(
