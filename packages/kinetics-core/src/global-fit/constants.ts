@@ -14,7 +14,7 @@ export const FINE_TOLERANCE = 1e-10;
 /** Residual standard deviation against the extent seen, below which FINE_TOLERANCE is called for. */
 export const FINE_BELOW = 1e-4;
 
-/** Steps of one course. Fourteen are usual; a course that needs more than this has no end that steps could reach. */
+/** Steps of one course. Some ten are usual; a course that needs more than this has no end that steps could reach. */
 export const MOST_STEPS = 2000;
 
 /** Rejections in a row after which a step is given up: the step is then below a double's resolution of the time. */

@@ -6,7 +6,7 @@ import type { CourseLaw, StudySpecies } from "./course-law";
 const NOTHING = 1e-12;
 
 /**
- * Any rate equation along a course, a user's expression included. The equation is asked at the stages of some fourteen
+ * Any rate equation along a course, a user's expression included. The equation is asked at the stages of some ten
  * steps a run; the points themselves are read from the dense output and never ask it.
  *
  * `held`: values of parameters that are not fitted, by name. Every species of the equation must be in `species`.

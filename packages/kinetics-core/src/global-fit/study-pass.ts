@@ -102,4 +102,11 @@ export class StudyPass {
     }
     return sum;
   }
+
+  /** Variance of a reading when every run has its own ln k. */
+  ownVariance(): number {
+    let freedom = -this.parameters;
+    for (const run of this.runs) freedom += run.points - 2;
+    return Math.max(this.ownResidualSquares() / Math.max(1, freedom), Number.MIN_VALUE);
+  }
 }

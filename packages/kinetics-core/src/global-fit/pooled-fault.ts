@@ -1,0 +1,81 @@
+import { failure, type GlobalFitFailure } from "./global-fit";
+import type { SearchEnd } from "./pooled-search";
+import type { StudyPass } from "./study-pass";
+import { undeterminedCombinations } from "./undetermined";
+
+/** What keeps the pooled fit from being one, by name; null where nothing does. */
+export function pooledFault(
+  end: SearchEnd,
+  pass: StudyPass,
+  names: readonly string[],
+  theta: Float64Array,
+): GlobalFitFailure | null {
+  if (end === "stopped") return stopped();
+  if (end === "no-course") return noCourse();
+  if (!theta.every(Number.isFinite) || Math.abs(theta[0] ?? 0) >= 690)
+    return failure(
+      "beyond-precision",
+      "runs",
+      "The rate constant leaves the range of a double. Check the units of concentrations and times, or hold an order nearer to what is expected.",
+    );
+  if (pass.runs.every((run) => !((run.gram[0] ?? 0) > 0)))
+    return failure(
+      "exhausted-at-first-reading",
+      "runs",
+      "In every run the reaction is over at the first reading, or never begins with the concentrations given, so the traces say nothing about its rate. Read earlier, slow the reaction down, or check the starting concentrations.",
+    );
+  if (isUnchanged(pass))
+    return failure(
+      "no-change",
+      "runs",
+      "No trace changes beyond its noise: the reaction was over before the first reading, or has hardly begun at the last. Read earlier, or wait longer.",
+    );
+  const open = undeterminedCombinations(pass.gram, names);
+  if (open.length > 0)
+    return failure("not-determined", "runs", open.map(({ message }) => message).join(" "), open);
+  return end === "not-settled" ? notConverged() : null;
+}
+
+export function notConverged(): GlobalFitFailure {
+  return failure(
+    "not-converged",
+    "law",
+    "The search for the parameters did not settle from any start that was tried: the traces do not follow this law, or one run does not belong. Set a run aside, try another law, or hold an order.",
+  );
+}
+
+/**
+ * All courses together gain no more over a constant for each run than chance would give them in one of a thousand. In
+ * most studies the first run settles that it is not so.
+ */
+function isUnchanged(pass: StudyPass): boolean {
+  const least = (10 + 6 * pass.runs.length) * pass.ownVariance();
+  let gain = 0;
+  for (const [j, { signal }] of pass.study.runs.entries()) {
+    const flat = squaresAboutMean(signal);
+    gain += Math.max(0, flat - (pass.runs[j]?.residualSquares ?? 0));
+    if (gain > least) return false;
+  }
+  return true;
+}
+
+/** 0 where only rounding is left. */
+function squaresAboutMean(values: Float64Array): number {
+  let mean = 0;
+  for (let i = 0; i < values.length; i++) mean += (values[i] ?? 0) / values.length;
+  let squares = 0;
+  for (let i = 0; i < values.length; i++) squares += ((values[i] ?? 0) - mean) ** 2;
+  return squares > values.length * (1e-14 * mean) ** 2 ? squares : 0;
+}
+
+export function noCourse(): GlobalFitFailure {
+  return failure(
+    "no-course",
+    "law",
+    "The law has no finite rate along some run: a negative order in a species that is absent at the start or used up, or a parameter beyond its range. Give a starting concentration above 0, or another law.",
+  );
+}
+
+export function stopped(): GlobalFitFailure {
+  return failure("stopped", "options.shouldStop", "The fit was stopped before it had settled.");
+}
