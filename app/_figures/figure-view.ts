@@ -88,6 +88,14 @@ export interface WindowFigureView {
   readonly y: AxisView;
   readonly time: readonly number[];
   readonly signal: readonly number[];
+  /** Time of mixing. */
+  readonly timeZero: number;
+  /** Indices of readings that are drawn and not fitted, since they lie in the dead time or outside `counts`. */
+  readonly outside: readonly number[];
+  /** Indices of readings that are marked as spikes. */
+  readonly spikes: readonly number[];
+  /** Part of the trace that counts. */
+  readonly counts: readonly [number, number];
   /** First and last time used. */
   readonly window: readonly [number, number];
   /** Fitted curve over the window. */

@@ -59,6 +59,10 @@ const windowView: WindowFigureView = {
   residuals: { x: [1, 8.5], y: [0.01, -0.02] },
   note: "*r*_0 = 0.8",
   noteDetail: "slope at *t* = 0",
+  timeZero: 0,
+  outside: [],
+  spikes: [],
+  counts: [0, 10],
   leastPoints: 5,
 };
 

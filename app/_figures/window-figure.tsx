@@ -5,8 +5,12 @@ import { Axes, type ChartArea, layOut, Paper, pointsOf } from "./chart";
 import { decimate } from "./decimate";
 import type { WindowChoice, WindowFigureView } from "./figure-view";
 import { box, leastCovering } from "./name-places";
+import { fittedBetween, placeOf, readingAt } from "./reading-at";
 import { SvgProse } from "./svg-prose";
 import { extent, linearDomain } from "./ticks";
+import { timeStep } from "./time-step";
+import { TimeZeroGrip, TrimGrips } from "./trace-grips";
+import { useTimeZero } from "./use-time-zero";
 import { useWidth } from "./use-width";
 import { useWindowChoice } from "./use-window-choice";
 import { WindowGrips } from "./window-grips";
@@ -16,10 +20,14 @@ const PLOT_TOP = 46;
 const GRIP_ROOM = 52;
 const RESIDUAL_HEIGHT = 116;
 
+/** What is moved on the drawing: the window, the clock with the part that counts, or marks of readings. */
+export type HandsOn = "window" | "clock" | "spikes";
+
 /**
  * A trace with its window. Two grips move over readings: drag, or arrows one reading, Shift ten, Home and End to the
  * limits. `onPreview` follows every step (answer with a new curve, slope and residuals; leave `view.window` as
- * saved), `onCommit` comes once on release. Without `onCommit` it is a drawing.
+ * saved), `onCommit` comes once on release. Without `onCommit` it is a drawing. `handsOn` chooses what is moved: time
+ * zero and the part that counts have handles of their own, and of spikes a click on a reading tells its index.
  */
 export function WindowFigure({
   view,
@@ -27,8 +35,12 @@ export function WindowFigure({
   number,
   caption,
   height = 370,
+  handsOn = "window",
   onPreview,
   onCommit,
+  onTimeZero,
+  onTrim,
+  onReading,
 }: {
   view: WindowFigureView;
   label: string;
@@ -36,8 +48,12 @@ export function WindowFigure({
   caption?: ReactNode;
   /** Of the trace's plot, without the residuals. */
   height?: number;
+  handsOn?: HandsOn;
   onPreview?: (choice: WindowChoice) => void;
   onCommit?: (choice: WindowChoice) => void;
+  onTimeZero?: (time: number) => void;
+  onTrim?: (choice: WindowChoice) => void;
+  onReading?: (index: number) => void;
 }) {
   const { ref, width } = useWidth<HTMLDivElement>(820);
   const drawing = useRef<SVGSVGElement>(null);
@@ -48,6 +64,9 @@ export function WindowFigure({
     return area.x.invert(((clientX - box.left) / box.width) * width);
   };
   const { choice, handlers } = useWindowChoice(view, timeAt, onPreview, onCommit);
+  const trimmed = useWindowChoice({ ...view, window: view.counts }, timeAt, undefined, onTrim);
+  const limits = [area.x.domain[0], area.x.domain[1]] as const;
+  const mixed = useTimeZero(view.time, view.timeZero, limits, timeAt, onTimeZero);
   const total = view.residuals === null ? height : height + RESIDUAL_HEIGHT;
   return (
     <figure className="figure">
@@ -73,14 +92,49 @@ export function WindowFigure({
           role="graphics-object"
           aria-label={`Window of ${view.run.label}`}
         >
-          <WindowGrips
-            area={area}
-            time={view.time}
-            unit={view.x.unit}
-            choice={choice}
-            leastPoints={view.leastPoints}
-            handlers={onCommit === undefined ? null : handlers}
-          />
+          {handsOn === "clock" ? (
+            <>
+              <TimeZeroGrip
+                area={area}
+                unit={view.x.unit}
+                at={mixed.at}
+                limits={limits}
+                step={timeStep(view.time)}
+                handlers={mixed.handlers}
+              />
+              <TrimGrips
+                area={area}
+                time={view.time}
+                unit={view.x.unit}
+                choice={trimmed.choice}
+                leastPoints={view.leastPoints}
+                handlers={trimmed.handlers}
+              />
+            </>
+          ) : (
+            <WindowGrips
+              area={area}
+              time={view.time}
+              unit={view.x.unit}
+              choice={{ ...choice, points: fittedBetween(view, choice) }}
+              leastPoints={view.leastPoints}
+              handlers={onCommit === undefined || handsOn === "spikes" ? null : handlers}
+            />
+          )}
+          {handsOn === "spikes" && (
+            <rect
+              className="readings-to-mark"
+              x={area.left}
+              y={area.top}
+              width={area.right - area.left}
+              height={area.bottom - area.top}
+              fill="transparent"
+              onPointerUp={(event) => {
+                const index = readingAt(view, area, placeOf(event, drawing.current, width));
+                if (index !== null) onReading?.(index);
+              }}
+            />
+          )}
         </svg>
       </div>
       {(caption !== undefined || number !== undefined) && (
@@ -98,7 +152,7 @@ function areasOf(view: WindowFigureView, width: number, height: number) {
   const [first, last] = extent(view.time);
   const time = {
     kind: "linear",
-    domain: [Math.min(first, view.slope?.x ?? first, 0), last === first ? first + 1 : last],
+    domain: [Math.min(first, view.timeZero, 0), last === first ? first + 1 : last],
   } as const;
   const signal = {
     kind: "linear",
@@ -120,19 +174,35 @@ function areasOf(view: WindowFigureView, width: number, height: number) {
   };
 }
 
-/** Every reading as a dot, in ink inside the window; long traces thinned to what the width can show. */
+/**
+ * Every reading that counts as a dot, in ink inside the window; long traces thinned to what the width can show. What is not
+ * fitted stays in sight: small dots outside the part that counts, crosses for spikes.
+ */
 function Readings({ view, area, choice }: { view: WindowFigureView; area: ChartArea; choice: WindowChoice }) {
   const { time, signal } = view;
   const { fromIndex, toIndex } = choice;
   const columns = Math.round((area.right - area.left) / 2);
-  const dots = (from: number, to: number) => {
-    const thin = decimate(time.slice(from, to), signal.slice(from, to), columns);
+  const notFitted = new Set([...view.outside, ...view.spikes]);
+  const dotsAt = (indices: readonly number[]) => {
+    const thin = decimate(
+      indices.map((index) => time[index] ?? 0),
+      indices.map((index) => signal[index] ?? 0),
+      columns,
+    );
     return thin.x.map((value, i) => `M${area.x(value)} ${area.y(thin.y[i] ?? 0)}h0`).join("");
   };
+  const dots = (from: number, to: number) =>
+    dotsAt(Array.from({ length: to - from }, (_, i) => from + i).filter((index) => !notFitted.has(index)));
+  const crosses = view.spikes.map((index) => {
+    const [x, y] = [area.x(time[index] ?? 0), area.y(signal[index] ?? 0)];
+    return `M${x - 4} ${y - 4}l8 8M${x - 4} ${y + 4}l8 -8`;
+  });
   return (
     <g fill="none" strokeLinecap="round">
       <path d={dots(0, fromIndex) + dots(toIndex + 1, time.length)} stroke="var(--ctl)" strokeWidth="3.2" />
       <path d={dots(fromIndex, toIndex + 1)} stroke="var(--ink)" strokeWidth="3.4" />
+      {view.outside.length > 0 && <path d={dotsAt(view.outside)} stroke="var(--ink-3)" strokeWidth="1.5" />}
+      {crosses.length > 0 && <path d={crosses.join("")} stroke="var(--stop)" strokeWidth="1.6" />}
     </g>
   );
 }

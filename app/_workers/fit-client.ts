@@ -1,10 +1,16 @@
 import { type Remote, transfer, wrap } from "comlink";
-import type { InitialRate, InitialRateOptions } from "kinetics-core/initial-rate";
+import type {
+  InitialRate,
+  InitialRateOptions,
+  ProposedSpikes,
+  TraceCounts,
+} from "kinetics-core/initial-rate";
 import type { FitWorker } from "./fit.worker";
 
 /** One trace in a worker of its own: asked for estimates, closed when its page goes. */
 export interface OpenTrace {
-  estimate(options: InitialRateOptions): Promise<InitialRate | null>;
+  estimate(counts: TraceCounts, options: InitialRateOptions): Promise<InitialRate | null>;
+  lookForSpikes(counts: TraceCounts): Promise<ProposedSpikes | null>;
   close(): void;
 }
 
@@ -14,7 +20,8 @@ export async function openTrace(time: Float64Array, signal: Float64Array): Promi
   const remote: Remote<FitWorker> = wrap<FitWorker>(worker);
   await remote.open(transfer(time, [time.buffer]), transfer(signal, [signal.buffer]));
   return {
-    estimate: (options) => remote.estimate(options),
+    estimate: (counts, options) => remote.estimate(counts, options),
+    lookForSpikes: (counts) => remote.lookForSpikes(counts),
     close: () => worker.terminate(),
   };
 }

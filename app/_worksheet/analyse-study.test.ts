@@ -1,9 +1,13 @@
+import { countedReadings, estimateInitialRate } from "kinetics-core/initial-rate";
 import { afterAll, beforeAll, describe, expect, test, vi } from "vitest";
 import type { Sheet } from "@/db/sheet/sheet.schema";
 import { type TemporaryDatabase, temporaryDatabase } from "@/db/testing/temporary-database";
+import { readTrace } from "@/db/trace/read-trace";
 import { writeTrace } from "@/db/trace/write-trace";
 import { exampleRun, exampleSheet } from "@/tests/example-sheet";
+import { rateOptions } from "./run-rate";
 import { standingLawView } from "./standing-law.view";
+import { traceCounts } from "./trace-counts";
 
 /**
  * Exact pseudo-first-order traces of A + B → P at k = 12 L mol⁻¹ s⁻¹ with a ripple in place of noise: the initial
@@ -66,6 +70,42 @@ describe("analysis of a study", () => {
       expect(Math.abs(error)).toBeLessThan(4 * rate.standardError);
       expect(run.state).toBe("standing");
     }
+  });
+
+  test("what a run says of its trace decides what is fitted, in the record as in the preview", async () => {
+    const { analyseStudy } = await freshly();
+    const [first, ...rest] = sheet.runs;
+    if (first?.trace == null) throw new Error("the first run has a trace");
+    const { timeSeconds, signal } = await readTrace(temporary.db, first.trace.sha256);
+    const step = timeSeconds[1] ?? 0;
+    // Eight readings that a bubble lifted, two of them inside the part that counts and marked.
+    const spoiled = signal.map((value, i) => (i < 6 || i === 20 || i === 40 ? value + 0.2 : value));
+    const sha256 = await temporary.db
+      .transaction()
+      .execute((trx) => writeTrace(trx, { timeSeconds, signal: spoiled }));
+    const marked = {
+      ...first,
+      trace: { ...first.trace, sha256 },
+      deadTimeSeconds: 6 * step,
+      trim: { fromSeconds: 0, toSeconds: 150 * step },
+      spikes: [20, 40],
+    };
+    const analysis = await analyseStudy(temporary.db, { ...sheet, runs: [marked, ...rest] });
+    const rate = analysis.runs[0]?.rate;
+    if (rate?.kind !== "estimated") throw new Error("a rate is estimated");
+    const truth = K * RECIPES[0].A * RECIPES[0].B;
+    expect(Math.abs(rate.molarPerSecond - truth)).toBeLessThan(4 * rate.standardError);
+    // The worker in the browser: the stored readings, what counts of them, and the options of the record.
+    const preview = estimateInitialRate(
+      countedReadings({ time: timeSeconds, signal: spoiled }, traceCounts(marked)),
+      rateOptions(sheet, marked, analysis.rule?.rule ?? null),
+    );
+    expect(preview).toEqual(rate.initialRate);
+
+    const unmarked = { ...marked, spikes: [20] };
+    const other = await analyseStudy(temporary.db, { ...sheet, runs: [unmarked, ...rest] });
+    expect(other.hash).not.toBe(analysis.hash);
+    expect(other.runs[0]?.rate).not.toEqual(rate);
   });
 
   test("a sheet whose traces give no usable rate says why, and where it is mended", async () => {

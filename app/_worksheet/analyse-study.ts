@@ -18,6 +18,7 @@ import { runMarks } from "./run-marks";
 import { rateOfReaction, rateOptions } from "./run-rate";
 import { keepStage, makeStage } from "./stage";
 import { initialRateSchema, traceSurveySchema } from "./stored-results";
+import { type CountedTrace, countedTrace } from "./trace-counts";
 import { type TraceReader, traceReader } from "./trace-reader";
 
 /**
@@ -105,20 +106,23 @@ async function findRule(
   runs: readonly SheetRun[],
   readTrace: TraceReader,
 ): Promise<StudyRuleChoice | null> {
-  const standing = runs.flatMap((run) =>
-    run.trace === null || run.setAside !== null
-      ? []
-      : [{ sha256: run.trace.sha256, timeZero: run.timeZeroSeconds, signalSpan: signalSpan(sheet, run) }],
-  );
-  const surveys = await keepStage(db, surveyStage, standing, async ({ sha256, ...rest }) =>
-    surveyed({ label: sha256, trace: await readTrace(sha256), ...rest }),
+  const standing = runs.flatMap((run) => {
+    const counted = run.setAside === null ? countedTrace(run) : null;
+    return counted === null ? [] : [{ ...counted, signalSpan: signalSpan(sheet, run) }];
+  });
+  const surveys = await keepStage(db, surveyStage, standing, async ({ signalSpan: span, ...counted }) =>
+    surveyed({
+      label: counted.sha256,
+      trace: await readTrace(counted),
+      timeZero: counted.counts.timeZero,
+      signalSpan: span,
+    }),
   );
   return chooseFromSurveys(surveys);
 }
 
 /** What a rate depends on; equal inputs, equal rate, whatever run they belong to. */
-interface RateInput {
-  readonly sha256: string;
+interface RateInput extends CountedTrace {
   readonly options: InitialRateOptions;
 }
 
@@ -132,12 +136,15 @@ async function findRates(
   const rates = new Map<string, RunRate>();
   for (const run of runs)
     if (run.enteredRate !== null) rates.set(run.id, { kind: "entered", ...run.enteredRate });
-  const traced = runs.flatMap((run) => (run.trace === null ? [] : [{ run, sha256: run.trace.sha256 }]));
+  const traced = runs.flatMap((run) => {
+    const counted = countedTrace(run);
+    return counted === null ? [] : [{ run, counted }];
+  });
   const inputs = traced.map(
-    ({ run, sha256 }): RateInput => ({ sha256, options: rateOptions(sheet, run, rule?.rule ?? null) }),
+    ({ run, counted }): RateInput => ({ ...counted, options: rateOptions(sheet, run, rule?.rule ?? null) }),
   );
-  const estimates = await keepStage(db, rateStage, inputs, async ({ sha256, options }) =>
-    estimated(await readTrace(sha256), options),
+  const estimates = await keepStage(db, rateStage, inputs, async ({ options, ...counted }) =>
+    estimated(await readTrace(counted), options),
   );
   // A measured trace goes before a rate typed in by hand.
   for (const [index, { run }] of traced.entries()) {

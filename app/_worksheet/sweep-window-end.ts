@@ -5,6 +5,7 @@ import type { SheetRun } from "@/db/sheet/sheet.schema";
 import { type SweepOptions, swept } from "./measure-trace";
 import { keepStage, makeStage } from "./stage";
 import { slopesAtEndSchema } from "./stored-results";
+import { countedTrace } from "./trace-counts";
 import { traceReader } from "./trace-reader";
 
 const sweepStage = makeStage("sweep", slopesAtEndSchema);
@@ -19,13 +20,14 @@ export async function sweepWindowEnd(
   estimate: InitialRateFound,
 ): Promise<readonly SlopeAtEnd[]> {
   const options = sweepOptions(run, estimate);
-  if (run.trace === null || options === null) return [];
+  const counted = countedTrace(run);
+  if (counted === null || options === null) return [];
   const readTrace = traceReader(db);
   const [sweep] = await keepStage(
     db,
     sweepStage,
-    [{ sha256: run.trace.sha256, options }],
-    async ({ sha256, options: asked }) => swept(await readTrace(sha256), asked),
+    [{ ...counted, options }],
+    async ({ options: asked, ...wanted }) => swept(await readTrace(wanted), asked),
   );
   return sweep ?? [];
 }

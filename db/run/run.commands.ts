@@ -201,7 +201,11 @@ export function setTimeZero(
   );
 }
 
-function onRuns(runIds: readonly string[], edit: (run: SheetRun, revision: number) => SheetRun): Apply {
+/** Edits the runs that are named; refused where one of them is not on the sheet. */
+export function onRuns(
+  runIds: readonly string[],
+  edit: (run: SheetRun, revision: number) => SheetRun,
+): Apply {
   return (sheet, revision) => {
     const ids = new Set(runIds);
     if (ids.size === 0) return { refused: "No run was named. Select runs first." };
@@ -214,7 +218,7 @@ function onRuns(runIds: readonly string[], edit: (run: SheetRun, revision: numbe
 }
 
 /** "R03 and R10 set aside: …" with the labels as they were before the change. */
-function about(runIds: readonly string[], done: string): ChangeNote["summary"] {
+export function about(runIds: readonly string[], done: string): ChangeNote["summary"] {
   return (before) => `${labels(before.runs.filter((run) => runIds.includes(run.id)))} ${done}.`;
 }
 

@@ -159,6 +159,12 @@ export const rules: Readonly<Record<string, Rule>> = {
       window: { fromSeconds: 0, toSeconds: 10 },
     }),
   ),
+  "action app/(bench)/studies/[studyId]/rates/actions.ts#saveTraceMarks": group(
+    ({ studyId, revision, runId }) => ({ studyId, base: revision, runId, deadTimeSeconds: 1 }),
+  ),
+  "action app/(bench)/studies/[studyId]/rates/actions.ts#saveSpikes": group(
+    ({ studyId, revision, runId }) => ({ studyId, base: revision, runId, places: [1] }),
+  ),
   "action app/(bench)/studies/[studyId]/rates/actions.ts#saveTimeZero": group(
     ({ studyId, revision, runId }) => ({ studyId, base: revision, runId, timeZeroSeconds: 1 }),
   ),

@@ -1,8 +1,8 @@
 import type { Kysely } from "kysely";
 import type { Database } from "@/db/database";
 import type { Sheet } from "@/db/sheet/sheet.schema";
+import { readTrace } from "@/db/trace/read-trace";
 import { presentRuns } from "../present-runs";
-import { traceReader } from "../trace-reader";
 import { commaSeparated } from "./runs-and-rates";
 
 /** Some milliseconds of work, after which other requests have their turn: one trace may hold millions. */
@@ -17,7 +17,7 @@ export async function* tracesTable(db: Kysely<Database>, sheet: Sheet): AsyncGen
   yield commaSeparated([["run", "time / s", quantity]]);
   for (const run of presentRuns(sheet)) {
     if (run.trace === null) continue;
-    const { time, signal } = await traceReader(db)(run.trace.sha256);
+    const { timeSeconds: time, signal } = await readTrace(db, run.trace.sha256);
     for (let start = 0; start < time.length; start += READINGS_AT_ONCE) {
       const length = Math.min(READINGS_AT_ONCE, time.length - start);
       yield commaSeparated(

@@ -44,7 +44,7 @@ describe("the readings of a trace that are fitted", () => {
       { time, signal: spoiled },
       { timeZero: 0, deadTime: 3, trim: null, spikes: [9] },
     );
-    const clean = { time: [...counted.time], signal: Array.from(counted.time, (t) => 0.1 + 0.02 * t) };
+    const clean = { time: Array.from(counted.time), signal: Array.from(counted.time, (t) => 0.1 + 0.02 * t) };
     const rate = estimateInitialRate(counted, { signalSpan: 2 });
     expect(rate).toEqual(estimateInitialRate(clean, { signalSpan: 2 }));
     if (rate.status !== "found") throw new Error(rate.message);

@@ -46,6 +46,12 @@ describe("a proposal of spikes", () => {
     expect(proposeSpikes({ time, signal: rounded }, everything).places).toEqual([]);
   });
 
+  it("takes no jump of the whole trace for spikes", () => {
+    const { time, signal } = trace(300, 8);
+    const jumped = signal.map((value, i) => (i < 150 ? value : value + 0.5));
+    expect(proposeSpikes({ time, signal: jumped }, everything).places).toEqual([]);
+  });
+
   it("names places in the stored trace and looks at readings that count only", () => {
     const { time, signal } = trace(200, 5);
     const spoiled = signal.map((value, i) => value + (i === 8 || i === 50 || i === 90 ? 0.3 : 0));

@@ -18,6 +18,7 @@ import type { Trace } from "./initial-rate";
  * make spikes there. A reading is proposed where |e_i| > z·s, z being the normal quantile at which a trace of N
  * readings without a spike has one proposed in 5 % of cases at most (Bonferroni over both sides), and where it stands
  * off by more than a thousandth of the trace's height: less does no harm, and a trace without noise has s near nothing.
+ * More than two beside each other are a step or a drift, which no marking mends, and are not proposed.
  */
 export interface ProposedSpikes {
   /** Places in the trace from 0, rising. */
@@ -30,6 +31,8 @@ export interface ProposedSpikes {
 const NEIGHBOURS = 5;
 /** Readings on each side whose differences make the local median and the local scale. */
 const LOCAL = 7;
+/** Readings beside each other that one spike can take. */
+const LONGEST_SPIKE = 2;
 /** Chance that a trace without a spike has one proposed. */
 const FALSE_PROPOSALS = 0.05;
 /** Of the height of the trace: what stands off by less moves no rate. */
@@ -58,7 +61,17 @@ export function proposeSpikes(trace: Trace, counts: TraceCounts): ProposedSpikes
     if (!(size > Math.max(z * overall, floor))) continue;
     if (size > z * NORMAL_SCALE * medianAround(magnitudes, i, near)) found.push(places[i + NEIGHBOURS] ?? 0);
   }
-  return { places: found, standOff: Math.max(z * overall, floor) };
+  return { places: withoutSteps(found), standOff: Math.max(z * overall, floor) };
+}
+
+/** Leaves out what stands in a row of more than two. */
+function withoutSteps(places: readonly number[]): number[] {
+  return places.filter((place, i) => {
+    let row = 1;
+    for (let back = 1; places[i - back] === place - back; back++) row++;
+    for (let on = 1; places[i + on] === place + on; on++) row++;
+    return row <= LONGEST_SPIKE;
+  });
 }
 
 /** e of every reading that has five neighbours on each side. */

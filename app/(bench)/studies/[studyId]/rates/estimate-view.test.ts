@@ -15,7 +15,16 @@ const run = {
   mark: { series: "base", level: 0, levels: 1, repeat: false },
   setAside: false,
 } as const;
-const trace: ShownTrace = { run, seconds, signal, timeZeroSeconds: 0 };
+const trace: ShownTrace = {
+  run,
+  seconds,
+  signal,
+  timeZeroSeconds: 0,
+  places: seconds.map((_, index) => index),
+  outside: [],
+  spikes: [],
+  counts: [0, 59.5],
+};
 const estimate = estimateInitialRate({ time: seconds, signal }, { signalSpan: 0.9 });
 
 function sheetIn(timeUnit: "s" | "min") {
@@ -44,6 +53,17 @@ describe("an estimate on its trace", () => {
     const inside = seconds.filter((time) => time >= figure.window[0] && time <= figure.window[1]);
     expect(figure.residuals?.x).toEqual(inside);
     expect(Math.max(...(figure.residuals?.y ?? []).map(Math.abs))).toBeLessThan(1.2e-3);
+  });
+
+  test("has no residual for a reading that is not fitted", () => {
+    const { figure } = estimateView(
+      { ...trace, outside: [0, 1], spikes: [4] },
+      traceScale(sheetIn("s")),
+      estimate,
+    );
+    const all = estimateView(trace, traceScale(sheetIn("s")), estimate).figure.residuals?.x ?? [];
+    expect(figure.residuals?.x).toEqual(all.filter((time) => ![0, 0.5, 2].includes(time)));
+    expect(figure).toMatchObject({ outside: [0, 1], spikes: [4] });
   });
 
   test("shares out its uncertainty between the fit and the calibration", () => {
@@ -116,6 +136,42 @@ describe("the list of rates", () => {
     expect(selectRun(analysis, undefined)?.label).toBe("R02");
     expect(selectRun(analysis, "R01")?.label).toBe("R01");
     expect(selectRun(analysis, "R99")).toBeNull();
+  });
+
+  test("shows what is not fitted, and every spike of a long trace", () => {
+    const [first] = analysis.runs;
+    if (first === undefined) throw new Error("there is a first run");
+    const many = 20_000;
+    const stored = {
+      timeSeconds: Float64Array.from({ length: many }, (_, i) => i * 0.01),
+      signal: Float64Array.from({ length: many }, (_, i) => i * 1e-5 + 1e-6 * Math.sin(i)),
+    };
+    const row = {
+      ...exampleRun(0, { A: 5e-5, B: 2e-3 }),
+      trace: { sha256: "0".repeat(64), points: many, uploadId: null, column: "" },
+      deadTimeSeconds: 2,
+      trim: { fromSeconds: 0, toSeconds: 190 },
+      spikes: [7777, 12_345],
+    };
+    const rate = { kind: "estimated" as const, molarPerSecond: 1, standardError: 1, byHand: false };
+    if (estimate.status !== "found") throw new Error(estimate.message);
+    const { trace: drawn, marks } = runRateView(
+      { ...sheet, runs: [row] },
+      analysis,
+      { ...first, rate: { ...rate, initialRate: estimate } },
+      stored,
+      [],
+    );
+    const shown = drawn?.shown;
+    if (shown === undefined) throw new Error("the trace is drawn");
+    expect(shown.places.length).toBeLessThan(5000);
+    expect(shown.spikes.map((index) => shown.places[index])).toEqual([7777, 12_345]);
+    const outside = new Set(shown.outside);
+    expect(shown.seconds.filter((_, index) => outside.has(index))).toEqual(
+      shown.seconds.filter((at) => at < 2 || at > 190),
+    );
+    expect(marks).toMatchObject({ deadTime: "2", from: "0", to: "190", end: "", ends: [0, 199.99] });
+    expect(marks?.spikes[0]).toMatchObject({ place: 7777, time: "77.77" });
   });
 
   test("says of an entered rate what it is, with its neighbours and its recipe", () => {

@@ -12,6 +12,14 @@ export interface ShownTrace {
   /** In the shown unit. */
   readonly signal: readonly number[];
   readonly timeZeroSeconds: number;
+  /** Place of each shown reading in the stored trace, from 0. */
+  readonly places: readonly number[];
+  /** Shown readings, by their index here, that are not fitted: in the dead time or outside the part that counts. */
+  readonly outside: readonly number[];
+  /** Shown readings, by their index here, that are marked as spikes. */
+  readonly spikes: readonly number[];
+  /** Part of the trace that counts, first and last second of it. */
+  readonly counts: readonly [number, number];
 }
 
 /** One estimate on its trace, whether on record or a preview while a handle moves: the same function makes both. */
@@ -34,7 +42,17 @@ const CURVE_POINTS = 60;
 export function estimateView(trace: ShownTrace, scale: TraceScale, estimate: InitialRate): EstimateView {
   const axes = { x: { quantity: "time", unit: scale.timeUnit }, y: scale.signal };
   const time = trace.seconds.map((at) => at / scale.secondsPerTime);
-  const bare = { run: trace.run, ...axes, time, signal: trace.signal, leastPoints: LEAST_POINTS };
+  const bare = {
+    run: trace.run,
+    ...axes,
+    time,
+    signal: trace.signal,
+    timeZero: trace.timeZeroSeconds / scale.secondsPerTime,
+    outside: trace.outside,
+    spikes: trace.spikes,
+    counts: [trace.counts[0] / scale.secondsPerTime, trace.counts[1] / scale.secondsPerTime] as const,
+    leastPoints: LEAST_POINTS,
+  };
   if (estimate.status !== "found") {
     const ends = [time[0] ?? 0, time.at(-1) ?? 0] as const;
     return {
@@ -104,8 +122,9 @@ function residualsOf(trace: ShownTrace, scale: TraceScale, estimate: InitialRate
   const [from, to] = estimate.window;
   const x: number[] = [];
   const y: number[] = [];
+  const notFitted = new Set([...trace.outside, ...trace.spikes]);
   for (const [index, seconds] of trace.seconds.entries()) {
-    if (seconds < from || seconds > to) continue;
+    if (seconds < from || seconds > to || notFitted.has(index)) continue;
     const fitted = evaluateCurve(estimate.curve, seconds - trace.timeZeroSeconds);
     x.push(seconds / scale.secondsPerTime);
     y.push((trace.signal[index] ?? 0) - fitted * scale.signalFactor);

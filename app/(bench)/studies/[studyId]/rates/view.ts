@@ -1,6 +1,5 @@
-import type { InitialRate, InitialRateOptions, SlopeAtEnd } from "kinetics-core/initial-rate";
+import type { InitialRate, InitialRateOptions, SlopeAtEnd, TraceCounts } from "kinetics-core/initial-rate";
 import { printNumber, printUncertain } from "kinetics-core/quantities";
-import { decimate } from "@/app/_figures/decimate";
 import type { DependenceView } from "@/app/_figures/figure-view";
 import type { PrintedNumber } from "@/app/_ui/law-view";
 import type { Check, RunAnalysis, StudyAnalysis } from "@/app/_worksheet/analysis";
@@ -9,8 +8,10 @@ import { lawName } from "@/app/_worksheet/law-name";
 import { lawSpecies } from "@/app/_worksheet/present-runs";
 import { columnOf, type PrintedColumn } from "@/app/_worksheet/printed-column";
 import { rateOptions } from "@/app/_worksheet/run-rate";
+import { traceCounts } from "@/app/_worksheet/trace-counts";
 import type { Sheet, SheetRun } from "@/db/sheet/sheet.schema";
 import { fitInWords, inWords, type ShownTrace } from "./estimate-view";
+import { marksOf, type StoredTrace, shownTrace, type TraceMarksView } from "./shown-trace";
 import { type TraceScale, traceScale } from "./trace-scale";
 
 /** Plain props of the Rates station: every run's rate, and one run's trace with how its rate came about. */
@@ -39,12 +40,6 @@ export interface RuleView {
   readonly reason: string;
 }
 
-/** Trace of the run that is looked at, in seconds and signal as stored. */
-export interface StoredTrace {
-  readonly timeSeconds: ArrayLike<number>;
-  readonly signal: ArrayLike<number>;
-}
-
 export interface RunRateView {
   readonly runId: string;
   readonly label: string;
@@ -63,8 +58,8 @@ export interface RunRateView {
   readonly checks: readonly Check[];
   readonly previous: string | null;
   readonly next: string | null;
-  /** In the shown unit of time; null for a run without a trace, which has no clock. */
-  readonly timeZero: string | null;
+  /** What the run says of its trace, as it stands in boxes; null for a run without a trace, which has no clock. */
+  readonly marks: TraceMarksView | null;
   readonly timeScale: Pick<TraceScale, "timeUnit" | "secondsPerTime">;
 }
 
@@ -74,6 +69,8 @@ export interface TraceOfRun {
   readonly shown: ShownTrace;
   readonly scale: TraceScale;
   readonly estimate: InitialRate;
+  /** Which readings are fitted. */
+  readonly counts: TraceCounts;
   /** As the server estimates, but for the window. */
   readonly options: Omit<InitialRateOptions, "window">;
 }
@@ -84,9 +81,6 @@ export interface EstimatorRow {
   readonly rate: PrintedNumber;
   readonly reported: boolean;
 }
-
-/** A longer trace is thinned for the drawing; the estimate always sees every reading. */
-const DRAWN_COLUMNS = 1000;
 
 export function ratesView(sheet: Sheet, analysis: StudyAnalysis): RatesView {
   const display = rateDisplay(sheet);
@@ -173,6 +167,7 @@ export function runRateView(
             shown,
             scale,
             estimate,
+            counts: traceCounts(row),
             options: rateOptions(sheet, { ...row, window: null }, analysis.rule?.rule ?? null),
           },
     entered:
@@ -188,27 +183,8 @@ export function runRateView(
     checks: analysis.checks.filter((check) => check.runId === selected.runId),
     previous: analysis.runs[at - 1]?.label ?? null,
     next: analysis.runs[at + 1]?.label ?? null,
-    timeZero:
-      row === undefined || row.trace === null
-        ? null
-        : String(Number((row.timeZeroSeconds / scale.secondsPerTime).toPrecision(6))),
+    marks: row === undefined || stored === null ? null : marksOf(row, scale, stored),
     timeScale: { timeUnit: scale.timeUnit, secondsPerTime: scale.secondsPerTime },
-  };
-}
-
-function shownTrace(
-  selected: RunAnalysis,
-  row: SheetRun,
-  scale: TraceScale,
-  stored: StoredTrace,
-): ShownTrace {
-  const signal = Array.from(stored.signal, (value) => value * scale.signalFactor);
-  const thinned = decimate(Array.from(stored.timeSeconds), signal, DRAWN_COLUMNS);
-  return {
-    run: { label: selected.label, mark: selected.mark, setAside: selected.state === "set-aside" },
-    seconds: thinned.x,
-    signal: thinned.y,
-    timeZeroSeconds: row.timeZeroSeconds,
   };
 }
 

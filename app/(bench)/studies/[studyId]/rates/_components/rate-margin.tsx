@@ -5,33 +5,24 @@ import { CheckNote } from "@/app/_ui/check";
 import { MarginSection } from "@/app/_ui/margin";
 import { typeset } from "@/app/_ui/prose";
 import type { RuleView, RunRateView } from "../view";
+import { SpikeList } from "./spike-list";
 import { TimeZeroForm } from "./time-zero-form";
+import { TraceMarksForm } from "./trace-marks-form";
 import type { RunTarget, SavedWindow, StudyChange } from "./use-saved-window";
+import type { TraceMarks } from "./use-trace-marks";
 
 /** Where the window lies and what the fit on it says, following the handles. */
 export function WindowSection({
-  target,
   run,
   window,
-  change,
   canEdit,
 }: {
-  target: RunTarget;
   run: RunRateView;
   window: SavedWindow;
-  change: StudyChange;
   canEdit: boolean;
 }) {
   const { shown } = window;
-  // A time zero behind the last reading leaves no window, and is still there to be mended.
-  const timeZero = canEdit && run.timeZero !== null && (
-    <TimeZeroForm change={change} target={target} saved={run.timeZero} scale={run.timeScale} />
-  );
-  if (shown === null) {
-    return timeZero === false ? null : (
-      <MarginSection title={`Clock of ${run.label}`}>{timeZero}</MarginSection>
-    );
-  }
+  if (shown === null) return null;
   return (
     <MarginSection title={`Window of ${run.label}`}>
       <dl className="fact-list">
@@ -53,7 +44,37 @@ export function WindowSection({
           </Button>
         </p>
       )}
-      {timeZero}
+    </MarginSection>
+  );
+}
+
+/**
+ * Clock, dead time, what counts and spikes. Where they leave nothing to fit there is no window, and they are still there to
+ * be mended.
+ */
+export function TraceMarksSection({
+  target,
+  run,
+  window,
+  marks,
+  change,
+}: {
+  target: RunTarget;
+  run: RunRateView;
+  window: SavedWindow;
+  marks: TraceMarks;
+  change: StudyChange;
+}) {
+  const said = run.marks;
+  if (said === null) return null;
+  return (
+    <MarginSection title={`What counts of ${run.label}`}>
+      <TimeZeroForm change={change} target={target} saved={said.timeZero} scale={run.timeScale} />
+      <TraceMarksForm change={change} target={target} marks={said} scale={run.timeScale} />
+      {run.trace !== null && (
+        <SpikeList run={run} trace={run.trace} said={said} window={window} marks={marks} />
+      )}
+      {marks.problem !== null && <p className="field-error mt-1">{marks.problem}</p>}
     </MarginSection>
   );
 }

@@ -9,9 +9,10 @@ import { useStudyChange } from "../../../_change/use-study-change";
 import type { RatesView, RunRateView } from "../view";
 import { DependencePart, EstimatorTable, SourceTable } from "./how-it-came-about";
 import { RateList } from "./rate-list";
-import { RateChecks, RuleSection, WindowSection } from "./rate-margin";
+import { RateChecks, RuleSection, TraceMarksSection, WindowSection } from "./rate-margin";
 import { TraceWindow } from "./trace-window";
 import { useSavedWindow } from "./use-saved-window";
+import { useTraceMarks } from "./use-trace-marks";
 
 /** One run at a time: its trace with the window in the middle, all runs' rates beside it, what speaks in the margin. */
 export function RatesBench({
@@ -30,6 +31,7 @@ export function RatesBench({
   const target = { studyId, base: revision, runId: run.runId };
   const change = useStudyChange(studyId);
   const window = useSavedWindow(target, run, change);
+  const marks = useTraceMarks(target, run, change);
   const shown = window.shown?.rate ?? run.entered;
   const address = (label: string) => `/studies/${studyId}/rates?run=${encodeURIComponent(label)}`;
   return (
@@ -61,7 +63,10 @@ export function RatesBench({
       }
       margin={
         <Margin label={`Window and checks of ${run.label}`}>
-          <WindowSection target={target} run={run} window={window} change={change} canEdit={canEdit} />
+          <WindowSection run={run} window={window} canEdit={canEdit} />
+          {canEdit && (
+            <TraceMarksSection target={target} run={run} window={window} marks={marks} change={change} />
+          )}
           {rates.rule !== null && <RuleSection rule={rates.rule} />}
           <RateChecks run={run} />
         </Margin>
@@ -73,7 +78,7 @@ export function RatesBench({
         </div>
         <div className="min-w-0">
           {run.trace !== null && window.shown !== null && (
-            <TraceWindow run={run} trace={run.trace} window={window} canEdit={canEdit} />
+            <TraceWindow run={run} trace={run.trace} window={window} marks={marks} canEdit={canEdit} />
           )}
           {run.trace === null && run.entered !== null && (
             <p>

@@ -1,5 +1,6 @@
 "use client";
 
+import type { ProposedSpikes } from "kinetics-core/initial-rate";
 import { useState, useTransition } from "react";
 import type { WindowChoice } from "@/app/_figures/figure-view";
 import type { useStudyChange } from "../../../_change/use-study-change";
@@ -28,6 +29,7 @@ export interface SavedWindow {
   commit(choice: WindowChoice): void;
   /** Gives the run back to the study's rule. */
   reset(): void;
+  lookForSpikes(): Promise<ProposedSpikes | null>;
 }
 
 export function useSavedWindow(target: RunTarget, run: RunRateView, change: StudyChange): SavedWindow {
@@ -72,5 +74,6 @@ export function useSavedWindow(target: RunTarget, run: RunRateView, change: Stud
     preview: (choice) => void live.preview(seconds(choice)),
     commit: (choice) => save(seconds(choice)),
     reset: () => save(null),
+    lookForSpikes: live.lookForSpikes,
   };
 }

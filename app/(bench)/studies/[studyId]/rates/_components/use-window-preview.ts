@@ -1,6 +1,6 @@
 "use client";
 
-import type { InitialRate } from "kinetics-core/initial-rate";
+import type { InitialRate, ProposedSpikes } from "kinetics-core/initial-rate";
 import { useCallback, useEffect, useRef, useState } from "react";
 import { type OpenTrace, openTrace } from "@/app/_workers/fit-client";
 import type { TraceOfRun } from "../view";
@@ -17,6 +17,7 @@ export interface WindowSeconds {
  */
 export function useWindowPreview(address: string, trace: TraceOfRun | null) {
   const options = trace?.options;
+  const counts = trace?.counts;
   const [estimate, setEstimate] = useState<InitialRate | null>(null);
   const [problem, setProblem] = useState<string | null>(null);
   const opened = useRef<Promise<OpenTrace> | null>(null);
@@ -36,7 +37,7 @@ export function useWindowPreview(address: string, trace: TraceOfRun | null) {
   const preview = useCallback(
     async (window: WindowSeconds) => {
       newest.current = window;
-      if (busy.current) return;
+      if (busy.current || counts === undefined) return;
       busy.current = true;
       try {
         opened.current ??= fetchTrace(address);
@@ -44,7 +45,7 @@ export function useWindowPreview(address: string, trace: TraceOfRun | null) {
         while (newest.current !== null) {
           const { fromSeconds, toSeconds } = newest.current;
           newest.current = null;
-          setEstimate(await worker.estimate({ ...options, window: [fromSeconds, toSeconds] }));
+          setEstimate(await worker.estimate(counts, { ...options, window: [fromSeconds, toSeconds] }));
           setProblem(null);
         }
       } catch {
@@ -54,15 +55,27 @@ export function useWindowPreview(address: string, trace: TraceOfRun | null) {
         busy.current = false;
       }
     },
-    [address, options],
+    [address, options, counts],
   );
+
+  /** Readings that stand off their neighbours; null where they could not be looked at. */
+  const lookForSpikes = useCallback(async (): Promise<ProposedSpikes | null> => {
+    if (counts === undefined) return null;
+    try {
+      opened.current ??= fetchTrace(address);
+      return await (await opened.current).lookForSpikes(counts);
+    } catch {
+      opened.current = null;
+      return null;
+    }
+  }, [address, counts]);
 
   const clear = useCallback(() => {
     newest.current = null;
     setEstimate(null);
   }, []);
 
-  return { estimate, problem, preview, clear };
+  return { estimate, problem, preview, lookForSpikes, clear };
 }
 
 async function fetchTrace(address: string): Promise<OpenTrace> {
