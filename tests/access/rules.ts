@@ -41,6 +41,7 @@ export const rules: Readonly<Record<string, Rule>> = {
   "page /studies/[studyId]/set-up": group(),
   "page /studies/[studyId]/runs": group(),
   "page /studies/[studyId]/runs/import": group(),
+  "page /studies/[studyId]/runs/bench-sheet": group(),
   "page /studies/[studyId]/runs/mixing": group(),
   "page /studies/[studyId]/rates": group(),
   "page /studies/[studyId]/rate-law": group(),

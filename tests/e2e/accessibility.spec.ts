@@ -9,7 +9,17 @@ import { makeNineRunStudy, NINE_RUNS_FILE } from "./nine-runs";
 
 const AXE = readFileSync(path.resolve(import.meta.dirname, "../../node_modules/axe-core/axe.min.js"), "utf8");
 
-const STATIONS = ["set-up", "runs", "runs?edit", "runs/import", "runs/mixing", "rates", "rate-law", "share"];
+const STATIONS = [
+  "set-up",
+  "runs",
+  "runs?edit",
+  "runs/import",
+  "runs/mixing",
+  "runs/bench-sheet",
+  "rates",
+  "rate-law",
+  "share",
+];
 
 let sharedPage: string;
 

@@ -13,6 +13,7 @@ import { drawnTraces } from "@/app/_server/drawn-traces";
 import { CheckNote } from "@/app/_ui/check";
 import { InventedBanner } from "@/app/_ui/invented-banner";
 import { Constant, LawExpression } from "@/app/_ui/law";
+import { PrintButton } from "@/app/_ui/print-button";
 import { typeset } from "@/app/_ui/prose";
 import { RunningHead } from "@/app/_ui/running-head";
 import { SectionTitle } from "@/app/_ui/sheet";
@@ -22,7 +23,6 @@ import { analyseStudy } from "@/app/_worksheet/analyse-study";
 import { gatherNotes } from "@/app/_worksheet/checks/gather-notes";
 import { presentRuns } from "@/app/_worksheet/present-runs";
 import { standingLawView } from "@/app/_worksheet/standing-law.view";
-import { PrintButton } from "./_components/print-button";
 import { SharedRuns } from "./_components/shared-runs";
 import { openLink } from "./open-link";
 import "./share.css";
@@ -60,7 +60,7 @@ export default async function SharedStudyPage({ params }: Props) {
   const law = standing.law;
   return (
     <>
-      <RunningHead home={null} aside={page.asOf} actions={<PrintButton />} />
+      <RunningHead home={null} aside={page.asOf} actions={<PrintButton size="small" />} />
       {sheet.study.invented && <InventedBanner />}
       <main id="main" tabIndex={-1} className="shared-sheet">
         <article>

@@ -10,12 +10,12 @@ import { newIdentifier } from "@/db/identifier";
 import type { Sheet } from "@/db/sheet/sheet.schema";
 import { changeStudy } from "@/db/study/change-study";
 import { readStudy } from "@/db/study/study.queries";
+import { type MixingShape, mixingCells, newMixture, readMixingCells } from "../_mixing/mixing-row";
+import { stockHead } from "../_mixing/stock-amounts";
 import { keptRows } from "../kept-rows";
 import { rowsInput } from "../schema";
 import { withoutStock, withStock } from "./change-stocks";
 import { readDispensingForm } from "./dispensing-form";
-import { stockHead } from "./mixing-grid.view";
-import { type MixingShape, mixingCells, newMixture, readMixingCells } from "./mixing-row";
 import { dispensingInput, removeStockInput, stockInput } from "./schema";
 import { readStockForm } from "./stock-form";
 

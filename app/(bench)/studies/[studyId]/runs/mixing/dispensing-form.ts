@@ -1,7 +1,7 @@
 import { parseNumber } from "@/app/_worksheet/typed-number/parse-number";
 import { typedNumber } from "@/app/_worksheet/typed-number/print-typed";
 import type { Mixing } from "@/db/sheet/sheet.schema";
-import { microlitres, volumeText } from "./mixing-row";
+import { microlitres, volumeText } from "../_mixing/mixing-row";
 import type { DispensingForm } from "./schema";
 
 /** How volumes are dispensed, as boxes of text and back: small deliveries by a fixed error, larger ones in proportion. */

@@ -3,9 +3,10 @@ import { concentrationDisplay } from "@/app/_worksheet/display-units";
 import { lawName } from "@/app/_worksheet/law-name";
 import { type Preparation, stockName } from "@/app/_worksheet/mixing/mixing-input";
 import { presentRuns } from "@/app/_worksheet/present-runs";
-import type { Sheet, SheetRun, SheetStock } from "@/db/sheet/sheet.schema";
-import { MARK, type MixingShape, mixingCells, VOLUME, VOLUME_UNITS } from "./mixing-row";
-import { CONCENTRATION, type Mixture, mixedSpecies, mixturesOf, STRENGTH, TOTAL } from "./mixture";
+import type { Sheet, SheetRun } from "@/db/sheet/sheet.schema";
+import { MARK, type MixingShape, mixingCells, VOLUME, VOLUME_UNITS } from "../_mixing/mixing-row";
+import { CONCENTRATION, type Mixture, mixedSpecies, mixturesOf, STRENGTH, TOTAL } from "../_mixing/mixture";
+import { stockHead } from "../_mixing/stock-amounts";
 
 /** The mixing table: volumes in, what they come to out. */
 export interface MixingGridView {
@@ -82,11 +83,6 @@ export function mixingGridView(sheet: Sheet, analysis: StudyAnalysis): MixingGri
 
 function isMeasured(run: SheetRun): boolean {
   return run.trace !== null || run.enteredRate !== null;
-}
-
-/** "Stock A", and a medium by its name. */
-export function stockHead(stock: Pick<SheetStock, "symbol" | "name">): string {
-  return stock.symbol === "" ? stock.name : `Stock ${stock.symbol}`;
 }
 
 function columnsOf(

@@ -1,7 +1,7 @@
 import { describe, expect, it } from "vitest";
+import { mixturesOf } from "../_mixing/mixture";
+import { mixedSheet, NO_ANALYSIS } from "../_mixing/testing-mixtures";
 import { mixingGridView } from "./mixing-grid.view";
-import { mixturesOf } from "./mixture";
-import { mixedSheet, NO_ANALYSIS } from "./testing-mixtures";
 import { typedMixture, typedWords } from "./typed-mixture";
 
 describe("what a row of volumes comes to", () => {

@@ -35,7 +35,12 @@ export default async function MixingPage({ params }: Props) {
       <Sheet
         title={view.title}
         lead="Volumes in, concentrations after mixing out, ± one standard uncertainty. Shaded columns are worked out."
-        actions={<ButtonLink href={`/studies/${studyId}/runs`}>Traces</ButtonLink>}
+        actions={
+          <>
+            <ButtonLink href={`/studies/${studyId}/runs`}>Traces</ButtonLink>
+            <ButtonLink href={`/studies/${studyId}/runs/bench-sheet`}>Bench sheet</ButtonLink>
+          </>
+        }
         margin={
           <Margin label="Checks">
             <MarginSection title="Checks on the mixtures">

@@ -2,7 +2,8 @@ import { concentrationToMolar, molarTo } from "kinetics-core/quantities";
 import { parseUncertain, type TypedUncertain } from "@/app/_worksheet/typed-number/parse-uncertain";
 import { typedUncertain } from "@/app/_worksheet/typed-number/print-typed";
 import type { ConcentrationUnit, Mixing, Sheet, SheetStock } from "@/db/sheet/sheet.schema";
-import { microlitres, volumeText } from "./mixing-row";
+import { microlitres, volumeText } from "../_mixing/mixing-row";
+import { stockUnit } from "../_mixing/stock-amounts";
 import type { StockForm } from "./schema";
 
 /** A stock as boxes of text and back, read alike in the dialog and on the server. */
@@ -55,12 +56,6 @@ export function stockFormOf(stock: SheetStock, unit: Mixing["volumeUnit"]): Stoc
     madeOn: stock.madeOn,
     howKnown: stock.howKnown,
   };
-}
-
-/** The unit in which its numbers are handy. */
-export function stockUnit({ contents }: Pick<SheetStock, "contents">): ConcentrationUnit {
-  const most = Math.max(0, ...Object.values(contents).map(({ value }) => value));
-  return most === 0 || (most >= 1e-4 && most < 0.5) ? "mmol/L" : most >= 0.5 ? "mol/L" : "umol/L";
 }
 
 export function readStockForm(form: StockForm, { species, mixing }: Known): StockReading {

@@ -1,10 +1,10 @@
 import { describe, expect, it } from "vitest";
 import { remixed } from "@/app/_worksheet/mixing/remixed";
 import { exampleRun } from "@/tests/example-sheet";
+import { exampleStock, mixedSheet } from "../_mixing/testing-mixtures";
 import { withoutStock, withStock } from "./change-stocks";
 import { dispensingFormOf, inVolumeUnit, readDispensingForm } from "./dispensing-form";
 import { EMPTY_STOCK, readStockForm, stockFormOf } from "./stock-form";
-import { exampleStock, mixedSheet } from "./testing-mixtures";
 
 const dilution = exampleStock("d", 3, {
   dilution: {

@@ -1,6 +1,6 @@
+import { MARK, readMixingCells, VOLUME, VOLUME_UNITS } from "../_mixing/mixing-row";
+import { CONCENTRATION, type Mixture, mixturesOf } from "../_mixing/mixture";
 import type { MixingGridView } from "./mixing-grid.view";
-import { MARK, readMixingCells, VOLUME, VOLUME_UNITS } from "./mixing-row";
-import { CONCENTRATION, type Mixture, mixturesOf } from "./mixture";
 
 type Cells = Readonly<Record<string, string>>;
 

@@ -1,6 +1,6 @@
 import { describe, expect, it } from "vitest";
+import { exampleStock, mixedSheet, NO_ANALYSIS } from "../_mixing/testing-mixtures";
 import { headingName, mixingGridView, volumeHeadingFault } from "./mixing-grid.view";
-import { exampleStock, mixedSheet, NO_ANALYSIS } from "./testing-mixtures";
 import { mixingView } from "./view";
 
 describe("the mixing table", () => {

@@ -1,24 +1,19 @@
 import { type MixedRow, mixRuns } from "kinetics-core/mixing";
-import { inARow, printUncertain, verb } from "kinetics-core/quantities";
+import { inARow, verb } from "kinetics-core/quantities";
 import type { Check, CheckSeverity, StudyAnalysis } from "@/app/_worksheet/analysis";
 import { percent } from "@/app/_worksheet/checks/check";
-import { concentrationDisplay } from "@/app/_worksheet/display-units";
-import {
-  deliveryUncertainty,
-  mixingInput,
-  mixingName,
-  stockName,
-} from "@/app/_worksheet/mixing/mixing-input";
+import { deliveryUncertainty, mixingInput, stockName } from "@/app/_worksheet/mixing/mixing-input";
 import { presentRuns } from "@/app/_worksheet/present-runs";
 import { countInWords } from "@/app/_worksheet/words";
 import { isMixed } from "@/db/sheet/mixed-run";
 import type { Sheet, SheetStock } from "@/db/sheet/sheet.schema";
+import { VOLUME_UNITS, volumeText } from "../_mixing/mixing-row";
+import { isMedium } from "../_mixing/mixture";
+import { amountLines, amountsOf, mainMedium } from "../_mixing/stock-amounts";
 import { dispensingFormOf } from "./dispensing-form";
 import type { MixingGridView } from "./mixing-grid.view";
-import { VOLUME_UNITS, volumeText } from "./mixing-row";
-import { isMedium } from "./mixture";
 import type { DispensingForm, StockForm } from "./schema";
-import { stockFormOf, stockUnit } from "./stock-form";
+import { stockFormOf } from "./stock-form";
 
 export interface MixingView {
   readonly title: string;
@@ -117,15 +112,7 @@ function stockRow(sheet: Sheet, stock: SheetStock, solution: MixedRow | null): S
     name: stockName(stock),
     symbol: stock.symbol,
     holds: stock.name,
-    concentrations: amounts.map(({ names, value, uncertainty }) => {
-      const display = concentrationDisplay(
-        stockUnit({ contents: { one: { value, standardUncertainty: uncertainty } } }),
-      );
-      const printed = printUncertain(value * display.factor, uncertainty * display.factor, { power: 0 });
-      const number =
-        printed.uncertainty === null ? printed.value : `${printed.value} ± ${printed.uncertainty}`;
-      return `${amounts.length > 1 ? `${names.join(", ")}: ` : ""}${number} ${display.unit}`;
-    }),
+    concentrations: solution === null ? [] : amountLines(sheet, solution),
     relative: relatives.some((one) => one > 0)
       ? [...new Set(relatives.map((one) => (one * 100).toPrecision(2)))].join(", ")
       : "",
@@ -133,31 +120,6 @@ function stockRow(sheet: Sheet, stock: SheetStock, solution: MixedRow | null): S
     howKnown: [diluted, stock.howKnown].filter((part) => part !== "").join("; "),
     form: stockFormOf(stock, unit),
   };
-}
-
-interface Amount {
-  readonly names: string[];
-  readonly value: number;
-  readonly uncertainty: number;
-}
-
-/** Concentrations of a solution; ions of one salt share a line. */
-function amountsOf({ species }: Sheet, solution: MixedRow): Amount[] {
-  const amounts: Amount[] = [];
-  for (const one of species) {
-    const value = solution.concentrations[mixingName(one)] ?? 0;
-    const uncertainty = solution.standardUncertainties[mixingName(one)] ?? 0;
-    if (value === 0) continue;
-    const same = amounts.find((other) => near(other.value, value) && near(other.uncertainty, uncertainty));
-    const name = one.symbol || one.name || one.formula;
-    if (same === undefined) amounts.push({ names: [name], value, uncertainty });
-    else same.names.push(name);
-  }
-  return amounts;
-}
-
-function near(one: number, other: number): boolean {
-  return Math.abs(one - other) <= 1e-9 * Math.abs(one);
 }
 
 function sharedNote(sheet: Sheet): string {
@@ -228,15 +190,6 @@ function deliveryNotes(sheet: Sheet): MixingNote[] {
       message: `Stock ${stockName(worst.stock)} in ${inARow(runs, 4)} is ${volumeText(worst.volume, volumeUnit)} ${VOLUME_UNITS[volumeUnit]}, where the delivery adds ${percent(worst.relative)}. A weaker stock and a larger volume bring it down.`,
     },
   ];
-}
-
-/** The medium that fills mixtures up: the one that most was taken of; the only one where nothing was taken yet. */
-function mainMedium(sheet: Sheet): SheetStock | null {
-  const taken = (stock: SheetStock) =>
-    presentRuns(sheet).reduce((sum, run) => sum + (run.volumes[stock.id] ?? 0), 0);
-  const media = sheet.stocks.filter(isMedium).toSorted((a, b) => taken(b) - taken(a));
-  const [first] = media;
-  return first !== undefined && (media.length === 1 || taken(first) > 0) ? first : null;
 }
 
 function volumeFacts(sheet: Sheet): { name: string; value: string }[] {

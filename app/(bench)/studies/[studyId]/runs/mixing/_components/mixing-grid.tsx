@@ -9,6 +9,8 @@ import { RunMark } from "@/app/_ui/run-mark";
 import { Unit } from "@/app/_ui/unit";
 import { ConflictDialog } from "../../_components/conflict-dialog";
 import { useRunDraft } from "../../_components/use-run-draft";
+import { MARK, readMixingCells, VOLUME } from "../../_mixing/mixing-row";
+import { CONCENTRATION, type Mixture, STRENGTH, TOTAL } from "../../_mixing/mixture";
 import { draftFaults, isBlank, type KeptRowTexts } from "../../draft-rows";
 import { keepVolumes } from "../actions";
 import {
@@ -18,8 +20,6 @@ import {
   type MixingRow,
   volumeHeadingFault,
 } from "../mixing-grid.view";
-import { MARK, readMixingCells, VOLUME } from "../mixing-row";
-import { CONCENTRATION, type Mixture, STRENGTH, TOTAL } from "../mixture";
 import { typedMixture, typedWords } from "../typed-mixture";
 import { useMixingChange } from "./mixing-change";
 
