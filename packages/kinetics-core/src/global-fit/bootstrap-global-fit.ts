@@ -121,17 +121,19 @@ class Refits {
   /** θ of the runs at `indices`; null where it does not settle. */
   at(indices: Int32Array): Float64Array | null {
     const { fitted, theta, stands } = this;
-    const { inference: whole, bounds, logRate, tolerance, pass } = fitted;
+    const { bounds, logRate, tolerance, pass } = fitted;
     theta.set(fitted.theta);
     const drawn = [...new Set(indices)];
     let told = this.begin(indices);
-    let variance: number | undefined = whole.weightVariance;
+    // Found where the refit begins, a standard error from its end: there it hardly differs.
+    let variance: number | null = null;
     for (let linearisations = 0; linearisations <= MOST_REFIT_LINEARISATIONS; linearisations++) {
       const inference = randomRateInference(told, scalePrior(pass, theta), {
         undetermined: fitted.undetermined,
-        ...(variance === undefined ? {} : { betweenRunVariance: variance }),
+        ...(variance === null ? {} : { betweenRunVariance: variance }),
       });
       if (inference.status !== "determined") return null;
+      variance ??= inference.weightVariance;
       const from = theta.slice();
       const step = takeStep(theta, bounds, inference.step, partOfStep(inference.step, logRate));
       if (linearisations > 0 && isSettled(inference, from, theta)) return theta;
@@ -141,7 +143,6 @@ class Refits {
         drawn.includes(j) ? informationOf(run, stands[j]?.information.label ?? "", fitted.noise[j]) : null,
       );
       told = Array.from(indices).flatMap((j) => anew[j] ?? []);
-      variance = undefined;
     }
     return null;
   }
