@@ -23,8 +23,8 @@ export const STUDIES_BY_DESIGN = INITIAL_RATES_BY_SHAPE;
 export const MOST_TRUE_LAWS_RULED_OUT = 0.01;
 
 /** Fewest replicates that must be covered, at this number of them. */
-export function leastCovered(replicates: number): number {
-  return binomialQuantile(CHANCE_OF_FALSE_ALARM, replicates, LEAST_COVERAGE);
+export function leastCovered(replicates: number, coverage = LEAST_COVERAGE): number {
+  return binomialQuantile(CHANCE_OF_FALSE_ALARM, replicates, coverage);
 }
 
 /** Most replicates in which the true law may be ruled out, at this number of them. */
