@@ -50,6 +50,7 @@ export const initialRateSchema = z.discriminatedUnion("status", [
     level: z.number(),
     degreesOfFreedom: z.number(),
     pair: pair.nullable(),
+    reached: z.number().nullable(),
     noise: z.number(),
     autocorrelation: z.number(),
     effectivePoints: z.number(),

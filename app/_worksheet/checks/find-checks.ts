@@ -2,12 +2,14 @@ import type { StudyRuleChoice } from "kinetics-core/initial-rate";
 import type { Sheet } from "@/db/sheet/sheet.schema";
 import type { Check, CheckSeverity, LawAnalysis, RunAnalysis } from "../analysis";
 import type { CarryingRun } from "../law-input";
+import { blockChecks } from "./block-checks";
 import { designChecks } from "./design-checks";
 import { ionicStrengthChecks } from "./ionic-strength-checks";
 import { lawChecks } from "./law-checks";
 import { rateChecks } from "./rate-checks";
 import { setUpChecks } from "./set-up-checks";
 import { temperatureChecks } from "./temperature-checks";
+import { traceChecks } from "./trace-checks";
 
 /** What the checks look at: the sheet with everything that was made of it. */
 export interface Checked {
@@ -24,7 +26,9 @@ export function findChecks(checked: Checked): readonly Check[] {
     ...setUpChecks(checked),
     ...temperatureChecks(checked),
     ...ionicStrengthChecks(checked),
+    ...blockChecks(checked),
     ...rateChecks(checked),
+    ...traceChecks(checked),
     ...designChecks(checked),
     ...lawChecks(checked),
   ].sort((a, b) => weight(a) - weight(b));

@@ -62,3 +62,9 @@ export const VERY_IMPRECISE_RATE = 0.2;
 
 /** Part of the reaction that may be over before the first reading used. */
 export const LARGEST_DEAD_CONVERSION = 0.2;
+
+/** Standard errors beyond which readings before mixing drift at all: noise alone goes so far in one trace of 370. */
+export const CERTAIN_DRIFT = 3;
+
+/** Of the rate at mixing: a drift that goes on through the run moves the rate by as much. As for dead time. */
+export const LARGEST_DRIFT = 0.02;

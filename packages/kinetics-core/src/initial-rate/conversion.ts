@@ -32,6 +32,18 @@ export function progressOf(readings: Readings, span: number): Progress {
   return { start, direction, span };
 }
 
+/** Readings at the end whose median says how far the trace came. */
+const LAST_READINGS = 5;
+
+/** Conversion at the end of the trace; beyond 1 where the signal changes by more than `span`. */
+export function reachedBy({ signal }: Readings, { start, direction, span }: Progress): number {
+  const last = signal.slice(-LAST_READINGS).sort();
+  const middle = last.length >> 1;
+  const upper = last[middle] ?? Number.NaN;
+  const end = last.length % 2 === 1 ? upper : ((last[middle - 1] ?? Number.NaN) + upper) / 2;
+  return ((end - start) * direction) / span;
+}
+
 /**
  * Number of readings up to a conversion. Noise crosses a threshold many times, so the end is where a cut best
  * separates readings below it from readings above it: the least number of readings on the wrong side. On a

@@ -1,8 +1,10 @@
 import type { Flag } from "kinetics-core/quantities";
 import {
+  CERTAIN_DRIFT,
   HIGH_AUTOCORRELATION,
   IMPRECISE_RATE,
   LARGEST_DEAD_CONVERSION,
+  LARGEST_DRIFT,
   LEAST_EFFECTIVE_POINTS,
   VERY_IMPRECISE_RATE,
 } from "./constants";
@@ -21,6 +23,21 @@ export function estimateFlags(
       code: "before-mixing",
       severity: "note",
       message: `${countOf(readings.before, "reading")} before mixing, at time ${readings.timeZero}, ${readings.before === 1 ? "is" : "are"} not used.`,
+    });
+  }
+  const { drift } = readings;
+  if (
+    drift !== null &&
+    Math.abs(drift.slope) > CERTAIN_DRIFT * drift.standardError &&
+    Math.abs(drift.slope) > LARGEST_DRIFT * Math.abs(slope)
+  ) {
+    const part = Math.abs(drift.slope / slope);
+    flags.push({
+      code: "drift-before-mixing",
+      severity: "weakens",
+      message:
+        `Before mixing the signal drifts at ${part < 1 ? `${(part * 100).toFixed(part < 0.1 ? 1 : 0)} % of` : "no less than"} the rate at mixing; ` +
+        "let the instrument and the cell come to rest, or follow a blank beside it.",
     });
   }
   if (readings.signal.every((value) => value === readings.signal[0])) {

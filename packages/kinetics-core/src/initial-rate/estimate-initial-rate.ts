@@ -1,4 +1,5 @@
 import { studentTFactor } from "kinetics-core/distributions";
+import { reachedBy } from "./conversion";
 import { estimateFlags } from "./estimate-flags";
 import type { PairFit } from "./estimator-pairs";
 import type { InitialRate, InitialRateOptions, SlopeEstimate, Trace } from "./initial-rate";
@@ -50,6 +51,7 @@ export function estimateInitialRate(trace: Trace, options: InitialRateOptions = 
     level,
     degreesOfFreedom: noise.degreesOfFreedom,
     pair,
+    reached: prepared.progress && reachedBy(readings, prepared.progress),
     noise: noise.standardDeviation,
     autocorrelation: noise.autocorrelation,
     effectivePoints: noise.effectivePoints,

@@ -82,6 +82,8 @@ export interface InitialRateFound {
   readonly window: readonly [number, number];
   readonly points: number;
   readonly conversion: number | null;
+  /** Conversion at the end of the trace, from the median of its last five readings; null without a span. May exceed 1. */
+  readonly reached: number | null;
   /** σ of one reading and lag-one autocorrelation ρ of the noise, from the whole trace. */
   readonly noise: number;
   readonly autocorrelation: number;

@@ -1,3 +1,4 @@
+import { type Drift, driftBefore } from "./drift-before-mixing";
 import type { InitialRate, Trace } from "./initial-rate";
 
 /** A trace that has been checked, on a clock that starts at mixing. */
@@ -13,6 +14,8 @@ export interface Readings {
   readonly offset: number;
   /** Readings before mixing, which were left out. */
   readonly before: number;
+  /** What they do; null where they are too few to say. */
+  readonly drift: Drift | null;
   readonly timeZero: number;
 }
 
@@ -49,7 +52,8 @@ export function readingsOf(
     shifted[i] = (time[before + i] ?? Number.NaN) - timeZero;
     values[i] = (signal[before + i] ?? Number.NaN) - offset;
   }
-  return { status: "usable", time: shifted, signal: values, offset, before, timeZero };
+  const drift = driftBefore(trace, before);
+  return { status: "usable", time: shifted, signal: values, offset, before, drift, timeZero };
 }
 
 /** Squares of signals over squares of times, and what is summed of them, stay within a double (1e308). */
