@@ -7,7 +7,7 @@ import { binomialQuantile, countOnes } from "./statistics";
 
 /** A small part of the simulations with the same seeds: enough to see an interval that has lost its meaning. */
 
-const REPLICATES = 8;
+const REPLICATES = 5;
 
 /** Every so many cells of a section, and the columns that hold whether the library's own interval covers the truth. */
 const PARTS: readonly { readonly name: string; readonly every: number; readonly own: RegExp }[] = [
