@@ -369,6 +369,28 @@ describe("runs of the study", () => {
     expect(second).toMatchObject({ label: "R02 (2)", runId: null, recipe: { b: { molar: 0.02 } } });
   });
 
+  it("lets nothing that the file says go over what follows from a planned run's volumes", () => {
+    const [one, other] = planned.runs;
+    if (one === undefined || other === undefined) throw new Error("two runs");
+    const mixed = {
+      ...planned,
+      runs: [
+        { ...one, mixed: ["a"] },
+        { ...other, mixed: ["a"] },
+      ],
+    };
+    const [first, second] = read("recipes.csv", { labels: {} }, mixed).traces;
+    expect(first?.runId).toBe("r1");
+    expect(first?.recipe.a).toEqual({
+      molar: 0.0001,
+      reason: "follows from the volumes of R01",
+      mixed: true,
+    });
+    expect(first?.recipe.b?.reason).toContain("line");
+    // The second becomes a run of its own beside R02, without volumes: the file's word counts.
+    expect(second?.recipe.a?.reason).toContain("line");
+  });
+
   it("refuses a label by hand that belongs to a run with a trace", () => {
     const reading = read("comma-point.csv", { labels: { c2: "r02" } }, planned);
     expect(issue(reading, "run-taken-twice").message).toContain("has a trace already");

@@ -50,6 +50,8 @@ export interface RunContext {
   readonly hasTrace: boolean;
   /** mol L⁻¹ by species id. */
   readonly molar: Readonly<Record<string, number>>;
+  /** Species whose concentration follows from the run's volumes: nothing that a file says goes over it. */
+  readonly mixed?: readonly string[];
 }
 
 /** `thousandths`: milli-units of the signal's unit in the set-up, mAU for AU. */
@@ -90,6 +92,8 @@ export interface TraceReading {
 export interface RecipeEntry {
   readonly molar: number;
   readonly reason: string;
+  /** Follows from the volumes of the planned run and is not typed. */
+  readonly mixed?: true;
 }
 
 export type IssueSeverity = "blocks" | "weakens" | "note" | "settled";

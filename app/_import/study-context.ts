@@ -1,3 +1,4 @@
+import { isMixed, stockedSpecies } from "@/db/sheet/mixed-run";
 import type { Sheet } from "@/db/sheet/sheet.schema";
 import type { StudyContext } from "./reading";
 
@@ -23,6 +24,7 @@ export function studyContext(sheet: Sheet): StudyContext {
               molar: Object.fromEntries(
                 Object.entries(run.concentrations).map(([species, { molar }]) => [species, molar]),
               ),
+              ...(isMixed(run) ? { mixed: [...stockedSpecies(sheet.stocks)] } : {}),
             },
           ]
         : [],

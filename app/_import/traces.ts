@@ -79,7 +79,7 @@ export function buildTraces(
       timeSeconds: readings.time.map((value) => importedTimeToSeconds(value, options.timeUnit)),
       signal: readings.signal.map((value) => importedSignal(value, options.signalUnit)),
       temperatureKelvin: meanTemperature(trace, columns, corrections),
-      recipe: recipeOf(trace, options, run),
+      recipe: recipeOf(trace, options, run, label.runId),
     };
   });
   for (const { issues: found } of faultsByClock.values()) issues.push(...found);
@@ -180,6 +180,7 @@ function recipeOf(
   trace: GatheredTrace,
   options: TraceOptions,
   run: StudyContext["runs"][number] | null | undefined,
+  runId: string | null,
 ): Record<string, RecipeEntry> {
   const recipe: Record<string, RecipeEntry> = {};
   for (const [id, molar] of Object.entries(run?.molar ?? {})) {
@@ -194,6 +195,12 @@ function recipeOf(
     const key = options.speciesColumns.get(id);
     if (key && value >= 0)
       recipe[id] = { molar: importedConcentrationToMolar(value, key.unit), reason: `line ${line}` };
+  }
+  // A run that repeats one with a trace has no volumes of its own: only the planned run itself is worked out.
+  for (const id of run !== null && run?.id === runId ? (run.mixed ?? []) : []) {
+    const molar = run?.molar[id];
+    if (molar !== undefined)
+      recipe[id] = { molar, reason: `follows from the volumes of ${run?.label}`, mixed: true };
   }
   return recipe;
 }

@@ -100,3 +100,29 @@ test("stocks, a pasted block of volumes, halved concentrations, a row that is to
   await page.keyboard.type("7");
   await expect(page.getByRole("grid").getByRole("textbox")).toHaveCount(0);
 });
+
+test("the bench sheet orders what is planned, and says the same again at its address", async ({ page }) => {
+  const bench = await makeEmptyBench();
+  await signIn(page, `analyst@${bench.domain}`, `/studies/${bench.studyId}/runs/mixing`);
+  await addStock(page, { Symbol: "A", Name: "substrate", "A, a": "10 ± 0,05" });
+  await addStock(page, { Name: "water" });
+  await page.locator('[data-row="0"][data-column="0"]').click();
+  await pasteText(page, "Run\tA\twater\nR01\t300\t2700\nR02\t75\t2925\nR03\t150\t2850\n");
+  await expect(toast(page, "R01, R02 and R03 added.")).toBeVisible();
+  await page.getByRole("link", { name: "Bench sheet" }).click();
+  await expect(page.getByRole("heading", { level: 1 })).toHaveText("The bench sheet for the next three runs");
+  const mixtures = page
+    .getByRole("region", { name: "Mixtures in the order of measuring" })
+    .getByRole("rowheader");
+  await expect(mixtures).toHaveText(["Blank", "R02", "R03", "R01"]);
+  await page.getByRole("checkbox", { name: "A blank first" }).click();
+  await expect(mixtures).toHaveText(["R02", "R03", "R01"]);
+  await page.getByRole("radio", { name: /^As on the mixing table/ }).click();
+  await expect(mixtures).toHaveText(["R01", "R02", "R03"]);
+  await page.getByRole("radio", { name: /^Randomised/ }).click();
+  await expect(page.getByRole("heading", { name: "Three runs in random order, seed 1" })).toBeVisible();
+  const drawn = await mixtures.allInnerTexts();
+  await page.reload();
+  await expect(mixtures).toHaveText(drawn);
+  await expect(page.getByText("Read the safety data sheet of each reagent")).toBeVisible();
+});

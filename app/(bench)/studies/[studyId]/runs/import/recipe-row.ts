@@ -27,7 +27,7 @@ export function recipeRow(
   for (const one of species) {
     const given = trace.recipe[one.id];
     const before = given === undefined ? "" : prefilled(given.molar, one);
-    const text = typed[trace.source]?.[one.id] ?? before;
+    const text = given?.mixed ? before : (typed[trace.source]?.[one.id] ?? before);
     texts[one.id] = text;
     if (given !== undefined && text === before) {
       // Untouched: the very number of the file, not one that went through the text of a box.

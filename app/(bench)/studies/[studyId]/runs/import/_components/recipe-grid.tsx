@@ -102,6 +102,7 @@ function gridRow({ trace, texts, faults }: RecipeRow, species: readonly SpeciesC
   return {
     id: trace.source,
     label: trace.label,
+    readOnly: species.flatMap(({ id }) => (trace.recipe[id]?.mixed ? [id] : [])),
     cells: { ...texts, [LABEL]: trace.label, column: trace.column, reason },
     drawn: { reason: <span className="whitespace-normal text-caption">{reason}</span> },
     faults,
