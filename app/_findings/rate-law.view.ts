@@ -4,7 +4,7 @@ import type { MarkedRun, ResidualView } from "@/app/_figures/figure-view";
 import type { LawView, PrintedNumber } from "@/app/_ui/law-view";
 import type { Check, StudyAnalysis } from "@/app/_worksheet/analysis";
 import { type DisplayScale, rateConstantDisplay, rateDisplay } from "@/app/_worksheet/display-units";
-import { ASSUMED_ACTIVATION_ENERGY } from "@/app/_worksheet/law-input";
+import { ASSUMED_ACTIVATION_ENERGY, activationEnergyOf } from "@/app/_worksheet/law-input";
 import { presentRuns } from "@/app/_worksheet/present-runs";
 import { printSimpleOrder } from "@/app/_worksheet/print-order";
 import { type NamedOrder, standingConstant, standingOrders } from "@/app/_worksheet/standing-constant";
@@ -239,7 +239,9 @@ function budgetView(sheet: Sheet, fit: RateLawFit): BudgetView | null {
     note: [
       ...(constant.budget.some((one) => one.source === TEMPERATURE_LINE && one.relative > 0)
         ? [
-            `Temperature counts at ${ASSUMED_ACTIVATION_ENERGY / 1000} kJ mol^-1, assumed until the study has its own activation energy.`,
+            sheet.conditions.activationEnergy === null
+              ? `Temperature counts at ${ASSUMED_ACTIVATION_ENERGY / 1000} kJ mol^-1, assumed until the set-up names the activation energy.`
+              : `Temperature counts at the activation energy of the set-up, ${Number((activationEnergyOf(sheet) / 1000).toPrecision(4))} kJ mol^-1.`,
           ]
         : []),
       ...(presentRuns(sheet).some(isMixed) ? [] : [STOCKS_NOT_COUNTED]),

@@ -60,12 +60,18 @@ export interface CarryingRun {
 /** Relative standard uncertainty that the stated temperature brings to k: E_a·u_T/(R·T²). */
 export function temperatureTerm(sheet: Sheet): number {
   const temperature = sheet.conditions.temperatureKelvin;
-  return temperature === null ? 0 : temperatureEffect(temperature.value, temperature.standardUncertainty);
+  if (temperature === null) return 0;
+  return temperatureEffect(activationEnergyOf(sheet), temperature.value, temperature.standardUncertainty);
 }
 
-/** Relative change of k for a small change of temperature, both in K, at the assumed activation energy. */
-export function temperatureEffect(kelvin: number, changeKelvin: number): number {
-  return (ASSUMED_ACTIVATION_ENERGY * changeKelvin) / (GAS_CONSTANT * kelvin ** 2);
+/** J mol⁻¹: the study's own, else the assumed one. */
+export function activationEnergyOf({ conditions }: Sheet): number {
+  return conditions.activationEnergy?.value ?? ASSUMED_ACTIVATION_ENERGY;
+}
+
+/** Relative change of k for a small change of temperature, both in K, at an activation energy in J mol⁻¹. */
+export function temperatureEffect(activationEnergy: number, kelvin: number, changeKelvin: number): number {
+  return (activationEnergy * changeKelvin) / (GAS_CONSTANT * kelvin ** 2);
 }
 
 function lawRun({ run, rate }: CarryingRun, species: readonly SheetSpecies[]): RateLawRun {

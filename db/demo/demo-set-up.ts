@@ -68,12 +68,15 @@ export function demoSetUp(): SetUp & { readonly ester: string; readonly hydroxid
       wavelengthNanometre: 400,
       solvent: "water, 1 % v/v acetonitrile",
       electrolyte: "KCl",
+      activationEnergy: null,
+      sampleIntervalSeconds: null,
     },
     signal: {
       kind: "calibrated",
       quantity: "Absorbance",
       unit: "",
       perMolar: { value: TRUTH.perMolar, standardUncertainty: 70 },
+      blank: null,
     },
   };
 }

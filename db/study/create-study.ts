@@ -31,7 +31,7 @@ export async function createStudy(
     orders: {},
     ...NO_PREPARATION,
     conditions: { ...UNSAID_CONDITIONS, ...setUp.conditions },
-    signal: setUp.signal?.kind === "calibrated" ? { ...setUp.signal, ...UNSAID_SIGNAL } : setUp.signal,
+    signal: setUp.signal?.kind === "calibrated" ? { ...UNSAID_SIGNAL, ...setUp.signal } : setUp.signal,
     runs: [],
     uploads: [],
   };

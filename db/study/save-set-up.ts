@@ -54,5 +54,5 @@ function withStandards(before: Sheet["signal"], typed: SetUp["signal"]): Sheet["
     known !== null &&
     known.perMolar.value === typed.perMolar.value &&
     known.perMolar.standardUncertainty === typed.perMolar.standardUncertainty;
-  return { ...typed, blank: known?.blank ?? null, source: same ? known.source : "typed" };
+  return { ...typed, source: same ? known.source : "typed" };
 }

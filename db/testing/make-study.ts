@@ -41,12 +41,15 @@ export function exampleSetUp(name = "An example study"): SetUp {
       wavelengthNanometre: 400,
       solvent: "water",
       electrolyte: "",
+      activationEnergy: null,
+      sampleIntervalSeconds: null,
     },
     signal: {
       kind: "calibrated",
       quantity: "Absorbance",
       unit: "",
       perMolar: { value: 10_000, standardUncertainty: 50 },
+      blank: null,
     },
   };
 }

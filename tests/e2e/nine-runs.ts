@@ -87,6 +87,7 @@ export async function makeNineRunStudy(spec: string): Promise<NineRunStudy> {
         quantity: "Absorbance",
         unit: "",
         perMolar: { value: perMolar, standardUncertainty: perMolarUncertainty },
+        blank: null,
       },
     });
     const stored = await addTraces(

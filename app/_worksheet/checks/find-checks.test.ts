@@ -122,6 +122,22 @@ test("temperatures that spread by 0.5 K weaken at 80 kJ/mol, by 2 K they block, 
   expect(await spread(0.05)).toMatchObject({ severity: "holds" });
 });
 
+test("the activation energy of the set-up takes the place of the assumed one", async () => {
+  const spread = async (value: number) => {
+    const conditions = {
+      ...exampleSheet().conditions,
+      activationEnergy: { value, standardUncertainty: 1000 },
+    };
+    const checks = await checksOf(
+      sheetWith((index) => ({ temperatureKelvin: 298.15 + (index % 2 === 0 ? 0.5 : -0.5) }), { conditions }),
+    );
+    return checks.find((check) => check.code === "temperature-spread")?.message;
+  };
+  // 40 000 × 0.548/(8.314 × 298.15²) is 3.0 %.
+  expect(await spread(40_000)).toContain("At 40 kJ mol^-1 that scatters *k* by 3.0 %");
+  expect(await spread(80_000)).toContain("At 80 kJ mol^-1 that");
+});
+
 test("a calibration without uncertainty is a note, a missing temperature weakens", async () => {
   const exact = await checksOf(
     sheetWith(() => ({}), {

@@ -1,5 +1,5 @@
 import type { Check } from "../analysis";
-import { ASSUMED_ACTIVATION_ENERGY, temperatureEffect } from "../law-input";
+import { activationEnergyOf, temperatureEffect } from "../law-input";
 import { percent, studyCheck } from "./check";
 import type { Checked } from "./find-checks";
 
@@ -9,7 +9,7 @@ const WEAKENING_SPREAD = 0.01;
 const BLOCKING_SPREAD = 0.1;
 
 /**
- * Temperature spread between runs: E_a·s_T/(R·T²), with E_a of 80 kJ/mol where none is known. Runs that state no
+ * Temperature spread between runs: E_a·s_T/(R·T²), with the study's own E_a, 80 kJ/mol where none is known. Runs that state no
  * temperature of their own are taken to have the study's.
  */
 export function temperatureChecks({ sheet, carrying, law }: Checked): readonly Check[] {
@@ -19,7 +19,8 @@ export function temperatureChecks({ sheet, carrying, law }: Checked): readonly C
   const mean = kelvins.reduce((sum, value) => sum + value, 0) / kelvins.length;
   const variance = kelvins.reduce((sum, value) => sum + (value - mean) ** 2, 0) / (kelvins.length - 1);
   const spread = Math.sqrt(variance);
-  const effect = temperatureEffect(mean, spread);
+  const energy = activationEnergyOf(sheet);
+  const effect = temperatureEffect(energy, mean, spread);
   const fit = law.fit;
   const limit = Math.max(WEAKENING_SPREAD, (fit?.betweenRunStandardDeviation ?? 0) / 2);
   if (effect <= limit)
@@ -36,7 +37,7 @@ export function temperatureChecks({ sheet, carrying, law }: Checked): readonly C
       "runs",
       effect > BLOCKING_SPREAD ? "blocks" : "weakens",
       "temperature-spread",
-      `Temperatures of the runs spread by ${spread.toFixed(2)} K. At ${ASSUMED_ACTIVATION_ENERGY / 1000} kJ mol^-1 that scatters *k* by ${percent(
+      `Temperatures of the runs spread by ${spread.toFixed(2)} K. At ${energy / 1000} kJ mol^-1${sheet.conditions.activationEnergy === null ? ", assumed," : ""} that scatters *k* by ${percent(
         effect,
       )}. Set outlying runs aside or study the temperatures apart.`,
     ),

@@ -6,7 +6,14 @@ import type { SetUpForm } from "./set-up-form.schema";
 
 type Conditions = Pick<
   SetUpForm,
-  "temperature" | "ionicStrength" | "pathLength" | "wavelength" | "solvent" | "electrolyte"
+  | "temperature"
+  | "ionicStrength"
+  | "pathLength"
+  | "wavelength"
+  | "activationEnergy"
+  | "sampleInterval"
+  | "solvent"
+  | "electrolyte"
 >;
 
 /** Conditions, printed with every k. */
@@ -38,6 +45,16 @@ export function ConditionFields({
           <Field label="Solvent" {...box("solvent")} />
         </div>
         <Field label="Inert electrolyte" {...box("electrolyte")} />
+        <Field label="Time between readings" unit="s" {...box("sampleInterval")} />
+        <div className="col-span-2">
+          <Field
+            label="Activation energy"
+            unit="kJ mol^-1"
+            placeholder="not known"
+            hint="What temperature does to the rate constant counts by it; where it is not known, 80 is assumed."
+            {...box("activationEnergy")}
+          />
+        </div>
       </div>
       <p className="hint max-w-[110ch]">
         Write a value with its standard uncertainty as 25.0 ± 0.1 or 25.0(1). A value without ± is taken as

@@ -17,6 +17,7 @@ export type SetUpReading =
 type UncertainOrNull = { value: number; standardUncertainty: number } | null;
 
 const ZERO_CELSIUS = 273.15;
+const JOULES_PER_KILOJOULE = 1000;
 
 /** Texts of the boxes into the sheet's units; all faults at once. `newId` gives the id of a species that is new. */
 export function readSetUpForm(form: SetUpForm, newId: () => string): SetUpReading {
@@ -51,7 +52,14 @@ export function readSetUpForm(form: SetUpForm, newId: () => string): SetUpReadin
     temperatureKelvin,
     ionicStrengthMolar: notNegative(form.ionicStrength, "ionicStrength", "An ionic strength", fault),
     pathLengthCentimetre: notNegative(form.pathLength, "pathLength", "A path length", fault),
-    wavelengthNanometre: wavelengthOf(form.wavelength, fault),
+    wavelengthNanometre: positiveOf(form.wavelength, "wavelength", "A wavelength is above 0 nm.", fault),
+    activationEnergy: activationEnergyOf(form.activationEnergy, fault),
+    sampleIntervalSeconds: positiveOf(
+      form.sampleInterval,
+      "sampleInterval",
+      "The time between readings is above 0 s.",
+      fault,
+    ),
     solvent: form.solvent.trim(),
     electrolyte: form.electrolyte.trim(),
   };
@@ -105,6 +113,7 @@ function signalOf({ signal }: SetUpForm, fault: Fault): SetUp["signal"] {
     quantity: signal.quantity.trim(),
     unit: signal.unit.trim(),
     perMolar,
+    blank: uncertainOf(signal.blank, "signal.blank", fault),
   };
 }
 
@@ -123,13 +132,31 @@ function notNegative(text: string, path: string, noun: string, fault: Fault): Un
   return reading;
 }
 
-function wavelengthOf(text: string, fault: Fault): number | null {
+function positiveOf(text: string, path: string, otherwise: string, fault: Fault): number | null {
   const reading = parseNumber(text);
-  if (reading.status === "not-a-number") fault("wavelength", reading.message);
+  if (reading.status === "not-a-number") fault(path, reading.message);
   if (reading.status !== "number") return null;
-  if (reading.value <= 0) fault("wavelength", "A wavelength is above 0 nm.");
+  if (reading.value <= 0) fault(path, otherwise);
   return reading.value;
 }
+
+/** Typed in kJ mol⁻¹. Far above what a reaction in solution has, J mol⁻¹ were meant. */
+function activationEnergyOf(text: string, fault: Fault): UncertainOrNull {
+  const reading = notNegative(text, "activationEnergy", "An activation energy", fault);
+  if (reading === null) return null;
+  if (reading.value > LARGEST_ACTIVATION_ENERGY)
+    fault(
+      "activationEnergy",
+      `${text.trim()} kJ mol^-1 is beyond any reaction in solution; write it in kJ mol^-1.`,
+    );
+  return {
+    value: rounded(reading.value * JOULES_PER_KILOJOULE),
+    standardUncertainty: rounded(reading.standardUncertainty * JOULES_PER_KILOJOULE),
+  };
+}
+
+/** kJ mol⁻¹; the strongest single bonds take some 600. */
+const LARGEST_ACTIVATION_ENERGY = 1000;
 
 /** Drops the last digits' noise of a sum in binary: 26.8 + 273.15 is 299.95. */
 function rounded(value: number): number {

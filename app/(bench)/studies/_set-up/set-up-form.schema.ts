@@ -28,6 +28,7 @@ export const signalForm = z.object({
   quantity: z.string().max(60, "The quantity has at most 60 characters."),
   unit: z.string().max(20, "The unit has at most 20 characters."),
   perMolar: z.string().max(80),
+  blank: z.string().max(80),
 });
 
 export const setUpForm = z.object({
@@ -40,6 +41,8 @@ export const setUpForm = z.object({
   ionicStrength: z.string().max(80),
   pathLength: z.string().max(80),
   wavelength: z.string().max(80),
+  activationEnergy: z.string().max(80),
+  sampleInterval: z.string().max(80),
   solvent: z.string().max(200, "The solvent has at most 200 characters."),
   electrolyte: z.string().max(120, "The electrolyte has at most 120 characters."),
   signal: signalForm,

@@ -2,6 +2,8 @@ import { describe, expect, it } from "vitest";
 import { parseReaction } from "@/app/_worksheet/reaction/parse-reaction";
 import { speciesOfReaction } from "@/app/_worksheet/reaction/reaction-species";
 import { sheet as sheetSchema } from "@/db/sheet/sheet.schema";
+import { withSetUp } from "@/db/study/save-set-up";
+import { exampleSheet } from "@/tests/example-sheet";
 import { readSetUpForm } from "./read-set-up-form";
 import { emptySetUpForm, setUpFormOf, speciesAfterReaction } from "./set-up-form";
 import { type SetUpForm, type SpeciesForm, setUpForm } from "./set-up-form.schema";
@@ -74,7 +76,9 @@ describe("readSetUpForm", () => {
         ionicStrength: "0.100(1)",
         pathLength: "1.000 ± 0.002",
         wavelength: "400",
-        signal: { ...emptySetUpForm.signal, perMolar: "17930 ± 55" },
+        activationEnergy: "61.5 ± 1.5",
+        sampleInterval: "0,5",
+        signal: { ...emptySetUpForm.signal, perMolar: "17930 ± 55", blank: "0.012 ± 0.002" },
       }),
       counter(),
     );
@@ -84,31 +88,32 @@ describe("readSetUpForm", () => {
       ionicStrengthMolar: { value: 0.1, standardUncertainty: 0.001 },
       pathLengthCentimetre: { value: 1, standardUncertainty: 0.002 },
       wavelengthNanometre: 400,
+      activationEnergy: { value: 61_500, standardUncertainty: 1500 },
+      sampleIntervalSeconds: 0.5,
     });
     expect(reading.setUp.signal).toEqual({
       kind: "calibrated",
       quantity: "Absorbance",
       unit: "",
       perMolar: { value: 17930, standardUncertainty: 55 },
+      blank: { value: 0.012, standardUncertainty: 0.002 },
     });
     expect(reading.setUp.followedSpeciesId).toBe("s4");
   });
 
   it("gives back the boxes that it read, so that keeping without a change changes nothing", () => {
     const reading = readSetUpForm(
-      form({ signal: { ...emptySetUpForm.signal, perMolar: "17930 ± 55" } }),
+      form({
+        activationEnergy: "61.5 ± 1.5",
+        sampleInterval: "0.5",
+        signal: { ...emptySetUpForm.signal, perMolar: "17930 ± 55", blank: "0.012 ± 0.002" },
+      }),
       counter(),
     );
     if (reading.status !== "read") throw new Error(JSON.stringify(reading.faults));
     const { setUp } = reading;
-    const sheet = sheetSchema.parse({
-      version: 1,
-      ...setUp,
-      study: { ...setUp.study, invented: false },
-      orders: {},
-      runs: [],
-      uploads: [],
-    });
+    const sheet = withSetUp(exampleSheet(), setUp);
+    expect(sheetSchema.parse(sheet)).toEqual(sheet);
     const again = readSetUpForm(setUpFormOf(sheet), counter());
     expect(again).toEqual(reading);
   });
@@ -119,6 +124,9 @@ describe("readSetUpForm", () => {
     [{ temperature: "warm" }, "temperature", "is not read"],
     [{ temperature: "-300" }, "temperature", "absolute zero"],
     [{ ionicStrength: "-0.1" }, "ionicStrength", "not negative"],
+    [{ activationEnergy: "60000" }, "activationEnergy", "write it in kJ mol^-1"],
+    [{ activationEnergy: "-5" }, "activationEnergy", "not negative"],
+    [{ sampleInterval: "0" }, "sampleInterval", "above 0 s"],
     [{ wavelength: "violet" }, "wavelength", "is not a number"],
     [{ signal: { ...emptySetUpForm.signal, perMolar: "0" } }, "signal.perMolar", "factor of 0"],
   ])("names the box of %o", (changes, path, message) => {

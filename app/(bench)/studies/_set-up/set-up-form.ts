@@ -14,12 +14,22 @@ export const emptySetUpForm: SetUpForm = {
   ionicStrength: "",
   pathLength: "",
   wavelength: "",
+  activationEnergy: "",
+  sampleInterval: "",
   solvent: "water",
   electrolyte: "",
-  signal: { kind: "calibrated", concentrationUnit: "mmol/L", quantity: "Absorbance", unit: "", perMolar: "" },
+  signal: {
+    kind: "calibrated",
+    concentrationUnit: "mmol/L",
+    quantity: "Absorbance",
+    unit: "",
+    perMolar: "",
+    blank: "",
+  },
 };
 
 const ZERO_CELSIUS = 273.15;
+const JOULES_PER_KILOJOULE = 1000;
 
 /** A study's set-up put back into boxes, at full precision. */
 export function setUpFormOf(sheet: Sheet): SetUpForm {
@@ -45,6 +55,15 @@ export function setUpFormOf(sheet: Sheet): SetUpForm {
     pathLength:
       conditions.pathLengthCentimetre === null ? "" : typedUncertain(conditions.pathLengthCentimetre),
     wavelength: conditions.wavelengthNanometre === null ? "" : typedNumber(conditions.wavelengthNanometre),
+    activationEnergy:
+      conditions.activationEnergy === null
+        ? ""
+        : typedUncertain({
+            value: conditions.activationEnergy.value / JOULES_PER_KILOJOULE,
+            standardUncertainty: conditions.activationEnergy.standardUncertainty / JOULES_PER_KILOJOULE,
+          }),
+    sampleInterval:
+      conditions.sampleIntervalSeconds === null ? "" : typedNumber(conditions.sampleIntervalSeconds),
     solvent: conditions.solvent,
     electrolyte: conditions.electrolyte,
     signal: {
@@ -52,7 +71,12 @@ export function setUpFormOf(sheet: Sheet): SetUpForm {
       kind: signal?.kind ?? "none",
       ...(signal?.kind === "concentration" ? { concentrationUnit: signal.unit } : {}),
       ...(signal?.kind === "calibrated"
-        ? { quantity: signal.quantity, unit: signal.unit, perMolar: typedUncertain(signal.perMolar) }
+        ? {
+            quantity: signal.quantity,
+            unit: signal.unit,
+            perMolar: typedUncertain(signal.perMolar),
+            blank: signal.blank === null ? "" : typedUncertain(signal.blank),
+          }
         : {}),
     },
   };

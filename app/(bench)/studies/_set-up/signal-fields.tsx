@@ -90,6 +90,18 @@ export function SignalFields({
               onChange={(event) => onChange({ ...signal, perMolar: event.target.value })}
             />
           </div>
+          <div className="col-span-2 phone:col-span-1">
+            <Field
+              label="Signal of the blank"
+              unit={signal.unit.trim()}
+              value={signal.blank}
+              readOnly={readOnly}
+              placeholder="not known"
+              error={faultOf("blank")}
+              hint={`The mixture without ${followedName}. With it each run’s time zero is checked against its recipe.`}
+              onChange={(event) => onChange({ ...signal, blank: event.target.value })}
+            />
+          </div>
         </div>
       )}
       {signal.kind === "concentration" && (

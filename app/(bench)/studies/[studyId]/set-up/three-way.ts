@@ -18,6 +18,8 @@ const NAMES: Readonly<Record<string, string>> = {
   ionicStrength: "Ionic strength",
   pathLength: "Path length",
   wavelength: "Wavelength",
+  activationEnergy: "Activation energy",
+  sampleInterval: "Time between readings",
   solvent: "Solvent",
   electrolyte: "Inert electrolyte",
   signal: "Signal",
@@ -34,6 +36,8 @@ const BOXES: readonly Box[] = [
   "ionicStrength",
   "pathLength",
   "wavelength",
+  "activationEnergy",
+  "sampleInterval",
   "solvent",
   "electrolyte",
   "signal",
@@ -65,11 +69,11 @@ function printed(form: SetUpForm, box: Box): string {
   const value = form[box];
   if (typeof value === "string") return value.trim();
   if (box === "signal") {
-    const { kind, quantity, perMolar, unit, concentrationUnit } = form.signal;
+    const { kind, quantity, perMolar, blank, unit, concentrationUnit } = form.signal;
     if (kind === "none") return "none";
     return kind === "concentration"
       ? `concentration in ${concentrationUnit}`
-      : `${quantity}, ${perMolar} ${unit}`.trim();
+      : `${quantity}, ${perMolar} ${unit}${blank.trim() === "" ? "" : `, blank ${blank.trim()}`}`.trim();
   }
   return form.species
     .map((row) =>
