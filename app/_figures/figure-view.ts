@@ -120,3 +120,36 @@ export interface WindowChoice {
   readonly toIndex: number;
   readonly points: number;
 }
+
+/** A calibration line with its standards, in the shown units. */
+export interface CalibrationFigureView {
+  readonly x: AxisView;
+  readonly y: AxisView;
+  /** One for each reading. */
+  readonly points: readonly {
+    readonly x: number;
+    readonly y: number;
+    readonly standard: string;
+    readonly isUsed: boolean;
+  }[];
+  /** The line and the band that holds one new reading, x increasing; null where there is no line. */
+  readonly line: {
+    readonly x: readonly number[];
+    readonly y: readonly number[];
+    readonly low: readonly number[];
+    readonly high: readonly number[];
+  } | null;
+  /** Part of the concentrations that the line is used on. */
+  readonly range: { readonly from: number; readonly to: number } | null;
+  /** In the plot, prose: "*A* = 0.012 + 0.01793 *c*"; "" for none. */
+  readonly note: string;
+}
+
+/** Residuals against a quantity, both axes linear. */
+export interface PlacedResidualsView {
+  readonly x: AxisView;
+  readonly y: AxisView;
+  readonly points: readonly { readonly x: number; readonly residual: number; readonly name: string }[];
+  /** The axis reaches at least here, to lie under another figure's. */
+  readonly xReach: number;
+}

@@ -1,8 +1,15 @@
 import { renderToStaticMarkup } from "react-dom/server";
 import { describe, expect, it } from "vitest";
 import { AddedVariableFigure } from "./added-variable-figure";
+import { CalibrationFigure } from "./calibration-figure";
 import { DependenceFigure } from "./dependence-figure";
-import type { AddedVariableView, TraceFigureView, WindowFigureView } from "./figure-view";
+import type {
+  AddedVariableView,
+  CalibrationFigureView,
+  TraceFigureView,
+  WindowFigureView,
+} from "./figure-view";
+import { PlacedResidualsFigure } from "./placed-residuals-figure";
 import { ResidualFigure } from "./residual-figure";
 import { RunMapFigure } from "./run-map-figure";
 import { SparkLine } from "./spark-line";
@@ -66,6 +73,18 @@ const windowView: WindowFigureView = {
   leastPoints: 5,
 };
 
+const calibration: CalibrationFigureView = {
+  x: signal,
+  y: { quantity: "absorbance", unit: "" },
+  points: [
+    { x: 5, y: 0.1, standard: "S1", isUsed: true },
+    { x: 10, y: 0.19, standard: "S2", isUsed: false },
+  ],
+  line: { x: [0, 10], y: [0.01, 0.19], low: [0, 0.18], high: [0.02, 0.2] },
+  range: { from: 5, to: 5 },
+  note: "*S* = 0.01 + 0.018 *c*",
+};
+
 const drawings = {
   "traces, few": () => <TraceFigure view={traces(5)} label="Traces" />,
   "traces, many": () => <TraceFigure view={traces(30)} label="Traces" />,
@@ -103,6 +122,22 @@ const drawings = {
     />
   ),
   window: () => <WindowFigure view={windowView} label="Window" onCommit={() => {}} />,
+  calibration: () => <CalibrationFigure view={calibration} label="Calibration line" />,
+  "calibration of one standard without a line": () => (
+    <CalibrationFigure
+      view={{ ...calibration, points: calibration.points.slice(0, 1), line: null, range: null, note: "" }}
+      label="Readings"
+    />
+  ),
+  "placed residuals": () => (
+    <PlacedResidualsFigure
+      view={{ x: axis, y: signal, points: [{ x: 2, residual: -0.1, name: "S1" }], xReach: 10 }}
+      label="Residuals"
+    />
+  ),
+  "placed residuals, none": () => (
+    <PlacedResidualsFigure view={{ x: axis, y: signal, points: [], xReach: 0 }} label="Residuals" />
+  ),
   spark: () => (
     <SparkLine
       x={[0, 1]}
