@@ -145,6 +145,7 @@ describe("a law that stands", () => {
     ]);
     expect(rail.map((station) => [station.name, station.state])).toEqual([
       ["Set-up", "holds"],
+      ["Standards", "open"],
       ["Runs", "holds"],
       ["Rates", "holds"],
       ["Rate law", "holds"],
@@ -190,7 +191,7 @@ describe("no law", () => {
       status: "no-law",
       missing: "The run sheet is empty: runs at two or more levels of each species are needed.",
     });
-    expect(rail.map((station) => station.state)).toEqual(["holds", "open", "open", "open"]);
+    expect(rail.map((station) => station.state)).toEqual(["holds", "open", "open", "open", "open"]);
   });
 
   test("with one level of a species says how many more are needed, and keeps what is known", async () => {

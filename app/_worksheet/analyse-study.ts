@@ -164,6 +164,8 @@ function whatCounts(sheet: Sheet): unknown {
     orders: sheet.orders,
     stocks: sheet.stocks,
     mixing: sheet.mixing,
+    standards: sheet.standards.map(({ remark, ...standard }) => standard),
+    calibration: sheet.calibration,
     runs: presentRuns(sheet).map(({ remark, changedIn, removedIn, trace, ...run }) => ({
       ...run,
       trace: trace?.sha256 ?? null,

@@ -61,7 +61,7 @@ export type CheckSeverity = "blocks" | "weakens" | "note" | "holds";
 export interface Check {
   readonly code: string;
   readonly severity: CheckSeverity;
-  readonly station: "set-up" | "runs" | "rates" | "rate-law";
+  readonly station: "set-up" | "standards" | "runs" | "rates" | "rate-law";
   readonly runId: string | null;
   readonly message: string;
   /** Somebody answered it (a run set aside): drawn grey, says who and why. */

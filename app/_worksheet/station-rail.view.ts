@@ -1,10 +1,15 @@
+import { printUncertain } from "kinetics-core/quantities";
 import type { StationState, StationView } from "@/app/_ui/law-view";
 import type { Sheet } from "@/db/sheet/sheet.schema";
-import type { StudyAnalysis } from "./analysis";
+import type { Check, StudyAnalysis } from "./analysis";
 import { lawName } from "./law-name";
 import { list } from "./missing-law";
 import { lawSpecies } from "./present-runs";
 import { printExponent } from "./print-order";
+import { calibratedStandards } from "./standards/calibrated-standards";
+import { slopeOfStandards } from "./standards/recalibrated";
+import { slopeName } from "./standards/slope-name";
+import { standardsFlags } from "./standards/standards-flags";
 import { standingConstant, standingOrders } from "./standing-constant";
 import { STATION_NAMES, STATIONS, type Station } from "./station";
 
@@ -25,11 +30,15 @@ export function stationRailView(
 function stateOf(station: Station, sheet: Sheet, analysis: StudyAnalysis): StationState {
   const started: Record<Station, boolean> = {
     "set-up": sheet.species.length > 0,
+    standards: calibratedStandards(sheet).status === "calibrated",
     runs: analysis.runs.length > 0,
     rates: analysis.runs.some((run) => run.rate.kind !== "none"),
     "rate-law": analysis.law.status === "law",
   };
-  const open = analysis.checks.filter((check) => check.station === station && check.settled === null);
+  const checks = analysis.checks.filter((check) => check.station === station && check.settled === null);
+  // Standards that no signal follows weaken no law, and are looked at all the same.
+  const flags = station === "standards" ? standardsFlags(sheet, analysis.runs) : [];
+  const open: readonly Pick<Check, "severity">[] = [...checks, ...flags];
   if (open.some((check) => check.severity === "blocks")) return "blocks";
   if (open.some((check) => check.severity === "weakens")) return "weakens";
   return started[station] ? "holds" : "open";
@@ -44,6 +53,16 @@ const YIELDS: Readonly<Record<Station, (sheet: Sheet, analysis: StudyAnalysis) =
       ...(kelvin === undefined ? [] : [`${(kelvin - 273.15).toFixed(1).replace("-", "\u2212")} °C`]),
     ];
     return parts.join(", ") || "nothing entered";
+  },
+  standards: (sheet) => {
+    const line = calibratedStandards(sheet);
+    const slope = slopeOfStandards(sheet);
+    if (line.status === "no-line" || slope === null)
+      return sheet.standards.length === 0 ? "none" : "no line yet";
+    const value = printUncertain(slope.value, slope.standardUncertainty);
+    const power = value.power === 0 ? "" : ` × 10^${value.power}`;
+    const standards = line.used.length === 1 ? "1 standard" : `${line.used.length} standards`;
+    return `${slopeName(sheet)} ${value.value}${power}, ${standards}`;
   },
   runs: (_sheet, { runs }) => {
     const aside = runs.filter((run) => run.state === "set-aside").length;

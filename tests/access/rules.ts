@@ -39,6 +39,7 @@ export const rules: Readonly<Record<string, Rule>> = {
   "page /studies": member,
   "page /studies/new": member,
   "page /studies/[studyId]/set-up": group(),
+  "page /studies/[studyId]/standards": group(),
   "page /studies/[studyId]/runs": group(),
   "page /studies/[studyId]/runs/import": group(),
   "page /studies/[studyId]/runs/bench-sheet": group(),
@@ -81,6 +82,30 @@ export const rules: Readonly<Record<string, Rule>> = {
   })),
   "action app/(bench)/studies/[studyId]/set-up/actions.ts#previewSetUp": group(setUp),
   "action app/(bench)/studies/[studyId]/set-up/actions.ts#keepSetUp": group(setUp),
+  "action app/(bench)/studies/[studyId]/standards/actions.ts#keepStandards": group(
+    ({ studyId, revision }) => ({ studyId, base: revision, unit: "mmol/L", lines: "S1 1 0.1" }),
+  ),
+  "action app/(bench)/studies/[studyId]/standards/actions.ts#keepSettings": group(
+    ({ studyId, revision }) => ({
+      studyId,
+      base: revision,
+      unit: "mmol/L",
+      speciesId: "",
+      intercept: "none",
+      weighting: "none",
+      low: "",
+      high: "",
+      stock: "",
+    }),
+  ),
+  "action app/(bench)/studies/[studyId]/standards/actions.ts#followLine": group(({ studyId, revision }) => ({
+    studyId,
+    base: revision,
+    follow: true,
+  })),
+  "action app/(bench)/studies/[studyId]/standards/actions.ts#setStandardAside": group(
+    ({ studyId, revision }) => ({ studyId, base: revision, standardId: "none", reason: "bends away" }),
+  ),
   "action app/(bench)/studies/[studyId]/runs/actions.ts#previewAside": group(({ studyId, runId }) => ({
     studyId,
     runIds: [runId],

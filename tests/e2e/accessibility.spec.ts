@@ -11,6 +11,7 @@ const AXE = readFileSync(path.resolve(import.meta.dirname, "../../node_modules/a
 
 const STATIONS = [
   "set-up",
+  "standards",
   "runs",
   "runs?edit",
   "runs/import",

@@ -8,6 +8,7 @@ import { ionicStrengthChecks } from "./ionic-strength-checks";
 import { lawChecks } from "./law-checks";
 import { rateChecks } from "./rate-checks";
 import { setUpChecks } from "./set-up-checks";
+import { standardsChecks } from "./standards-checks";
 import { temperatureChecks } from "./temperature-checks";
 import { traceChecks } from "./trace-checks";
 
@@ -24,6 +25,7 @@ export interface Checked {
 export function findChecks(checked: Checked): readonly Check[] {
   return [
     ...setUpChecks(checked),
+    ...standardsChecks(checked),
     ...temperatureChecks(checked),
     ...ionicStrengthChecks(checked),
     ...blockChecks(checked),

@@ -22,9 +22,14 @@ export function slopeOfStandards(
   const { estimate, standardError } = line.calibration.line.slope;
   if (estimate === null || estimate === 0 || standardError === null) return null;
   return {
-    value: estimate,
-    standardUncertainty: Math.hypot(standardError, estimate * sheet.calibration.stockRelative),
+    value: asTyped(estimate),
+    standardUncertainty: asTyped(Math.hypot(standardError, estimate * sheet.calibration.stockRelative)),
   };
+}
+
+/** As many digits as pass through a box unchanged: a set-up that is saved untouched must not look as if another factor had been typed. */
+function asTyped(value: number): number {
+  return Number(value.toPrecision(8));
 }
 
 /** Mean signal of the blanks, with the standard deviation of the mean; null without two readings of one. */

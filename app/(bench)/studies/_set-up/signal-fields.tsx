@@ -14,10 +14,13 @@ export function SignalFields({
   followedName,
   faults,
   readOnly,
+  standardsFactor = null,
   onChange,
 }: {
   signal: Signal;
   followedName: string;
+  /** The factor as the standards give it, where the signal follows them; null where it is typed. */
+  standardsFactor?: string | null;
   faults: readonly FormFault[];
   readOnly: boolean;
   onChange: (signal: Signal) => void;
@@ -86,7 +89,13 @@ export function SignalFields({
               readOnly={readOnly}
               placeholder="17930 ± 55"
               error={faultOf("perMolar")}
-              hint={factorHint(signal.perMolar, absorbance)}
+              hint={
+                standardsFactor === null
+                  ? factorHint(signal.perMolar, absorbance)
+                  : signal.perMolar === standardsFactor
+                    ? "Follows the standards and changes with them. Type another factor to part it from them."
+                    : `A typed factor, no longer that of the standards. ${factorHint(signal.perMolar, absorbance)}`
+              }
               onChange={(event) => onChange({ ...signal, perMolar: event.target.value })}
             />
           </div>

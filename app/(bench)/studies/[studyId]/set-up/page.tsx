@@ -31,6 +31,7 @@ export default async function SetUpPage({ params }: Props) {
       canEdit={canEdit}
       title={setUpTitle(sheet)}
       kept={setUpFormOf(sheet)}
+      followsStandards={sheet.signal?.kind === "calibrated" && sheet.signal.source === "standards"}
       margin={
         <>
           {checks.length > 0 && (

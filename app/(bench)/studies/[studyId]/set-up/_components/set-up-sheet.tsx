@@ -38,6 +38,7 @@ export function SetUpSheet({
   canEdit,
   title,
   kept,
+  followsStandards,
   margin,
 }: {
   studyId: string;
@@ -46,6 +47,8 @@ export function SetUpSheet({
   title: string;
   /** The boxes as they are kept at `revision`. */
   kept: SetUpForm;
+  /** The signal's factor is the slope of the standards' line. */
+  followsStandards: boolean;
   margin: ReactNode;
 }) {
   const router = useRouter();
@@ -158,6 +161,7 @@ export function SetUpSheet({
         <SectionTitle note="what the traces hold">Signal</SectionTitle>
         <SignalFields
           signal={form.signal}
+          standardsFactor={followsStandards ? kept.signal.perMolar : null}
           followedName={followed?.name || followed?.symbol || "the followed species"}
           faults={faults}
           readOnly={!canEdit}
