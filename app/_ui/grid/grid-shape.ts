@@ -44,6 +44,7 @@ export interface GridProblem {
 /** Columns under one heading above their own, in order from the first: "Volumes", "After mixing". */
 export interface GridBand {
   readonly id: string;
+  /** Null over columns that belong to none. */
   readonly head: ReactNode;
   readonly columns: number;
   readonly computed?: boolean;

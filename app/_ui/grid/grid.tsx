@@ -59,16 +59,20 @@ export function Grid({
           <thead>
             {bands !== undefined && (
               <tr className="band-row">
-                {bands.map((band) => (
-                  <th
-                    key={band.id}
-                    scope="colgroup"
-                    colSpan={band.columns}
-                    className={band.computed ? "computed" : undefined}
-                  >
-                    {band.head}
-                  </th>
-                ))}
+                {bands.map(({ id, head, columns: width, computed }) =>
+                  head === null ? (
+                    <td key={id} colSpan={width} />
+                  ) : (
+                    <th
+                      key={id}
+                      scope="colgroup"
+                      colSpan={width}
+                      className={computed ? "computed" : undefined}
+                    >
+                      {head}
+                    </th>
+                  ),
+                )}
               </tr>
             )}
             <tr>

@@ -56,10 +56,8 @@ export function StockTable({
           <tbody>
             {stocks.map((stock) => (
               <tr key={stock.stockId}>
-                <th scope="row" className="law text-[18px] font-normal">
-                  {stock.symbol}
-                </th>
-                <td>{stock.holds}</td>
+                <td className="law text-[18px]">{stock.symbol}</td>
+                <th scope="row">{stock.holds}</th>
                 <td>
                   {stock.concentrations.map((line) => (
                     <span key={line} className="block whitespace-nowrap">
