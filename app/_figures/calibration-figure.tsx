@@ -44,6 +44,8 @@ function Calibration({ view, size, label }: { view: CalibrationFigureView; size:
     },
     { left: LINE_LEFT },
   );
+  // Where the line does not pass: below its end, or above where it falls.
+  const falls = line !== null && (line.y.at(-1) ?? 0) < (line.y[0] ?? 0);
   return (
     <Chart
       size={size}
@@ -73,13 +75,42 @@ function Calibration({ view, size, label }: { view: CalibrationFigureView; size:
           />
         </g>
       ))}
+      {namedBeside(points).map(({ standard, x, y }) => (
+        <text
+          key={standard}
+          className="name"
+          x={area.x(x)}
+          y={area.y(y) + (falls ? -12 : 20)}
+          textAnchor="middle"
+        >
+          {standard}
+        </text>
+      ))}
       {view.note !== "" && (
-        <text className="in-law" x={area.left + 14} y={area.top + 20}>
+        <text
+          className="in-law"
+          x={area.right - 12}
+          y={falls ? area.top + 20 : area.bottom - 16}
+          textAnchor="end"
+        >
           <SvgProse text={view.note} />
         </text>
       )}
     </Chart>
   );
+}
+
+/** Standards that are not in the line are named, each at the middle of its readings. */
+function namedBeside(points: CalibrationFigureView["points"]) {
+  const names = new Set(points.filter(({ isUsed }) => !isUsed).map(({ standard }) => standard));
+  return [...names].map((standard) => {
+    const own = points.filter((point) => point.standard === standard);
+    return {
+      standard,
+      x: own.reduce((sum, { x }) => sum + x, 0) / own.length,
+      y: own.reduce((sum, { y }) => sum + y, 0) / own.length,
+    };
+  });
 }
 
 /** The part of the axis on which the line is used, marked like a window. */
@@ -99,9 +130,17 @@ function InUse({ area, range }: { area: ChartArea; range: NonNullable<Calibratio
         d={`M${from} ${area.top}V${area.bottom}M${to} ${area.top}V${area.bottom}`}
         stroke="var(--mark-line)"
       />
+      {to - from > ROOM_FOR_WORDS && (
+        <text className="on-mark" x={(from + to) / 2} y={area.top + 16} textAnchor="middle">
+          {range.words}
+        </text>
+      )}
     </g>
   );
 }
+
+/** Width that the words over the marked part take. */
+const ROOM_FOR_WORDS = 150;
 
 function bandOf(area: ChartArea, line: NonNullable<CalibrationFigureView["line"]>): string {
   const low = line.x.map((x, i) => `${area.x(x)},${area.y(line.low[i] ?? 0)}`);

@@ -139,8 +139,8 @@ export interface CalibrationFigureView {
     readonly low: readonly number[];
     readonly high: readonly number[];
   } | null;
-  /** Part of the concentrations that the line is used on. */
-  readonly range: { readonly from: number; readonly to: number } | null;
+  /** Part of the concentrations that the line is drawn through, with what stands over it: "in use, 5.00 to 55.0". */
+  readonly range: { readonly from: number; readonly to: number; readonly words: string } | null;
   /** In the plot, prose: "*A* = 0.012 + 0.01793 *c*"; "" for none. */
   readonly note: string;
 }

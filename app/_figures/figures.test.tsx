@@ -81,7 +81,7 @@ const calibration: CalibrationFigureView = {
     { x: 10, y: 0.19, standard: "S2", isUsed: false },
   ],
   line: { x: [0, 10], y: [0.01, 0.19], low: [0, 0.18], high: [0.02, 0.2] },
-  range: { from: 5, to: 5 },
+  range: { from: 5, to: 5, words: "in use, 5 to 5" },
   note: "*S* = 0.01 + 0.018 *c*",
 };
 

@@ -1,6 +1,7 @@
 import { describe, expect, it } from "vitest";
 import type { Sheet, SheetStandard } from "@/db/sheet/sheet.schema";
 import { exampleSheet } from "@/tests/example-sheet";
+import { blankOfStandards } from "./blank-of-standards";
 import { calibratedStandards } from "./calibrated-standards";
 import { recalibrated } from "./recalibrated";
 
@@ -74,8 +75,18 @@ describe("a sheet whose signal follows its standards", () => {
     expect(line.used.map(({ label }) => label)).toEqual(["S0", "S1", "S2", "S3", "S4", "S5", "S6"]);
     expect(recalibrated(ranged).signal).toMatchObject({
       perMolar: { value: expect.closeTo(1.9304e6, -2) },
-      blank: { value: expect.closeTo(2.1, 12), standardUncertainty: expect.closeTo(0.1, 12) },
     });
+    expect(blankOfStandards(ranged)).toEqual({
+      value: expect.closeTo(2.1, 12),
+      standardUncertainty: expect.closeTo(0.1, 12),
+    });
+  });
+
+  it("leaves the blank of the reaction mixture as it was typed", () => {
+    const sheet = sheetOf([standard(8, 0, [2.0, 2.2], { isBlank: true }), ...FLUORESCEIN]);
+    if (sheet.signal?.kind !== "calibrated") throw new Error("it is calibrated");
+    const blank = { value: 0.5, standardUncertainty: 0.01 };
+    expect(recalibrated({ ...sheet, signal: { ...sheet.signal, blank } }).signal).toMatchObject({ blank });
   });
 
   it("weighs by the signal when asked, and says which standard stands against it", () => {

@@ -30,13 +30,17 @@ export function lineFigure(
     x: concentrationAxis(sheet, display),
     y: { quantity: quantityOf(sheet), unit: signalUnit(sheet) },
     points,
-    range: used.length === 0 ? null : { from: Math.min(...used), to: Math.max(...used) },
+    range: used.length === 0 ? null : rangeOf(Math.min(...used), Math.max(...used)),
     line:
       calibration === null
         ? null
         : drawnLine(calibration, Math.max(...points.map(({ x }) => x)), display.factor),
     note: calibration === null ? "" : equationOf(calibration, display.factor),
   };
+}
+
+function rangeOf(from: number, to: number) {
+  return { from, to, words: `in use, ${printNumber(from, 3)} to ${printNumber(to, 3)}` };
 }
 
 /** `used` are the standards of the line, in its order. */

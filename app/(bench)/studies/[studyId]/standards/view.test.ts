@@ -69,7 +69,11 @@ describe("the standards station", () => {
     const { figure, residuals } = view(sheetOf());
     expect(figure?.points).toHaveLength(24);
     expect(figure?.points.filter(({ isUsed }) => isUsed)).toHaveLength(18);
-    expect(figure?.range).toEqual({ from: expect.closeTo(5, 9), to: expect.closeTo(55, 9) });
+    expect(figure?.range).toEqual({
+      from: expect.closeTo(5, 9),
+      to: expect.closeTo(55, 9),
+      words: "in use, 5.00 to 55.0",
+    });
     expect(figure?.line?.x.at(-1)).toBeCloseTo(100, 9);
     expect(residuals?.points.map(({ name }) => name).slice(0, 4)).toEqual(["S1", "S1", "S1", "S2"]);
   });

@@ -4,6 +4,7 @@ import type { CalibrationFigureView, PlacedResidualsView } from "@/app/_figures/
 import type { StudyAnalysis } from "@/app/_worksheet/analysis";
 import { concentrationDisplay, type DisplayScale } from "@/app/_worksheet/display-units";
 import { lawName } from "@/app/_worksheet/law-name";
+import { blankOfStandards } from "@/app/_worksheet/standards/blank-of-standards";
 import { calibratedSpecies } from "@/app/_worksheet/standards/calibrated-species";
 import {
   type CalibratedStandards,
@@ -85,7 +86,7 @@ export function standardsView(sheet: Sheet, analysis: StudyAnalysis, typedReadin
     rows: standardRows(sheet, calibration, display),
     lines: printStandardLines(sheet.standards, unit),
     settings: settingsOf(sheet, unit),
-    limits: calibration === null ? [] : limitsOf(calibration, display),
+    limits: calibration === null ? [] : limitsOf(sheet, calibration, display),
     flags: standardsFlags(sheet, analysis.runs),
     budget: calibration === null ? [] : budgetOf(sheet, calibration),
     follow: followOf(sheet, line),
@@ -142,12 +143,14 @@ function settingsOf(sheet: Sheet, unit: ConcentrationUnit): SettingsView {
   };
 }
 
-function limitsOf(calibration: Calibration, { unit, factor }: DisplayScale) {
+function limitsOf(sheet: Sheet, calibration: Calibration, { unit, factor }: DisplayScale) {
   const { limitOfDetection, limitOfQuantitation, linearRange, line } = calibration;
   const inUnit = (molar: number | null) =>
     molar === null ? "not known" : `${printNumber(molar * factor, 2)} ${unit}`;
   const scatter = line.residualStandardDeviation;
   const freedom = line.degreesOfFreedom;
+  const blank = blankOfStandards(sheet);
+  const { intercept } = line;
   return [
     { name: "Detection", text: inUnit(limitOfDetection) },
     { name: "Quantitation", text: inUnit(limitOfQuantitation) },
@@ -165,6 +168,12 @@ function limitsOf(calibration: Calibration, { unit, factor }: DisplayScale) {
           ? "not known"
           : `${printNumber(scatter, 2)}, ${freedom} ${freedom === 1 ? "degree" : "degrees"} of freedom`,
     },
+    ...(line.interceptFitted && intercept.estimate !== null
+      ? [{ name: "Intercept", text: uncertainText(intercept.estimate, intercept.standardError) }]
+      : []),
+    ...(blank === null
+      ? []
+      : [{ name: "Blanks read", text: uncertainText(blank.value, blank.standardUncertainty) }]),
   ];
 }
 
