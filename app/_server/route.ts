@@ -6,6 +6,7 @@ import { type Actor, mayActAs } from "@/db/member/actor";
 import type { Role } from "@/db/member/member.table";
 import { actorOfToken } from "@/db/token/token.queries";
 import type { TokenScope } from "@/db/token/token.table";
+import { acceptedInWords } from "./accepted-in-words";
 import { readJsonBody } from "./body";
 import { database } from "./database";
 import { env } from "./env";
@@ -139,7 +140,7 @@ async function readInput<Schema extends z.ZodType>(
   if (!received.ok) {
     return problem(received.status, received.detail);
   }
-  const parsed = options.schema.safeParse(received.value);
+  const parsed = options.schema.safeParse(received.value, { error: acceptedInWords });
   if (parsed.success) {
     return { value: parsed.data };
   }

@@ -1,4 +1,5 @@
 import type { z } from "zod";
+import { acceptedInWords } from "@/app/_server/accepted-in-words";
 import { fieldMessages } from "@/app/_server/problem";
 import { isQuickFit } from "@/app/_worksheet/quick-fit";
 import { computeCalibration } from "./calibration/compute";
@@ -105,7 +106,7 @@ export function runComputation<Request extends z.ZodType, Response extends z.Zod
   entry: Computation<Request, Response>,
   body: unknown,
 ): Computed<z.input<Response>> {
-  const parsed = entry.request.safeParse(body);
+  const parsed = entry.request.safeParse(body, { error: acceptedInWords });
   if (!parsed.success) return { ok: false, errors: fieldMessages(parsed.error) };
   return entry.compute(parsed.data);
 }
