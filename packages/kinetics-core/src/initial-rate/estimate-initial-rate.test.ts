@@ -274,6 +274,19 @@ describe("what weakens an estimate is flagged", () => {
     expect(codes(result)).toContain("conversion-unknown");
   });
 
+  it("no signal span and readings enough: windows of all lengths compete", () => {
+    const curve = (t: number) => 0.1 + Math.exp(-0.03 * t);
+    const deviate = randomDraws(12).normal;
+    const trace = traceOf(evenly(120, 100), (t) => curve(t) + 0.002 * deviate());
+    const result = found(trace);
+    const [low, high] = result.interval;
+    expect(low).toBeLessThan(-0.03);
+    expect(high).toBeGreaterThan(-0.03);
+    expect(high - low).toBeLessThan(0.2 * 0.03);
+    expect(result.conversion).toBeNull();
+    expect(codes(result)).toEqual(["conversion-unknown"]);
+  });
+
   it("readings before mixing, which are not used", () => {
     const trace = traceOf(evenly(60, 59), (t) => (t < 10 ? 0.4 : 0.4 + 0.03 * (t - 10)));
     const result = found(trace, { timeZero: 10, signalSpan: 5 });

