@@ -1,6 +1,6 @@
 import { fSurvival } from "kinetics-core/distributions";
 import { dot, entry, leastSquares, matrixFromColumns } from "kinetics-core/linear-algebra";
-import { type Estimate, estimateOf } from "kinetics-core/quantities";
+import { type Estimate, estimateOf, verb } from "kinetics-core/quantities";
 import type { CalibrationLine } from "./calibration";
 import { levelsOf } from "./levels";
 
@@ -37,7 +37,7 @@ export function testCurvature(line: CalibrationLine): Curvature {
   if (usable.length < parameters || freedom < 1)
     return {
       status: "too-few-standards",
-      message: `Curvature needs ${parameters} levels${interceptFitted ? "" : " other than 0"} and one standard more; here are ${usable.length} levels and ${standards.length} standards.`,
+      message: `Curvature needs ${parameters} levels${interceptFitted ? "" : " other than 0"} and one standard more; here ${verb(usable.length, "is", "are")} ${usable.length} ${verb(usable.length, "level", "levels")} and ${standards.length} ${verb(standards.length, "standard", "standards")}.`,
     };
 
   if (line.exact)

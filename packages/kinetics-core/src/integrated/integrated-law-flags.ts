@@ -131,7 +131,7 @@ function fitFlags({ report, held, heldOrder, cornered }: FlagContext): Flag[] {
       severity: "weakens",
       message:
         `The residuals hold a pattern (F = ${numberInWords(lackOfFit.ratio)}, p ${lackOfFit.pValue < 0.001 ? "< 0.001" : `= ${lackOfFit.pValue.toFixed(3)}`}) ` +
-        `that ${heldOrder === null ? "no single order" : "this order"} describes; look for a second phase, a burst, a lag or a drift.`,
+        `that ${heldOrder === null ? "no single order describes" : "this order does not describe"}; look for a second phase, a burst, a lag or a drift.`,
     });
   }
   if (cornered) {

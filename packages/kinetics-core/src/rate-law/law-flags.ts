@@ -77,7 +77,7 @@ export function readingFlags(
         {
           code: "order-not-simple",
           severity: "note",
-          message: `The order in ${name} lies between ${signed(low)} and ${signed(high)}, which contains no simple order near it: a law of another form may lie behind it.`,
+          message: `The order in ${name} lies between ${limits(low, high)}, which contains no simple order near it: a law of another form may lie behind it.`,
         },
       ];
     }
@@ -98,6 +98,9 @@ export function readingFlags(
   });
 }
 
-function signed(value: number): string {
-  return value.toFixed(2).replace("-", "\u2212");
+/** With as many places as it takes to tell the ends apart. */
+function limits(low: number, high: number): string {
+  const places = Math.min(Math.max(2, 1 - Math.floor(Math.log10(high - low || 1))), 6);
+  const [one = "", other = ""] = [low, high].map((value) => value.toFixed(places).replace("-", "\u2212"));
+  return `${one} and ${other}`;
 }

@@ -231,7 +231,7 @@ function ratePrecision(runs: readonly UsableRun[]): readonly Flag[] {
       {
         code: "rate-scale",
         severity: "weakens",
-        message: `${without.map(precisionInWords).join("; ")}: too uncertain for a logarithm, so the law was fitted to the rates themselves. More points or a longer trace would make ${verb(without.length, "it", "them")} count.`,
+        message: `${precisionInWords(without)}: too uncertain for a logarithm, so the law was fitted to the rates themselves. More points or a longer trace would make ${verb(without.length, "it", "them")} count.`,
       },
     ];
   if (poor.length === 0) return [];
@@ -239,13 +239,31 @@ function ratePrecision(runs: readonly UsableRun[]): readonly Flag[] {
     {
       code: "rate-precision",
       severity: "weakens",
-      message: `${poor.map(precisionInWords).join("; ")}. More points or a longer trace would make ${verb(poor.length, "it", "them")} count for more.`,
+      message: `${precisionInWords(poor)}. More points or a longer trace would make ${verb(poor.length, "it", "them")} count for more.`,
     },
   ];
 }
 
-function precisionInWords(run: UsableRun): string {
-  return run.rate > run.rateError
-    ? `The rate of ${run.label} is known to ${percent(run.rateError / run.rate)}`
-    : `The rate of ${run.label} cannot be told from zero`;
+/** "The rate of run 3 is known to 14 %", "The rates of run 3 and run 5 are known to 14 and 16 %; that of …". */
+function precisionInWords(runs: readonly UsableRun[]): string {
+  const known = runs.filter((run) => run.rate > run.rateError);
+  const lost = runs.filter((run) => run.rate <= run.rateError);
+  const parts: string[] = [];
+  if (known.length > 0)
+    parts.push(
+      `The ${verb(known.length, "rate", "rates")} of ${inARow(known.map((run) => run.label))} ${verb(known.length, "is", "are")} known to ${precisions(known)}`,
+    );
+  if (lost.length > 0)
+    parts.push(
+      `${parts.length > 0 ? "the" : "The"} ${verb(lost.length, "rate", "rates")} of ${inARow(lost.map((run) => run.label))} cannot be told from zero`,
+    );
+  return parts.join("; ");
+}
+
+/** "14 %", or "14 to 30 %" for runs that differ. */
+function precisions(runs: readonly UsableRun[]): string {
+  const relative = runs.map((run) => run.rateError / run.rate);
+  const least = percent(Math.min(...relative));
+  const most = percent(Math.max(...relative));
+  return least === most ? least : `${least.replace(/\s*%$/, "")} to ${most}`;
 }

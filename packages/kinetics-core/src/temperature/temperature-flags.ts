@@ -1,4 +1,4 @@
-import { type Flag, printNumber } from "kinetics-core/quantities";
+import { type Flag, inARow, printNumber, verb } from "kinetics-core/quantities";
 import {
   CURVATURE_SHOWN_BELOW,
   FEWEST_FOR_INTERVAL,
@@ -120,16 +120,19 @@ function uncertaintyFlags({ points }: TemperatureInput): readonly Flag[] {
     flags.push({
       code: "uncertainty-missing",
       severity: "note",
-      message: `${stated} of ${points.length} points state an uncertainty of k; since the others state none, all count alike. State it for every point to weight them.`,
+      message: `${stated} of ${points.length} points ${verb(stated, "states", "state")} an uncertainty of k; since the others state none, all count alike. State it for every point to weight them.`,
     });
-  const poor = points.findIndex(
-    (point) => (point.rateConstantUncertainty ?? 0) > POORLY_KNOWN_ABOVE * point.rateConstant,
+  const poor = points.flatMap((point, index) =>
+    (point.rateConstantUncertainty ?? 0) > POORLY_KNOWN_ABOVE * point.rateConstant ? [`${index + 1}`] : [],
   );
-  if (poor >= 0)
+  if (poor.length > 0)
     flags.push({
       code: "rate-constant-poorly-known",
       severity: "weakens",
-      message: `The rate constant of point ${poor + 1} is known to worse than 20 %, where its logarithm is off on average and no longer symmetric. Repeat that temperature.`,
+      message:
+        poor.length === 1
+          ? `The rate constant of point ${inARow(poor)} is known to worse than 20 %, where its logarithm is off on average and no longer symmetric. Repeat that temperature.`
+          : `The rate constants of points ${inARow(poor)} are known to worse than 20 %, where their logarithms are off on average and no longer symmetric. Repeat those temperatures.`,
     });
   return flags;
 }
