@@ -1,4 +1,4 @@
-import { type Estimate, printUncertain } from "kinetics-core/quantities";
+import { type Estimate, printNumber, printUncertain } from "kinetics-core/quantities";
 import type { RateLawFit } from "kinetics-core/rate-law";
 import type { MarkedRun, ResidualView } from "@/app/_figures/figure-view";
 import type { LawView, PrintedNumber } from "@/app/_ui/law-view";
@@ -299,7 +299,7 @@ function residualNote(fit: RateLawFit): string {
   const about = "Each run's departure from the law with free orders.";
   return scatter === null
     ? about
-    : `${about} About the law with simple orders the runs ${scatter < LEAST_SCATTER ? "do not scatter" : `scatter by ${(scatter * 100).toPrecision(2)} %`}.`;
+    : `${about} About the law with simple orders the runs ${scatter < LEAST_SCATTER ? "do not scatter" : `scatter by ${printNumber(scatter * 100, 2)} %`}.`;
 }
 
 /** "+0.4 %"; a shift that rounds to nothing has no sign. */

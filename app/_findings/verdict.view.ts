@@ -1,3 +1,4 @@
+import { printNumber } from "kinetics-core/quantities";
 import type { StudyAnalysis } from "@/app/_worksheet/analysis";
 import { list } from "@/app/_worksheet/missing-law";
 import { printExponent, printHeldOrder } from "@/app/_worksheet/print-order";
@@ -111,7 +112,7 @@ function departure(residuals: Fit["residuals"]): string {
   if (worst === undefined || residuals.length < 2) return "";
   const percent = Math.abs(Math.expm1(worst.residual)) * 100;
   if (percent < 0.05) return "No run departs from the law by more than 0.05 %.";
-  return `No run departs from the law by more than ${percent.toPrecision(2)} % (${worst.label}).`;
+  return `No run departs from the law by more than ${printNumber(percent, 2)} % (${worst.label}).`;
 }
 
 /** How close the data hold each settled order to its simple value, and where an unsettled one lies. */
@@ -127,9 +128,9 @@ function freeOrders(fit: Fit, orders: readonly NamedOrder[]): string {
     if (reading.kind === "free")
       open.push(`The order in ${name} lies between ${twoPlaces(low)} and ${twoPlaces(high)}.`);
   }
-  const widest = Math.max(...reach.map((one) => one.within)).toPrecision(2);
   const [first, ...rest] = reach;
   if (first === undefined) return open.join(" ");
+  const widest = printNumber(Math.max(...reach.map((one) => one.within)), 2);
   const held =
     rest.length > 0 && rest.every((one) => one.order === first.order)
       ? `The free orders lie within ${widest} of ${printHeldOrder(first.order)}.`

@@ -1,4 +1,4 @@
-import { printUncertain } from "kinetics-core/quantities";
+import { printNumber, printUncertain } from "kinetics-core/quantities";
 import type { StationState, StationView } from "@/app/_ui/law-view";
 import type { Sheet } from "@/db/sheet/sheet.schema";
 import type { Check, StudyAnalysis } from "./analysis";
@@ -78,7 +78,7 @@ const YIELDS: Readonly<Record<Station, (sheet: Sheet, analysis: StudyAnalysis) =
       )
       .sort((a, b) => a - b);
     const median = medianOf(relative);
-    if (median !== null) return `median *u* ${(median * 100).toPrecision(2)} %`;
+    if (median !== null) return `median *u* ${printNumber(median * 100, 2)} %`;
     const rates = runs.filter((run) => run.rate.kind !== "none").length;
     return rates === 0 ? "no rate yet" : rates === 1 ? "1 rate" : `${rates} rates`;
   },
@@ -91,7 +91,7 @@ const YIELDS: Readonly<Record<Station, (sheet: Sheet, analysis: StudyAnalysis) =
     const width =
       estimate === null || interval === null
         ? ""
-        : `, ±${(((interval[1] - interval[0]) / 2 / estimate) * 100).toPrecision(2)} %`;
+        : `, ±${printNumber(((interval[1] - interval[0]) / 2 / estimate) * 100, 2)} %`;
     return `${orders.join(" ")}${width}`;
   },
 };

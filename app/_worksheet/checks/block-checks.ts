@@ -1,3 +1,4 @@
+import { printNumber } from "kinetics-core/quantities";
 import type { Check } from "../analysis";
 import { studyCheck } from "./check";
 import type { Checked } from "./find-checks";
@@ -28,7 +29,7 @@ export function blockChecks({ carrying, law }: Checked): readonly Check[] {
   return [
     found(
       "note",
-      `The runs come from ${blocks.size} blocks: ${names}. Rates differ between blocks by ${(between * 100).toPrecision(2)} %, which is in the uncertainty of *k*.`,
+      `The runs come from ${blocks.size} blocks: ${names}. Rates differ between blocks by ${printNumber(between * 100, 2)} %, which is in the uncertainty of *k*.`,
     ),
   ];
 }

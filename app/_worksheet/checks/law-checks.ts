@@ -1,3 +1,4 @@
+import { printNumber } from "kinetics-core/quantities";
 import type { RateLawFit } from "kinetics-core/rate-law";
 import type { Check } from "../analysis";
 import { studyCheck } from "./check";
@@ -38,7 +39,7 @@ function adequacy({ lackOfFit, flags }: RateLawFit): readonly Check[] {
       "rate-law",
       "holds",
       "lack-of-fit",
-      `The law misses the runs by no more than repeats differ among themselves (*p* = ${lackOfFit.pValue.toPrecision(2)}).`,
+      `The law misses the runs by no more than repeats differ among themselves (*p* = ${printNumber(lackOfFit.pValue, 2)}).`,
     ),
   ];
 }

@@ -1,5 +1,5 @@
 import { evaluateCurve, type InitialRate, type InitialRateFound } from "kinetics-core/initial-rate";
-import { printUncertain } from "kinetics-core/quantities";
+import { printNumber, printUncertain } from "kinetics-core/quantities";
 import type { MarkedRun, WindowFigureView } from "@/app/_figures/figure-view";
 import type { PrintedNumber } from "@/app/_ui/law-view";
 import { judgesNoise } from "@/app/_worksheet/judges-noise";
@@ -177,6 +177,6 @@ function sourcesOf(
       { source: "Fit inside the window", share: own / total },
       ...(shared === 0 ? [] : [{ source: "Calibration factor, shared by all runs", share: shared / total }]),
     ],
-    combined: `${(Math.sqrt(total) * 100).toPrecision(2)} %`,
+    combined: `${printNumber(Math.sqrt(total) * 100, 2)} %`,
   };
 }
