@@ -30,6 +30,20 @@ describe("what a global fit cannot say", () => {
     expect(fitGlobal(exact).status).toBe("no-change");
   });
 
+  it("is named by the signs where every trace goes the other way", () => {
+    const formed = { ...input, species: input.species.map((one) => ({ ...one, stoichiometricNumber: 1 })) };
+    expect(fitGlobal(formed)).toMatchObject({
+      status: "wrong-direction",
+      path: "followed",
+      message: expect.stringContaining("The traces fall, where"),
+    });
+    const bleaching = { ...input, signalPerConcentration: { value: -250, standardUncertainty: 2.5 } };
+    expect(fitGlobal(bleaching)).toMatchObject({
+      status: "wrong-direction",
+      message: expect.stringContaining("number −1 with a signal per concentration of −250 makes them rise"),
+    });
+  });
+
   it("is named where the reaction never begins", () => {
     const without = withRuns((run) => ({ ...run, concentrations: { ...run.concentrations, A: 0 } }));
     expect(fitGlobal(without)).toMatchObject({ status: "exhausted-at-first-reading", path: "runs" });

@@ -79,6 +79,7 @@ export type GlobalFitFailureStatus =
   | "bad-input"
   | "too-few-points"
   | "no-change"
+  | "wrong-direction"
   | "exhausted-at-first-reading"
   | "not-determined"
   | "no-course"

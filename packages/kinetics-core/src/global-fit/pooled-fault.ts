@@ -1,5 +1,6 @@
 import { failure, type GlobalFitFailure } from "./global-fit";
 import type { SearchEnd } from "./pooled-search";
+import type { PreparedRun, PreparedStudy } from "./prepared-study";
 import type { StudyPass } from "./study-pass";
 import { undeterminedCombinations } from "./undetermined";
 
@@ -24,12 +25,7 @@ export function pooledFault(
       "runs",
       "In every run the reaction is over at the first reading, or never begins with the concentrations given, so the traces say nothing about its rate. Read earlier, slow the reaction down, or check the starting concentrations.",
     );
-  if (isUnchanged(pass))
-    return failure(
-      "no-change",
-      "runs",
-      "No trace changes beyond its noise: the reaction was over before the first reading, or has hardly begun at the last. Read earlier, or wait longer.",
-    );
+  if (isUnchanged(pass)) return unchanged(pass.study);
   const open = undeterminedCombinations(pass.gram, names);
   if (open.length > 0)
     return failure("not-determined", "runs", open.map(({ message }) => message).join(" "), open);
@@ -57,6 +53,50 @@ function isUnchanged(pass: StudyPass): boolean {
     if (gain > least) return false;
   }
   return true;
+}
+
+function unchanged(study: PreparedStudy): GlobalFitFailure {
+  const { followedNumber, scale } = study;
+  const against = study.runs.filter((run) => trendOf(run) * followedNumber * scale < 0).length;
+  if (2 * against > study.runs.length) {
+    const [course, expected] = followedNumber * scale < 0 ? ["rise", "fall"] : ["fall", "rise"];
+    return failure(
+      "wrong-direction",
+      "followed",
+      `The traces ${course}, where a species of the stoichiometric number ${inText(followedNumber)} with a signal per concentration of ${inText(scale)} makes them ${expected}. Check both signs: a reactant that is followed has a negative number, a product a positive one.`,
+    );
+  }
+  return failure(
+    "no-change",
+    "runs",
+    "No trace changes beyond its noise: the reaction was over before the first reading, or has hardly begun at the last. Read earlier, or wait longer.",
+  );
+}
+
+/** t above which the slope of a trace is no chance of its noise, autocorrelation included. */
+const CLEAR_TREND = 8;
+
+/** +1 or −1 where the straight line through a trace clearly rises or falls, else 0. */
+function trendOf({ time, signal }: PreparedRun): number {
+  const count = time.length;
+  const middle = time.reduce((sum, t) => sum + t, 0) / count;
+  const mean = signal.reduce((sum, y) => sum + y, 0) / count;
+  let across = 0;
+  let along = 0;
+  let squares = 0;
+  for (let i = 0; i < count; i++) {
+    const t = (time[i] ?? 0) - middle;
+    const y = (signal[i] ?? 0) - mean;
+    across += t * y;
+    along += t * t;
+    squares += y * y;
+  }
+  const explained = along > 0 ? across ** 2 / along : 0;
+  return explained * (count - 2) > CLEAR_TREND ** 2 * (squares - explained) ? Math.sign(across) : 0;
+}
+
+function inText(value: number): string {
+  return String(value).replace("-", "\u2212");
 }
 
 /** 0 where only rounding is left. */

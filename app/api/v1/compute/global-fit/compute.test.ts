@@ -51,6 +51,24 @@ describe("global fit", () => {
     expect(runs[0]?.offset).toBeCloseTo(0.05, 1);
   });
 
+  it("takes an end signal of every kind that an integrated law takes", () => {
+    const withEnd = (endSignal: unknown) => {
+      const { runs, ...rest } = study();
+      return { ...rest, runs: runs.map((run) => ({ ...run, endSignal })) };
+    };
+    expect(answerTo(withEnd({ kind: "free" }))).toEqual(answerTo(study()));
+    const known = { value: 0.05, standardUncertainty: 0.001 };
+    expect(answerTo(withEnd({ kind: "known", ...known }))).toEqual(answerTo(withEnd(known)));
+    expect(answerTo(withEnd({ kind: "zero" }))).toEqual(
+      answerTo(withEnd({ value: 0, standardUncertainty: 0 })),
+    );
+    expect(answerTo(withEnd({ kind: "zero" }))).not.toEqual(answerTo(study()));
+    const refused = compute(withEnd({ kind: "blank" }));
+    expect(refused.ok ? [] : refused.errors.slice(0, 1)).toEqual([
+      { path: "runs.0.endSignal", message: expect.stringContaining("value and standardUncertainty") },
+    ]);
+  });
+
   it("gives the unit of a held order in closed form", () => {
     const { rateConstant, orders } = answerTo({ ...study(), orders: { A: 1 }, timeUnit: "min" });
     expect(rateConstant.unit).toBe("min^-1");

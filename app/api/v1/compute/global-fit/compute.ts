@@ -26,14 +26,20 @@ export function globalFitInput(request: GlobalFitRequest): GlobalFitInput {
     runs: runs.map(({ endSignal, timeZero, ...run }) => ({
       ...run,
       ...(timeZero === undefined ? {} : { timeZero }),
-      ...(endSignal === undefined
-        ? {}
-        : {
-            endSignal:
-              typeof endSignal === "number" ? { value: endSignal, standardUncertainty: null } : endSignal,
-          }),
+      ...endReadingOf(endSignal),
     })),
   };
+}
+
+type EndSignal = GlobalFitRequest["runs"][number]["endSignal"];
+
+/** A number is as good as one reading; a kind says that the end is exactly zero, or that nothing is known of it. */
+function endReadingOf(end: EndSignal): Pick<GlobalFitInput["runs"][number], "endSignal"> {
+  if (end === undefined) return {};
+  if (typeof end === "number") return { endSignal: { value: end, standardUncertainty: null } };
+  if ("value" in end)
+    return { endSignal: { value: end.value, standardUncertainty: end.standardUncertainty } };
+  return end.kind === "zero" ? { endSignal: { value: 0, standardUncertainty: 0 } } : {};
 }
 
 export function globalFitAnswer(result: GlobalFitResult): Computed<GlobalFitResponse> {

@@ -14,6 +14,22 @@ const MAX_RUNS = 500;
 
 const uncertain = z.object({ value: measured, standardUncertainty: measured.nonnegative() });
 
+const endSignal = z.union(
+  [
+    reading,
+    z.object({
+      kind: z.literal("known").optional(),
+      value: reading,
+      standardUncertainty: measured.nonnegative().nullable(),
+    }),
+    z.object({ kind: z.enum(["zero", "free"]) }),
+  ],
+  {
+    error:
+      "must be a number, an object with value and standardUncertainty (0 or more, or null), or one with the kind “zero” or “free”",
+  },
+);
+
 export const globalFitRequest = z
   .object({
     species: z
@@ -43,16 +59,10 @@ export const globalFitRequest = z
             description: "Since mixing, strictly increasing.",
           }),
           signal: z.array(reading).max(MAX_POINTS).meta({ description: "Same length as `time`." }),
-          endSignal: z
-            .union([
-              reading,
-              z.object({ value: reading, standardUncertainty: measured.nonnegative().nullable() }),
-            ])
-            .optional()
-            .meta({
-              description:
-                "Signal after the reaction as one more observation; a bare number is as good as one reading.",
-            }),
+          endSignal: endSignal.optional().meta({
+            description:
+              "Signal after the reaction as one more observation; a bare number, and an uncertainty of null, is as good as one reading. The kinds are those of the integrated laws: `known`, `zero` (exactly 0) and `free`, which an absent field also stands for.",
+          }),
           timeZero: z
             .object({ value: reading, standardUncertainty: measured.nonnegative() })
             .optional()
