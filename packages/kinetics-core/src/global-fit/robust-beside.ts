@@ -18,7 +18,7 @@ export function robustBeside(fit: GlobalFit): RobustBeside {
   const robust =
     fit.covariance === null
       ? null
-      : clusterRobust(fit.information, fit.priors, fit.inference, parameterNames);
+      : clusterRobust(fit.information, fit.priors, fit.inference, parametersInWords(fit));
   const parts = robust?.status === "determined" ? robust.parameters : [];
   const at = (place: number, fitted: Estimate | undefined): Estimate => {
     const estimate = fitted?.estimate ?? null;
@@ -30,11 +30,22 @@ export function robustBeside(fit: GlobalFit): RobustBeside {
   const parameters: Record<string, Estimate> = {};
   parameterNames.forEach((name, place) => {
     const fitted = fit.parameters[name];
-    if (place > 0 && fitted !== undefined) parameters[name] = at(place, fitted);
+    // The scale stands last, and a species may bear its name.
+    if (place > 0 && fitted !== undefined && !Object.hasOwn(parameters, name))
+      parameters[name] = at(place, fitted);
   });
   return {
     logRateConstant: at(0, logRateConstant),
     parameters,
     flags: robust?.status === "determined" ? robust.flags : [],
   };
+}
+
+/** As findings name them: "the order in A" rather than "A". */
+function parametersInWords({ parameterNames, orders }: GlobalFit): string[] {
+  return parameterNames.map((name, place) => {
+    if (place === 0) return name;
+    if (Object.hasOwn(orders, name)) return `the order in ${name}`;
+    return name === "scale" ? "the signal per concentration" : name;
+  });
 }
