@@ -38,7 +38,7 @@ test("standards are pasted, corrected, drawn, followed by the signal, and undone
   const followed = (await sheetOf(bench)).sheet.signal;
   expect(followed).toMatchObject({ source: "standards", perMolar: { value: expect.closeTo(1930.357, 2) } });
 
-  await page.getByRole("button", { name: "Set S6 aside" }).click();
+  await page.getByRole("button", { name: "Set aside S6" }).click();
   const dialog = page.getByRole("dialog", { name: "Set S6 aside" });
   await dialog.getByRole("button", { name: "Set S6 aside" }).click();
   await expect(dialog.getByText("Say in a few words what was wrong.")).toBeVisible();

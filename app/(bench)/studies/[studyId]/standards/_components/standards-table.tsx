@@ -67,13 +67,12 @@ export function StandardsTable({
                   {canEdit && row.state !== "blank" && (
                     <Button
                       kind="text"
+                      className="print:hidden"
                       disabled={working}
-                      aria-label={
-                        row.state === "set-aside" ? `Take ${row.label} back` : `Set ${row.label} aside`
-                      }
                       onClick={() => (row.state === "set-aside" ? set(row, null) : setAsked(row))}
                     >
-                      {row.state === "set-aside" ? "Take back" : "Set aside…"}
+                      {row.state === "set-aside" ? "Take back" : "Set aside"}
+                      <span className="sr-only"> {row.label}</span>
                     </Button>
                   )}
                 </span>
