@@ -8,6 +8,7 @@ export {
 } from "./confirmation";
 export { type Banded, type CourseBand, type CourseBandPoint, courseBand } from "./course-band";
 export { type FittedLaw, type LawOfFit, lawOfRates, type Prediction } from "./fitted-law";
+export { lawOfTraces } from "./law-of-traces";
 export { predictRate, type RatePrediction } from "./predict-rate";
 export {
   type RatioOfConstants,
