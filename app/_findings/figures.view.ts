@@ -25,7 +25,7 @@ export function shownTrace(sheet: Sheet, run: SheetRun, trace: DrawableTrace): {
 }
 
 /** The axis that traces share, and what turns a stored signal into it. */
-export function shownSignal(sheet: Sheet): { quantity: string; unit: string; factor: number } {
+function shownSignal(sheet: Sheet): { quantity: string; unit: string; factor: number } {
   const followed = followedSpecies(sheet);
   const perMolar = sheet.signal === null ? 0 : signalPerMolar(sheet.signal).value;
   if (followed === null || perMolar === 0) {

@@ -10,8 +10,6 @@ import { counted, quoted } from "./words";
  * with the block's name on every line, and a table whose times run along a row is turned. Blocks keep their line
  * numbers, so that every issue still names the line of the file; a turned table cannot.
  */
-export type Arrangement = "as-it-stands" | "blocks" | "turned";
-
 export interface Arranged {
   /** Cells divided by tabs, marks in them plain characters. */
   readonly text: string;

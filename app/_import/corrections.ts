@@ -5,7 +5,7 @@ import { z } from "zod";
  * read again from them each time, and they are kept in words with the upload.
  */
 
-export const columnRole = z.union([
+const columnRole = z.union([
   z.enum(["time", "signal", "run", "temperature", "left-out"]),
   z.templateLiteral(["species:", z.string().min(1).max(64)]),
 ]);

@@ -121,7 +121,7 @@ function nextFree(used: ReadonlySet<string>): string {
 }
 
 /** "R14" taken: "R14 (2)". */
-export function freeCopy(label: string, used: ReadonlySet<string>): string {
+function freeCopy(label: string, used: ReadonlySet<string>): string {
   const base = label.slice(0, 34);
   let copy = 2;
   while (used.has(`${base} (${copy})`.toLowerCase())) copy += 1;

@@ -58,7 +58,7 @@ export interface CarryingRun {
 }
 
 /** Relative standard uncertainty that the stated temperature brings to k: E_a·u_T/(R·T²). */
-export function temperatureTerm(sheet: Sheet): number {
+function temperatureTerm(sheet: Sheet): number {
   const temperature = sheet.conditions.temperatureKelvin;
   if (temperature === null) return 0;
   return temperatureEffect(activationEnergyOf(sheet), temperature.value, temperature.standardUncertainty);

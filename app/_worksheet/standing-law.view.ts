@@ -208,7 +208,7 @@ function weakestLink(sheet: Sheet, { law }: StudyAnalysis): { headline: string; 
 }
 
 /** "1 weakens" over "5 notes, none blocks"; settled checks do not count. */
-export function checksInWords(checks: readonly Check[]): { headline: string; detail: string } {
+function checksInWords(checks: readonly Check[]): { headline: string; detail: string } {
   const open = checks.filter((check) => check.settled === null);
   const count = (severity: Check["severity"]) => open.filter((check) => check.severity === severity).length;
   const blocks = count("blocks");

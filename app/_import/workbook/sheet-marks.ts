@@ -75,7 +75,7 @@ export function sheetMarks(xml: string): SheetMarks {
 }
 
 /** "AB12" is column 27; −1 where the address names none. */
-export function columnOfAddress(address: string): number {
+function columnOfAddress(address: string): number {
   let column = 0;
   for (const letter of address.match(/^[A-Z]+/)?.[0] ?? "") column = column * 26 + letter.charCodeAt(0) - 64;
   return column - 1;

@@ -66,7 +66,7 @@ function found(severity: Check["severity"], message: string): Check {
 }
 
 /** Least and greatest ionic strength of the mixtures, mol L⁻¹; null below two of them, or where there is none. */
-export function strengthRange(
+function strengthRange(
   sheet: Sheet,
   runs: Sheet["runs"],
 ): { readonly least: number; readonly most: number } | null {

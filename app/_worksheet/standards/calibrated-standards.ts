@@ -58,7 +58,7 @@ export function calibratedStandards(
 }
 
 /** Whether a standard's readings are points of the line. */
-export function isInLine(
+function isInLine(
   { isBlank, setAside, signals, concentration }: SheetStandard,
   { rangeMolar }: Sheet["calibration"],
 ): boolean {

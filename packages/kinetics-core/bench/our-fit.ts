@@ -2,7 +2,7 @@ import { fitGlobal, type GlobalFit, type GlobalFitInput, type GlobalFitLaw } fro
 import type { BenchmarkStudy } from "./benchmark-study";
 
 /** k and two free orders, as powers of the concentrations. */
-export const POWERS: GlobalFitLaw = { orders: { A: "free", B: "free" } };
+const POWERS: GlobalFitLaw = { orders: { A: "free", B: "free" } };
 
 export function inputOf(
   { runs, scale, scaleError }: BenchmarkStudy,

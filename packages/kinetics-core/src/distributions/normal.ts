@@ -2,7 +2,7 @@ import { incompleteGamma, type Tails } from "./incomplete-gamma";
 import { assertProbability, tailQuantile } from "./tail-quantile";
 
 /** Standard normal density. */
-export function normalDensity(z: number): number {
+function normalDensity(z: number): number {
   return Math.exp(-0.5 * z * z) / Math.sqrt(2 * Math.PI);
 }
 

@@ -10,7 +10,7 @@
 const HALF_LOG_TWO_PI = 0.9189385332046728;
 
 /** δ(n), n > 0. Asymptotic series from 16 up, below it by the recursion δ(n) = δ(n+1) + (n + ½) ln(1 + 1/n) − 1. */
-export function stirlingError(n: number): number {
+function stirlingError(n: number): number {
   let correction = 0;
   let argument = n;
   while (argument < 16) {
@@ -40,7 +40,7 @@ export function logGamma(x: number): number {
 }
 
 /** D(x, m) = x ln(x/m) + m − x for x ≥ 0, m > 0, by series where x and m are close. */
-export function halfDeviance(x: number, m: number): number {
+function halfDeviance(x: number, m: number): number {
   if (x === 0) return m;
   const difference = x - m;
   if (Math.abs(difference) < 0.1 * (x + m)) {

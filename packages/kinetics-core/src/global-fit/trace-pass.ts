@@ -184,7 +184,7 @@ export interface ColumnLayout {
 }
 
 /** Columns: residual, ln k, the law's parameters, scale, time zero; the last two where the study has them. */
-export function columnLayout(study: PreparedStudy): ColumnLayout {
+function columnLayout(study: PreparedStudy): ColumnLayout {
   const lawParameters = study.law.free.length;
   const hasScale = study.scaleVariance > 0 || study.scaleDeviationVariance > 0;
   const scaleColumn = hasScale ? 2 + lawParameters : -1;

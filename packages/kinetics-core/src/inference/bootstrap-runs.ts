@@ -62,7 +62,7 @@ export function bootstrapRuns(request: BootstrapRequest): BootstrapResult {
 const STREAM_STRIDE = 0x9e3779b1;
 
 /** Indices of the runs of one replicate. */
-export function resampledRuns(runs: number, seed: number, replicate: number): Int32Array {
+function resampledRuns(runs: number, seed: number, replicate: number): Int32Array {
   const draws = randomDraws((seed + Math.imul(replicate, STREAM_STRIDE)) | 0);
   return Int32Array.from({ length: runs }, () => draws.whole(runs));
 }

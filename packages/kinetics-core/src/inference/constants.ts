@@ -18,9 +18,6 @@ export const ROUNDING_OF_SUBTRACTION = 1e-13;
 /** Pivot of a matrix scaled to a unit diagonal below which a parameter counts as undetermined. */
 export const LEAST_PIVOT = 1e-13;
 
-/** A reactant that changes by less than this within the runs says nothing about its order there: simulation. */
-export const LEAST_CHANGE_WITHIN_RUN = 0.1;
-
 /** Wider than the model-based interval by this factor, the cluster-robust one contradicts the model: simulation. */
 export const WIDER_THAN_MODEL = 1.5;
 

@@ -8,7 +8,6 @@ export {
 export { type ClusterRobust, type ClusterRobustResult, clusterRobust } from "./cluster-robust";
 export { type DevianceAt, leastDeviance } from "./least-deviance";
 export { type MarginalSquares, marginalSquares } from "./marginal-squares";
-export { parametersLeftToRuns } from "./parameters-left-to-runs";
 export { type ProfileInterval, type ProfileRequest, profileMarginal } from "./profile-marginal";
 export {
   type InferenceFailure,

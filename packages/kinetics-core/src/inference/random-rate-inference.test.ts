@@ -1,12 +1,7 @@
 import { randomDraws } from "kinetics-core/random";
 import { informationOf, type LinearStudy, simulateLinearRuns } from "kinetics-core/simulation";
 import { describe, expect, it } from "vitest";
-import {
-  parametersLeftToRuns,
-  pooledInference,
-  type RandomRateInference,
-  randomRateInference,
-} from "./index";
+import { pooledInference, type RandomRateInference, randomRateInference } from "./index";
 import fixture from "./random-rate.fixture.json";
 import type { PriorInformation, RunInformation } from "./run-information";
 
@@ -194,7 +189,8 @@ describe("coverage of 95 % intervals, fixed seed", () => {
       const given = simulateLinearRuns(study, draws).map((run) => informationOf(run, study.autocorrelation));
       // The stated scale errs by its own uncertainty.
       const stated = [{ ...scale, deviation: scale.standardUncertainty * draws.normal() }];
-      const options = { undetermined: parametersLeftToRuns([[0.05]]) };
+      // ln k and the order.
+      const options = { undetermined: 2 };
       const random = determined(given, stated, options);
       const { betweenRunVariance } = random;
       const byVariance = determined(given, stated, { ...options, betweenRunVariance });

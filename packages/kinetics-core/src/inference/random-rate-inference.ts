@@ -33,7 +33,7 @@ import { partsOf, type RunParts } from "./run-parts";
  * covers 13 to 75 % at τ = 4 %. Where traces are precise, h_j ≪ τ², the two are the same.
  */
 export interface InferenceOptions {
-  /** r ≥ 1: free parameters that the runs' own information leaves undetermined (`parametersLeftToRuns`). */
+  /** r ≥ 1: free parameters that the runs' own information leaves undetermined. */
   readonly undetermined: number;
   /** τ² where it is held; runs then weigh by it as it is, and s² is 1. Found by restricted likelihood where absent. */
   readonly betweenRunVariance?: number;

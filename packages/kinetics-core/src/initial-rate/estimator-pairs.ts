@@ -17,7 +17,7 @@ export interface PairFit {
   readonly lackOfFit: LackOfFit | null;
 }
 
-export const POLYNOMIAL_PAIRS = [
+const POLYNOMIAL_PAIRS = [
   { pair: "line-quadratic", upperDegree: 2 },
   { pair: "quadratic-cubic", upperDegree: 3 },
   { pair: "cubic-quartic", upperDegree: 4 },

@@ -59,11 +59,3 @@ export function polynomialSlopes(
 export function polynomialCurve(fit: PolynomialSlopes, degree: number): number[] {
   return plainCoefficients(fit.recurrence, fit.projections.slice(0, degree + 1));
 }
-
-/** Value of the polynomial of one degree at a time since mixing. */
-export function polynomialValue(fit: PolynomialSlopes, degree: number, time: number): number {
-  const { values } = polynomialsAt(fit.recurrence, time);
-  let sum = 0;
-  for (let j = 0; j <= degree; j++) sum += (values[j] ?? Number.NaN) * (fit.projections[j] ?? Number.NaN);
-  return sum;
-}

@@ -7,7 +7,7 @@ export const SIMPLE_ORDERS: readonly number[] = [-1, -0.5, 0, 0.5, 1, 1.5, 2, 3]
 /** An interval wider than this to either side settles nothing. */
 const LARGEST_HALF_WIDTH = 0.25;
 /** What rounding leaves of an exact table. */
-export const EXACT_TOLERANCE = 1e-9;
+const EXACT_TOLERANCE = 1e-9;
 
 /** The simple order closest to a value; of two equally close the whole one. */
 export function nearestSimpleOrder(value: number): number {

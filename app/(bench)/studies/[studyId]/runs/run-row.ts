@@ -23,11 +23,6 @@ export type Cells = Readonly<Record<string, string>>;
 
 export const CONCENTRATION = "c:";
 
-/** Column ids in order: label, a concentration per species, cell temperature, block, entered rate, remark. */
-export function columnIds({ species }: RowShape): string[] {
-  return ["label", ...species.map(({ id }) => CONCENTRATION + id), "temperature", "block", "rate", "remark"];
-}
-
 export function cellsOf(run: SheetRun, { species, rateFactor }: RowShape): Record<string, string> {
   const concentrations = species.map((one): [string, string] => {
     const amount = run.concentrations[one.id];

@@ -21,5 +21,3 @@ export const newLinkForm = z.object({
 });
 
 export const revokeForm = z.object({ studyId: identifier, linkId: identifier });
-
-export type NewLinkForm = z.infer<typeof newLinkForm>;

@@ -29,7 +29,7 @@ export const LOGARITHM = 3;
 /** The factor itself; by multiplication; through its logarithm. */
 export const PLAIN = 0;
 export const MULTIPLIED = 1;
-export const THROUGH_LOGARITHM = 2;
+const THROUGH_LOGARITHM = 2;
 
 interface Operand {
   readonly slot: number;

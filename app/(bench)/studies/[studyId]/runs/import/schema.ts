@@ -13,5 +13,3 @@ export const storeTracesInput = z.object({
   /** Starting concentrations in mol L⁻¹, by the trace's source, then by species id. */
   recipes: z.record(z.string().max(80), z.record(identifier, z.number().nonnegative())),
 });
-
-export type StoreTracesInput = z.infer<typeof storeTracesInput>;
