@@ -1,4 +1,5 @@
 import { type Calibration, calibrate } from "kinetics-core/calibration";
+import { mean } from "kinetics-core/summation";
 import type { Sheet, SheetStandard } from "@/db/sheet/sheet.schema";
 
 /**
@@ -34,7 +35,7 @@ export function calibratedStandards(
     standard.signals.map((signal) => ({ concentration: standard.concentration.value, signal, standard })),
   );
   if (weighting === "proportional") {
-    const flat = used.find((standard) => meanOf(standard.signals) === 0);
+    const flat = used.find((standard) => mean(standard.signals) === 0);
     if (flat !== undefined) {
       return {
         status: "no-line",
@@ -49,7 +50,7 @@ export function calibratedStandards(
     intercept,
     readings,
     ...(weighting === "proportional"
-      ? { weights: points.map(({ standard }) => meanOf(standard.signals) ** -2) }
+      ? { weights: points.map(({ standard }) => mean(standard.signals) ** -2) }
       : {}),
   });
   return calibration.status === "calibrated"
@@ -71,7 +72,3 @@ function isInLine(
 
 /** A range that ends at a standard holds it, whatever its limits lost on the way through units. */
 const SLACK = 1e-9;
-
-export function meanOf(values: readonly number[]): number {
-  return values.reduce((sum, value) => sum + value, 0) / values.length;
-}

@@ -1,7 +1,8 @@
 import { bootstrapGlobalFit, type GlobalFitInput } from "kinetics-core/global-fit";
+import { median } from "kinetics-core/summation";
 import type { BenchmarkStudy } from "./benchmark-study";
 import { fitOrThrow, inputOf } from "./our-fit";
-import { medianOf, timeOf } from "./stopwatch";
+import { timeOf } from "./stopwatch";
 
 export interface Bootstrap {
   readonly refits: number;
@@ -47,7 +48,7 @@ export function measureBootstrap(study: BenchmarkStudy, progress: (message: stri
     refits: REFITS,
     failed: parts.reduce((sum, part) => sum + part.failed, 0),
     seconds: parts.reduce((sum, { time }) => sum + time, 0) / 1000,
-    ratio: medianOf(parts.map(({ ratio }) => ratio)),
+    ratio: median(parts.map(({ ratio }) => ratio)),
     stoppedAfter: stoppedAfter(input),
   };
 }

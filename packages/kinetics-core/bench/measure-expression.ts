@@ -1,7 +1,8 @@
 import { expressionEquation, type RateEquation } from "kinetics-core/rate-equation";
+import { median } from "kinetics-core/summation";
 import type { BenchmarkStudy } from "./benchmark-study";
 import { fitOrThrow, inputOf } from "./our-fit";
-import { leastTimeOf, medianOf } from "./stopwatch";
+import { leastTimeOf } from "./stopwatch";
 
 export interface Expression {
   readonly text: string;
@@ -28,7 +29,7 @@ export function measureExpression(study: BenchmarkStudy, progress: (message: str
     const time = leastTimeOf(REPEATS, () => fitOrThrow(own));
     return leastTimeOf(REPEATS, () => fitOrThrow(written)) / time;
   });
-  return { text: TEXT, ratio: medianOf(rounds) };
+  return { text: TEXT, ratio: median(rounds) };
 }
 
 function logRateConstant(input: ReturnType<typeof inputOf>): number {

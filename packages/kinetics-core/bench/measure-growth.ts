@@ -1,6 +1,7 @@
+import { median } from "kinetics-core/summation";
 import { benchmarkStudy } from "./benchmark-study";
 import { fitOrThrow, inputOf } from "./our-fit";
-import { leastTimeOf, medianOf } from "./stopwatch";
+import { leastTimeOf } from "./stopwatch";
 
 /** Cost a run at ten times as many runs, and a point at ten times as many points, over that of the study itself. */
 export interface Growth {
@@ -28,8 +29,8 @@ export function measureGrowth(progress: (message: string) => void): Growth {
     return { runs: leastTimeOf(REPEATS, moreRuns) / base, points: leastTimeOf(REPEATS, morePoints) / base };
   });
   return {
-    runs: medianOf(rounds.map(({ runs }) => runs)),
-    points: medianOf(rounds.map(({ points }) => points)),
+    runs: median(rounds.map(({ runs }) => runs)),
+    points: median(rounds.map(({ points }) => points)),
   };
 }
 

@@ -1,10 +1,11 @@
 import type { GlobalFit } from "kinetics-core/global-fit";
+import { median } from "kinetics-core/summation";
 import { type Agreement, type Answer, agreementOf, answerOfPeer } from "./agreement";
 import { type BenchmarkStudy, TRUE_LOG_RATE_CONSTANT } from "./benchmark-study";
 import { floorLoop } from "./floor";
 import { fitOrThrow, inputOf } from "./our-fit";
 import { Peer, type PeerFit } from "./peer";
-import { leastTimeOf, medianOf, timeOf } from "./stopwatch";
+import { leastTimeOf, timeOf } from "./stopwatch";
 
 /** Rounds of one fit after another by everybody, so that a busy moment of the machine strikes all alike. */
 const ROUNDS = 15;
@@ -106,9 +107,9 @@ function ratiosOf(rounds: readonly Round[], fit: GlobalFit, withPeers: boolean):
   const peer = (name: PeerName) => peerRatio(name, rounds, answer);
   return {
     rounds: rounds.length,
-    milliseconds: medianOf(rounds.map(({ ours }) => ours)),
-    floor: medianOf(rounds.map(({ ours, floor }) => ours / floor)),
-    floorMilliseconds: medianOf(rounds.map(({ floor }) => floor)),
+    milliseconds: median(rounds.map(({ ours }) => ours)),
+    floor: median(rounds.map(({ ours, floor }) => ours / floor)),
+    floorMilliseconds: median(rounds.map(({ floor }) => floor)),
     peers: withPeers
       ? { numpy: peer("numpy"), lsoda: peer("lsoda"), odeint: peer("odeint"), naive: peer("naive") }
       : null,
@@ -124,11 +125,11 @@ function peerRatio(name: PeerName, rounds: readonly Round[], ours: Answer): Peer
   const last = fits.at(-1);
   if (last === undefined) throw new Error(`${name} was never asked for a fit`);
   return {
-    ratio: medianOf(fits.map(({ milliseconds, time }) => milliseconds / time)),
-    milliseconds: medianOf(fits.map(({ milliseconds }) => milliseconds)),
+    ratio: median(fits.map(({ milliseconds, time }) => milliseconds / time)),
+    milliseconds: median(fits.map(({ milliseconds }) => milliseconds)),
     fits: fits.length,
-    processorRatio: medianOf(fits.map(({ fit, least }) => (1000 * fit.processorSeconds) / least)),
-    waiting: medianOf(fits.map(({ fit }) => Math.max(0, 1 - fit.processorSeconds / fit.seconds))),
+    processorRatio: median(fits.map(({ fit, least }) => (1000 * fit.processorSeconds) / least)),
+    waiting: median(fits.map(({ fit }) => Math.max(0, 1 - fit.processorSeconds / fit.seconds))),
     agreement: agreementOf(ours, answerOfPeer(last.fit)),
   };
 }

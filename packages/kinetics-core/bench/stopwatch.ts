@@ -11,10 +11,3 @@ export function timeOf(work: () => void): number {
 export function leastTimeOf(times: number, work: () => void): number {
   return Math.min(...Array.from({ length: times }, () => timeOf(work)));
 }
-
-export function medianOf(values: readonly number[]): number {
-  const sorted = [...values].sort((a, b) => a - b);
-  const middle = sorted.length >> 1;
-  const upper = sorted[middle] ?? Number.NaN;
-  return sorted.length % 2 === 1 ? upper : ((sorted[middle - 1] ?? Number.NaN) + upper) / 2;
-}

@@ -1,4 +1,5 @@
 import { incompleteBeta } from "kinetics-core/distributions";
+import { mean as meanOf, medianOfSorted, sumOfSquares } from "kinetics-core/summation";
 
 /** Summaries of a column; readings that are NaN count where it says so. */
 
@@ -9,23 +10,18 @@ export function share(column: Float64Array | undefined): number {
 
 /** Of the finite values. */
 export function mean(column: Float64Array | undefined): number {
-  const finite = finiteOf(column);
-  return finite.reduce((total, value) => total + value, 0) / finite.length;
+  return meanOf(finiteOf(column));
 }
 
 /** Of the finite values. */
 export function rootMeanSquare(column: Float64Array | undefined): number {
   const finite = finiteOf(column);
-  return Math.sqrt(finite.reduce((total, value) => total + value * value, 0) / finite.length);
+  return Math.sqrt(sumOfSquares(finite) / finite.length);
 }
 
+/** Of the finite values. */
 export function median(values: ArrayLike<number>): number {
-  const sorted = Array.from(values)
-    .filter(Number.isFinite)
-    .sort((a, b) => a - b);
-  const middle = sorted.length >> 1;
-  const upper = sorted[middle] ?? Number.NaN;
-  return sorted.length % 2 === 1 ? upper : ((sorted[middle - 1] ?? Number.NaN) + upper) / 2;
+  return medianOfSorted(finiteOf(Float64Array.from(values)).sort());
 }
 
 export function countOnes(column: Float64Array | undefined): number {

@@ -1,5 +1,6 @@
 import { dot, entry, leastSquares, matrixFromColumns } from "kinetics-core/linear-algebra";
 import { estimateOf } from "kinetics-core/quantities";
+import { sum } from "kinetics-core/summation";
 import type { CalibrationFault, CalibrationInput, CalibrationLine } from "./calibration";
 import { calibrationFault } from "./calibration-fault";
 
@@ -82,7 +83,7 @@ function errorOf(variance: number | null, factor: number): number | null {
 
 /** In two passes: the second takes back what the first lost to a large common offset. */
 function weightedMean(values: readonly number[], weights: readonly number[]): number {
-  const total = weights.reduce((sum, weight) => sum + weight, 0);
+  const total = sum(weights);
   const first = dot(weights, values) / total;
   return (
     first +

@@ -1,5 +1,6 @@
 import { studentTFactor } from "kinetics-core/distributions";
 import { type Estimate, noEstimate } from "kinetics-core/quantities";
+import { mean } from "kinetics-core/summation";
 import { lineFactor } from "./bands";
 import type { CalibrationLine } from "./calibration";
 import { estimateOfRatio, fieller, type RatioSet } from "./fieller";
@@ -65,8 +66,7 @@ export function readConcentration(
 
 /** Replicate signals of one unknown as a reading. Not empty. */
 export function readingOf(signals: readonly number[], weight?: number): SignalReading {
-  const signal = signals.reduce((sum, value) => sum + value, 0) / signals.length;
-  return { signal, replicates: signals.length, ...(weight === undefined ? {} : { weight }) };
+  return { signal: mean(signals), replicates: signals.length, ...(weight === undefined ? {} : { weight }) };
 }
 
 /**

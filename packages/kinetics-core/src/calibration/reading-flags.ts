@@ -1,5 +1,6 @@
 import { fSurvival } from "kinetics-core/distributions";
 import { type Flag, inARow, numberInWords, verb } from "kinetics-core/quantities";
+import { squaresAboutMean } from "kinetics-core/summation";
 import type { CalibrateInput, CalibrationLine } from "./calibration";
 import type { DetectionLimits } from "./detection-limits";
 import type { ConcentrationReading } from "./inverse-reading";
@@ -85,8 +86,7 @@ function scattersMore(line: CalibrationLine, signals: readonly number[], weight:
   const { residualStandardDeviation: s, degreesOfFreedom } = line;
   const freedom = signals.length - 1;
   if (s === null || line.exact || freedom < 1) return false;
-  const mean = signals.reduce((sum, value) => sum + value, 0) / signals.length;
-  const variance = signals.reduce((sum, value) => sum + (value - mean) ** 2, 0) / freedom;
+  const variance = squaresAboutMean(signals) / freedom;
   return fSurvival((weight * variance) / s ** 2, freedom, degreesOfFreedom) < SIGNIFICANT;
 }
 

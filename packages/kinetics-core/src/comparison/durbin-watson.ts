@@ -7,6 +7,7 @@ import {
   singularValues,
   zeroMatrix,
 } from "kinetics-core/linear-algebra";
+import { sumOfSquares } from "kinetics-core/summation";
 import { MOST_EXACT_FREEDOM } from "./constants";
 
 /**
@@ -34,11 +35,11 @@ export function durbinWatson(
   const n = residuals.length;
   const freedom = n - columns.length;
   if (freedom < 2) return null;
-  const squares = squareOf(residuals);
+  const squares = sumOfSquares(residuals);
   const basis = basisOf(columns, n);
   if (!(squares > 0) || basis === null) return null;
   const differences = Array.from({ length: n - 1 }, (_, i) => (residuals[i + 1] ?? 0) - (residuals[i] ?? 0));
-  const statistic = squareOf(differences) / squares;
+  const statistic = sumOfSquares(differences) / squares;
   if (freedom > MOST_EXACT_FREEDOM)
     return { statistic, pValue: betaTail(statistic, basis, n), method: "beta with exact moments" };
   const eigenvalues = residualEigenvalues(basis, n);
@@ -50,7 +51,7 @@ export function durbinWatson(
 function basisOf(columns: readonly ArrayLike<number>[], n: number): readonly Float64Array[] | null {
   const { q, r } = householderQr(matrixFromColumns(columns, n));
   const dependent = columns.some(
-    (column, j) => !(Math.abs(columnOf(r, j)[j] ?? 0) > 1e-10 * Math.sqrt(squareOf(column))),
+    (column, j) => !(Math.abs(columnOf(r, j)[j] ?? 0) > 1e-10 * Math.sqrt(sumOfSquares(column))),
   );
   return dependent ? null : columns.map((_, j) => columnOf(q, j));
 }
@@ -107,7 +108,7 @@ function betaTail(statistic: number, basis: readonly Float64Array[], n: number):
   let first = 2 * n - 2;
   let second = 6 * n - 8;
   images.forEach((image, i) => {
-    second -= 2 * squareOf(image);
+    second -= 2 * sumOfSquares(image);
     basis.forEach((direction, j) => {
       let product = 0;
       for (let k = 0; k < n; k++) product += (direction[k] ?? 0) * (image[k] ?? 0);
@@ -133,10 +134,4 @@ function secondDifferences(x: Float64Array): Float64Array {
     const right = i < last ? value - (x[i + 1] ?? 0) : 0;
     return left + right;
   });
-}
-
-function squareOf(x: ArrayLike<number>): number {
-  let sum = 0;
-  for (let i = 0; i < x.length; i++) sum += (x[i] ?? 0) ** 2;
-  return sum;
 }

@@ -1,5 +1,6 @@
 import type { NonlinearProblem } from "kinetics-core/least-squares";
 import { equationValue, type RateEquation } from "kinetics-core/rate-equation";
+import { sum } from "kinetics-core/summation";
 
 /** A run as a candidate law sees it. */
 export interface CandidateRun {
@@ -31,7 +32,7 @@ export function rateProblem(equation: RateEquation, runs: readonly CandidateRun[
   const p = equation.parameters.length;
   const logRates = Float64Array.from(runs, (run) => Math.log(run.rate));
   const weights = Float64Array.from(runs, (run) => run.weight);
-  const total = weights.reduce((sum, weight) => sum + weight, 0);
+  const total = sum(weights);
   const recipes = runs.map((run) =>
     Float64Array.from(equation.species, (name) => run.concentrations[name] ?? Number.NaN),
   );

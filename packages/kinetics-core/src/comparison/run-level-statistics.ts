@@ -1,4 +1,5 @@
 import { fSurvival } from "kinetics-core/distributions";
+import { mean, squaresAboutMean } from "kinetics-core/summation";
 
 /**
  * Corrected Akaike information criterion on the level of runs, m ln(RSS/m) + 2K + 2K(K + 1)/(m − K − 1) with
@@ -69,7 +70,6 @@ export function leaveOneOutOpinion(
 function tOfMean(values: readonly number[]): number | null {
   const n = values.length;
   if (n < 2) return null;
-  const mean = values.reduce((sum, value) => sum + value, 0) / n;
-  const variance = values.reduce((sum, value) => sum + (value - mean) ** 2, 0) / (n - 1);
-  return variance > 0 ? mean / Math.sqrt(variance / n) : null;
+  const variance = squaresAboutMean(values) / (n - 1);
+  return variance > 0 ? mean(values) / Math.sqrt(variance / n) : null;
 }

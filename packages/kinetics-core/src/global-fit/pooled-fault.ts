@@ -1,3 +1,4 @@
+import { mean, squaresAboutMean } from "kinetics-core/summation";
 import { failure, type GlobalFitFailure } from "./global-fit";
 import type { SearchEnd } from "./pooled-search";
 import type { PreparedRun, PreparedStudy } from "./prepared-study";
@@ -48,7 +49,7 @@ function isUnchanged(pass: StudyPass): boolean {
   const least = (10 + 6 * pass.runs.length) * pass.ownVariance();
   let gain = 0;
   for (const [j, { signal }] of pass.study.runs.entries()) {
-    const flat = squaresAboutMean(signal);
+    const flat = variationOf(signal);
     gain += Math.max(0, flat - (pass.runs[j]?.residualSquares ?? 0));
     if (gain > least) return false;
   }
@@ -79,14 +80,14 @@ const CLEAR_TREND = 8;
 /** +1 or −1 where the straight line through a trace clearly rises or falls, else 0. */
 function trendOf({ time, signal }: PreparedRun): number {
   const count = time.length;
-  const middle = time.reduce((sum, t) => sum + t, 0) / count;
-  const mean = signal.reduce((sum, y) => sum + y, 0) / count;
+  const middle = mean(time);
+  const level = mean(signal);
   let across = 0;
   let along = 0;
   let squares = 0;
   for (let i = 0; i < count; i++) {
     const t = (time[i] ?? 0) - middle;
-    const y = (signal[i] ?? 0) - mean;
+    const y = (signal[i] ?? 0) - level;
     across += t * y;
     along += t * t;
     squares += y * y;
@@ -99,13 +100,10 @@ function inText(value: number): string {
   return String(value).replace("-", "\u2212");
 }
 
-/** 0 where only rounding is left. */
-function squaresAboutMean(values: Float64Array): number {
-  let mean = 0;
-  for (let i = 0; i < values.length; i++) mean += (values[i] ?? 0) / values.length;
-  let squares = 0;
-  for (let i = 0; i < values.length; i++) squares += ((values[i] ?? 0) - mean) ** 2;
-  return squares > values.length * (1e-14 * mean) ** 2 ? squares : 0;
+/** Squares about the mean; 0 where only rounding is left. */
+function variationOf(values: Float64Array): number {
+  const squares = squaresAboutMean(values);
+  return squares > values.length * (1e-14 * mean(values)) ** 2 ? squares : 0;
 }
 
 export function noCourse(): GlobalFitFailure {

@@ -1,3 +1,4 @@
+import { mean } from "kinetics-core/summation";
 import { NormalStep } from "./normal-step";
 import { type PreparedRun, type PreparedStudy, parameterCount, scalePlace } from "./prepared-study";
 
@@ -160,5 +161,5 @@ function timescale(study: PreparedStudy, theta: Float64Array): number {
     const end = run.time[run.time.length - 1] ?? 0;
     if (at !== null && end > 0) found.push(Math.log(run.span / end) - at.logRate);
   });
-  return found.length === 0 ? 0 : found.reduce((sum, one) => sum + one, 0) / found.length;
+  return found.length === 0 ? 0 : mean(found);
 }

@@ -1,5 +1,6 @@
 import type { Flag } from "kinetics-core/quantities";
 import { randomDraws } from "kinetics-core/random";
+import { squaresAboutMean } from "kinetics-core/summation";
 import { FEWEST_REPLICATES, FEWEST_RUNS_FOR_BOOTSTRAP, MOST_FAILED_REFITS } from "./constants";
 
 /**
@@ -118,8 +119,7 @@ function quantile(sorted: readonly number[], p: number): number {
 }
 
 function standardDeviation(values: readonly number[]): number {
-  const mean = values.reduce((sum, value) => sum + value, 0) / values.length;
-  return Math.sqrt(values.reduce((sum, value) => sum + (value - mean) ** 2, 0) / (values.length - 1));
+  return Math.sqrt(squaresAboutMean(values) / (values.length - 1));
 }
 
 function failureFlags(failed: number, all: number): readonly Flag[] {

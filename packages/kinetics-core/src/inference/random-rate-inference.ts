@@ -1,4 +1,5 @@
 import { type Estimate, estimateOf, type Flag, noEstimate } from "kinetics-core/quantities";
+import { mean } from "kinetics-core/summation";
 import { betweenRunVariance as restrictedVariance } from "./between-run-variance";
 import { informationProblem } from "./information-problem";
 import {
@@ -193,7 +194,7 @@ function inRows(matrix: Float64Array, p: number): readonly (readonly number[])[]
 /** Mean h over the runs that say something of ln k. */
 function meanOwnVariance(parts: readonly RunParts[]): number {
   const own = parts.flatMap(({ ownVariance }) => (ownVariance === null ? [] : [ownVariance]));
-  return own.length === 0 ? 0 : own.reduce((sum, value) => sum + value, 0) / own.length;
+  return own.length === 0 ? 0 : mean(own);
 }
 
 /**

@@ -1,3 +1,4 @@
+import { sum } from "kinetics-core/summation";
 import { FEWEST_OWN_FREEDOM, LEAST_RELATIVE_NOISE, ROUNDING_OF_SUBTRACTION } from "./constants";
 import type { RunInformation } from "./run-information";
 
@@ -86,8 +87,8 @@ function ownSquares(run: RunInformation): number {
 function ownNoise(runs: readonly RunInformation[]): readonly number[] {
   const freedoms = runs.map((run) => Math.max(0, run.degreesOfFreedom - 1));
   const squares = runs.map(ownSquares);
-  const totalFreedom = freedoms.reduce((sum, freedom) => sum + freedom, 0);
-  const pooled = totalFreedom > 0 ? squares.reduce((sum, one) => sum + one, 0) / totalFreedom : 0;
+  const totalFreedom = sum(freedoms);
+  const pooled = totalFreedom > 0 ? sum(squares) / totalFreedom : 0;
   const perPoint = Math.max(0, ...runs.map((run) => (run.gram[0] ?? 0) / Math.max(1, run.points)));
   const least = LEAST_RELATIVE_NOISE ** 2 * perPoint;
   return runs.map((run, j) => {

@@ -1,3 +1,4 @@
+import { medianOfSorted } from "kinetics-core/summation";
 /**
  * Noise with the correlation of a first-order autoregression, R_ij = ρ^(|t_i − t_j| / median Δt). Since the
  * correlation over several steps is the product of the steps' own, quadratic forms in R need no matrix: with
@@ -40,8 +41,5 @@ export function quadraticForm(row: Float64Array, steps: Float64Array, from: numb
 function medianStep(time: Float64Array): number {
   const gaps = new Float64Array(time.length - 1);
   for (let i = 1; i < time.length; i++) gaps[i - 1] = (time[i] ?? Number.NaN) - (time[i - 1] ?? Number.NaN);
-  gaps.sort();
-  const middle = gaps.length >> 1;
-  const upper = gaps[middle] ?? Number.NaN;
-  return gaps.length % 2 === 1 ? upper : ((gaps[middle - 1] ?? Number.NaN) + upper) / 2;
+  return medianOfSorted(gaps.sort());
 }

@@ -1,3 +1,4 @@
+import { sum } from "kinetics-core/summation";
 import { AVERAGED_WITHIN } from "./constants";
 import type { PairFit } from "./estimator-pairs";
 
@@ -19,11 +20,12 @@ export function chooseSlope(pairs: readonly PairFit[]): ChosenSlope {
   const least = pairs.reduce((a, b) => (b.criterion < a.criterion ? b : a));
   const near = pairs.filter((pair) => pair.criterion <= AVERAGED_WITHIN * least.criterion);
   const weights = near.map((pair) => least.criterion / pair.criterion);
-  const total = weights.reduce((sum, weight) => sum + weight, 0);
-  const slope = near.reduce((sum, pair, i) => sum + (weights[i] ?? Number.NaN) * pair.upper.slope, 0) / total;
+  const total = sum(weights);
+  const slope =
+    near.reduce((slopes, pair, i) => slopes + (weights[i] ?? Number.NaN) * pair.upper.slope, 0) / total;
   const variance =
-    near.reduce((sum, { upper }, i) => {
-      return sum + (weights[i] ?? Number.NaN) * (upper.standardError ** 2 + (upper.slope - slope) ** 2);
+    near.reduce((squares, { upper }, i) => {
+      return squares + (weights[i] ?? Number.NaN) * (upper.standardError ** 2 + (upper.slope - slope) ** 2);
     }, 0) / total;
   return { slope, standardError: Math.sqrt(variance), heaviest: least };
 }

@@ -1,4 +1,5 @@
 import { normalQuantile } from "kinetics-core/distributions";
+import { median, medianOfSorted } from "kinetics-core/summation";
 import { countedPlaces, type TraceCounts } from "./counted-readings";
 import type { Trace } from "./initial-rate";
 
@@ -51,7 +52,7 @@ export function proposeSpikes(trace: Trace, counts: TraceCounts): ProposedSpikes
     return { places: [], standOff: 0 };
   const standing = standingOff(trace, places);
   const magnitudes = standing.map(Math.abs);
-  const overall = NORMAL_SCALE * medianOf(magnitudes.slice().sort());
+  const overall = NORMAL_SCALE * median(magnitudes);
   const floor = LEAST_HEIGHT * heightOf(trace, places);
   const z = normalQuantile(1 - FALSE_PROPOSALS / (2 * standing.length));
   const found: number[] = [];
@@ -91,7 +92,7 @@ function standingOff({ time, signal }: Trace, places: Int32Array): Float64Array 
         lines[line++] = s + ((signalOf(after) - s) * (at - t)) / (timeOf(after) - t);
       }
     }
-    differences[k] = signalOf(i) - medianOf(lines.sort());
+    differences[k] = signalOf(i) - medianOfSorted(lines.sort());
   }
   const near = new Float64Array(2 * LOCAL + 1);
   return differences.map((difference, k) => difference - medianAround(differences, k, near));
@@ -103,13 +104,7 @@ function medianAround(values: Float64Array, place: number, room: Float64Array): 
   const to = Math.min(values.length, place + LOCAL + 1);
   const window = room.subarray(0, to - from);
   window.set(values.subarray(from, to));
-  return medianOf(window.sort());
-}
-
-function medianOf(sorted: Float64Array): number {
-  const middle = sorted.length >> 1;
-  const upper = sorted[middle] ?? 0;
-  return sorted.length % 2 === 1 ? upper : ((sorted[middle - 1] ?? 0) + upper) / 2;
+  return medianOfSorted(window.sort());
 }
 
 /** From the 5 % to the 95 % quantile, so that a spike does not raise the bar for itself. */

@@ -1,4 +1,5 @@
 import { fitNonlinear, type NonlinearSolution } from "kinetics-core/least-squares";
+import { sumOfSquares } from "kinetics-core/summation";
 import type { CourseLaw } from "./course-law";
 import type { EndCondition } from "./end-signal";
 import { type ProjectedCourse, projectedCourse } from "./projected-course";
@@ -139,10 +140,4 @@ function ranked(problem: ProjectedCourse, starts: readonly number[][]): number[]
     .filter(({ squares }) => Number.isFinite(squares))
     .sort((a, b) => a.squares - b.squares)
     .map(({ start }) => start);
-}
-
-function sumOfSquares(values: Float64Array): number {
-  let sum = 0;
-  for (let i = 0; i < values.length; i++) sum += (values[i] ?? Number.NaN) ** 2;
-  return sum;
 }

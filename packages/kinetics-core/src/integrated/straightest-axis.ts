@@ -1,5 +1,6 @@
 import type { Trace } from "kinetics-core/initial-rate";
 import { leastSquares, matrixFromColumns } from "kinetics-core/linear-algebra";
+import { squaresAboutMean } from "kinetics-core/summation";
 
 /** One of the textbook's straight lines: the distance from the end, its logarithm or its reciprocal against time. */
 export interface AxisLine {
@@ -58,8 +59,6 @@ function lineOf(
     matrixFromColumns([times.map(() => 1), times]),
     values,
   );
-  const mean = values.reduce((sum, value) => sum + value, 0) / values.length;
-  const total = values.reduce((sum, value) => sum + (value - mean) ** 2, 0);
   const freedom = used.length - 2;
   return {
     order,
@@ -69,7 +68,7 @@ function lineOf(
       freedom > 0
         ? Math.sqrt((residualSumOfSquares / freedom) * (inverseGram.values[3] ?? Number.NaN))
         : null,
-    rSquared: 1 - residualSumOfSquares / total,
+    rSquared: 1 - residualSumOfSquares / squaresAboutMean(values),
     points: used.length,
   };
 }

@@ -1,4 +1,5 @@
 import { dot } from "kinetics-core/linear-algebra";
+import { mean } from "kinetics-core/summation";
 
 /**
  * Least squares of y ≈ offset + scale·φ(θ), a curve whose shape φ has one or two parameters, by
@@ -52,7 +53,7 @@ export function fitShape(
   largestEvaluations = LARGEST_EVALUATIONS,
 ): ShapeFit {
   const floor = values.length * (Number.EPSILON * largestOf(values)) ** 2;
-  const mean = meanOf(values);
+  const centre = mean(values);
   const target = centred(values);
   let current = stateAt(target, shape, start);
   let spare = stateAt(target, shape, start);
@@ -99,7 +100,7 @@ export function fitShape(
     const parameter = parameters[j] ?? Number.NaN;
     return parameter <= low || parameter >= high;
   });
-  const offset = mean - scale * meanOf(value);
+  const offset = centre - scale * mean(value);
   return { parameters, offset, scale, residualSquares, value, derivatives, held, converged, evaluations };
 }
 
@@ -221,14 +222,8 @@ function largestOf(values: Float64Array): number {
 }
 
 function centred(values: Float64Array): Float64Array {
-  const mean = meanOf(values);
+  const centre = mean(values);
   const result = new Float64Array(values.length);
-  for (let i = 0; i < values.length; i++) result[i] = (values[i] ?? Number.NaN) - mean;
+  for (let i = 0; i < values.length; i++) result[i] = (values[i] ?? Number.NaN) - centre;
   return result;
-}
-
-function meanOf(values: Float64Array): number {
-  let sum = 0;
-  for (let i = 0; i < values.length; i++) sum += values[i] ?? Number.NaN;
-  return sum / values.length;
 }

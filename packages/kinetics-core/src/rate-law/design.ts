@@ -7,6 +7,7 @@ import {
   singularValues,
   zeroMatrix,
 } from "kinetics-core/linear-algebra";
+import { mean, sum, sumOfSquares } from "kinetics-core/summation";
 import { reducedRows } from "./reduced-rows";
 import type { UsableRun } from "./usable-runs";
 
@@ -110,24 +111,18 @@ export function regressOnOthers(
   if (rank === 0) return { residual: target.slice(), coefficients: others.map(() => 0) };
   const { coefficients, residuals } = leastSquares(leading(decomposition.scaled, rank), target);
   const back = others.map((_, i) =>
-    Array.from(
-      { length: rank },
-      (_unused, j) => (columnOf(decomposition.v, j)[i] ?? 0) * (coefficients[j] ?? 0),
-    ).reduce((sum, value) => sum + value, 0),
+    sum(
+      Array.from(
+        { length: rank },
+        (_unused, j) => (columnOf(decomposition.v, j)[i] ?? 0) * (coefficients[j] ?? 0),
+      ),
+    ),
   );
   return { residual: residuals, coefficients: back };
 }
 
-export function mean(values: ArrayLike<number>): number {
-  let sum = 0;
-  for (let i = 0; i < values.length; i++) sum += values[i] ?? 0;
-  return values.length === 0 ? 0 : sum / values.length;
-}
-
 export function rootMeanSquare(values: ArrayLike<number>): number {
-  let sum = 0;
-  for (let i = 0; i < values.length; i++) sum += (values[i] ?? 0) ** 2;
-  return values.length === 0 ? 0 : Math.sqrt(sum / values.length);
+  return values.length === 0 ? 0 : Math.sqrt(sumOfSquares(values) / values.length);
 }
 
 function identity(n: number): Matrix {

@@ -6,7 +6,8 @@ import {
   rankOf,
   singularValues,
 } from "kinetics-core/linear-algebra";
-import { type Design, logConcentrations, mean, rootMeanSquare } from "./design";
+import { mean } from "kinetics-core/summation";
+import { type Design, logConcentrations, rootMeanSquare } from "./design";
 import { blockLoadings, varianceComponents } from "./restricted-likelihood";
 import { loadingOf, type SharedError } from "./shared-errors";
 import type { UsableRun } from "./usable-runs";

@@ -7,6 +7,7 @@ import {
   rateConstantUnit,
   type TimeUnit,
 } from "kinetics-core/quantities";
+import { mean, sum } from "kinetics-core/summation";
 import { addedVariables } from "./added-variables";
 import { designOf, isDetermined } from "./design";
 import { type FitSettings, fitOrders, type OrdersFit, separableBlocks } from "./fit-orders";
@@ -205,7 +206,7 @@ interface ConstantOf {
 
 function constantOf(fit: OrdersFit, reporting: Reporting): ConstantOf {
   const { design } = fit;
-  const overall = fit.orders.reduce((sum, order) => sum + order, 0);
+  const overall = sum(fit.orders);
   const totalIsKnown = isDetermined(
     design,
     design.free.map(() => 1),
@@ -243,9 +244,7 @@ function centreEstimate(
 /** Geometric mean; where a run holds none of a species of order 0 the arithmetic mean, since the other is zero. */
 function centreConcentration(runs: readonly UsableRun[], fit: OrdersFit, species: number): number {
   const values = runs.map((run) => run.concentrations[species] ?? 0);
-  return values.every((value) => value > 0)
-    ? Math.exp(fit.design.means[species] ?? 0)
-    : values.reduce((sum, value) => sum + value, 0) / values.length;
+  return values.every((value) => value > 0) ? Math.exp(fit.design.means[species] ?? 0) : mean(values);
 }
 
 function covariance(

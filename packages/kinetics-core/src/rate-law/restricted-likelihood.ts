@@ -6,6 +6,7 @@ import {
   type RestrictedFit,
   restrictedFit,
 } from "kinetics-core/linear-algebra";
+import { sum } from "kinetics-core/summation";
 
 /**
  * Variance between runs (τ²) and between blocks by restricted maximum likelihood: the least of
@@ -106,13 +107,5 @@ function slopeByRuns(fit: RestrictedFit): number {
 }
 
 function slopeByBlocks(fit: RestrictedFit, blocks: readonly (readonly number[])[], rows: number): number {
-  return blockLoadings(blocks, rows)
-    .map((z) => dot(z, fit.project(z)) - dot(z, fit.projected) ** 2)
-    .reduce((total, one) => total + one, 0);
-}
-
-function sum(values: ArrayLike<number>): number {
-  let total = 0;
-  for (let i = 0; i < values.length; i++) total += values[i] ?? 0;
-  return total;
+  return sum(blockLoadings(blocks, rows).map((z) => dot(z, fit.project(z)) - dot(z, fit.projected) ** 2));
 }

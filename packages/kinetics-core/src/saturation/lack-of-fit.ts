@@ -1,4 +1,5 @@
 import { fSurvival } from "kinetics-core/distributions";
+import { squaresAboutMean } from "kinetics-core/summation";
 import type { LackOfFit } from "./saturation";
 import type { SaturationPoints } from "./saturation-curve";
 
@@ -17,10 +18,7 @@ export function lackOfFitOf(
     levels.set(c, [...(levels.get(c) ?? []), rates[i] ?? 0]);
   });
   let pure = 0;
-  for (const repeats of levels.values()) {
-    const mean = repeats.reduce((sum, rate) => sum + rate, 0) / repeats.length;
-    for (const rate of repeats) pure += (rate - mean) ** 2;
-  }
+  for (const repeats of levels.values()) pure += squaresAboutMean(repeats);
   const above = levels.size - PARAMETERS;
   const below = rates.length - levels.size;
   if (above < 1 || below < 1 || !(pure > 0)) return null;

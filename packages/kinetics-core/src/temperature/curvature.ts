@@ -1,6 +1,7 @@
 import { fSurvival } from "kinetics-core/distributions";
 import { correlatedLeastSquares, entry, matrixFromColumns } from "kinetics-core/linear-algebra";
 import { estimateOf, GAS_CONSTANT } from "kinetics-core/quantities";
+import { mean } from "kinetics-core/summation";
 import { EXACT_VARIANCE, FEWEST_FOR_CURVATURE } from "./constants";
 import type { PlottedPoints } from "./point-variances";
 import type { CurvatureTest } from "./temperature";
@@ -26,7 +27,7 @@ export function curvatureOf(
 ): CurvatureTest | null {
   const degreesOfFreedom = reciprocals.length - 3;
   if (temperatures < FEWEST_FOR_CURVATURE) return null;
-  const centre = reciprocals.reduce((sum, x) => sum + x, 0) / reciprocals.length;
+  const centre = mean(reciprocals);
   const terms = matrixFromColumns([
     reciprocals.map(() => 1),
     reciprocals.map((x) => x - centre),

@@ -6,9 +6,10 @@ import {
   PLANCK_CONSTANT,
   timeToSeconds,
 } from "kinetics-core/quantities";
+import { mean } from "kinetics-core/summation";
 import { FEWEST_FOR_INTERVAL } from "./constants";
 import { curvatureOf } from "./curvature";
-import { allStated, mean, type PlottedPoints, type PointVariances, pointVariances } from "./point-variances";
+import { allStated, type PlottedPoints, type PointVariances, pointVariances } from "./point-variances";
 import {
   covarianceOf,
   estimateFunctional,

@@ -1,5 +1,6 @@
 import { matrixFromColumns } from "kinetics-core/linear-algebra";
 import { varianceComponents } from "kinetics-core/rate-law";
+import { mean } from "kinetics-core/summation";
 import { EXACT_VARIANCE } from "./constants";
 import type { TemperaturePoint } from "./temperature";
 
@@ -73,8 +74,4 @@ function betweenPoints(
   const centre = mean(reciprocals);
   const terms = matrixFromColumns([reciprocals.map(() => 1), reciprocals.map((x) => x - centre)]);
   return varianceComponents({ terms, response: logarithms, stated: own, shared: [], blocks: [] }).betweenRuns;
-}
-
-export function mean(values: readonly number[]): number {
-  return values.reduce((sum, value) => sum + value, 0) / values.length;
 }
