@@ -259,6 +259,7 @@ export type SheetRun = z.infer<typeof sheetRun>;
 export type SheetStock = z.infer<typeof sheetStock>;
 export type Mixing = z.infer<typeof mixing>;
 export type SheetStandard = z.infer<typeof sheetStandard>;
+export type CalibrationSettings = z.infer<typeof calibrationSettings>;
 export type SheetScan = z.infer<typeof sheetScan>;
 export type SheetUpload = z.infer<typeof sheetUpload>;
 export type SignalModel = z.infer<typeof signalModel>;

@@ -1,5 +1,5 @@
+import { mean, squaresAboutMean } from "kinetics-core/summation";
 import type { Sheet } from "@/db/sheet/sheet.schema";
-import { meanOf } from "./calibrated-standards";
 
 /** Mean signal of the blanks, with the standard deviation of the mean; null without two readings of one. */
 export function blankOfStandards({
@@ -9,10 +9,8 @@ export function blankOfStandards({
     isBlank && setAside === null ? signals : [],
   );
   if (readings.length < 2) return null;
-  const mean = meanOf(readings);
-  const squares = readings.reduce((sum, reading) => sum + (reading - mean) ** 2, 0);
   return {
-    value: mean,
-    standardUncertainty: Math.sqrt(squares / (readings.length - 1) / readings.length),
+    value: mean(readings),
+    standardUncertainty: Math.sqrt(squaresAboutMean(readings) / (readings.length - 1) / readings.length),
   };
 }

@@ -59,7 +59,7 @@ export function calibratedStandards(
 }
 
 /** Whether a standard's readings are points of the line. */
-function isInLine(
+export function isInLine(
   { isBlank, setAside, signals, concentration }: SheetStandard,
   { rangeMolar }: Sheet["calibration"],
 ): boolean {

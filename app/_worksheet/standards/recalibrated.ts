@@ -15,7 +15,7 @@ export function recalibrated(sheet: Sheet): Sheet {
 }
 
 /** Signal per mol L⁻¹; its uncertainty is that of the line and of the stock that all standards were made from. */
-function slopeOfStandards(
+export function slopeOfStandards(
   sheet: Pick<Sheet, "standards" | "calibration">,
 ): { value: number; standardUncertainty: number } | null {
   const line = calibratedStandards(sheet);

@@ -1,8 +1,9 @@
 import { type Calibration, predictionBand } from "kinetics-core/calibration";
 import { printNumber } from "kinetics-core/quantities";
+import { mean } from "kinetics-core/summation";
 import type { DisplayScale } from "@/app/_worksheet/display-units";
 import { columnOf } from "@/app/_worksheet/printed-column";
-import { isInLine, meanOf } from "@/app/_worksheet/standards/calibrated-standards";
+import { isInLine } from "@/app/_worksheet/standards/calibrated-standards";
 import { uncertainText } from "@/app/_worksheet/uncertain-text";
 import type { Sheet, SheetStandard } from "@/db/sheet/sheet.schema";
 
@@ -38,7 +39,7 @@ export function standardRows(
       label,
       concentration: uncertainText(concentration.value * factor, concentration.standardUncertainty * factor),
       readings: signals.map((signal) => printSignal(signal, decimals)),
-      mean: signals.length === 0 ? "" : printSignal(meanOf(signals), decimals === null ? null : decimals + 1),
+      mean: signals.length === 0 ? "" : printSignal(mean(signals), decimals === null ? null : decimals + 1),
       residual: printed[index]?.value ?? "",
       state,
       remark: remarkOf(standard, state),
@@ -53,7 +54,7 @@ function residualOf(
 ): number | null {
   if (calibration === null || isBlank || signals.length === 0) return null;
   const { estimate } = predictionBand(calibration.line, concentration.value);
-  return estimate === null ? null : meanOf(signals) - estimate;
+  return estimate === null ? null : mean(signals) - estimate;
 }
 
 /** Signals beyond these sizes are printed with a power of ten, each with its own. */
