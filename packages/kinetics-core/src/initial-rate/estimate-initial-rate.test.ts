@@ -389,7 +389,18 @@ describe("what cannot be used comes back as a sentence", () => {
     ["a window of two readings", signal, { window: [2, 3] as const }, 2],
   ])("too few points: %s", (_, time, options, got) => {
     const result = estimateInitialRate({ time, signal: time }, options);
-    expect(result).toMatchObject({ status: "too-few-points", got });
+    expect(result).toMatchObject({ status: "too-few-points", got, needed: 5 });
+  });
+
+  it("a straight line makes do with four readings", () => {
+    const time = [0, 1, 2, 3];
+    const line = (points: number) =>
+      estimateInitialRate(
+        { time: time.slice(0, points), signal: [0, 1, 2.1, 3].slice(0, points) },
+        { estimator: "straight" },
+      );
+    expect(line(3)).toMatchObject({ status: "too-few-points", needed: 4, got: 3 });
+    expect(line(4).status).toBe("found");
   });
 
   it("a general order of a trace that is level from the second reading on", () => {

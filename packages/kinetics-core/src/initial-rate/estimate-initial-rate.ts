@@ -4,7 +4,7 @@ import { estimateFlags } from "./estimate-flags";
 import type { PairFit } from "./estimator-pairs";
 import type { InitialRate, InitialRateOptions, SlopeEstimate, Trace } from "./initial-rate";
 import { type PreparedTrace, prepareTrace } from "./prepared-trace";
-import { type NamedEstimator, selectAutomatically, selectByName } from "./select-slope";
+import { type NamedEstimator, readingsNeeded, selectAutomatically, selectByName } from "./select-slope";
 import { slopeEstimate } from "./slope-estimate";
 import { pairsIn, type Scope, scopeOf } from "./window-scope";
 
@@ -23,13 +23,16 @@ export function estimateInitialRate(trace: Trace, options: InitialRateOptions = 
   if (options.window?.some(Number.isNaN))
     throw new RangeError(`window is ${options.window.join(" to ")}; its ends are two numbers`);
   const prepared = prepareTrace(trace, options);
-  if (prepared.status === "too-few-points") return tooFew(prepared);
+  const named = namedBy(options);
+  if (prepared.status === "too-few-points") {
+    const wanted = readingsNeeded(named ?? { estimator: "tangent", degree: 2 });
+    return tooFew({ needed: Math.max(prepared.needed, wanted), got: prepared.got });
+  }
   if (prepared.status === "unusable") return prepared;
 
   const scope = scopeOf(prepared, options);
   if ("status" in scope) return scope;
   const pairs = pairsIn(prepared, scope);
-  const named = namedBy(options);
   // A window by hand leaves the study's rule altogether: its pair was chosen for another window.
   const rule = options.window ? undefined : options.rule;
   const selected = named

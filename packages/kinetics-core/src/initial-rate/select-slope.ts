@@ -101,12 +101,17 @@ function isNamed(fit: WindowFit, { estimator, degree }: NamedEstimator): boolean
 /** Parameters of each estimator; a tangent has its degree and one. */
 const PARAMETERS = { straight: 2, exponential: 3, integrated: 4 } as const;
 
+/** What an estimator takes at least; the automatic choice ends with a quadratic. */
+export function readingsNeeded({ estimator, degree }: NamedEstimator): number {
+  return SPARE_POINTS + (estimator === "tangent" ? (degree ?? 2) + 1 : PARAMETERS[estimator]);
+}
+
 /** One estimator on all of a window, with nothing to compare it to. */
 export function selectWhole(prepared: PreparedTrace, { from, to }: Window, named: NamedEstimator): Selected {
   const { estimator } = named;
   const degree = named.degree ?? 2;
   const got = to - from;
-  const needed = SPARE_POINTS + (estimator === "tangent" ? degree + 1 : PARAMETERS[estimator]);
+  const needed = readingsNeeded(named);
   if (got < needed) return { status: "too-few-points", needed, got };
   const shown = fitWhole(prepared, { from, to }, estimator, degree);
   if (!isDetermined(shown)) return { status: "unusable", code: "no-slope", message: NO_SLOPE };

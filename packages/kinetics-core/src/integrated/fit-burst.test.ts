@@ -77,6 +77,8 @@ describe("a burst or a lag", () => {
     const law = fitIntegratedLaw({ ...trace, order: 0 });
     if (law.status !== "fitted") throw new Error(law.message);
     expect(law.flags.map(({ code }) => code)).toEqual(expect.arrayContaining(["lack-of-fit", "burst"]));
+    const misfit = law.flags.find(({ code }) => code === "lack-of-fit");
+    expect(misfit?.message).toContain("that this order does not describe; look");
   });
 });
 

@@ -175,7 +175,7 @@ function fitUsable(
       ...scopeFlags(fit, hasBlocks && blocks === null),
       ...separated.flags,
       ...freedomFlags(fit),
-      ...exactTableFlags(fit),
+      ...exactTableFlags(fit, simple.fit),
       ...residualFlags(fit, residuals),
       ...replicateFlags(fit),
       ...lackOfFitFlags(lack),

@@ -5,9 +5,13 @@ import { nearestSimpleOrder } from "./simple-orders";
 
 /** What a reader should know about the law as a whole. */
 
-/** Figures of an exercise, or computed ones: measured rates always scatter. */
-export function exactTableFlags(fit: OrdersFit): readonly Flag[] {
-  if (!fit.exact || fit.degreesOfFreedom === 0) return [];
+/**
+ * Figures of an exercise, or computed ones: measured rates always scatter. `simple`: the law of simple orders, which
+ * has freedom where free orders take it all.
+ */
+export function exactTableFlags(fit: OrdersFit, simple: OrdersFit | null): readonly Flag[] {
+  const tested = fit.degreesOfFreedom > 0 ? fit : simple;
+  if (tested === null || !tested.exact || tested.degreesOfFreedom === 0) return [];
   return [
     {
       code: "exact-table",

@@ -98,6 +98,18 @@ describe("rates too uncertain for a logarithm", () => {
     expect(law(good).scale).toBe("logarithmic");
   });
 
+  it("stand together in one sentence", () => {
+    const runs = good.runs.map((run, j) => ({
+      ...run,
+      rateStandardError: (j === 0 ? 0.3 : 0.25) * run.rate,
+    }));
+    const { message } = law({ ...good, runs }).flags.find((one) => one.code === "rate-scale") ?? {};
+    const labels = runs.map(({ label }) => label);
+    expect(message).toContain(
+      `The rates of ${labels.slice(0, -1).join(", ")} and ${labels.at(-1)} are known to 25 to 30 %: too uncertain`,
+    );
+  });
+
   it("may be zero or below within their error, and then still count", () => {
     const fit = law(withRun({ concentrations: { A: 0.001 }, rate: -0.0002, rateStandardError: 0.0006 }));
     expect(fit.scale).toBe("rate");

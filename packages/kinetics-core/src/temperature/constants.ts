@@ -10,6 +10,9 @@ export const FEWEST_FOR_CURVATURE = 5;
 export const USUAL_FEWEST = 4;
 export const USUAL_RANGE_K = 20;
 
+/** Solutions are solid here, so that numbers like these are mostly degrees Celsius taken for kelvins. */
+export const COLD_BELOW_K = 150;
+
 /** Temperatures closer than a good thermostat holds (0.1 K) are one temperature measured twice. */
 export const ONE_TEMPERATURE_WITHIN_K = 0.1;
 

@@ -126,6 +126,24 @@ describe("weights", () => {
     expect(codes(fit)).toContain("rate-constant-poorly-known");
   });
 
+  it("are doubted where degrees Celsius may stand for kelvins", () => {
+    const celsius = [15, 25, 35, 45].map((temperatureKelvin, j) => ({
+      temperatureKelvin,
+      rateConstant: 2 ** j,
+    }));
+    expect(codes(fitted({ points: celsius }))).toContain("very-cold");
+    expect(codes(fitted({ points: uneven }))).not.toContain("very-cold");
+  });
+
+  it("of all points that are poorly known are named", () => {
+    const points = uneven.map((point, j) => ({
+      ...point,
+      rateConstantUncertainty: j < 2 ? point.rateConstant : 0.01 * point.rateConstant,
+    }));
+    const poor = fitted({ points }).flags.find(({ code }) => code === "rate-constant-poorly-known");
+    expect(poor?.message).toContain("The rate constants of points 1 and 2 are known to worse than 20 %");
+  });
+
   it("count a bath that was held badly: u(ln k) = E_a u(T)/(R T²)", () => {
     const points = arrheniusPoints(FIVE, ERRORS).map((point, j) => ({
       ...point,

@@ -1,5 +1,6 @@
 import { type Flag, inARow, printNumber, verb } from "kinetics-core/quantities";
 import {
+  COLD_BELOW_K,
   CURVATURE_SHOWN_BELOW,
   FEWEST_FOR_INTERVAL,
   POORLY_KNOWN_ABOVE,
@@ -81,14 +82,20 @@ function numberFlags({ temperatures, degreesOfFreedom }: TemperatureFindings): r
 
 function rangeFlags({ range }: TemperatureFindings): readonly Flag[] {
   const width = range[1] - range[0];
-  if (width >= USUAL_RANGE_K) return [];
-  return [
-    {
+  const flags: Flag[] = [];
+  if (range[1] < COLD_BELOW_K)
+    flags.push({
+      code: "very-cold",
+      severity: "weakens",
+      message: `All temperatures lie below ${COLD_BELOW_K} K. If they are degrees Celsius, state that unit: every figure here depends on it.`,
+    });
+  if (width < USUAL_RANGE_K)
+    flags.push({
       code: "narrow-temperature-range",
       severity: "weakens",
       message: `The temperatures span ${printNumber(width, 3)} K; common practice is 20 to 40 K, since the error of the activation energy grows as the span of 1/T shrinks. A temperature further out would narrow the interval most.`,
-    },
-  ];
+    });
+  return flags;
 }
 
 function curvatureFlags({ curvature, temperatures }: TemperatureFindings): readonly Flag[] {
