@@ -1,5 +1,6 @@
-import type { RefusedTrace, Trace } from "kinetics-core/initial-rate";
+import type { Trace } from "kinetics-core/initial-rate";
 import type { Estimate, Flag } from "kinetics-core/quantities";
+import type { RefusedCourse } from "./refused-course";
 
 export interface BurstOptions {
   /** Time of mixing, in the unit of `time`. Default 0. */
@@ -50,15 +51,4 @@ export type BurstResult =
       readonly code: "straight" | "depletion" | "not-over" | "not-resolved";
       readonly message: string;
     }
-  | {
-      readonly status: "unusable";
-      readonly code: RefusedTrace["code"] | "constant-signal";
-      readonly message: string;
-    }
-  | {
-      readonly status: "too-few-points";
-      readonly needed: number;
-      readonly got: number;
-      readonly message: string;
-    }
-  | { readonly status: "not-converged"; readonly message: string };
+  | RefusedCourse;

@@ -1,4 +1,4 @@
-import type { RefusedTrace, Trace } from "kinetics-core/initial-rate";
+import type { Trace } from "kinetics-core/initial-rate";
 import { type Estimate, exponentialOf, type Flag, inARow, noEstimate } from "kinetics-core/quantities";
 import { AUTOCORRELATION_WEAKENS, LACK_OF_FIT_LEVEL } from "./constants";
 import type { CourseLaw } from "./course-law";
@@ -14,6 +14,7 @@ import { type CourseFit, fitCourse, type Gradient } from "./fit-course";
 import type { LackOfFit } from "./lack-of-fit";
 import { courseLackOfFit } from "./order-check";
 import { estimateQuantity } from "./quantity";
+import type { RefusedCourse } from "./refused-course";
 import { type ScaledReadings, scaledReadings } from "./scaled-reading";
 
 /**
@@ -51,20 +52,7 @@ export interface SignalCourseFit {
   readonly flags: readonly Flag[];
 }
 
-export type SignalCourseResult =
-  | SignalCourseFit
-  | {
-      readonly status: "unusable";
-      readonly code: RefusedTrace["code"] | "constant-signal";
-      readonly message: string;
-    }
-  | {
-      readonly status: "too-few-points";
-      readonly needed: number;
-      readonly got: number;
-      readonly message: string;
-    }
-  | { readonly status: "not-converged"; readonly message: string };
+export type SignalCourseResult = SignalCourseFit | RefusedCourse;
 
 /** Never throws on data; an excess below −1 or not finite is a programmer's error. */
 export function fitSignalCourse(input: SignalCourseInput): SignalCourseResult {

@@ -24,6 +24,7 @@ export {
 } from "./order-of-trace";
 export { orderResolution, orderStandardDeviation } from "./order-resolution";
 export { phaseFlag } from "./phase-flag";
+export type { RefusedCourse } from "./refused-course";
 export { reversibleCourse } from "./reversible-course";
 export { type AxisLine, straightestAxisOrder } from "./straightest-axis";
 export { unequalSecondOrderCourse } from "./unequal-second-order-course";

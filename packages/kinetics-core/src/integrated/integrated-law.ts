@@ -1,7 +1,8 @@
-import type { RefusedTrace, Trace } from "kinetics-core/initial-rate";
+import type { Trace } from "kinetics-core/initial-rate";
 import type { ConcentrationUnit, Estimate, Flag, TimeUnit } from "kinetics-core/quantities";
 import type { EndSignal } from "./end-signal";
 import type { LackOfFit } from "./lack-of-fit";
+import type { RefusedCourse } from "./refused-course";
 
 /**
  * The integrated law −dy/dt = k·yⁿ of one trace, y = |S − S_∞| the distance of the measured signal from its end. The
@@ -54,17 +55,4 @@ export interface IntegratedLawFit {
   readonly flags: readonly Flag[];
 }
 
-export type IntegratedLawResult =
-  | IntegratedLawFit
-  | {
-      readonly status: "unusable";
-      readonly code: RefusedTrace["code"] | "constant-signal";
-      readonly message: string;
-    }
-  | {
-      readonly status: "too-few-points";
-      readonly needed: number;
-      readonly got: number;
-      readonly message: string;
-    }
-  | { readonly status: "not-converged"; readonly message: string };
+export type IntegratedLawResult = IntegratedLawFit | RefusedCourse;

@@ -1,6 +1,7 @@
-import { type Readings, type RefusedTrace, readingsOf, type Trace } from "kinetics-core/initial-rate";
+import { type Readings, readingsOf, type Trace } from "kinetics-core/initial-rate";
 import type { EndSignal } from "./end-signal";
 import type { ScaledEnd } from "./fit-course";
+import type { TooFewReadings, UnusableTrace } from "./refused-course";
 import type { ScaledTrace } from "./search-course";
 
 /** A checked trace on scales of its own, with the way back: t = firstTime + τ·duration, S = firstSignal + y·range. */
@@ -14,19 +15,6 @@ export interface ScaledReadings {
   /** Since mixing. */
   readonly firstTime: number;
   readonly firstSignal: number;
-}
-
-export interface SignalOutOfRange {
-  readonly status: "unusable";
-  readonly code: "constant-signal" | "not-finite";
-  readonly message: string;
-}
-
-export interface TooFewReadings {
-  readonly status: "too-few-points";
-  readonly needed: number;
-  readonly got: number;
-  readonly message: string;
 }
 
 /** Smaller spans, and larger ones than its reciprocal, leave no room for squares. */
@@ -45,7 +33,7 @@ export function scaledReadings(
   timeZero: number,
   endSignal: EndSignal,
   needed: number,
-): ScaledReadings | RefusedTrace | SignalOutOfRange | TooFewReadings {
+): ScaledReadings | UnusableTrace | TooFewReadings {
   const readings = readingsOf(trace, timeZero);
   if (readings.status !== "usable") return readings;
   const { time, signal, offset } = readings;
