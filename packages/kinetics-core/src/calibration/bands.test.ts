@@ -1,17 +1,6 @@
 import { describe, expect, it } from "vitest";
 import { confidenceBand, predictionBand } from "./bands";
-import type { CalibrationInput, CalibrationLine } from "./calibration";
-import { fitCalibrationLine } from "./fit-calibration-line";
-
-function line(input: CalibrationInput): CalibrationLine {
-  const result = fitCalibrationLine(input);
-  if (result.status !== "fitted") throw new Error(result.message);
-  return result;
-}
-
-/** Six standards on y = 1 + 2 x with errors of one size, alternating. */
-const x = [0, 1, 2, 3, 4, 5];
-const scattered = x.map((value, i) => 1 + 2 * value + 0.05 * (i % 2 === 0 ? 1 : -1));
+import { line, scattered, x } from "./example-line";
 
 describe("bands", () => {
   const fitted = line({ concentrations: x, signals: scattered });

@@ -1,19 +1,5 @@
 import { describe, expect, it } from "vitest";
-import { type Calibration, calibrate } from "./calibrate";
-import type { CalibrateInput } from "./calibration";
-
-function calibrated(input: CalibrateInput): Calibration {
-  const result = calibrate(input);
-  if (result.status !== "calibrated") throw new Error(result.message);
-  return result;
-}
-
-const codes = (result: Calibration) => result.flags.map((flag) => flag.code);
-
-/** Six standards on y = 1 + 2 x with errors of one size, alternating. */
-const x = [0, 1, 2, 3, 4, 5];
-const scattered = x.map((value, i) => 1 + 2 * value + 0.05 * (i % 2 === 0 ? 1 : -1));
-const exact = x.map((value) => 1 + 2 * value);
+import { calibrated, codes, exact, scattered, x } from "./example-line";
 
 describe("findings about the line", () => {
   it("computed figures, little freedom, an intercept that is not needed and one that is", () => {

@@ -1,16 +1,6 @@
 import { describe, expect, it } from "vitest";
-import type { CalibrationInput, CalibrationLine } from "./calibration";
 import { testCurvature } from "./curvature";
-import { fitCalibrationLine } from "./fit-calibration-line";
-
-function line(input: CalibrationInput): CalibrationLine {
-  const result = fitCalibrationLine(input);
-  if (result.status !== "fitted") throw new Error(result.message);
-  return result;
-}
-
-const x = [0, 1, 2, 3, 4, 5];
-const exact = x.map((value) => 1 + 2 * value);
+import { exact, line, x } from "./example-line";
 
 describe("curvature", () => {
   it("needs a level and a standard to spare", () => {

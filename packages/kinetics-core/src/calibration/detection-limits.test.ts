@@ -1,18 +1,7 @@
 import { describe, expect, it } from "vitest";
-import type { CalibrationInput, CalibrationLine } from "./calibration";
 import { criticalConcentration, detectionLimits, quantificationConcentration } from "./detection-limits";
-import { fitCalibrationLine } from "./fit-calibration-line";
+import { line, scattered, x } from "./example-line";
 import { readConcentration } from "./inverse-reading";
-
-function line(input: CalibrationInput): CalibrationLine {
-  const result = fitCalibrationLine(input);
-  if (result.status !== "fitted") throw new Error(result.message);
-  return result;
-}
-
-/** Six standards on y = 1 + 2 x with errors of one size, alternating. */
-const x = [0, 1, 2, 3, 4, 5];
-const scattered = x.map((value, i) => 1 + 2 * value + 0.05 * (i % 2 === 0 ? 1 : -1));
 
 describe("detection", () => {
   it("limits scale with the deviation over the slope, and the weight of a blank takes the scaling of weights out", () => {

@@ -1,26 +1,6 @@
 import { describe, expect, it } from "vitest";
-import { type Calibration, calibrate } from "./calibrate";
-import type { CalibrateInput, CalibrationInput, CalibrationLine } from "./calibration";
-import { fitCalibrationLine } from "./fit-calibration-line";
+import { calibrated, codes, line, scattered, x } from "./example-line";
 import { pureErrorOf, testLackOfFit, unevenScatter } from "./lack-of-fit";
-
-function line(input: CalibrationInput): CalibrationLine {
-  const result = fitCalibrationLine(input);
-  if (result.status !== "fitted") throw new Error(result.message);
-  return result;
-}
-
-function calibrated(input: CalibrateInput): Calibration {
-  const result = calibrate(input);
-  if (result.status !== "calibrated") throw new Error(result.message);
-  return result;
-}
-
-const codes = (result: Calibration) => result.flags.map((flag) => flag.code);
-
-/** Six standards on y = 1 + 2 x with errors of one size, alternating. */
-const x = [0, 1, 2, 3, 4, 5];
-const scattered = x.map((value, i) => 1 + 2 * value + 0.05 * (i % 2 === 0 ? 1 : -1));
 
 describe("replicates", () => {
   const concentrations = [1, 1, 2, 2, 3, 3, 4, 4];

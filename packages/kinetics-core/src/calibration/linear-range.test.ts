@@ -1,14 +1,7 @@
 import { randomDraws } from "kinetics-core/random";
 import { describe, expect, it } from "vitest";
-import type { CalibrationInput, CalibrationLine } from "./calibration";
-import { fitCalibrationLine } from "./fit-calibration-line";
+import { line } from "./example-line";
 import { linearRange, linearRangeFlags, straightnessAt } from "./linear-range";
-
-function line(input: CalibrationInput): CalibrationLine {
-  const result = fitCalibrationLine(input);
-  if (result.status !== "fitted") throw new Error(result.message);
-  return result;
-}
 
 describe("the linear range", () => {
   /** Signals with an exact slope of 1, an exact quadratic coefficient, and residuals of exactly this deviation. */
