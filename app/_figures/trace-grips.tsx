@@ -75,24 +75,32 @@ export function TimeZeroGrip({
   const text = `${Number(at.toPrecision(6))} ${unit}`;
   const decimals = Math.max(0, -Math.round(Math.log10(step)));
   return (
-    <g
-      role="slider"
-      tabIndex={0}
-      className="grip"
-      aria-label="Time zero"
-      aria-orientation="horizontal"
-      aria-valuemin={limits[0]}
-      aria-valuemax={limits[1]}
-      aria-valuenow={Number(at.toFixed(decimals))}
-      aria-valuetext={`mixed at ${text}`}
-      {...handlers}
-    >
-      <rect x={x - 12} y={area.top - 30} width="24" height={area.bottom - area.top - 34} fill="transparent" />
-      <path d={`M${x} ${area.top - 12}V${area.bottom}`} stroke="var(--ink)" strokeWidth="1.6" />
-      <path d={`M${x - 8} ${area.top - 26}h16l-8 14z`} fill="var(--ink)" />
+    <>
       <text className="name" x={x + 14} y={area.top - 16}>
         mixed at {text}
       </text>
-    </g>
+      <g
+        role="slider"
+        tabIndex={0}
+        className="grip"
+        aria-label="Time zero"
+        aria-orientation="horizontal"
+        aria-valuemin={limits[0]}
+        aria-valuemax={limits[1]}
+        aria-valuenow={Number(at.toFixed(decimals))}
+        aria-valuetext={`mixed at ${text}`}
+        {...handlers}
+      >
+        <rect
+          x={x - 12}
+          y={area.top - 30}
+          width="24"
+          height={area.bottom - area.top - 34}
+          fill="transparent"
+        />
+        <path d={`M${x} ${area.top - 12}V${area.bottom}`} stroke="var(--ink)" strokeWidth="1.6" />
+        <path d={`M${x - 8} ${area.top - 26}h16l-8 14z`} fill="var(--ink)" />
+      </g>
+    </>
   );
 }
