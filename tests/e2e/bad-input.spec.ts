@@ -97,10 +97,11 @@ test.describe("files that cannot be a table", () => {
   for (const [file, sentence] of [
     ["empty.csv", /The file is empty/],
     ["blank-lines.csv", /nothing but blank lines/],
-    ["noise.bin", /binary file.*save the sheet as CSV/],
-    ["workbook.xlsx", /Excel workbook.*Save the sheet as CSV/],
+    ["noise.bin", /binary file.*save it as XLSX or CSV/],
+    ["cut-off-workbook.xlsx", /workbook cannot be unpacked.*save it again/],
+    ["old-workbook.xls", /old format \(XLS\).*Save it as XLSX/],
+    ["spectrum.jdx", /JCAMP-DX.*not along time/],
     ["only-text.csv", /No line of numbers was found/],
-    ["spaces.txt", /separated by spaces/],
   ] as const) {
     test(`${file} is refused by a sentence and nothing is stored`, async () => {
       const page = await importPage();
@@ -123,6 +124,9 @@ test.describe("tables with something to settle", () => {
     ["falling-times.csv", "line 5", /Time has to rise/],
     ["too-long-lines.csv", "line 3", /4 cells where 3 are expected/],
     ["typing-slip.csv", "line 3, R15", /“0,2l4” is not a number/],
+    ["blanks-cell-missing.txt", "line 3", /which of them is missing cannot be seen/],
+    ["two-part-clock.csv", "column 1", /hours and minutes or minutes and seconds/],
+    ["flag-cells.csv", "line 3", /carry a mark beside the number/],
   ] as const) {
     test(`${file} names ${place} and cannot be stored as it is`, async () => {
       const page = await importPage();
