@@ -1,6 +1,6 @@
 import { randomDraws } from "kinetics-core/random";
 import { fitRateLaw } from "kinetics-core/rate-law";
-import { progressTo, simulateTrace } from "kinetics-core/simulation";
+import { catalysedRecipes, catalysedSpeeds, simulateTrace } from "kinetics-core/simulation";
 import { describe, expect, it } from "vitest";
 import { chooseStudyRule } from "./choose-study-rule";
 import { estimateInitialRate } from "./estimate-initial-rate";
@@ -11,17 +11,6 @@ import type { InitialRate, StudyTrace } from "./initial-rate";
  * window of the clock for all runs. Runs differ in conversion, carry 3 % of scatter in k and noisy readings.
  */
 
-const DESIGN = [
-  { a: 1, b: 1 },
-  { a: 2, b: 1 },
-  { a: 4, b: 1 },
-  { a: 1, b: 2 },
-  { a: 1, b: 4 },
-  { a: 2, b: 2 },
-  { a: 4, b: 2 },
-  { a: 2, b: 4 },
-  { a: 1, b: 1 },
-];
 const DURATION = 100;
 const RUN_SCATTER = 0.03;
 const STUDIES = 15;
@@ -30,9 +19,8 @@ type SimulatedRun = StudyTrace & { readonly a: number; readonly b: number; reado
 
 /** `fastest`: conversion of the fastest run at the last reading. k follows from it. */
 function simulateStudy(order: number, fastest: number, deviate: () => number) {
-  const speeds = DESIGN.map(({ a, b }) => b * a ** (order - 1));
-  const rateConstant = progressTo(fastest, order) / (DURATION * Math.max(...speeds));
-  const runs: SimulatedRun[] = DESIGN.map(({ a, b }, j) => {
+  const { speeds, rateConstant } = catalysedSpeeds(catalysedRecipes, { order, fastest, duration: DURATION });
+  const runs: SimulatedRun[] = catalysedRecipes.map(({ a, b }, j) => {
     const speed = rateConstant * Number(speeds[j]) * Math.exp(RUN_SCATTER * deviate());
     const course = { order, progress: speed * DURATION, readings: 120, duration: DURATION };
     const signal = { start: 0.05, span: a, noise: 0.004, autocorrelation: 0.3 };

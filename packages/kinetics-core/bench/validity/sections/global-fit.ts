@@ -1,6 +1,6 @@
 import { fitGlobal, robustBeside } from "kinetics-core/global-fit";
 import type { RandomDraws } from "kinetics-core/random";
-import { progressTo, simulateTrace } from "kinetics-core/simulation";
+import { catalysedSpeeds, simulateTrace } from "kinetics-core/simulation";
 import { GLOBAL_FIT_CELLS, type GlobalFitCell } from "../grid";
 import { leastCovered } from "../limits";
 import { markdownTable, percent, significant } from "../markdown";
@@ -50,8 +50,7 @@ type Way = "random" | "robust" | "pooled";
 
 function prepare({ runs, order, fastest, scatter, autocorrelation }: GlobalFitCell) {
   const design = DESIGN.slice(0, runs);
-  const speeds = design.map(({ a, b }) => b * a ** (order - 1));
-  const rateConstant = progressTo(fastest, order) / (DURATION * Math.max(...speeds));
+  const { speeds, rateConstant } = catalysedSpeeds(design, { order, fastest, duration: DURATION });
   return (draws: RandomDraws): Outcome => {
     const traces = design.map(({ a, b }, j) => {
       const speed = rateConstant * (speeds[j] ?? 0) * Math.exp(scatter * draws.normal());

@@ -8,7 +8,7 @@ import {
 } from "kinetics-core/initial-rate";
 import type { RandomDraws } from "kinetics-core/random";
 import { fitRateLaw } from "kinetics-core/rate-law";
-import { progressTo, simulateTrace } from "kinetics-core/simulation";
+import { catalysedRecipes, catalysedSpeeds, simulateTrace } from "kinetics-core/simulation";
 import { STUDY_RULE_CELLS, type StudyRuleCell } from "../grid";
 import { leastCovered, STUDIES_BY_DESIGN, STUDIES_OVERALL } from "../limits";
 import { markdownTable, percent, significant } from "../markdown";
@@ -31,17 +31,6 @@ export const studyRule: Section<StudyRuleCell> = {
   report,
 };
 
-const DESIGN = [
-  { a: 1, b: 1 },
-  { a: 2, b: 1 },
-  { a: 4, b: 1 },
-  { a: 1, b: 2 },
-  { a: 1, b: 4 },
-  { a: 2, b: 2 },
-  { a: 4, b: 2 },
-  { a: 2, b: 4 },
-  { a: 1, b: 1 },
-] as const;
 const DURATION = 100;
 const RUN_SCATTER = 0.03;
 const AUTOCORRELATION = 0.3;
@@ -55,10 +44,9 @@ const TITLES: Readonly<Record<Way, string>> = {
 const QUANTITIES = ["a", "b", "ln k"] as const;
 
 function prepare({ order, fastest, readings, noise }: StudyRuleCell) {
-  const speeds = DESIGN.map(({ a, b }) => b * a ** (order - 1));
-  const rateConstant = progressTo(fastest, order) / (DURATION * Math.max(...speeds));
+  const { speeds, rateConstant } = catalysedSpeeds(catalysedRecipes, { order, fastest, duration: DURATION });
   return (draws: RandomDraws): Outcome => {
-    const traces = DESIGN.map(({ a }, j) => {
+    const traces = catalysedRecipes.map(({ a }, j) => {
       const speed = rateConstant * (speeds[j] ?? 0) * Math.exp(RUN_SCATTER * draws.normal());
       const course = {
         order,
@@ -71,7 +59,7 @@ function prepare({ order, fastest, readings, noise }: StudyRuleCell) {
       return simulateTrace({ ...course, noise, autocorrelation: AUTOCORRELATION }, draws.normal);
     });
     const surveys = traces.map((trace, j) =>
-      surveyTrace({ label: `run ${j + 1}`, trace, timeZero: 0, signalSpan: DESIGN[j]?.a ?? null }),
+      surveyTrace({ label: `run ${j + 1}`, trace, timeZero: 0, signalSpan: catalysedRecipes[j]?.a ?? null }),
     );
     const choice = chooseFromSurveys(surveys);
     const clock = traces.map((trace) => {
@@ -125,7 +113,7 @@ function law(
     fitRateLaw({
       species: ["a", "b"],
       runs: rates.flatMap((rate, j) => {
-        const recipe = DESIGN[j];
+        const recipe = catalysedRecipes[j];
         if (rate === null || recipe === undefined) return [];
         const own = { rate: rate.slope, rateStandardError: rate.standardError };
         return [{ label: `run ${j + 1}`, concentrations: { a: recipe.a, b: recipe.b }, ...own }];
