@@ -27,6 +27,14 @@ describe("findings on a law as a whole", () => {
     expect(messageOf("exact-table", 1, [1, 1.02, 1])).toBeUndefined();
   });
 
+  it("say how far a run lies off in percent, and in factors where percents say nothing", () => {
+    const off = (factor: number) =>
+      messageOf("influential-run", 1, [1.01, 0.99, 1.01, factor, 0.99, 1.01, 0.99, 1, 1.01]);
+    expect(off(1.3)).toMatch(/^R04 lies \d\d % above the law, /);
+    expect(off(0.01)).toMatch(/^R04 lies a factor of \d+ below the law, /);
+    expect(off(1e25)).toMatch(/^R04 lies a factor of \S+ × 10\S+ above the law, /);
+  });
+
   it("print the limits of an order with places enough to tell them apart", () => {
     const factors = [1, 1.00002, 0.99999, 1.00001, 0.99998];
     const [, low, high] =

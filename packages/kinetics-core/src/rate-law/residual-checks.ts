@@ -1,5 +1,5 @@
 import { fSurvival, normalQuantile, studentTSurvival } from "kinetics-core/distributions";
-import { type Flag, inARow, percent } from "kinetics-core/quantities";
+import { type Flag, inARow, percent, printNumber } from "kinetics-core/quantities";
 import type { OrdersFit } from "./fit-orders";
 import { groupsByRecipe } from "./pairs";
 import type { LackOfFit, RateLawFit } from "./rate-law";
@@ -42,6 +42,17 @@ function deletedStudentised(fit: OrdersFit, run: number): number | null {
   return inner * Math.sqrt((freedom - 1) / rest);
 }
 
+/** ln of a rate over the law's as "12 % above" or "a factor of 30 below"; a percentage of thousands says nothing. */
+function distanceInWords(residual: number): string {
+  const side = residual > 0 ? "above" : "below";
+  const away = Math.abs(residual);
+  if (away < Math.LN2) return `${percent(Math.abs(Math.expm1(residual)))} ${side}`;
+  const decades = away / Math.LN10;
+  return decades < 300
+    ? `a factor of ${printNumber(Math.exp(away), 2)} ${side}`
+    : `more than 300 powers of ten ${side}`;
+}
+
 export function residualFlags(fit: OrdersFit, rows: RateLawFit["residuals"]): readonly Flag[] {
   const flags: Flag[] = [];
   const tested = rows.filter((row) => row.studentised !== null).length;
@@ -52,7 +63,7 @@ export function residualFlags(fit: OrdersFit, rows: RateLawFit["residuals"]): re
     flags.push({
       code: "influential-run",
       severity: "weakens",
-      message: `${row.label} lies ${percent(Math.abs(Math.expm1(row.residual)))} ${row.residual > 0 ? "above" : "below"} the law, ${Math.abs(row.studentised).toFixed(1)} standard errors from what the other runs foretell. Look at its trace and recipe; if there is a reason, set it aside.`,
+      message: `${row.label} lies ${distanceInWords(row.residual)} the law, ${Math.abs(row.studentised).toFixed(1)} standard errors from what the other runs foretell. Look at its trace and recipe; if there is a reason, set it aside.`,
     });
   }
   const unchecked = rows.filter((row) => row.leverage >= LEVERAGE_BEYOND_CHECK).map((row) => row.label);
