@@ -23,7 +23,7 @@ export function studentTQuantile(p: number, degreesOfFreedom: number): number {
   if (p === 0) return Number.NEGATIVE_INFINITY;
   if (p === 1) return Number.POSITIVE_INFINITY;
   if (p === 0.5) return 0;
-  if (degreesOfFreedom === Number.POSITIVE_INFINITY) return normalQuantile(p);
+  if (degreesOfFreedom > NEARLY_NORMAL) return quantileNearNormal(normalQuantile(p), degreesOfFreedom);
   const outer = Math.min(p, 1 - p);
   const magnitude = tailQuantile(
     { lower: 1 - 2 * outer, upper: 2 * outer },
@@ -33,6 +33,31 @@ export function studentTQuantile(p: number, degreesOfFreedom: number): number {
   );
   return p < 0.5 ? -magnitude : magnitude;
 }
+
+/**
+ * Above so many degrees of freedom the incomplete beta function loses digits (5 of them at 10⁸, all at 10¹⁶), while the series in
+ * 1/ν about the normal distribution has more than a double holds. Welch's formula reaches such numbers where one
+ * part of a variance is rounding.
+ */
+const NEARLY_NORMAL = 1e6;
+
+/** t = z + (z³ + z)/4ν + (5z⁵ + 16z³ + 3z)/96ν² (Abramowitz and Stegun 26.7.5). */
+function quantileNearNormal(z: number, degreesOfFreedom: number): number {
+  const part = 1 / degreesOfFreedom;
+  const square = z * z;
+  return z * (1 + part * ((square + 1) / 4 + (part * ((5 * square + 16) * square + 3)) / 96));
+}
+
+/** z = t − (t³ + t)/4ν + (13t⁵ + 8t³ + 3t)/96ν²: the same series turned round, for t² well below ν. */
+function deviateNearNormal(t: number, degreesOfFreedom: number): number {
+  const part = 1 / degreesOfFreedom;
+  const square = t * t;
+  // From forty standard deviations on nothing is left of either tail.
+  if (square > FARTHEST_SQUARE) return t;
+  return t * (1 - part * ((square + 1) / 4 - (part * ((13 * square + 8) * square + 3)) / 96));
+}
+
+const FARTHEST_SQUARE = 1600;
 
 /** Half-width of a two-sided interval in standard errors: t with P(|T| ≤ t) = level. */
 export function studentTFactor(level: number, degreesOfFreedom: number): number {
@@ -47,7 +72,10 @@ let last = { level: Number.NaN, degreesOfFreedom: Number.NaN, factor: Number.NaN
 
 function studentTails(t: number, degreesOfFreedom: number): Tails {
   assertDegreesOfFreedom(degreesOfFreedom, "Student's t");
-  if (degreesOfFreedom === Number.POSITIVE_INFINITY) return { lower: normalCdf(t), upper: normalSurvival(t) };
+  if (degreesOfFreedom > NEARLY_NORMAL) {
+    const z = deviateNearNormal(t, degreesOfFreedom);
+    return { lower: normalCdf(z), upper: normalSurvival(z) };
+  }
   const both = magnitudeTails(Math.abs(t), degreesOfFreedom);
   const outer = 0.5 * both.upper;
   const inner = 0.5 + 0.5 * both.lower;
