@@ -1,6 +1,6 @@
 "use client";
 
-import { type FormEvent, useId, useState, useTransition } from "react";
+import { useId, useState } from "react";
 import { Button } from "@/app/_ui/button";
 import { SeverityMark } from "@/app/_ui/check";
 import { Dialog } from "@/app/_ui/dialog";
@@ -9,7 +9,7 @@ import { MarginSection } from "@/app/_ui/margin";
 import { keepDispensing } from "../actions";
 import { inVolumeUnit } from "../dispensing-form";
 import type { DispensingForm } from "../schema";
-import { useMixingChange } from "./mixing-change";
+import { useDialogForm } from "./use-dialog-form";
 
 /** Mark and uncertainty of deliveries, with the dialog that changes them. */
 export function Dispensing({
@@ -68,33 +68,18 @@ function DispensingDialog({
   onClose: () => void;
 }) {
   const formId = useId();
-  const { announce } = useMixingChange();
-  const [form, setForm] = useState(before);
-  const [faults, setFaults] = useState<Readonly<Record<string, string>>>({});
-  const [message, setMessage] = useState<string | null>(null);
-  const [working, start] = useTransition();
+  const { form, change, faults, message, working, onSubmit } = useDialogForm(
+    before,
+    (filled) => keepDispensing({ studyId, base: revision, form: filled }),
+    onClose,
+  );
   const unit = form.unit === "mL" ? "mL" : "µL";
   const box = (path: "mark" | "upTo" | "absolute" | "percent") => ({
     value: form[path],
     error: faults[path],
     inputMode: "decimal" as const,
-    onChange: (event: { target: { value: string } }) =>
-      setForm((now) => ({ ...now, [path]: event.target.value })),
+    onChange: (event: { target: { value: string } }) => change({ [path]: event.target.value }),
   });
-
-  function onSubmit(event: FormEvent) {
-    event.preventDefault();
-    start(async () => {
-      const result = await keepDispensing({ studyId, base: revision, form });
-      if (result.ok) {
-        announce(result.value);
-        onClose();
-        return;
-      }
-      setMessage(result.message);
-      setFaults(Object.fromEntries((result.fields ?? []).map(({ path, message: text }) => [path, text])));
-    });
-  }
 
   return (
     <Dialog
@@ -115,7 +100,7 @@ function DispensingDialog({
         <Select
           label="Volumes in"
           value={form.unit}
-          onChange={(event) => setForm((now) => inVolumeUnit(now, event.target.value === "mL" ? "mL" : "uL"))}
+          onChange={(event) => change(inVolumeUnit(form, event.target.value === "mL" ? "mL" : "uL"))}
         >
           <option value="uL">µL</option>
           <option value="mL">mL</option>

@@ -1,6 +1,6 @@
 "use client";
 
-import { type FormEvent, useId, useState, useTransition } from "react";
+import { useId } from "react";
 import { Button } from "@/app/_ui/button";
 import { SeverityMark } from "@/app/_ui/check";
 import { Dialog } from "@/app/_ui/dialog";
@@ -8,7 +8,7 @@ import { Field, Select } from "@/app/_ui/field";
 import { keepStock } from "../actions";
 import type { StockForm } from "../schema";
 import type { SpeciesChoice, StockRow } from "../view";
-import { useMixingChange } from "./mixing-change";
+import { useDialogForm } from "./use-dialog-form";
 
 const UNITS = [
   ["mol/L", "mol L⁻¹"],
@@ -38,31 +38,16 @@ export function StockDialog({
   onClose: () => void;
 }) {
   const formId = useId();
-  const { announce } = useMixingChange();
-  const [form, setForm] = useState(before);
-  const [faults, setFaults] = useState<Readonly<Record<string, string>>>({});
-  const [message, setMessage] = useState<string | null>(null);
-  const [working, start] = useTransition();
-  const change = (part: Partial<StockForm>) => setForm((now) => ({ ...now, ...part }));
+  const { form, change, faults, message, working, onSubmit } = useDialogForm(
+    before,
+    (filled) => keepStock({ studyId, base: revision, stockId, form: filled }),
+    onClose,
+  );
   const box = (path: "symbol" | "name" | "taken" | "mark" | "lot" | "madeOn" | "howKnown") => ({
     value: form[path],
     error: faults[path],
     onChange: (event: { target: { value: string } }) => change({ [path]: event.target.value }),
   });
-
-  function onSubmit(event: FormEvent) {
-    event.preventDefault();
-    start(async () => {
-      const result = await keepStock({ studyId, base: revision, stockId, form });
-      if (result.ok) {
-        announce(result.value);
-        onClose();
-        return;
-      }
-      setMessage(result.message);
-      setFaults(Object.fromEntries((result.fields ?? []).map(({ path, message: text }) => [path, text])));
-    });
-  }
 
   return (
     <Dialog
