@@ -65,12 +65,3 @@ export function ReversibleArrow() {
     </svg>
   );
 }
-
-/** The same string without its marks, for titles and for what is spoken. */
-export function plainProse(text: string): string {
-  return text
-    .replaceAll(/(?<=[*\])])_\{?([A-Za-z0-9]+)\}?/g, "$1")
-    .replaceAll(/\*([^*\s][^*]*)\*/g, "$1")
-    .replaceAll(/\^\{([^}]*)\}/g, "$1")
-    .replaceAll(/\^(?=[-−+]?\d)/g, "");
-}

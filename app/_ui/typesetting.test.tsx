@@ -2,7 +2,7 @@ import { renderToStaticMarkup } from "react-dom/server";
 import { describe, expect, it } from "vitest";
 import { Formula } from "./formula";
 import { Constant, LawExpression, spokenLaw } from "./law";
-import { Prose, plainProse } from "./prose";
+import { Prose } from "./prose";
 import { Unit } from "./unit";
 import { AlignedNumber, Value } from "./value";
 
@@ -38,10 +38,6 @@ describe("Prose", () => {
 
   it("escapes what a person typed", () => {
     expect(renderToStaticMarkup(<Prose text="<b>*k*</b>" />)).toBe("&lt;b&gt;<i>k</i>&lt;/b&gt;");
-  });
-
-  it("has a plain reading", () => {
-    expect(plainProse("*k*_0 = 3 s^-1")).toBe("k0 = 3 s-1");
   });
 });
 
