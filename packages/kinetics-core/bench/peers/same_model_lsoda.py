@@ -13,7 +13,9 @@ from projected_fit import projected_fit
 from scipy.integrate import odeint, solve_ivp
 from study import serve
 
-TOLERANCE = 1e-6
+# Matched accuracy: against the closed form of the benchmark's law the extent is then at most 5e-7 of its span off over all
+# readings, as that of the shipped fit; at 1e-6 it is 2e-6 off.
+TOLERANCE = 2e-7
 COARSE_TOLERANCE = 1e-4
 LEAST = 1e-12
 
