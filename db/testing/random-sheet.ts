@@ -8,7 +8,7 @@ import { inOrder } from "../sheet/sheet-rows";
  * text, text of other scripts, rows in the bin, concentrations of species that are gone.
  */
 export function randomSheet(seed: number): Sheet {
-  const { any, chance, integer, number, positive, text, hash } = draws(seed);
+  const { chance, hash, integer, number, oneOf, positive, text } = draws(seed);
   const uncertain = (value: number) => ({ value, standardUncertainty: positive() });
   const maybe = <T>(make: () => T): T | null => (chance(0.3) ? null : make());
   const times = <T>(most: number, make: (index: number) => T): T[] =>
@@ -30,9 +30,9 @@ export function randomSheet(seed: number): Sheet {
     formula: text(20),
     stoichiometricNumber: integer(7) - 3 + (chance(0.2) ? 0.5 : 0),
     charge: integer(5) - 2,
-    role: any(["reactant", "product", "catalyst", "inhibitor", "spectator", "solvent"] as const),
+    role: oneOf(["reactant", "product", "catalyst", "inhibitor", "spectator", "solvent"] as const),
     inLaw: chance(0.5),
-    unit: any(["mol/L", "mmol/L", "umol/L"] as const),
+    unit: oneOf(["mol/L", "mmol/L", "umol/L"] as const),
     position: integer(4),
   }));
   const sheet: Sheet = {
@@ -41,7 +41,7 @@ export function randomSheet(seed: number): Sheet {
       name: `${text(30)}.`,
       invented: chance(0.5),
       reaction: text(80),
-      timeUnit: any(["s", "min", "h"] as const),
+      timeUnit: oneOf(["s", "min", "h"] as const),
       hazards: text(200),
     },
     species,
@@ -59,14 +59,14 @@ export function randomSheet(seed: number): Sheet {
     },
     signal: maybe(() =>
       chance(0.5)
-        ? { kind: "concentration", unit: any(["mol/L", "mmol/L", "umol/L"] as const) }
+        ? { kind: "concentration", unit: oneOf(["mol/L", "mmol/L", "umol/L"] as const) }
         : {
             kind: "calibrated",
             quantity: `${text(20)}q`,
             unit: text(5),
             perMolar: uncertain(number()),
             blank: maybe(() => uncertain(number())),
-            source: any(["typed", "standards"] as const),
+            source: oneOf(["typed", "standards"] as const),
           },
     ),
     orders: Object.fromEntries(
@@ -88,7 +88,7 @@ export function randomSheet(seed: number): Sheet {
       howKnown: text(40),
     })),
     mixing: {
-      volumeUnit: any(["uL", "mL"] as const),
+      volumeUnit: oneOf(["uL", "mL"] as const),
       markMicrolitre: maybe(positive),
       deliveries: times(3, () => ({
         upToMicrolitre: maybe(positive),
@@ -108,8 +108,8 @@ export function randomSheet(seed: number): Sheet {
     })),
     calibration: {
       speciesId: maybe(() => `s${integer(9)}`),
-      intercept: any(["fitted", "none"] as const),
-      weighting: any(["none", "proportional"] as const),
+      intercept: oneOf(["fitted", "none"] as const),
+      weighting: oneOf(["none", "proportional"] as const),
       rangeMolar: maybe(() => ({ low: positive(), high: positive() })),
       stockRelative: number() ** 2 % 1,
     },
@@ -164,14 +164,14 @@ function draws(seed: number) {
   const generator = xoroshiro128plus(seed);
   const unit = () => uniformFloat64(generator);
   const integer = (below: number) => Math.floor(unit() * below);
-  const any = <T>(values: readonly [T, ...T[]]): T => values[integer(values.length)] ?? values[0];
+  const oneOf = <T>(values: readonly [T, ...T[]]): T => values[integer(values.length)] ?? values[0];
   const positive = (): number => {
     const value = unit() * 10 ** (integer(30) - 15);
     return value > 0 ? value : 1;
   };
   const alphabet = [..."abc XYZ0129.,;:'\"%_\\/\n\t±µ₁⁻⇌жλ漢😀\u0000\u202f"];
   return {
-    any,
+    oneOf,
     integer,
     positive,
     chance: (probability: number) => unit() < probability,
