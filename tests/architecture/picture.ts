@@ -47,6 +47,9 @@ function coreObjection(file: string, { specifier, target }: Import): string | nu
 
 const BENCH = "packages/kinetics-core/bench/";
 
+/** What bundles the benchmark as it ships, and what lets its threads read TypeScript. */
+const BENCH_TOOLS = new Set(["esbuild", "tsx/esm/api"]);
+
 /** The bench measures the library through the doors that everybody uses, and nobody rests on the bench. */
 function benchObjection(file: string, { specifier, target }: Import): string | null {
   if (!file.startsWith(BENCH)) {
@@ -55,10 +58,9 @@ function benchObjection(file: string, { specifier, target }: Import): string | n
   if (target !== null) {
     return target.startsWith(BENCH) ? null : "the bench reaches kinetics-core by its concepts";
   }
-  // Its threads start without the loader that reads TypeScript.
-  return /^(kinetics-core\/|node:)/.test(specifier) || specifier === "tsx/esm/api"
+  return /^(kinetics-core\/|node:)/.test(specifier) || BENCH_TOOLS.has(specifier)
     ? null
-    : "the bench imports kinetics-core and Node only";
+    : "the bench imports kinetics-core, Node and what starts it only";
 }
 
 function migrationObjection(file: string, { specifier, target }: Import): string | null {
