@@ -1,4 +1,4 @@
-import { fitGlobal, type GlobalFitInput, type GlobalFitResult } from "kinetics-core/global-fit";
+import { fitGlobalAndCompareEnds, type GlobalFitInput, type GlobalFitResult } from "kinetics-core/global-fit";
 import {
   estimateInitialRate,
   type InitialRate,
@@ -70,5 +70,5 @@ export function fitLongTrace(input: IntegratedLawInput): IntegratedLawResult {
 }
 
 export function fitAllTraces(input: GlobalFitInput): GlobalFitResult {
-  return fitGlobal(input);
+  return fitGlobalAndCompareEnds(input);
 }

@@ -5,6 +5,7 @@ export {
   type GlobalBootstrapResult,
 } from "./bootstrap-global-fit";
 export type { StudySpecies } from "./course-law";
+export { type EndConflict, endConflict, fitGlobalAndCompareEnds } from "./end-conflict";
 export { fitGlobal } from "./fit-global";
 export type {
   FittedRun,

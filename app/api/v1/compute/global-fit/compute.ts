@@ -1,5 +1,5 @@
 import {
-  fitGlobal,
+  fitGlobalAndCompareEnds,
   type GlobalFit,
   type GlobalFitInput,
   type GlobalFitResult,
@@ -10,9 +10,9 @@ import type { Computed } from "../estimate.schema";
 import { plainEstimate as plain } from "../plain-estimate";
 import type { GlobalFitRequest, GlobalFitResponse } from "./schema";
 
-/** The public face of `fitGlobal`: names of the API in, names of the API out, nothing stored. */
+/** The public face of the global fit: names of the API in, names of the API out, nothing stored. */
 export function computeGlobalFit(request: GlobalFitRequest): Computed<GlobalFitResponse> {
-  return globalFitAnswer(fitGlobal(globalFitInput(request)));
+  return globalFitAnswer(fitGlobalAndCompareEnds(globalFitInput(request)));
 }
 
 /** The same request in the names of the library. */
